@@ -1,0 +1,7 @@
+namespace RiskWorker.Host.Tests;
+
+public sealed class PlaceTests
+{
+    [Fact]
+    public void True_is_true() => Assert.True(true);
+}
