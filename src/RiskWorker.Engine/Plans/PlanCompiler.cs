@@ -160,13 +160,12 @@ public sealed class PlanCompiler
     }
 
     private OptionItem Option(int cell, double units, in BoundInstrument bound) =>
-        new(cell, units, EuropeanOption.Value(Terms(bound, bound.YearsFrom(_asOf)), 0, bound.Underlying.LevelOf(_model.Levels)));
+        new(cell, units, Valuer.OptionValue(bound, bound.Underlying.LevelOf(_model.Levels), bound.YearsFrom(_asOf), VolatilityOf(bound)));
 
-    private EuropeanOptionTerms Terms(in BoundInstrument bound, double years)
-    {
-        var volatility = bound.VolatilityFactor < 0 ? bound.Volatility : _model.Levels[bound.VolatilityFactor];
-        return Valuer.OptionTerms(bound, bound.Underlying.LevelOf(_model.Levels), years, volatility);
-    }
+    private EuropeanOptionTerms Terms(in BoundInstrument bound, double years) =>
+        Valuer.OptionTerms(bound, bound.Underlying.LevelOf(_model.Levels), years, VolatilityOf(bound));
+
+    private double VolatilityOf(in BoundInstrument bound) => bound.VolatilityFactor < 0 ? bound.Volatility : _model.Levels[bound.VolatilityFactor];
 
     private EuropeanOptionTerms[][] TermsByHorizon(List<BoundInstrument> options)
     {

@@ -1,7 +1,7 @@
 using System.Buffers.Binary;
-using System.Runtime.InteropServices;
 using System.Security.Cryptography;
 using System.Text;
+using RiskWorker.Numerics.Kernels;
 
 namespace RiskWorker.Engine.Plans;
 
@@ -45,9 +45,16 @@ internal sealed class PlanHash : IDisposable
             foreach (var item in batch.Items)
             {
                 Add(item.Cell).Add(item.Quantity).Add(item.BaseValue);
-                _hash.AppendData(MemoryMarshal.AsBytes(item.Terms.AsSpan()));
             }
+            foreach (var terms in batch.Terms.SelectMany(t => t)) Add(terms);
         }
+    }
+
+    private void Add(in EuropeanOptionTerms terms)
+    {
+        Span<double> numbers = stackalloc double[EuropeanOptionTerms.NumberCount];
+        terms.CopyTo(numbers);
+        foreach (var number in numbers) Add(number);
     }
 
     private PlanHash Text(string text)

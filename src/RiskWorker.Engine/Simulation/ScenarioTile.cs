@@ -124,7 +124,8 @@ public sealed class ScenarioTile
         {
             var (quoteReturns, quotes) = (_quoteReturns.AsSpan(0, width), _volatilities.AsSpan(0, width));
             Move(group.Key.Quote, horizon, quoteReturns, quotes);
-            BookProfit.Cross(returns, spots, quoteReturns, quotes);
+            Elementwise.Subtract(quoteReturns, returns);
+            Elementwise.DivideBy(quotes, spots);
         }
     }
 
@@ -158,7 +159,7 @@ public sealed class ScenarioTile
             BookProfit.AddConverted(_cells.AsSpan(c * Width, width), cell.Value, RatesOf(cell.Currency, width), _plan.Currencies[cell.Currency].Rate, _nodes.AsSpan(cell.Node * Width, width));
         }
         for (var node = _plan.Nodes.Count - 1; node > 0; node--)
-            BookProfit.Add(_nodes.AsSpan(node * Width, width), _nodes.AsSpan(_plan.Nodes[node].Parent * Width, width));
+            Elementwise.Add(_nodes.AsSpan(node * Width, width), _nodes.AsSpan(_plan.Nodes[node].Parent * Width, width));
     }
 
     private void Losses(PlanRow row, int width, Span<double> losses)
@@ -168,6 +169,6 @@ public sealed class ScenarioTile
         if (row.InOwnCurrency)
             BookProfit.LossInCurrency(profit, node.ValueRoot, RatesOf(node.Currency, width), _plan.Currencies[node.Currency].Rate, losses);
         else
-            BookProfit.Loss(profit, losses);
+            Elementwise.Negate(profit, losses);
     }
 }
