@@ -21,14 +21,14 @@ public sealed class SampledLoss
     /// <param name="tail">Those beyond the cutoff, worst first.</param>
     /// <param name="cutoff">The cutoff.</param>
     /// <param name="equal">Losses equal to the cutoff.</param>
-    public SampledLoss(long count, TailEntry[] tail, double cutoff, long equal)
+    public SampledLoss(int count, TailEntry[] tail, double cutoff, long equal)
     {
         (Count, _tail, _cutoff, _equal) = (count, tail, cutoff, equal);
         _losses = [.. tail.Select(t => t.Loss)];
     }
 
     /// <summary>Number of losses, N.</summary>
-    public long Count { get; }
+    public int Count { get; }
 
     /// <summary>Worst ranks that are known.</summary>
     public long Known => _tail.Length + _equal;
@@ -42,16 +42,16 @@ public sealed class SampledLoss
     }
 
     /// <summary>The rank from the worst that VaR at <paramref name="confidence"/> stands on: N - ceil(N alpha) + 1.</summary>
-    public long VarRank(Confidence confidence) => Count - (long)Math.Ceiling(Count * confidence.Level) + 1;
+    public int VarRank(Confidence confidence) => Count - BinomialRanks.VarRank(Count, confidence.Level) + 1;
 
     /// <summary>The smallest l with P(L &lt;= l) >= confidence.</summary>
     public double Var(Confidence confidence) => AtRank(VarRank(confidence));
 
     /// <summary>The distribution-free interval of VaR from order statistics; an end whose rank lies outside the sample is null.</summary>
-    public (double? Low, double? High) VarInterval(Confidence confidence, double level)
+    public (double? Low, double? High) VarInterval(Confidence confidence, decimal level)
     {
-        var (low, high) = BinomialRanks.Of(Count, confidence.Level, level);
-        return (low is { } l ? AtRank(Count - l + 1) : null, high is { } h ? AtRank(Count - h + 1) : null);
+        var ranks = BinomialRanks.Interval(Count, confidence.Level, level);
+        return (ranks.Low is { } low ? AtRank(Count - low + 1) : null, ranks.High is { } high ? AtRank(Count - high + 1) : null);
     }
 
     /// <summary>The mean of the worst N(1 - alpha) losses, the boundary loss weighted by the fraction needed (Acerbi and Tasche 2002).</summary>
@@ -65,7 +65,7 @@ public sealed class SampledLoss
     /// The interval of expected shortfall by its asymptotic variance,
     /// (Var(L given L >= VaR) + alpha (ES - VaR)²) / (N (1 - alpha)) (Manistre and Hancock 2005).
     /// </summary>
-    public (double Low, double High) ExpectedShortfallInterval(Confidence confidence, double level)
+    public (double Low, double High) ExpectedShortfallInterval(Confidence confidence, decimal level)
     {
         var (whole, fraction, weight) = TailOf(confidence);
         var es = ExpectedShortfall(confidence);
@@ -73,13 +73,13 @@ public sealed class SampledLoss
         var squares = Deviations(whole, es);
         var variance = Weighted(whole, fraction, _ => LaneSum.OfSquares(squares), loss => (loss - es) * (loss - es)) / weight;
         var error = Math.Sqrt((variance + ((double)confidence.Level * excess * excess)) / weight);
-        var half = InverseNormal.Of((1 + level) / 2) * error;
+        var half = InverseNormal.Of((double)((1 + level) / 2)) * error;
         return (es - half, es + half);
     }
 
     private (long Whole, double Fraction, double Weight) TailOf(Confidence confidence)
     {
-        var weight = Count * (1 - confidence.Level);
+        var weight = BinomialRanks.TailWeight(Count, confidence.Level);
         var whole = decimal.Floor(weight);
         return ((long)whole, (double)(weight - whole), (double)weight);
     }
