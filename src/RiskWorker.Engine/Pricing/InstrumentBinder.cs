@@ -47,13 +47,15 @@ public sealed class InstrumentBinder
     {
         var underlying = UnderlyingOf(o.Underlying, o, currency, ref fault);
         var volatilityFactor = o.Volatility.Factor is { } name ? FactorOf(name, ref fault) : -1;
-        if (fault is null && !underlying.IsCross && _factors[underlying.Factor].Shock == ShockKind.Normal)
+        if (fault is null && (MayTurnNegative(underlying.Factor) || MayTurnNegative(underlying.Quote)))
             fault = new(UnpricedReason.NotModelled, $"its underlying '{o.Underlying}' has normal shocks and may turn negative, where the log-normal formula has no value");
-        if (fault is null && volatilityFactor >= 0 && _factors[volatilityFactor].Shock == ShockKind.Normal)
+        if (fault is null && MayTurnNegative(volatilityFactor))
             fault = new(UnpricedReason.NotModelled, $"its volatility factor '{o.Volatility.Factor}' has normal shocks and may turn negative");
         return new(PayoffShape.EuropeanOption, currency, underlying, o.Multiplier, o.Strike, o.Expiry,
             FlatRate(o.Curve, "curve", ref fault), FlatRate(o.Carry, "carry", ref fault), o.Right == OptionRight.Call, o.Volatility.Flat ?? double.NaN, volatilityFactor);
     }
+
+    private bool MayTurnNegative(int factor) => factor >= 0 && _factors[factor].Shock == ShockKind.Normal;
 
     private UnderlyingKey UnderlyingOf(Underlying underlying, Instrument instrument, int currency, ref Unpriced? fault)
     {

@@ -41,6 +41,13 @@ public static class Valuer
     public static EuropeanOptionTerms OptionTerms(in BoundInstrument bound, double spot, double years, double volatility) =>
         new(spot, bound.Strike, years, volatility, bound.Rate, bound.Rate - bound.Carry, bound.IsCall);
 
+    /// <summary>Value of one option before its multiplier: the flat or the factor's volatility, each by its own kernel.</summary>
+    public static double OptionValue(in BoundInstrument bound, double spot, double years, double volatility)
+    {
+        var terms = OptionTerms(bound, spot, years, volatility);
+        return bound.VolatilityFactor < 0 ? EuropeanOption.Value(terms, 0, spot) : EuropeanOption.Value(terms, 0, spot, volatility);
+    }
+
     private static double ForwardValue(in BoundInstrument bound, double spot, double years) =>
         (spot * ForwardUnits(bound, years)) - (bound.Strike * Exponential.Of(-bound.Rate * years));
 
@@ -48,7 +55,6 @@ public static class Valuer
     {
         var spot = bound.Underlying.LevelOf(levels);
         var volatility = bound.VolatilityFactor < 0 ? bound.Volatility : levels[bound.VolatilityFactor];
-        if (double.IsNaN(spot) || double.IsNaN(volatility)) return double.NaN;
-        return EuropeanOption.Value(OptionTerms(bound, spot, bound.YearsFrom(date), volatility), 0, spot);
+        return !(spot > 0) || !(volatility >= 0) ? double.NaN : OptionValue(bound, spot, bound.YearsFrom(date), volatility);
     }
 }
