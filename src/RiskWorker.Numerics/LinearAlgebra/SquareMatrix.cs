@@ -8,7 +8,7 @@ internal static class SquareMatrix
     {
         ArgumentOutOfRangeException.ThrowIfNegative(n);
         if (matrix.Length != (long)n * n)
-            throw new ArgumentException($"{name} has {matrix.Length} elements; an {n} × {n} matrix has {(long)n * n}.", name);
+            throw new ArgumentException($"{name} has {matrix.Length} elements; {n} × {n} are {(long)n * n}.", name);
         for (var i = 0; i < n; i++)
         {
             for (var j = 0; j <= i; j++)

@@ -1,8 +1,8 @@
 namespace RiskWorker.Numerics.Statistics;
 
 /// <summary>
-/// Mean, standard deviation and lag-1 autocorrelation of a series by two passes: the mean is corrected by the mean of what it
-/// leaves, the squares by what the corrected mean still leaves (Chan, Golub and LeVeque 1983). A NaN makes all of them NaN.
+/// Mean, standard deviation and lag-1 autocorrelation of a series, in passes over it: the mean is corrected by the mean of what it
+/// leaves, and deviations are taken from the mean and from what it still leaves. A NaN makes all of them NaN.
 /// </summary>
 public readonly record struct Moments
 {
@@ -35,21 +35,24 @@ public readonly record struct Moments
     /// <summary>The moments of <paramref name="values"/>, summed in their order.</summary>
     public static Moments Of(ReadOnlySpan<double> values)
     {
-        var sum = 0.0;
-        foreach (var value in values) sum += value;
-        var rough = sum / values.Length;
-        var left = 0.0;
-        foreach (var value in values) left += value - rough;
-        var mean = rough + (left / values.Length);
-        var (rest, squares, products, previous) = (0.0, 0.0, 0.0, 0.0);
+        var rough = MeanLeft(values, 0);
+        var mean = rough + MeanLeft(values, rough);
+        var rest = MeanLeft(values, mean); // what no double next to a large mean can say
+        var (squares, products, previous) = (0.0, 0.0, 0.0);
         foreach (var value in values)
         {
-            var deviation = value - mean;
-            rest += deviation;
+            var deviation = value - mean - rest;
             squares += deviation * deviation;
             products += deviation * previous;
             previous = deviation;
         }
-        return new(values.Length, mean, squares - (rest * rest / values.Length), products);
+        return new(values.Length, mean, squares, products);
+    }
+
+    private static double MeanLeft(ReadOnlySpan<double> values, double centre)
+    {
+        var sum = 0.0;
+        foreach (var value in values) sum += value - centre;
+        return sum / values.Length;
     }
 }
