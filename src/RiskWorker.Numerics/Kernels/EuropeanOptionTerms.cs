@@ -43,6 +43,18 @@ public readonly struct EuropeanOptionTerms
         SignedOffset = Sign * Math.FusedMultiplyAdd(LogForwardMoneyness, inverse, 0.5 * deviation);
     }
 
+    /// <summary>Numbers that <see cref="CopyTo"/> writes.</summary>
+    public const int NumberCount = 8;
+
+    /// <summary>Every number that a value depends on, in a fixed order: what a content hash of a book is made of.</summary>
+    /// <param name="numbers">At least <see cref="NumberCount"/> elements.</param>
+    public void CopyTo(Span<double> numbers)
+    {
+        Spans.RequireRoom(NumberCount, numbers.Length, nameof(numbers));
+        (numbers[0], numbers[1], numbers[2], numbers[3]) = (Sign, RootYears, LogForwardMoneyness, SpotFactor);
+        (numbers[4], numbers[5], numbers[6], numbers[7]) = (StrikeValue, SignedInverse, SignedDeviation, SignedOffset);
+    }
+
     /// <summary>+1 call, -1 put.</summary>
     internal double Sign { get; }
 
