@@ -1,5 +1,4 @@
 using RiskWorker.Domain.Books;
-using RiskWorker.Domain.Market;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Engine.Backtesting;
 using static RiskWorker.Engine.Tests.SnapshotBuilder;

@@ -1,7 +1,6 @@
 using RiskWorker.Domain.Books;
 using RiskWorker.Domain.Instruments;
 using RiskWorker.Domain.Market;
-using RiskWorker.Domain.Runs;
 using RiskWorker.Engine.Backtesting;
 using static RiskWorker.Engine.Tests.SnapshotBuilder;
 

@@ -90,7 +90,7 @@ public sealed class BookChecksTests
     {
         var builder = SnapshotBuilder.Sound().Profit(SnapshotBuilder.Friday, "GONE", 1).Profit(SnapshotBuilder.Friday.AddDays(-1), "GONE", 1).Profit(SnapshotBuilder.Friday, "FIRM", 1);
 
-        Assert.StartsWith("2 rows are of a book that books.csv lacks (GONE)", FindingsOf.Feed(builder).One(FindingCodes.ProfitBookUnknown).Message, StringComparison.Ordinal);
+        Assert.StartsWith("2 rows are of 1 book that books.csv lacks (GONE)", FindingsOf.Feed(builder).One(FindingCodes.ProfitBookUnknown).Message, StringComparison.Ordinal);
     }
 
     [Fact]

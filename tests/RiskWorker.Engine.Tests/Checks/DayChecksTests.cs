@@ -1,4 +1,3 @@
-using RiskWorker.Domain.Market;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Engine.Calibration;
 using RiskWorker.Engine.Checks;

@@ -108,7 +108,7 @@ public sealed class ValuationChecksTests
     [InlineData(1.0, 0.0, true)]
     public void Run_with_a_difference_of_exactly_the_tolerance_lets_it_pass(double quantity, double market, bool isBreak)
     {
-        // One unit of cash is worth 1, so the model's value is the quantity; the tolerance is 1/5 less the sixteen that are missing from 80.
+        // One unit of cash is worth 1, so the quantity is the model value; a fifth of 80 is 16.
         var builder = TwoCurrencies().Checks(c => c with { ValueTolerance = 0.2 }).Instrument(new Cash { Name = "EURO", Currency = "EUR" }).Position("DESK", "EURO", quantity, market);
 
         Assert.Equal(isBreak, FindingsOf.Valuation(builder).Any(f => f.Code == FindingCodes.ValueDifference.Code));
