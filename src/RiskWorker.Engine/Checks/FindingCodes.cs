@@ -200,6 +200,11 @@ public static class FindingCodes
         "An instrument has a term that its kind does not use",
         "correct the kind or the term in instruments.csv");
 
+    /// <summary>A limit relative to a value that is not positive.</summary>
+    public static readonly FindingCode LimitUndecidable = new("limit-undecidable", Warning,
+        "A limit is relative to a value or measure that is not positive, so no number of scenarios decides it",
+        "give the limit an amount in money");
+
     /// <summary>A rate that was left out; found when the feed is loaded.</summary>
     public static readonly FindingCode AssumedZeroRate = new("assumed-zero-rate", Warning,
         "A forward or an option has no curve or no carry, which counts as 0",
@@ -213,7 +218,7 @@ public static class FindingCodes
         ValueDifference, HoldingsChange,
         FactorClosed, PriceStale, PriceJump, DayMissing, DayClosed, DaysDropped, HistoryProxied, HistoryPartial,
         CalendarUnknown, ProxyUnusable, FxFactorUnused, DriftUnknown, CovarianceUnknown, CovarianceMissing, AdjustmentUnknown,
-        LimitBookUnknown, ProfitBookUnknown,
+        LimitBookUnknown, LimitUndecidable, ProfitBookUnknown,
         AssumedZeroRate, UnusedTerm, UnknownColumn, UnknownFile,
     ];
 }
