@@ -101,6 +101,7 @@ public static class EuropeanOption
             Accumulate(terms, x, spot, volatility, quantity, baseValue, profit);
     }
 
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     private static void Accumulate(
         in EuropeanOptionTerms terms, ReadOnlySpan<double> x, ReadOnlySpan<double> spot, double quantity, double baseValue, Span<double> profit)
     {
@@ -123,6 +124,7 @@ public static class EuropeanOption
             profit[i] = Profit(terms, x[i], spot[i], quantity, baseValue, profit[i]);
     }
 
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     private static void Accumulate(
         in EuropeanOptionTerms terms,
         ReadOnlySpan<double> x,
@@ -155,6 +157,7 @@ public static class EuropeanOption
             profit[i] = Profit(terms, x[i], spot[i], volatility[i], quantity, baseValue, profit[i]);
     }
 
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     private static void AccumulateCertain(
         in EuropeanOptionTerms terms, ReadOnlySpan<double> spot, double quantity, double baseValue, Span<double> profit)
     {

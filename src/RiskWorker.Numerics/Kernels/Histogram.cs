@@ -27,6 +27,7 @@ public static class Histogram
     /// <param name="inverseWidth">Bins per unit, positive and finite.</param>
     /// <param name="counts">Bins + 2 counts: below, the bins, above.</param>
     /// <exception cref="ArgumentException">A value is NaN (counts before it have been added), there is no bin, or an edge is not finite.</exception>
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     [ScalarTwin(nameof(BinOf))]
     public static void Accumulate(ReadOnlySpan<double> values, double low, double inverseWidth, Span<long> counts)
     {
@@ -35,6 +36,8 @@ public static class Histogram
         ref double from = ref MemoryMarshal.GetReference(values);
         ref long to = ref MemoryMarshal.GetReference(counts);
         Vector512<double> lows = Vector512.Create(low), scale = Vector512.Create(inverseWidth), last = Vector512.Create((double)bins);
+        Span<ulong> binsOfLanes = stackalloc ulong[Vector512<ulong>.Count];
+        ref ulong bin = ref MemoryMarshal.GetReference(binsOfLanes);
         int i = 0;
         for (; i + 8 <= values.Length; i += 8)
         {
@@ -45,9 +48,9 @@ public static class Histogram
             position = Vector512.ConditionalSelect(Vector512.LessThan(position, last), position, last);
             position = Vector512.ConditionalSelect(
                 Vector512.GreaterThanOrEqual(value, lows), position + Vector512.Create(1.0 + TwoTo52), Vector512.Create(TwoTo52));
-            Vector512<ulong> bin = position.AsUInt64() & Vector512.Create(0xFFFFFFFFUL);
-            for (int lane = 0; lane < 8; lane++)
-                Unsafe.Add(ref to, (nuint)bin.GetElement(lane))++;
+            (position.AsUInt64() & Vector512.Create(0xFFFFFFFFUL)).StoreUnsafe(ref bin);
+            for (nuint lane = 0; lane < 8; lane++)
+                Unsafe.Add(ref to, (nuint)Unsafe.Add(ref bin, lane))++;
         }
 
         for (; i < values.Length; i++)

@@ -9,8 +9,9 @@ namespace RiskWorker.Numerics.Kernels;
 /// </summary>
 /// <remarks>
 /// Wichura's AS 241 (<see cref="NormalQuantileRationals"/>): a rational function of q = p - ½ where |q| ≤ 0.425, else one of
-/// r = √(-ln min(p, 1-p)). The vector form evaluates both and selects; it enters the far tail (r > 5, p below 1.4e-11)
-/// only if a lane is there, which cannot change what the other lanes get.
+/// r = √(-ln min(p, 1-p)). The vector form evaluates centre and tail and selects. Eight lanes of which one lies beyond
+/// p = 1.5e-11 from an end, where a third function and the special values begin, go through the scalar form instead:
+/// rare among uniforms, and equal to the last bit.
 /// </remarks>
 public readonly struct InverseNormal : IUnaryKernel
 {
@@ -19,6 +20,9 @@ public readonly struct InverseNormal : IUnaryKernel
     private const double TailShift = 1.6;
     private const double FarTailStart = 5.0;
 
+    // Just above e^-25, where r passes 5.
+    private const double LowestVectorMass = 1.5e-11;
+
     /// <inheritdoc/>
     public static double Of(double x)
     {
@@ -26,13 +30,25 @@ public readonly struct InverseNormal : IUnaryKernel
         bool center = Math.Abs(q) <= CenterHalfWidth;
         double mass = q < 0.0 ? x : 1.0 - x;
         double r = Math.Sqrt(-Logarithm.Of(mass));
-        (double numerator, double denominator) = center
-            ? NormalQuantileRationals.Center(Math.FusedMultiplyAdd(-q, q, CenterSquare))
-            : r > FarTailStart
-                ? NormalQuantileRationals.FarTail(r - FarTailStart)
-                : NormalQuantileRationals.Tail(r - TailShift);
+        double numerator, denominator;
+        if (center)
+        {
+            double c = Math.FusedMultiplyAdd(-q, q, CenterSquare);
+            (numerator, denominator) = (NormalQuantileRationals.CenterNumerator(c), NormalQuantileRationals.CenterDenominator(c));
+        }
+        else if (r > FarTailStart)
+        {
+            double f = r - FarTailStart;
+            (numerator, denominator) = (NormalQuantileRationals.FarTailNumerator(f), NormalQuantileRationals.FarTailDenominator(f));
+        }
+        else
+        {
+            double t = r - TailShift;
+            (numerator, denominator) = (NormalQuantileRationals.TailNumerator(t), NormalQuantileRationals.TailDenominator(t));
+        }
+
         double ratio = numerator / denominator;
-        double value = center ? q * ratio : q < 0.0 ? -ratio : ratio;
+        double value = (center ? q : Math.CopySign(1.0, q)) * ratio;
         return AtEnds(x, value);
     }
 
@@ -40,27 +56,20 @@ public readonly struct InverseNormal : IUnaryKernel
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static Vector512<double> Of(Vector512<double> x)
     {
+        Vector512<double> one = Vector512.Create(1.0);
         Vector512<double> q = x - Vector512.Create(0.5);
-        Vector512<double> center = Vector512.LessThanOrEqual(Vector512.Abs(q), Vector512.Create(CenterHalfWidth));
-        Vector512<double> lower = Vector512.LessThan(q, Vector512<double>.Zero);
-        Vector512<double> mass = Vector512.ConditionalSelect(lower, x, Vector512.Create(1.0) - x);
-        Vector512<double> r = Vector512.Sqrt(-Logarithm.Of(mass));
-        (Vector512<double> numerator, Vector512<double> denominator) = NormalQuantileRationals.Tail(r - Vector512.Create(TailShift));
-        Vector512<double> far = Vector512.GreaterThan(r, Vector512.Create(FarTailStart));
-        if (Vector512.GreaterThanAny(r, Vector512.Create(FarTailStart)))
-        {
-            (Vector512<double> farNumerator, Vector512<double> farDenominator) =
-                NormalQuantileRationals.FarTail(r - Vector512.Create(FarTailStart));
-            numerator = Vector512.ConditionalSelect(far, farNumerator, numerator);
-            denominator = Vector512.ConditionalSelect(far, farDenominator, denominator);
-        }
+        Vector512<double> mass = Vector512.ConditionalSelect(Vector512.LessThan(q, Vector512<double>.Zero), x, one - x);
+        if (!Vector512.GreaterThanOrEqualAll(mass, Vector512.Create(LowestVectorMass)))
+            return OneByOne(x);
 
-        (Vector512<double> centerNumerator, Vector512<double> centerDenominator) =
-            NormalQuantileRationals.Center(Vector512.FusedMultiplyAdd(-q, q, Vector512.Create(CenterSquare)));
-        Vector512<double> ratio = Vector512.ConditionalSelect(center, centerNumerator, numerator)
-            / Vector512.ConditionalSelect(center, centerDenominator, denominator);
-        Vector512<double> value = Vector512.ConditionalSelect(center, q * ratio, Vector512.ConditionalSelect(lower, -ratio, ratio));
-        return AtEnds(x, value);
+        Vector512<double> t = Vector512.Sqrt(-Logarithm.OfNormal(mass)) - Vector512.Create(TailShift);
+        Vector512<double> c = Vector512.FusedMultiplyAdd(-q, q, Vector512.Create(CenterSquare));
+        Vector512<double> center = Vector512.LessThanOrEqual(Vector512.Abs(q), Vector512.Create(CenterHalfWidth));
+        Vector512<double> numerator = Vector512.ConditionalSelect(
+            center, NormalQuantileRationals.CenterNumerator(c), NormalQuantileRationals.TailNumerator(t));
+        Vector512<double> denominator = Vector512.ConditionalSelect(
+            center, NormalQuantileRationals.CenterDenominator(c), NormalQuantileRationals.TailDenominator(t));
+        return Vector512.ConditionalSelect(center, q, Vector512.CopySign(one, q)) * (numerator / denominator);
     }
 
     /// <summary>Φ⁻¹ of each element; see <see cref="UnaryKernel.Apply"/>.</summary>
@@ -76,16 +85,13 @@ public readonly struct InverseNormal : IUnaryKernel
         return double.IsNaN(p) ? p : value;
     }
 
-    [MethodImpl(MethodImplOptions.AggressiveInlining)]
-    private static Vector512<double> AtEnds(Vector512<double> p, Vector512<double> value)
+    [MethodImpl(MethodImplOptions.NoInlining)]
+    private static Vector512<double> OneByOne(Vector512<double> x)
     {
-        Vector512<double> zero = Vector512<double>.Zero, one = Vector512.Create(1.0);
-        if (Vector512.GreaterThanAll(p, zero) && Vector512.LessThanAll(p, one))
-            return value;
-        value = Vector512.ConditionalSelect(Vector512.GreaterThan(p, zero), value, Vector512.Create(double.NegativeInfinity));
-        value = Vector512.ConditionalSelect(Vector512.LessThan(p, one), value, Vector512.Create(double.PositiveInfinity));
-        Vector512<double> outside = Vector512.LessThan(p, zero) | Vector512.GreaterThan(p, one);
-        value = Vector512.ConditionalSelect(outside, Vector512.Create(double.NaN), value);
-        return Vector512.ConditionalSelect(Vector512.Equals(p, p), value, p);
+        Span<double> lanes = stackalloc double[Vector512<double>.Count];
+        x.CopyTo(lanes);
+        for (int lane = 0; lane < lanes.Length; lane++)
+            lanes[lane] = Of(lanes[lane]);
+        return Vector512.Create<double>(lanes);
     }
 }

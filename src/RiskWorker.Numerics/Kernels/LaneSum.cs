@@ -1,3 +1,4 @@
+using System.Runtime.CompilerServices;
 using System.Runtime.InteropServices;
 using System.Runtime.Intrinsics;
 
@@ -13,6 +14,7 @@ public static class LaneSum
     private const int Lanes = 8;
 
     /// <summary>The sum of the values.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     [ScalarTwin(nameof(OfInTurn))]
     public static double Of(ReadOnlySpan<double> values)
     {
@@ -25,6 +27,7 @@ public static class LaneSum
     }
 
     /// <summary>The sum of the squares, each added by one fused multiply-add.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     [ScalarTwin(nameof(OfSquaresInTurn))]
     public static double OfSquares(ReadOnlySpan<double> values)
     {

@@ -25,6 +25,7 @@ public static class LogNormalMoves
     /// <param name="scale">σ√h with σ a business day and h in business days.</param>
     /// <param name="drift">Expected log-return over the horizon.</param>
     /// <param name="x">As long as <paramref name="z"/>; may be the same memory.</param>
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     [ScalarTwin(nameof(LogReturn))]
     public static void LogReturns(ReadOnlySpan<double> z, double scale, double drift, Span<double> x)
     {
@@ -43,6 +44,7 @@ public static class LogNormalMoves
     /// <param name="x">Log-returns.</param>
     /// <param name="spot0">Level today.</param>
     /// <param name="spots">As long as <paramref name="x"/>; may be the same memory.</param>
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     [ScalarTwin(nameof(Spot))]
     public static void Spots(ReadOnlySpan<double> x, double spot0, Span<double> spots)
     {
@@ -63,6 +65,7 @@ public static class LogNormalMoves
     /// <param name="drift">Expected change over the horizon.</param>
     /// <param name="level0">Level today.</param>
     /// <param name="levels">As long as <paramref name="z"/>; may be the same memory.</param>
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     [ScalarTwin(nameof(Level))]
     public static void Levels(ReadOnlySpan<double> z, double scale, double drift, double level0, Span<double> levels)
     {

@@ -22,7 +22,8 @@ public readonly struct Logarithm : IUnaryKernel
 
     // 2^52 as bits; an integer below 2^52 in its fraction makes the double 2^52 + integer.
     private const ulong TwoTo52Bits = 0x4330000000000000UL;
-    private const double TwoTo52AndBias = 4503599627370496.0 + 1023.0;
+    private const double Bias = 4503599627370496.0 + 1023.0;
+    private const double LiftedBias = Bias + 54.0;
 
     private const double Ln2Head = 6.93147180369123816490e-01;
     private const double Ln2Tail = 1.90821492927058770002e-10;
@@ -38,7 +39,7 @@ public readonly struct Logarithm : IUnaryKernel
     public static double Of(double x)
     {
         bool small = x < SmallestNormal;
-        double value = OfNormal(small ? x * TwoTo54 : x, small ? 54.0 : 0.0);
+        double value = OfNormal(small ? x * TwoTo54 : x, small ? LiftedBias : Bias);
         value = x < 0.0 ? double.NaN : value;
         value = x == 0.0 ? double.NegativeInfinity : value;
         return x < double.PositiveInfinity ? value : x;
@@ -52,7 +53,7 @@ public readonly struct Logarithm : IUnaryKernel
         Vector512<double> small = Vector512.LessThan(x, Vector512.Create(SmallestNormal));
         Vector512<double> value = OfNormal(
             Vector512.ConditionalSelect(small, x * Vector512.Create(TwoTo54), x),
-            Vector512.ConditionalSelect(small, Vector512.Create(54.0), zero));
+            Vector512.ConditionalSelect(small, Vector512.Create(LiftedBias), Vector512.Create(Bias)));
         value = Vector512.ConditionalSelect(Vector512.LessThan(x, zero), Vector512.Create(double.NaN), value);
         value = Vector512.ConditionalSelect(Vector512.Equals(x, zero), Vector512.Create(double.NegativeInfinity), value);
         return Vector512.ConditionalSelect(Vector512.LessThan(x, Vector512.Create(double.PositiveInfinity)), value, x);
@@ -63,10 +64,14 @@ public readonly struct Logarithm : IUnaryKernel
     public static void Of(ReadOnlySpan<double> source, Span<double> destination) =>
         UnaryKernel.Apply<Logarithm>(source, destination);
 
-    private static double OfNormal(double x, double lift)
+    /// <summary>ln x for positive normal numbers; anything else gives no defined value.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    internal static Vector512<double> OfNormal(Vector512<double> x) => OfNormal(x, Vector512.Create(Bias));
+
+    private static double OfNormal(double x, double bias)
     {
         ulong bits = BitConverter.DoubleToUInt64Bits(x) + OneLessRootHalf;
-        double k = BitConverter.UInt64BitsToDouble((bits >> 52) | TwoTo52Bits) - TwoTo52AndBias - lift;
+        double k = BitConverter.UInt64BitsToDouble((bits >> 52) | TwoTo52Bits) - bias;
         double f = BitConverter.UInt64BitsToDouble((bits & Fraction) + RootHalf) - 1.0;
         double s = f / (2.0 + f);
         double z = s * s;
@@ -80,10 +85,10 @@ public readonly struct Logarithm : IUnaryKernel
     }
 
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
-    private static Vector512<double> OfNormal(Vector512<double> x, Vector512<double> lift)
+    private static Vector512<double> OfNormal(Vector512<double> x, Vector512<double> bias)
     {
         Vector512<ulong> bits = x.AsUInt64() + Vector512.Create(OneLessRootHalf);
-        Vector512<double> k = ((bits >> 52) | Vector512.Create(TwoTo52Bits)).AsDouble() - Vector512.Create(TwoTo52AndBias) - lift;
+        Vector512<double> k = ((bits >> 52) | Vector512.Create(TwoTo52Bits)).AsDouble() - bias;
         Vector512<double> f = ((bits & Vector512.Create(Fraction)) + Vector512.Create(RootHalf)).AsDouble() - Vector512.Create(1.0);
         Vector512<double> s = f / (Vector512.Create(2.0) + f);
         Vector512<double> z = s * s;

@@ -1,4 +1,5 @@
 using System.Numerics;
+using System.Runtime.CompilerServices;
 using System.Runtime.InteropServices;
 using System.Runtime.Intrinsics;
 
@@ -14,6 +15,7 @@ public static class Selection
     /// <param name="equalCount">How many values equal the cutoff.</param>
     /// <returns>How many indices were written.</returns>
     /// <exception cref="ArgumentException">The indices have no room, the cutoff is NaN, or a value is NaN (its index is named).</exception>
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     [ScalarTwin(nameof(GreaterInTurn))]
     public static int Greater(ReadOnlySpan<double> values, double cutoff, Span<int> indices, out int equalCount)
     {

@@ -1,4 +1,3 @@
-using System.Runtime.CompilerServices;
 using System.Runtime.InteropServices;
 using System.Runtime.Intrinsics;
 
@@ -26,12 +25,17 @@ public static class TriangularProduct
         ReadOnlySpan<double> lower, int rows, int rank, ReadOnlySpan<double> draws, Span<double> moves, int width)
     {
         Require(lower, rows, rank, draws, moves, width);
-        var block = new Block(
-            ref MemoryMarshal.GetReference(lower), ref MemoryMarshal.GetReference(draws), ref MemoryMarshal.GetReference(moves), rank, width);
+        var tiles = new TriangularTiles(
+            ref MemoryMarshal.GetReference(lower), ref MemoryMarshal.GetReference(draws), ref MemoryMarshal.GetReference(moves),
+            rows, rank, width);
         int s = 0;
         if (Vector512.IsHardwareAccelerated)
-            s = block.Panels<Strip24>(rows, s);
-        s = block.Panels<Strip8>(rows, s);
+        {
+            s = tiles.Multiply<Strip24>(s);
+            s = tiles.Multiply<Strip16>(s);
+        }
+
+        s = tiles.Multiply<Strip8>(s);
         Columns(lower, rows, rank, draws, moves, width, s);
     }
 
@@ -71,90 +75,5 @@ public static class TriangularProduct
         Spans.RequireLength(checked(rows * width), moves.Length, nameof(moves));
         if (moves.Overlaps(draws) || moves.Overlaps(lower))
             throw new ArgumentException("The moves overlap an operand; they must be apart.", nameof(moves));
-    }
-
-    private readonly ref struct Block(ref double lower, ref double draws, ref double moves, int rank, int width)
-    {
-        private readonly ref double lower = ref lower;
-        private readonly ref double draws = ref draws;
-        private readonly ref double moves = ref moves;
-
-        /// <summary>Does as many whole strips as fit from a column on, and returns the first column left.</summary>
-        public int Panels<TStrip>(int rows, int column)
-            where TStrip : struct, IStrip<TStrip>
-        {
-            for (; column + TStrip.Width <= width; column += TStrip.Width)
-            {
-                int i = 0;
-                for (; i + 4 <= rows; i += 4)
-                    FourRows<TStrip>(i, column);
-                for (; i < rows; i++)
-                    OneRow<TStrip>(i, column);
-            }
-
-            return column;
-        }
-
-        private void FourRows<TStrip>(int row, int column)
-            where TStrip : struct, IStrip<TStrip>
-        {
-            ref double l0 = ref Unsafe.Add(ref lower, (nint)row * rank);
-            ref double l1 = ref Unsafe.Add(ref l0, rank);
-            ref double l2 = ref Unsafe.Add(ref l1, rank);
-            ref double l3 = ref Unsafe.Add(ref l2, rank);
-            ref double z = ref Unsafe.Add(ref draws, column);
-            TStrip sum0 = default, sum1 = default, sum2 = default, sum3 = default;
-            nint common = Math.Min(row + 1, rank);
-            nint j = 0;
-            for (; j < common; j++)
-            {
-                TStrip strip = TStrip.Load(ref z);
-                sum0 = strip.AddTo(sum0, Unsafe.Add(ref l0, j));
-                sum1 = strip.AddTo(sum1, Unsafe.Add(ref l1, j));
-                sum2 = strip.AddTo(sum2, Unsafe.Add(ref l2, j));
-                sum3 = strip.AddTo(sum3, Unsafe.Add(ref l3, j));
-                z = ref Unsafe.Add(ref z, width);
-            }
-
-            // The corner on the diagonal: one row fewer at each step.
-            if (j < rank)
-            {
-                TStrip strip = TStrip.Load(ref z);
-                sum1 = strip.AddTo(sum1, Unsafe.Add(ref l1, j));
-                sum2 = strip.AddTo(sum2, Unsafe.Add(ref l2, j));
-                sum3 = strip.AddTo(sum3, Unsafe.Add(ref l3, j));
-            }
-
-            if (++j < rank)
-            {
-                TStrip strip = TStrip.Load(ref Unsafe.Add(ref z, width));
-                sum2 = strip.AddTo(sum2, Unsafe.Add(ref l2, j));
-                sum3 = strip.AddTo(sum3, Unsafe.Add(ref l3, j));
-            }
-
-            if (++j < rank)
-                sum3 = TStrip.Load(ref Unsafe.Add(ref z, 2 * (nint)width)).AddTo(sum3, Unsafe.Add(ref l3, j));
-
-            ref double x = ref Unsafe.Add(ref moves, ((nint)row * width) + column);
-            sum0.Store(ref x);
-            sum1.Store(ref Unsafe.Add(ref x, width));
-            sum2.Store(ref Unsafe.Add(ref x, 2 * (nint)width));
-            sum3.Store(ref Unsafe.Add(ref x, 3 * (nint)width));
-        }
-
-        private void OneRow<TStrip>(int row, int column)
-            where TStrip : struct, IStrip<TStrip>
-        {
-            ref double l = ref Unsafe.Add(ref lower, (nint)row * rank);
-            ref double z = ref Unsafe.Add(ref draws, column);
-            TStrip sum = default;
-            for (nint j = 0, count = Math.Min(row + 1, rank); j < count; j++)
-            {
-                sum = TStrip.Load(ref z).AddTo(sum, Unsafe.Add(ref l, j));
-                z = ref Unsafe.Add(ref z, width);
-            }
-
-            sum.Store(ref Unsafe.Add(ref moves, ((nint)row * width) + column));
-        }
     }
 }

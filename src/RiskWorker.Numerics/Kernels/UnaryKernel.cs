@@ -11,6 +11,7 @@ public static class UnaryKernel
     /// <param name="source">Arguments.</param>
     /// <param name="destination">At least as long as <paramref name="source"/>; may be the same memory, and may not overlap it otherwise.</param>
     /// <exception cref="ArgumentException">The destination is too short or overlaps the source in part.</exception>
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     public static void Apply<TKernel>(ReadOnlySpan<double> source, Span<double> destination)
         where TKernel : struct, IUnaryKernel
     {

@@ -50,6 +50,7 @@ public static class UniformDraws
             FillPair<PortableWideProduct>(stream, firstScenario, pair, first, second);
     }
 
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     internal static void FillPair<TProduct>(
         DrawStream stream, ulong firstScenario, uint pair, Span<double> first, Span<double> second)
         where TProduct : struct, IWideProduct
