@@ -50,9 +50,10 @@ internal sealed class DistributionPainter(DistributionChart chart, Typesetter ty
     {
         Position = centre,
         Value = Share(count),
-        Size = chart.BinWidth * 0.92,
+        Size = chart.BinWidth,
         FillColor = PlotFrame.Of(color),
-        LineWidth = 0,
+        LineWidth = 0.25f,
+        LineColor = PlotFrame.Of(Palette.Paper),
     };
 
     private void Ends(double low, double high)

@@ -11,13 +11,13 @@ namespace RiskWorker.Reporting.Charts;
 internal sealed class MeasurePainter(MeasureChart chart, Typesetter typesetter)
 {
     private const float LongestName = 170;
-    private readonly PlotFrame frame = new(typesetter);
+    private readonly PlotFrame frame = new(typesetter, gridAcross: false);
 
     public Action<SKCanvas, SKPoint> Paint(SKSize size)
     {
         var values = chart.Rows.SelectMany(row => (double?[])[row.Value, row.Low, row.High, row.Limit]).OfType<double>().Append(0).ToList();
         var (least, most) = (values.Min(), Math.Max(values.Max(), values.Min() + 1e-6));
-        var (low, high) = (least < 0 ? least - ((most - least) * 0.04) : 0, most + ((most - least) * 0.04));
+        var (low, high) = (least < 0 ? least - ((most - least) * 0.04) : 0, most + ((most - least) * 0.16));
         var scale = MoneyScale.For(Math.Max(Math.Abs(least), most), chart.Currency);
         frame.Bottom(low, high, AxisTicks.Between(low, high, 7, scale.Divisor), $"{chart.Axis}, {scale.Unit}");
         var names = chart.Rows.Select(row => typesetter.Cut(row.Name, PlotFrame.TickStyle, LongestName)).ToArray();
@@ -34,7 +34,7 @@ internal sealed class MeasurePainter(MeasureChart chart, Typesetter typesetter)
             frame.Line(low, y, high, y, Palette.Of(row.Mark), 1.6f);
         if (row.Limit is { } limit)
             frame.Line(limit, y - 0.36, limit, y + 0.36, Palette.Ink, 1.1f);
-        frame.Plot.Add.Marker(row.Value, y, ShapeOf(row.Mark), 5, PlotFrame.Of(Palette.Of(row.Mark)));
+        frame.Plot.Add.Marker(row.Value, y, ShapeOf(row.Mark), 4.5f, PlotFrame.Of(Palette.Of(row.Mark)));
         var right = Math.Max(row.Value, row.High ?? row.Value);
         if (row.Limit is { } mark && mark >= row.Value)
             right = Math.Max(right, mark);

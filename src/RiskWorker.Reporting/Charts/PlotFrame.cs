@@ -14,7 +14,9 @@ internal sealed class PlotFrame
     public static readonly TextStyle TickStyle = TextStyle.Unit with { Size = TickSize };
     private readonly Typesetter typesetter;
 
-    public PlotFrame(Typesetter typesetter)
+    /// <param name="typesetter">Measures words and checks their glyphs.</param>
+    /// <param name="gridAcross">Whether the grid lines run across, at the vertical axis's ticks, or else upright.</param>
+    public PlotFrame(Typesetter typesetter, bool gridAcross = true)
     {
         EmbeddedFontResolver.Ensure();
         this.typesetter = typesetter;
@@ -24,7 +26,9 @@ internal sealed class PlotFrame
         Plot.Axes.Frame(false);
 
         // On a page the canvas holds more than the chart: it must not be cleared.
-        Plot.RenderManager.RenderActions.RemoveAll(action => action is ScottPlot.RenderActions.ClearCanvas);
+        Plot.RenderManager.RenderActions.RemoveAll(action => action is ScottPlot.Rendering.RenderActions.ClearCanvas);
+        Plot.Grid.XAxisStyle.IsVisible = !gridAcross;
+        Plot.Grid.YAxisStyle.IsVisible = gridAcross;
         Plot.Grid.MajorLineColor = Of(Palette.Rule);
         Plot.Grid.MajorLineWidth = 0.4f;
         foreach (var axis in Plot.Axes.GetAxes())
@@ -47,10 +51,7 @@ internal sealed class PlotFrame
     public void Text(string text, double x, double y, Alignment alignment, SKColor color, float dx = 0, float dy = 0, bool strong = false)
     {
         var label = Plot.Add.Text(typesetter.Clean(text), x, y);
-        label.LabelFontName = Faces.Family;
-        label.LabelFontSize = TickSize;
-        label.LabelBold = strong;
-        label.LabelFontColor = Of(color);
+        Set(label.LabelStyle, color, strong);
         label.LabelAlignment = alignment;
         (label.OffsetX, label.OffsetY) = (dx, dy);
     }
@@ -83,9 +84,18 @@ internal sealed class PlotFrame
         axis.FrameLineStyle.Width = 0;
         axis.MajorTickStyle.Length = 0;
         axis.MinorTickStyle.Length = 0;
-        axis.TickLabelStyle.FontName = Faces.Family;
-        axis.TickLabelStyle.FontSize = TickSize;
-        axis.TickLabelStyle.ForeColor = Of(Palette.Grey);
+        Set(axis.TickLabelStyle, Palette.Grey, strong: false);
+        Set(axis.Label, Palette.Grey, strong: false);
+    }
+
+    // Without subpixel positions letters are set on whole points, and words look badly spaced.
+    private static void Set(LabelStyle style, SKColor color, bool strong)
+    {
+        style.FontName = Faces.Family;
+        style.FontSize = TickSize;
+        style.Bold = strong;
+        style.ForeColor = Of(color);
+        style.SubpixelText = true;
     }
 
     private void Axis(IAxis axis, double low, double high, (double[] Positions, string[] Labels) ticks, string label)
@@ -93,9 +103,5 @@ internal sealed class PlotFrame
         (axis.Min, axis.Max) = (low, high);
         axis.TickGenerator = new NumericManual(ticks.Positions, ticks.Labels);
         axis.Label.Text = typesetter.Clean(label);
-        axis.Label.FontName = Faces.Family;
-        axis.Label.FontSize = TickSize;
-        axis.Label.Bold = false;
-        axis.Label.ForeColor = Of(Palette.Grey);
     }
 }

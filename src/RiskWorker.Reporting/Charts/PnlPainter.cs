@@ -9,29 +9,31 @@ using Palette = RiskWorker.Reporting.Drawing.Palette;
 namespace RiskWorker.Reporting.Charts;
 
 /// <summary>
-/// Draws a <see cref="PnlChart"/>: a stem a day, the band down to -VaR tinted below its line, exceptions as red diamonds, gap
-/// days as grey columns with a cross.
+/// Draws a <see cref="PnlChart"/>: a stem a day, the band down to -VaR tinted below its line, exceptions as red diamonds, days
+/// without P&amp;L or VaR as grey columns below a cross.
 /// </summary>
 internal sealed class PnlPainter(PnlChart chart, Typesetter typesetter)
 {
+    private const float Left = 48;
+    private const float Right = 4;
     private readonly PlotFrame frame = new(typesetter);
 
     public Action<SKCanvas, SKPoint> Paint(SKSize size)
     {
         var (low, high) = Range(chart);
         var scale = MoneyScale.For(Math.Max(Math.Abs(low), Math.Abs(high)), chart.Currency);
-        var last = Math.Max(chart.Days.Count, 1) - 0.5;
-        frame.Bottom(-0.5, last, Months(), "");
+        var last = Math.Max(chart.Days.Count, 1) + 0.5;
+        var name = "\u2212" + chart.VarName;
+        frame.Bottom(-1.5, last + Room(name, last, size.Width), Months(), "");
         frame.Left(low, high, AxisTicks.Between(low, high, 5, scale.Divisor), $"P&L, {scale.Unit}");
         Gaps(low, high);
         Band();
         Stems();
-        frame.Line(-0.5, 0, last, 0, Palette.Grey, 0.6f);
+        frame.Line(-1.5, 0, last, 0, Palette.Grey, 0.6f);
         Exceptions();
         if (chart.Days.LastOrDefault(day => day.Var is not null)?.Var is { } var)
-            frame.Text("−" + chart.VarName, last, -var, Alignment.MiddleLeft, Palette.Accent, dx: 4, strong: true);
-        var words = typesetter.Width(typesetter.Clean("−" + chart.VarName), PlotFrame.TickStyle with { Strong = true });
-        return frame.Draw(size, new PixelPadding(48, words + 12, 18, 6));
+            frame.Text(name, last, -var, Alignment.MiddleLeft, Palette.Accent, dx: 2, strong: true);
+        return frame.Draw(size, new PixelPadding(Left, Right, 18, 6));
     }
 
     /// <summary>The axis that holds all days, with some air; charts read together take the wider of theirs.</summary>
@@ -41,6 +43,13 @@ internal sealed class PnlPainter(PnlChart chart, Typesetter typesetter)
         var (least, most) = (values.Min(), values.Max());
         var air = Math.Max((most - least) * 0.07, 1e-6);
         return (chart.Lowest ?? (least - air), chart.Highest ?? (most + air));
+    }
+
+    // Words beside the data would be clipped, so the axis runs on below them: days such that the words fit.
+    private double Room(string words, double last, float width)
+    {
+        var text = typesetter.Width(typesetter.Clean(words), PlotFrame.TickStyle with { Strong = true }) + 5;
+        return (last + 1.5) * text / (width - Left - Right - text);
     }
 
     private (double[] Positions, string[] Labels) Months()
@@ -58,13 +67,15 @@ internal sealed class PnlPainter(PnlChart chart, Typesetter typesetter)
     {
         for (var i = 0; i < chart.Days.Count; i++)
         {
-            if (chart.Days[i] is { Pnl: not null, Var: not null })
+            var first = i;
+            while (i < chart.Days.Count && chart.Days[i] is not { Pnl: not null, Var: not null })
+                i++;
+            if (i == first)
                 continue;
 
-            var column = frame.Plot.Add.Rectangle(i - 0.5, i + 0.5, low, high);
-            column.FillColor = PlotFrame.Of(Palette.Track);
-            column.LineWidth = 0;
-            var cross = frame.Plot.Add.Marker(i, 0, MarkerShape.Eks, 4, PlotFrame.Of(Palette.Ink));
+            var column = frame.Plot.Add.Rectangle(first - 0.5, i - 0.5, low, high);
+            (column.FillColor, column.LineWidth) = (PlotFrame.Of(Palette.Track), 0);
+            var cross = frame.Plot.Add.Marker((first + i - 1) / 2.0, high - ((high - low) * 0.03), MarkerShape.Eks, 3.5f, PlotFrame.Of(Palette.Ink));
             cross.LineWidth = 0.8f;
         }
     }
@@ -110,8 +121,8 @@ internal sealed class PnlPainter(PnlChart chart, Typesetter typesetter)
     {
         for (var i = 0; i < chart.Days.Count; i++)
         {
-            if (chart.Days[i] is { Exception: true, Pnl: { } pnl, Var: not null })
-                frame.Plot.Add.Marker(i, pnl, MarkerShape.FilledDiamond, 6.5f, PlotFrame.Of(Palette.Bad));
+            if (chart.Days[i].Exception)
+                frame.Plot.Add.Marker(i, chart.Days[i].Pnl ?? 0, MarkerShape.FilledDiamond, 6.5f, PlotFrame.Of(Palette.Bad));
         }
     }
 }

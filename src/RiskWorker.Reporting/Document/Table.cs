@@ -58,11 +58,15 @@ public abstract record Cell
 
 /// <summary>Text that wraps in its column.</summary>
 /// <param name="Text">The words or the figure.</param>
+/// <param name="Below">What stands below it, small and grey: an interval, a date; empty for none.</param>
 /// <param name="Level">How many steps it is indented: the depth in a tree.</param>
-public sealed record TextCell(RichText Text, int Level = 0) : Cell;
+public sealed record TextCell(RichText Text, string Below = "", int Level = 0) : Cell;
 
 /// <summary>A status: a drawn shape and its word.</summary>
-public sealed record StatusCell(StatusMark Mark, string Word) : Cell;
+/// <param name="Mark">The shape.</param>
+/// <param name="Word">The word.</param>
+/// <param name="Below">What stands below it, small and grey; empty for none.</param>
+public sealed record StatusCell(StatusMark Mark, string Word, string Below = "") : Cell;
 
 /// <summary>A bar of utilisation with marks at 100% and at the warning level, and its figure beside it.</summary>
 /// <param name="Used">The part used; 1 is the limit. Negative and not-a-number draw no bar.</param>

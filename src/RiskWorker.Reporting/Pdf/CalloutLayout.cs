@@ -16,7 +16,7 @@ internal static class CalloutLayout
         foreach (var paragraph in callout.Body)
             Add(paragraph, TextStyle.Body, 3);
 
-        return lines.Select((one, i) => Piece(i));
+        return lines.Select((_, i) => Piece(i)).Append(new Fragment(0, (_, _) => { }) { SpaceBefore = 5 });
 
         void Add(RichText text, TextStyle style, float gap)
         {
@@ -39,7 +39,7 @@ internal static class CalloutLayout
             void Draw(SKCanvas canvas, SKPoint at)
             {
                 using var rule = new SKPaint { Color = Palette.Of(callout.Mark) };
-                canvas.DrawRect(at.X, at.Y, 2, gap + style.Leading, rule);
+                canvas.DrawRect(at.X, at.Y, 2, gap + style.Leading + (i < lines.Count - 1 ? 0.5f : 0), rule);
                 if (i == 0)
                     StatusShape.Draw(canvas, callout.Mark, at.X + 12.5f, at.Y + (style.Leading / 2), 9);
                 typesetter.Draw(canvas, line, style, at.X + Inset, at.Y + gap);
