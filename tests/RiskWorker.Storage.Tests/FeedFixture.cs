@@ -55,6 +55,8 @@ internal sealed class FeedFixture : IDisposable
 
     public FeedOutcome Load(RiskStore store, int minute = 0) => FeedLoader.Load(Folder, store, Now.AddMinutes(minute));
 
+    public static FeedOutcome Load(string folder, RiskStore store) => FeedLoader.Load(folder, store, Now);
+
     /// <summary>Loads into a store that is closed again, so that its bytes lie in one file.</summary>
     public FeedOutcome Load()
     {

@@ -75,7 +75,13 @@ internal static class RunRecords
         Hypothetical = profitFrom is { } from ? new(from, asOf, [new("ALL", -1.1), new("FX", 2.2)]) : null,
         Holdings = new()
         {
-            Positions = 12, Priced = 10, GrossValue = 1e7 / 3, PreviousGrossValue = 0.1 + 0.2, Reconciled = 5, Breaks = [new("EQ", "ALPHA-S", "EUR", 1.1, 1.2)], BreakTotal = 0.1,
+            Positions = 12,
+            Priced = 10,
+            GrossValue = 1e7 / 3,
+            PreviousGrossValue = 0.1 + 0.2,
+            Reconciled = 5,
+            Breaks = [new("EQ", "ALPHA-S", "EUR", 1.1, 1.2)],
+            BreakTotal = 0.1,
             Unpriced = [new("EQ", "BOND-1", "bond", 100, null, "no pricing yet")],
         },
         Adjustments = [new("ALPHA", asOf.AddDays(-100), 0.5, "2 for 1")],
@@ -83,7 +89,14 @@ internal static class RunRecords
 
     private static NodeResult Node(string book, string? parent, int depth, string currency, double var) => new()
     {
-        Book = book, Name = "The " + book, Parent = parent, Depth = depth, Currency = currency, Value = -0.0, ValueRoot = 5e-324, Positions = 3,
+        Book = book,
+        Name = "The " + book,
+        Parent = parent,
+        Depth = depth,
+        Currency = currency,
+        Value = -0.0,
+        ValueRoot = 5e-324,
+        Positions = 3,
         Measures = [Measure(OneDayVar, var), Measure(s_tenDayEs, var * 2)],
         Distributions =
         [

@@ -1,6 +1,5 @@
 using RiskWorker.Domain.Instruments;
 using RiskWorker.Domain.Runs;
-using RiskWorker.Storage.Feed;
 using RiskWorker.Storage.Sqlite;
 
 namespace RiskWorker.Storage.Tests.Feed;
@@ -13,7 +12,7 @@ public sealed class RealFeedTests
         using var fixture = new FeedFixture(withFiles: false);
         using var store = fixture.Open();
 
-        var outcome = FeedLoader.Load(Path.Combine(AppContext.BaseDirectory, "Data", "real"), store, FeedFixture.Now);
+        var outcome = FeedFixture.Load(Path.Combine(AppContext.BaseDirectory, "Data", "real"), store);
 
         Assert.Empty(outcome.Faults);
         Assert.Empty(outcome.Warnings);

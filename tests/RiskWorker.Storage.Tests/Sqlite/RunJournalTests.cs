@@ -1,7 +1,3 @@
-using System.Reflection;
-using System.Text.Json;
-using RiskWorker.Domain.Limits;
-using RiskWorker.Domain.Runs;
 using RiskWorker.Storage.Sqlite;
 
 namespace RiskWorker.Storage.Tests.Sqlite;
