@@ -26,13 +26,13 @@ internal sealed class DistributionPainter(DistributionChart chart, Typesetter ty
         var peak = Share(chart.Counts.Append(chart.Below).Append(chart.Above).Max());
         var top = Math.Max(peak, 1e-9) * (1.06 + (RowShare * chart.Marks.Count));
         var scale = MoneyScale.For(Math.Max(Math.Abs(low), Math.Abs(high)), chart.Currency);
-        frame.Bottom(low, high, AxisTicks.Between(low, high, 9, scale.Divisor), $"P&L, {scale.Unit}");
-        frame.Left(0, top, AxisTicks.Between(0, peak, 4, 0.01), "share of scenarios, %");
+        var left = frame.Left(0, top, AxisTicks.Between(0, Math.Max(peak, 1e-6), 4, 0.01), "share of scenarios, %");
+        var right = frame.Bottom(low, high, frame.TicksAcross(low, high, size.Width - left, scale.Divisor), $"P&L, {scale.Unit}");
         Bars();
         Ends(low, high);
         frame.Line(low, 0, high, 0, Palette.Grey, 0.6f);
-        Marks(low, high, top, scale, size.Width);
-        return frame.Draw(size, new PixelPadding(40, 8, 30, 6));
+        Marks(low, high, top, scale, size.Width - left - right);
+        return frame.Draw(size, new PixelPadding(left, right, 30, 6));
     }
 
     private double Share(long count) => count / total;
@@ -82,7 +82,7 @@ internal sealed class DistributionPainter(DistributionChart chart, Typesetter ty
             var x = -marks[i].Loss;
             var y = top * (1 - (RowShare * (i + 0.4)));
             var text = $"{marks[i].Name}: {scale.Text(marks[i].Loss)}";
-            var room = (x - low) / (high - low) * (width - 48);
+            var room = (x - low) / (high - low) * width;
             var left = room > typesetter.Width(typesetter.Clean(text), PlotFrame.TickStyle with { Strong = true }) + 8;
             frame.Line(x, 0, x, y, Palette.Ink, 0.9f, i == 0 ? null : LinePattern.Dashed);
             frame.Text(text, x, y, left ? Alignment.MiddleRight : Alignment.MiddleLeft, Palette.Ink, dx: left ? -4 : 4, strong: true);

@@ -39,13 +39,30 @@ internal sealed class PlotFrame
 
     public static Color Of(SKColor color) => Color.FromSKColor(color);
 
-    /// <summary>Sets the limits and ticks of the horizontal axis and its label.</summary>
-    public void Bottom(double low, double high, (double[] Positions, string[] Labels) ticks, string label) =>
+    /// <summary>Sets the horizontal axis and returns the room that its last tick's words need beyond the end of the axis.</summary>
+    public float Bottom(double low, double high, (double[] Positions, string[] Labels) ticks, string label)
+    {
         Axis(Plot.Axes.Bottom, low, high, ticks, label);
+        return (Widest(ticks.Labels) / 2) + 1;
+    }
 
-    /// <summary>Sets the limits and ticks of the vertical axis; its label belongs into the chart's title or first tick.</summary>
-    public void Left(double low, double high, (double[] Positions, string[] Labels) ticks, string label) =>
+    /// <summary>Sets the vertical axis and returns the room that its ticks and its label need at its left.</summary>
+    public float Left(double low, double high, (double[] Positions, string[] Labels) ticks, string label)
+    {
         Axis(Plot.Axes.Left, low, high, ticks, label);
+        return Widest(ticks.Labels) + 8 + (label.Length > 0 ? 14 : 0);
+    }
+
+    /// <summary>Ticks for an axis of a length in points, so few that their words stay apart.</summary>
+    public (double[] Positions, string[] Labels) TicksAcross(double low, double high, float length, double unit)
+    {
+        for (var most = 9; ; most--)
+        {
+            var ticks = AxisTicks.Between(low, high, most, unit);
+            if (most == 1 || (Widest(ticks.Labels) + 14) * ticks.Labels.Length <= length)
+                return ticks;
+        }
+    }
 
     /// <summary>Words at a place in the plot's coordinates, moved by points.</summary>
     public void Text(string text, double x, double y, Alignment alignment, SKColor color, float dx = 0, float dy = 0, bool strong = false)
@@ -78,6 +95,9 @@ internal sealed class PlotFrame
             canvas.Restore();
         };
     }
+
+    private float Widest(string[] labels) =>
+        labels.Select(label => typesetter.Width(typesetter.Clean(label), TickStyle)).DefaultIfEmpty(0).Max();
 
     private static void Quiet(IAxis axis)
     {

@@ -14,18 +14,17 @@ namespace RiskWorker.Reporting.Charts;
 /// </summary>
 internal sealed class PnlPainter(PnlChart chart, Typesetter typesetter)
 {
-    private const float Left = 48;
     private const float Right = 4;
     private readonly PlotFrame frame = new(typesetter);
 
     public Action<SKCanvas, SKPoint> Paint(SKSize size)
     {
-        var (low, high) = Range(chart);
+        var (low, high) = PnlRange.Of(chart);
         var scale = MoneyScale.For(Math.Max(Math.Abs(low), Math.Abs(high)), chart.Currency);
         var last = Math.Max(chart.Days.Count, 1) + 0.5;
         var name = "\u2212" + chart.VarName;
-        frame.Bottom(-1.5, last + Room(name, last, size.Width), Months(), "");
-        frame.Left(low, high, AxisTicks.Between(low, high, 5, scale.Divisor), $"P&L, {scale.Unit}");
+        var left = frame.Left(low, high, AxisTicks.Between(low, high, 5, scale.Divisor), $"P&L, {scale.Unit}");
+        frame.Bottom(-1.5, last + Room(name, last, size.Width - left - Right), Months(), "");
         Gaps(low, high);
         Band();
         Stems();
@@ -33,23 +32,14 @@ internal sealed class PnlPainter(PnlChart chart, Typesetter typesetter)
         Exceptions();
         if (chart.Days.LastOrDefault(day => day.Var is not null)?.Var is { } var)
             frame.Text(name, last, -var, Alignment.MiddleLeft, Palette.Accent, dx: 2, strong: true);
-        return frame.Draw(size, new PixelPadding(Left, Right, 18, 6));
-    }
-
-    /// <summary>The axis that holds all days, with some air; charts read together take the wider of theirs.</summary>
-    public static (double Low, double High) Range(PnlChart chart)
-    {
-        var values = chart.Days.SelectMany(day => (double?[])[day.Pnl, -day.Var, 0]).OfType<double>().DefaultIfEmpty(0).ToList();
-        var (least, most) = (values.Min(), values.Max());
-        var air = Math.Max((most - least) * 0.07, 1e-6);
-        return (chart.Lowest ?? (least - air), chart.Highest ?? (most + air));
+        return frame.Draw(size, new PixelPadding(left, Right, 18, 6));
     }
 
     // Words beside the data would be clipped, so the axis runs on below them: days such that the words fit.
     private double Room(string words, double last, float width)
     {
         var text = typesetter.Width(typesetter.Clean(words), PlotFrame.TickStyle with { Strong = true }) + 5;
-        return (last + 1.5) * text / (width - Left - Right - text);
+        return (last + 1.5) * text / (width - text);
     }
 
     private (double[] Positions, string[] Labels) Months()

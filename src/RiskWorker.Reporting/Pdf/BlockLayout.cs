@@ -7,6 +7,9 @@ namespace RiskWorker.Reporting.Pdf;
 /// <summary>Turns blocks into fragments of a width: the one place that knows every kind of block.</summary>
 internal sealed class BlockLayout(Typesetter typesetter)
 {
+    // What follows a heading belongs to it: the block's own white space gives way.
+    private const float BelowHeading = 3;
+
     public IReadOnlyList<Fragment> Layout(ReportDocument document)
     {
         var fragments = new List<Fragment>();
@@ -24,8 +27,19 @@ internal sealed class BlockLayout(Typesetter typesetter)
         return fragments;
     }
 
-    private IEnumerable<Fragment> Layout(IReadOnlyList<Block> blocks, float width) =>
-        blocks.SelectMany(block => Layout(block, width));
+    private List<Fragment> Layout(IReadOnlyList<Block> blocks, float width)
+    {
+        var fragments = new List<Fragment>();
+        for (var i = 0; i < blocks.Count; i++)
+        {
+            var first = fragments.Count;
+            fragments.AddRange(Layout(blocks[i], width));
+            if (i > 0 && blocks[i - 1] is Heading && blocks[i] is not (Callout or KeyFigures) && first < fragments.Count)
+                fragments[first] = fragments[first] with { SpaceBefore = Math.Min(fragments[first].SpaceBefore, BelowHeading) };
+        }
+
+        return fragments;
+    }
 
     private IEnumerable<Fragment> Layout(Block block, float width) => block switch
     {
@@ -46,8 +60,8 @@ internal sealed class BlockLayout(Typesetter typesetter)
     {
         const float gutter = 26;
         var leftWidth = (float)((width - gutter) * columns.LeftShare);
-        var left = Layout(columns.Left, leftWidth).ToList();
-        var right = Layout(columns.Right, width - gutter - leftWidth).ToList();
+        var left = Layout(columns.Left, leftWidth);
+        var right = Layout(columns.Right, width - gutter - leftWidth);
         var height = Math.Max(Height(left), Height(right));
         if (height > PageGeometry.BodyHeight)
             return Layout(columns.Left, width).Concat(Layout(columns.Right, width));

@@ -78,25 +78,36 @@ internal sealed class TableLayout
 
     private IEnumerable<Fragment> Group(RowGroup group, Fragment head)
     {
-        var fragments = new List<Fragment>();
+        var fragments = group.Rows.SelectMany(Pieces).ToList();
+        var repeat = head;
         if (group.Title is { } title)
-            fragments.AddRange(GroupTitle(title));
-        fragments.AddRange(group.Rows.SelectMany(Pieces));
+        {
+            var line = GroupTitle(title);
+            repeat = Stack(head, line);
+            fragments.Insert(0, line);
+        }
 
         // A loose table keeps its first two rows with its head and its last two with each other.
         var whole = fragments.Sum(one => one.Extent) <= LargestGroup;
         return fragments.Select((one, i) => one with
         {
-            Repeat = head,
+            Repeat = i == 0 ? head : repeat,
             KeepWithNext = i < fragments.Count - 1 && (whole || i == 0 || i == fragments.Count - 2),
         });
     }
 
-    private IEnumerable<Fragment> GroupTitle(string title)
+    // The title may hold the unit of the figures, so a page that goes on with the group repeats it too.
+    private static Fragment Stack(Fragment head, Fragment title) => new(head.Height + title.Height, (canvas, at) =>
+    {
+        head.Draw(canvas, at);
+        title.Draw(canvas, new SKPoint(at.X, at.Y + head.Height));
+    });
+
+    private Fragment GroupTitle(string title)
     {
         var style = TextStyle.Cell with { Strong = true };
         var lines = typesetter.Break(title, style, width);
-        yield return new Fragment((lines.Count * style.Leading) + (2 * Pad), (canvas, at) =>
+        return new Fragment((lines.Count * style.Leading) + (2 * Pad), (canvas, at) =>
             typesetter.Draw(canvas, lines, style, new(at.X, at.Y + Pad), width, Alignment.Left))
         {
             SpaceBefore = 7,

@@ -11,8 +11,8 @@ internal static class TextLayout
         var (style, space, below) = heading.Level switch
         {
             1 => (TextStyle.Title, 0f, 4f),
-            2 => (TextStyle.Section, 24f, 5f),
-            _ => (TextStyle.Subsection, 15f, 3f),
+            2 => (TextStyle.Section, 24f, 4f),
+            _ => (TextStyle.Subsection, 15f, 1f),
         };
         var lines = Lines(typesetter, heading.Text, style, width, space, keepAll: true);
         if (heading.Lead is { } lead)
