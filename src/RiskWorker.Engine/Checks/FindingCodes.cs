@@ -206,15 +206,15 @@ public static class FindingCodes
         "An instrument has a term that its kind does not use",
         "correct the kind or the term in instruments.csv");
 
+    /// <summary>A limit relative to a value that is not positive.</summary>
+    public static readonly FindingCode LimitUndecidable = new("limit-undecidable", Warning,
+        "A limit is relative to a value or measure that is not positive, so no number of scenarios decides it",
+        "give the limit an amount in money");
+
     /// <summary>A rate that was left out; found when the feed is loaded.</summary>
     public static readonly FindingCode AssumedZeroRate = new("assumed-zero-rate", Warning,
         "A forward or an option has no curve or no carry, which counts as 0",
         "write the rate, 0 where it is meant");
-
-    /// <summary>A limit that no sample can decide.</summary>
-    public static readonly FindingCode LimitUndecidable = new("limit-undecidable", Warning,
-        "A limit relative to a book's value, or to another book's measure, that is not positive",
-        "give the limit an amount in money");
 
     /// <summary>Every code, in the order of reports.</summary>
     public static IReadOnlyList<FindingCode> All { get; } =

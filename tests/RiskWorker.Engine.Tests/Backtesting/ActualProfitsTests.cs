@@ -1,7 +1,8 @@
 using RiskWorker.Domain.Books;
 using RiskWorker.Domain.Market;
 using RiskWorker.Engine.Backtesting;
-using static RiskWorker.Engine.Tests.SnapshotBuilder;
+using RiskWorker.Engine.Tests.Checks;
+using static RiskWorker.Engine.Tests.Checks.FridaySnapshot;
 
 namespace RiskWorker.Engine.Tests.Backtesting;
 
@@ -10,11 +11,11 @@ public sealed class ActualProfitsTests
     private static readonly DateOnly s_thursday = Friday.AddDays(-1);
 
     /// <summary>FIRM in EUR over NY in USD (over A and B in USD) and LN in GBP; a dollar at 0.80 and then 0.84 EUR, a pound at 1.20.</summary>
-    private static SnapshotBuilder Firm() => new SnapshotBuilder()
+    private static FridaySnapshot Firm() => new FridaySnapshot()
         .Book("FIRM", null).Book("NY", "FIRM", "USD").Book("A", "NY", "USD").Book("B", "NY", "USD").Book("LN", "FIRM", "GBP")
         .Factor("USD", FactorClass.Fx, currency: "USD").Prices("USD", 0.8, 0.84).Factor("GBP", FactorClass.Fx, currency: "GBP").Prices("GBP", 1.2, 1.2);
 
-    private static (ActualProfits Profits, BookTree Tree) Read(SnapshotBuilder builder)
+    private static (ActualProfits Profits, BookTree Tree) Read(FridaySnapshot builder)
     {
         var snapshot = builder.Build();
         var tree = BookTree.Build(snapshot.Books).Tree!;
@@ -35,7 +36,7 @@ public sealed class ActualProfitsTests
     [Fact]
     public void Of_a_node_converts_from_child_to_parent_where_neither_reports()
     {
-        var (profits, tree) = Read(new SnapshotBuilder().Book("FIRM", null).Book("NY", "FIRM", "USD").Book("LN", "NY", "GBP")
+        var (profits, tree) = Read(new FridaySnapshot().Book("FIRM", null).Book("NY", "FIRM", "USD").Book("LN", "NY", "GBP")
             .Factor("USD", FactorClass.Fx, currency: "USD").Prices("USD", 0.8).Factor("GBP", FactorClass.Fx, currency: "GBP").Prices("GBP", 1.2).Profit(Friday, "LN", 10));
 
         Assert.Equal(15, profits.Of(tree.IndexOf("NY"), Friday)!.Value, 1e-12);

@@ -1,7 +1,8 @@
 using RiskWorker.Domain.Books;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Engine.Backtesting;
-using static RiskWorker.Engine.Tests.SnapshotBuilder;
+using RiskWorker.Engine.Tests.Checks;
+using static RiskWorker.Engine.Tests.Checks.FridaySnapshot;
 
 namespace RiskWorker.Engine.Tests.Backtesting;
 
@@ -13,9 +14,9 @@ public sealed class ExceptionCountTests
         [new(MeasureKind.Var, s_99, new(1)), new(MeasureKind.Es, s_95, new(1)), new(MeasureKind.Var, s_95, new(10))];
 
     /// <summary>One factor on <paramref name="days"/> weekdays, a VaR of 100 of FIRM recorded on each but the last.</summary>
-    private static SnapshotBuilder Runs(int days, Func<int, double>? hypothetical = null, Func<int, bool>? isRun = null)
+    private static FridaySnapshot Runs(int days, Func<int, double>? hypothetical = null, Func<int, bool>? isRun = null)
     {
-        var builder = new SnapshotBuilder().Factor("A").Prices("A", Wave(days));
+        var builder = new FridaySnapshot().Factor("A").Prices("A", Wave(days));
         var dates = Weekdays(Friday, days);
         for (var i = 0; i < days - 1; i++)
         {
@@ -30,9 +31,9 @@ public sealed class ExceptionCountTests
 
     private static HypotheticalProfit Today(double amount, int daysBack = 1) => new(Weekdays(Friday, daysBack + 1)[0], Friday, [new("FIRM", amount)]);
 
-    private static BacktestResult Count(SnapshotBuilder builder, HypotheticalProfit? today) => Assert.Single(All(builder, s_measures, today));
+    private static BacktestResult Count(FridaySnapshot builder, HypotheticalProfit? today) => Assert.Single(All(builder, s_measures, today));
 
-    private static IReadOnlyList<BacktestResult> All(SnapshotBuilder builder, IEnumerable<MeasureSpec> measures, HypotheticalProfit? today)
+    private static IReadOnlyList<BacktestResult> All(FridaySnapshot builder, IEnumerable<MeasureSpec> measures, HypotheticalProfit? today)
     {
         var snapshot = builder.Build();
         return ExceptionCount.Of(snapshot, BookTree.Build(snapshot.Books).Tree!, measures, today);
@@ -105,7 +106,7 @@ public sealed class ExceptionCountTests
     public void Of_a_book_that_came_later_counts_from_its_own_first_var()
     {
         var dates = Weekdays(Friday, 4);
-        var builder = new SnapshotBuilder().Book("FIRM", null).Book("NEW", "FIRM").Factor("A").Prices("A", Wave(4))
+        var builder = new FridaySnapshot().Book("FIRM", null).Book("NEW", "FIRM").Factor("A").Prices("A", Wave(4))
             .Run(new("r1", "", dates[0], EvidenceKind.Recorded, [new("FIRM", s_99, 1)], null, []))
             .Run(new("r2", "", dates[1], EvidenceKind.Recorded, [new("FIRM", s_99, 1)], null, []))
             .Run(new("r3", "", dates[2], EvidenceKind.Recorded, [new("FIRM", s_99, 1), new("NEW", s_99, 1)], null, []));
@@ -160,7 +161,7 @@ public sealed class ExceptionCountTests
         Assert.Equal(1, Count(Runs(6), null).Hypothetical);
 
         var dates = Weekdays(Friday, 3);
-        var builder = new SnapshotBuilder().Factor("A").Prices("A", Wave(3)).Run(Run(dates[0], 100, null, 0)).Run(Run(dates[1], 100, dates[0].AddDays(-1), 0));
+        var builder = new FridaySnapshot().Factor("A").Prices("A", Wave(3)).Run(Run(dates[0], 100, null, 0)).Run(Run(dates[1], 100, dates[0].AddDays(-1), 0));
         Assert.Null(Count(builder, Today(0)).Series[0].Hypothetical);
     }
 
@@ -169,7 +170,7 @@ public sealed class ExceptionCountTests
     {
         // Prices 100, 101, 100, 101; the second run has no hypothetical profit, the positions of the first close are kept.
         var dates = Weekdays(Friday, 4);
-        var builder = new SnapshotBuilder().Factor("A").Prices("A", Wave(4)).Spot("A-UNIT", "A")
+        var builder = new FridaySnapshot().Factor("A").Prices("A", Wave(4)).Spot("A-UNIT", "A")
             .Run(Run(dates[0], 100, null, 0)).Run(Run(dates[1], 100, null, 0)).Run(Run(dates[2], 100, dates[1], 7))
             .Earlier(dates[0], new Position("FIRM", "A-UNIT", 500)).Earlier(dates[1], new Position("FIRM", "A-UNIT", 1));
 
@@ -181,7 +182,7 @@ public sealed class ExceptionCountTests
     {
         // Observed on Monday, Tuesday, Thursday, Friday, and on the Saturday before; Thursday's VaR is that of Tuesday.
         var dates = Weekdays(Friday, 5);
-        var builder = new SnapshotBuilder().Factor("A").Prices("A", 1, 2, double.NaN, 3, 4).Price("A", dates[0].AddDays(-2), 1)
+        var builder = new FridaySnapshot().Factor("A").Prices("A", 1, 2, double.NaN, 3, 4).Price("A", dates[0].AddDays(-2), 1)
             .Price("GHOST", dates[2], 1).Run(Run(dates[0], 10, null, 0)).Run(Run(dates[1], 20, dates[0], 0)).Run(Run(dates[3], 30, dates[1], 0));
 
         var series = Count(builder, Today(0)).Series;
@@ -194,7 +195,7 @@ public sealed class ExceptionCountTests
     public void Of_backfilled_runs_counts_their_days()
     {
         var dates = Weekdays(Friday, 3);
-        var builder = new SnapshotBuilder().Factor("A").Prices("A", Wave(3))
+        var builder = new FridaySnapshot().Factor("A").Prices("A", Wave(3))
             .Run(Run(dates[0], 100, null, 0, EvidenceKind.Backfilled)).Run(Run(dates[1], 100, dates[0], 0));
 
         Assert.Equal(1, Count(builder, Today(0)).Backfilled);
@@ -203,7 +204,7 @@ public sealed class ExceptionCountTests
     [Fact]
     public void Of_measures_gives_each_node_each_one_day_var_in_order()
     {
-        var builder = new SnapshotBuilder().Book("FIRM", null).Book("X", "FIRM").Factor("A").Prices("A", Wave(3));
+        var builder = new FridaySnapshot().Book("FIRM", null).Book("X", "FIRM").Factor("A").Prices("A", Wave(3));
         var results = All(builder, [.. s_measures, new(MeasureKind.Var, s_95, new(1)), new(MeasureKind.Var, s_99, new(1))], null);
 
         Assert.Equal([("FIRM", s_95), ("FIRM", s_99), ("X", s_95), ("X", s_99)], results.Select(r => (r.Book, r.Confidence)));

@@ -2,7 +2,8 @@ using RiskWorker.Domain.Books;
 using RiskWorker.Domain.Instruments;
 using RiskWorker.Domain.Market;
 using RiskWorker.Engine.Backtesting;
-using static RiskWorker.Engine.Tests.SnapshotBuilder;
+using RiskWorker.Engine.Tests.Checks;
+using static RiskWorker.Engine.Tests.Checks.FridaySnapshot;
 
 namespace RiskWorker.Engine.Tests.Backtesting;
 
@@ -11,14 +12,14 @@ public sealed class HypotheticalProfitsTests
     private static readonly DateOnly s_thursday = Friday.AddDays(-1);
 
     /// <summary>From Thursday to Friday A goes from 100 to 103 EUR, U from 50 to 48 USD, a dollar from 0.80 to 0.84 EUR.</summary>
-    private static SnapshotBuilder Market() => new SnapshotBuilder()
+    private static FridaySnapshot Market() => new FridaySnapshot()
         .Book("FIRM", null).Book("DESK", "FIRM").Book("NY", "FIRM", "USD")
         .Factor("A", currency: "EUR").Prices("A", 100, 103).Factor("U", currency: "USD").Prices("U", 50, 48).Factor("USD", FactorClass.Fx, currency: "USD").Prices("USD", 0.8, 0.84)
         .Spot("A-UNIT", "A").Spot("U-UNIT", "U", "USD")
         .Instrument(new Future("U") { Name = "FUT", Currency = "USD", Multiplier = 10 })
         .Instrument(new Cash { Name = "DOLLAR", Currency = "USD" });
 
-    private static HypotheticalOutcome Outcome(SnapshotBuilder builder, params Position[] held)
+    private static HypotheticalOutcome Outcome(FridaySnapshot builder, params Position[] held)
     {
         var snapshot = builder.Build();
         return new HypotheticalProfits(snapshot, BookTree.Build(snapshot.Books).Tree!).From(new(s_thursday, held), Friday);
@@ -65,7 +66,7 @@ public sealed class HypotheticalProfitsTests
     public void From_a_holding_over_a_split_makes_no_profit_of_it(string instrument, double units)
     {
         // Four for one, and the price goes from 100 to 25.75: 3% up, so 3 EUR on each unit held before.
-        var builder = new SnapshotBuilder().Factor("A").Prices("A", 100, 25.75).Adjustment("A", Friday, 0.25).Spot("A-UNIT", "A")
+        var builder = new FridaySnapshot().Factor("A").Prices("A", 100, 25.75).Adjustment("A", Friday, 0.25).Spot("A-UNIT", "A")
             .Instrument(new Future("A") { Name = "A-FUT", Currency = "EUR" })
             .Instrument(new Forward(new("A", null), 90, Friday.AddDays(100), null, null, null) { Name = "A-FWD", Currency = "EUR" });
 
@@ -88,7 +89,7 @@ public sealed class HypotheticalProfitsTests
     public void From_a_forward_lets_time_pass_only_where_the_settings_include_it()
     {
         // A forward at 100 with a rate of 5%, a year to go, on a price that does not move: S - K e^(-rT).
-        var builder = new SnapshotBuilder().Factor("A").Prices("A", 100, 100)
+        var builder = new FridaySnapshot().Factor("A").Prices("A", 100, 100)
             .Instrument(new Forward(new("A", null), 100, s_thursday.AddDays(365), RateTerm.Of(0.05), null, null) { Name = "FWD", Currency = "EUR" });
 
         Assert.Equal(0, Of(Outcome(builder, new Position("FIRM", "FWD", 1)), "FIRM"));
@@ -109,7 +110,7 @@ public sealed class HypotheticalProfitsTests
     [Fact]
     public void From_positions_leaves_out_a_node_whose_currency_has_no_price()
     {
-        var builder = new SnapshotBuilder().Book("FIRM", null).Book("TK", "FIRM", "JPY").Factor("A").Prices("A", 100, 103).Spot("A-UNIT", "A");
+        var builder = new FridaySnapshot().Book("FIRM", null).Book("TK", "FIRM", "JPY").Factor("A").Prices("A", 100, 103).Spot("A-UNIT", "A");
 
         var outcome = Outcome(builder, new Position("TK", "A-UNIT", 1));
         Assert.Equal("FIRM", Assert.Single(outcome.Profit.Books).Book);

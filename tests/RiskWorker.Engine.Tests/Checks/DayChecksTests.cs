@@ -1,7 +1,7 @@
 using RiskWorker.Domain.Runs;
 using RiskWorker.Engine.Calibration;
 using RiskWorker.Engine.Checks;
-using static RiskWorker.Engine.Tests.SnapshotBuilder;
+using static RiskWorker.Engine.Tests.Checks.FridaySnapshot;
 
 namespace RiskWorker.Engine.Tests.Checks;
 
@@ -13,8 +13,8 @@ public sealed class DayChecksTests
         return prices;
     }
 
-    private static SnapshotBuilder TwoFactors(double[] a, double[] b, string? calendarOfB = null) =>
-        new SnapshotBuilder().Factor("A").Prices("A", a).Factor("B", calendar: calendarOfB).Prices("B", b).Spot("A-UNIT", "A").Position("FIRM", "A-UNIT", 1);
+    private static FridaySnapshot TwoFactors(double[] a, double[] b, string? calendarOfB = null) =>
+        new FridaySnapshot().Factor("A").Prices("A", a).Factor("B", calendar: calendarOfB).Prices("B", b).Spot("A-UNIT", "A").Position("FIRM", "A-UNIT", 1);
 
     [Fact]
     public void Run_with_days_that_others_have_counts_them_by_factor()

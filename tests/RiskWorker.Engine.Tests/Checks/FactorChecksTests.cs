@@ -7,7 +7,7 @@ namespace RiskWorker.Engine.Tests.Checks;
 
 public sealed class FactorChecksTests
 {
-    private static SnapshotBuilder With(string name, Func<SnapshotBuilder, SnapshotBuilder> factor) => factor(SnapshotBuilder.Sound()).Prices(name, SnapshotBuilder.Wave(61));
+    private static FridaySnapshot With(string name, Func<FridaySnapshot, FridaySnapshot> factor) => factor(FridaySnapshot.Sound()).Prices(name, FridaySnapshot.Wave(61));
 
     [Fact]
     public void Run_with_a_calendar_without_holidays_warns()
@@ -31,9 +31,9 @@ public sealed class FactorChecksTests
     [Fact]
     public void Run_with_fx_factors_that_nothing_reads_warns()
     {
-        var builder = SnapshotBuilder.Sound();
+        var builder = FridaySnapshot.Sound();
         foreach (var (name, currency) in new[] { ("E", "EUR"), ("U1", "USD"), ("U2", "USD"), ("X", null) })
-            builder.Factor(name, FactorClass.Fx, currency: currency).Prices(name, SnapshotBuilder.Wave(61));
+            builder.Factor(name, FactorClass.Fx, currency: currency).Prices(name, FridaySnapshot.Wave(61));
 
         Assert.StartsWith("3 fx factors name", FindingsOf.Feed(builder).One(FindingCodes.FxFactorUnused).Message, StringComparison.Ordinal);
         Assert.Contains("(E for EUR, U2 for USD, X for no currency)", FindingsOf.Feed(builder).One(FindingCodes.FxFactorUnused).Message, StringComparison.Ordinal);
@@ -41,12 +41,12 @@ public sealed class FactorChecksTests
 
     [Fact]
     public void Run_with_an_adjustment_of_an_unknown_factor_warns() =>
-        Assert.Contains("(Z)", FindingsOf.Feed(SnapshotBuilder.Sound().Adjustment("Z", SnapshotBuilder.Friday, 0.5)).One(FindingCodes.AdjustmentUnknown).Message, StringComparison.Ordinal);
+        Assert.Contains("(Z)", FindingsOf.Feed(FridaySnapshot.Sound().Adjustment("Z", FridaySnapshot.Friday, 0.5)).One(FindingCodes.AdjustmentUnknown).Message, StringComparison.Ordinal);
 
     [Fact]
     public void Run_with_a_drift_of_an_unknown_factor_blocks_when_drifts_are_read()
     {
-        var builder = SnapshotBuilder.Sound().Model(m => m with { Drifts = new Dictionary<string, double> { ["A"] = 0.05, ["Z"] = 0.05 } });
+        var builder = FridaySnapshot.Sound().Model(m => m with { Drifts = new Dictionary<string, double> { ["A"] = 0.05, ["Z"] = 0.05 } });
         FindingsOf.Feed(builder).None(FindingCodes.DriftUnknown);
 
         var finding = FindingsOf.Feed(builder.Model(m => m with { Drift = DriftKind.Explicit })).One(FindingCodes.DriftUnknown);
@@ -66,5 +66,5 @@ public sealed class FactorChecksTests
     }
 
     [Fact]
-    public void Run_with_an_estimated_covariance_reads_no_given_one() => Assert.Empty(FindingsOf.Feed(SnapshotBuilder.Sound().Covariance("Z", "Z", 1)));
+    public void Run_with_an_estimated_covariance_reads_no_given_one() => Assert.Empty(FindingsOf.Feed(FridaySnapshot.Sound().Covariance("Z", "Z", 1)));
 }

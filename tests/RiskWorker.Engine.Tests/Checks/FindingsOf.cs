@@ -13,29 +13,29 @@ internal static class FindingsOf
 
     public static void None(this IEnumerable<Finding> findings, FindingCode code) => Assert.DoesNotContain(findings, f => f.Code == code.Code);
 
-    public static IReadOnlyList<Finding> Feed(SnapshotBuilder builder) => FeedChecks.Run(builder.Build());
+    public static IReadOnlyList<Finding> Feed(FridaySnapshot builder) => FeedChecks.Run(builder.Build());
 
-    public static IReadOnlyList<Finding> Valuation(SnapshotBuilder builder)
+    public static IReadOnlyList<Finding> Valuation(FridaySnapshot builder)
     {
         var snapshot = builder.Build();
-        var (tree, _, today, previous) = Valued(snapshot);
+        var (tree, today, previous) = Valued(snapshot);
         return ValuationChecks.Run(snapshot, tree, today, previous);
     }
 
-    public static Holdings Holdings(SnapshotBuilder builder)
+    public static Holdings Holdings(FridaySnapshot builder)
     {
         var snapshot = builder.Build();
-        var (_, binder, today, previous) = Valued(snapshot);
-        return HoldingsSummary.Of(snapshot, binder.Currencies, new ClosingLevels(snapshot).At(snapshot.AsOf), today, previous);
+        var (tree, today, previous) = Valued(snapshot);
+        return HoldingsSummary.Of(snapshot, tree, today, previous);
     }
 
-    private static (BookTree Tree, InstrumentBinder Binder, LineValue[] Today, LineValue[]? Previous) Valued(Snapshot snapshot)
+    private static (BookTree Tree, LineValue[] Today, LineValue[]? Previous) Valued(Snapshot snapshot)
     {
         var tree = BookTree.Build(snapshot.Books).Tree!;
         var binder = new InstrumentBinder(tree.ReportingCurrency, snapshot.Factors);
         var levels = new ClosingLevels(snapshot);
         var today = LineValuation.Of(snapshot.Positions, snapshot.Instruments, binder, levels.At(snapshot.AsOf), snapshot.AsOf);
         var previous = snapshot.Previous is { } p ? LineValuation.Of(p.Positions, snapshot.Instruments, binder, levels.At(p.Date), p.Date) : null;
-        return (tree, binder, today, previous);
+        return (tree, today, previous);
     }
 }

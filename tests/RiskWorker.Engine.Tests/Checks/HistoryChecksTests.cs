@@ -2,14 +2,14 @@ using RiskWorker.Domain.Market;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Engine.Calibration;
 using RiskWorker.Engine.Checks;
-using static RiskWorker.Engine.Tests.SnapshotBuilder;
+using static RiskWorker.Engine.Tests.Checks.FridaySnapshot;
 
 namespace RiskWorker.Engine.Tests.Checks;
 
 public sealed class HistoryChecksTests
 {
-    private static SnapshotBuilder WithB(double[] prices, ShockKind shock = ShockKind.Lognormal, string? proxy = null, double? beta = null) =>
-        new SnapshotBuilder().Factor("A").Prices("A", Wave(101)).Spot("A-UNIT", "A").Position("FIRM", "A-UNIT", 1)
+    private static FridaySnapshot WithB(double[] prices, ShockKind shock = ShockKind.Lognormal, string? proxy = null, double? beta = null) =>
+        new FridaySnapshot().Factor("A").Prices("A", Wave(101)).Spot("A-UNIT", "A").Position("FIRM", "A-UNIT", 1)
             .Factor("B", shock: shock, proxy: proxy, beta: beta).Prices("B", prices).Model(m => m with { Window = 100 });
 
     [Fact]
@@ -69,7 +69,7 @@ public sealed class HistoryChecksTests
         // A stops for a while where B begins: each has enough, together they have 40.
         double[] a = [.. Wave(100), .. Enumerable.Repeat(double.NaN, 30), .. Wave(41)];
         double[] b = [.. Enumerable.Repeat(double.NaN, 100), .. Wave(71)];
-        var builder = new SnapshotBuilder().Factor("A").Prices("A", a).Factor("B").Prices("B", b).Spot("A-UNIT", "A").Position("FIRM", "A-UNIT", 1);
+        var builder = new FridaySnapshot().Factor("A").Prices("A", a).Factor("B").Prices("B", b).Spot("A-UNIT", "A").Position("FIRM", "A-UNIT", 1);
 
         Assert.StartsWith("40 days are complete over all factors, of at least 60 wanted", FindingsOf.Feed(builder).One(FindingCodes.DaysFew).Message, StringComparison.Ordinal);
     }

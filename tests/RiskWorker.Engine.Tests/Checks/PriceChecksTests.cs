@@ -1,7 +1,7 @@
 using RiskWorker.Domain.Market;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Engine.Checks;
-using static RiskWorker.Engine.Tests.SnapshotBuilder;
+using static RiskWorker.Engine.Tests.Checks.FridaySnapshot;
 
 namespace RiskWorker.Engine.Tests.Checks;
 
@@ -10,7 +10,7 @@ public sealed class PriceChecksTests
     private static readonly DateOnly s_thursday = Friday.AddDays(-1);
 
     /// <summary>A sound snapshot with a second factor B, its 61 prices changed as told.</summary>
-    private static SnapshotBuilder WithB(Action<double[]> change, ShockKind shock = ShockKind.Lognormal, string? calendar = null)
+    private static FridaySnapshot WithB(Action<double[]> change, ShockKind shock = ShockKind.Lognormal, string? calendar = null)
     {
         var prices = Wave(61);
         change(prices);
@@ -82,7 +82,7 @@ public sealed class PriceChecksTests
 
     [Fact]
     public void Run_with_a_negative_price_before_the_window_says_nothing() =>
-        Assert.Empty(FindingsOf.Feed(new SnapshotBuilder().Factor("A").Prices("A", [-5, .. Wave(61)]).Spot("A-UNIT", "A").Position("FIRM", "A-UNIT", 1)));
+        Assert.Empty(FindingsOf.Feed(new FridaySnapshot().Factor("A").Prices("A", [-5, .. Wave(61)]).Spot("A-UNIT", "A").Position("FIRM", "A-UNIT", 1)));
 
     [Fact]
     public void Run_with_a_negative_price_at_the_base_of_the_window_blocks() =>

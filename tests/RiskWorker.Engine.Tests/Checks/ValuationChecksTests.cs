@@ -3,7 +3,7 @@ using RiskWorker.Domain.Instruments;
 using RiskWorker.Domain.Market;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Engine.Checks;
-using static RiskWorker.Engine.Tests.SnapshotBuilder;
+using static RiskWorker.Engine.Tests.Checks.FridaySnapshot;
 
 namespace RiskWorker.Engine.Tests.Checks;
 
@@ -12,7 +12,7 @@ public sealed class ValuationChecksTests
     private static readonly DateOnly s_thursday = Friday.AddDays(-1);
 
     /// <summary>A at 100 EUR, U at 50 USD, a dollar at 0.80 EUR; books FIRM and DESK.</summary>
-    private static SnapshotBuilder TwoCurrencies() => new SnapshotBuilder()
+    private static FridaySnapshot TwoCurrencies() => new FridaySnapshot()
         .Book("FIRM", null).Book("DESK", "FIRM")
         .Factor("A", currency: "EUR").Prices("A", 100, 100).Factor("U", currency: "USD").Prices("U", 50, 50).Factor("USD", FactorClass.Fx, currency: "USD").Prices("USD", 0.8, 0.8)
         .Spot("A-UNIT", "A").Spot("U-UNIT", "U", "USD");
