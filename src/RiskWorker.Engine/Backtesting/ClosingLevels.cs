@@ -3,11 +3,15 @@ using RiskWorker.Domain.Runs;
 
 namespace RiskWorker.Engine.Backtesting;
 
-/// <summary>The factors' levels at the close of any date of a snapshot: of each factor the newest observation up to then.</summary>
+/// <summary>
+/// The factors' levels at the close of any date of a snapshot: of each factor the newest observation up to then on an open day of its
+/// calendar. Those of the as-of date are the calibrated model's to the last bit.
+/// </summary>
 public sealed class ClosingLevels
 {
     private readonly ObservationHistory _history;
     private readonly int[] _columns;
+    private readonly BusinessCalendar[] _calendars;
     private readonly Adjustment[][] _adjustments;
 
     /// <summary>Takes factors, observations and adjustments from <paramref name="snapshot"/>.</summary>
@@ -16,7 +20,9 @@ public sealed class ClosingLevels
         _history = snapshot.Observations;
         _columns = [.. snapshot.Factors.Select(f => snapshot.Observations.ColumnOf(f.Name))];
         var byFactor = snapshot.Adjustments.ToLookup(a => a.Factor, StringComparer.Ordinal);
-        _adjustments = [.. snapshot.Factors.Select(f => byFactor[f.Name].ToArray())];
+        _adjustments = [.. snapshot.Factors.Select(f => byFactor[f.Name].OrderByDescending(a => a.Date).ThenBy(a => a.Ratio).ToArray())];
+        var calendars = BusinessCalendar.ByName(snapshot.Holidays);
+        _calendars = [.. snapshot.Factors.Select(f => calendars.GetValueOrDefault(f.Calendar ?? "", BusinessCalendar.Weekdays))];
     }
 
     /// <summary>Level of every factor at the close of <paramref name="date"/>, in the snapshot's order; NaN where it was never observed until then.</summary>
@@ -38,14 +44,14 @@ public sealed class ClosingLevels
     private double Level(int factor, int row, DateOnly basis)
     {
         var column = _history.Column(_columns[factor]);
-        while (row >= 0 && double.IsNaN(column[row])) row--;
+        while (row >= 0 && (double.IsNaN(column[row]) || !_calendars[factor].IsOpen(_history.Dates[row]))) row--;
         if (row < 0) return double.NaN;
-        var (level, observed) = (column[row], _history.Dates[row]);
+        var (observed, up, down) = (_history.Dates[row], 1.0, 1.0);
         foreach (var adjustment in _adjustments[factor])
         {
-            if (observed < adjustment.Date && adjustment.Date <= basis) level *= adjustment.Ratio;
-            else if (basis < adjustment.Date && adjustment.Date <= observed) level /= adjustment.Ratio;
+            if (observed < adjustment.Date && adjustment.Date <= basis) up *= adjustment.Ratio;
+            else if (basis < adjustment.Date && adjustment.Date <= observed) down *= adjustment.Ratio;
         }
-        return level;
+        return column[row] * up / down;
     }
 }

@@ -17,26 +17,27 @@ internal static class BookValueChecks
     private static void Differences(Snapshot snapshot, BookTree tree, LineValue[] lines, FindingList findings)
     {
         var tolerance = snapshot.Settings.Checks.ValueTolerance;
-        var books = new (int Compared, List<LineValue>? Breaks)[tree.Books.Count];
-        foreach (ref readonly var line in lines.AsSpan())
+        var books = new (int Compared, List<int>? Breaks)[tree.Books.Count];
+        for (var i = 0; i < lines.Length; i++)
         {
+            ref readonly var line = ref lines[i];
             var node = tree.IndexOf(line.Position.Book);
             if (node < 0 || line.Unpriced is not null || line.Position.MarketValue is not { } market) continue;
             books[node].Compared++;
-            if (Reconciliation.IsBreak(line.Value, market, tolerance)) (books[node].Breaks ??= []).Add(line);
+            if (Reconciliation.IsBreak(line.Value, market, tolerance)) (books[node].Breaks ??= []).Add(i);
         }
         if (books.All(b => b.Breaks is null)) return;
-        var sizes = new LineSize(snapshot, tree);
+        var sizes = LineSize.Of(snapshot, tree);
         for (var node = 0; node < books.Length; node++)
         {
             if (books[node].Breaks is not { } breaks) continue;
-            var total = breaks.Sum(l => Math.Abs(l.Value - l.Position.MarketValue!.Value) * sizes.RateOf(l.Instrument!.Currency));
+            var total = breaks.Sum(i => Math.Abs(lines[i].Value - lines[i].Position.MarketValue!.Value) * sizes.RateOf(lines[i].Instrument!.Currency));
             findings.Add(FindingCodes.ValueDifference, tree.Books[node].Name, string.Create(CultureInfo.InvariantCulture,
-                $"{breaks.Count:#,0} of {books[node].Compared:#,0} lines with a market value differ from it by more than {tolerance * 100:0.##}% ({FindingList.Names(breaks.Select(Named), breaks.Count)}), {total:#,0} {tree.ReportingCurrency} in all, so value and risk may rest on other terms than the book of record"));
+                $"{breaks.Count:#,0} of {books[node].Compared:#,0} lines with a market value differ from it by more than {tolerance * 100:0.##}% ({FindingList.Names(breaks.Select(i => Named(lines[i])), breaks.Count)}), {total:#,0} {tree.ReportingCurrency} in all, so value and risk may rest on other terms than the book of record"));
         }
     }
 
-    private static string Named(LineValue line) => string.Create(CultureInfo.InvariantCulture,
+    private static string Named(in LineValue line) => string.Create(CultureInfo.InvariantCulture,
         $"{line.Position.Instrument} {line.Value:#,0.##} against {line.Position.MarketValue:#,0.##} {line.Instrument!.Currency}");
 
     private static void Changes(Snapshot snapshot, BookTree tree, LineValue[] today, LineValue[] previous, FindingList findings)

@@ -1,6 +1,7 @@
 using RiskWorker.Domain.Books;
 using RiskWorker.Domain.Market;
 using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Calibration;
 
 namespace RiskWorker.Engine.Checks;
 
@@ -11,17 +12,13 @@ internal static class FactorChecks
     {
         var names = snapshot.Factors.Select(f => f.Name).ToHashSet(StringComparer.Ordinal);
         Calendars(snapshot, findings);
-        Proxies(snapshot, names, findings);
+        Proxies(snapshot, findings);
         Currencies(snapshot, findings);
         Unknown(snapshot.Adjustments.Select(a => a.Factor), names, FindingCodes.AdjustmentUnknown, "adjustments.csv", findings);
         if (snapshot.Settings.Model.Drift == DriftKind.Explicit)
             Unknown(snapshot.Settings.Model.Drifts.Keys, names, FindingCodes.DriftUnknown, "riskworker.json", findings);
         if (snapshot.Settings.Model.Covariance == CovarianceEstimator.Given) Covariance(snapshot, names, findings);
     }
-
-    /// <summary>Whether a proxy can stand in for <paramref name="factor"/>.</summary>
-    public static bool HasUsableProxy(Factor factor, IReadOnlySet<string> names) =>
-        factor is { Proxy: { } proxy, Beta: not null } && proxy != factor.Name && names.Contains(proxy);
 
     private static void Calendars(Snapshot snapshot, FindingList findings)
     {
@@ -32,9 +29,9 @@ internal static class FactorChecks
             $"{FindingList.Count(unknown.Length, "calendar is", "calendars are")} not in holidays.csv ({FindingList.Names(unknown)}), so every Monday to Friday counts as open and a holiday there looks like a missing price");
     }
 
-    private static void Proxies(Snapshot snapshot, HashSet<string> names, FindingList findings)
+    private static void Proxies(Snapshot snapshot, FindingList findings)
     {
-        string[] unusable = [.. snapshot.Factors.Where(f => f.Proxy is not null && !HasUsableProxy(f, names)).Select(f => $"{f.Name} by {f.Proxy}")];
+        string[] unusable = [.. snapshot.Factors.Where(f => f.Proxy is not null && !HistoryLength.HasProxy(f, snapshot.Factors)).Select(f => $"{f.Name} by {f.Proxy}")];
         if (unusable.Length == 0) return;
         findings.Add(FindingCodes.ProxyUnusable, "factors.csv",
             $"{FindingList.Count(unusable.Length, "factor has a proxy that is", "factors have proxies that are")} unknown, the factor itself, or without a beta ({FindingList.Names(unusable)}), so nothing stands in for missing history");
@@ -54,11 +51,14 @@ internal static class FactorChecks
     private static void Covariance(Snapshot snapshot, HashSet<string> names, FindingList findings)
     {
         Unknown(snapshot.Covariance.SelectMany(c => new[] { c.Factor, c.Other }), names, FindingCodes.CovarianceUnknown, "covariance.csv", findings);
-        var given = snapshot.Covariance.Where(c => c.Factor == c.Other).Select(c => c.Factor).ToHashSet(StringComparer.Ordinal);
-        string[] still = [.. snapshot.Factors.Select(f => f.Name).Where(f => !given.Contains(f))];
-        if (still.Length == 0) return;
-        findings.Add(FindingCodes.CovarianceMissing, "covariance.csv",
-            $"{FindingList.Count(still.Length, "factor has", "factors have")} no variance in the given covariance ({FindingList.Names(still)}), so no scenario moves them");
+        try
+        {
+            GivenCovariance.Of(snapshot.Covariance, snapshot.Factors);
+        }
+        catch (CalibrationException fault)
+        {
+            findings.Add(FindingCodes.CovarianceUnusable, "covariance.csv", $"the given covariance cannot be used at {fault.Subject} ({fault.Reason.TrimEnd('.')}), so no factor's risk is known");
+        }
     }
 
     private static void Unknown(IEnumerable<string> used, HashSet<string> names, FindingCode code, string subject, FindingList findings)

@@ -1,4 +1,5 @@
 using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Calibration;
 
 namespace RiskWorker.Engine.Checks;
 
@@ -6,16 +7,20 @@ namespace RiskWorker.Engine.Checks;
 public static class FeedChecks
 {
     /// <summary>All findings, blocking ones first; every check runs, so that one answer holds all faults.</summary>
-    /// <remarks>Lines that cannot be priced, the currency of an instrument included, are the valuation's to tell: it knows their size.</remarks>
+    /// <remarks>
+    /// Lines that cannot be priced, the currency of an instrument included, are the valuation's to tell: it knows their size.
+    /// Without a blocking finding the snapshot can be calibrated.
+    /// </remarks>
     public static IReadOnlyList<Finding> Run(Snapshot snapshot)
     {
         var findings = new FindingList(snapshot.Settings.Checks);
         BookChecks.Run(snapshot, findings);
         FactorChecks.Run(snapshot, findings);
-        var histories = FactorHistory.All(snapshot);
-        var window = EstimationWindow.Of(snapshot, histories);
-        PriceChecks.Run(snapshot, histories, window, findings);
-        HistoryChecks.Run(snapshot, histories, window, findings);
+        var table = ShockTable.From(snapshot);
+        var window = new EstimationWindow(snapshot, table);
+        PriceChecks.Run(snapshot, table, window, findings);
+        DayChecks.Run(snapshot, table, window, findings);
+        HistoryChecks.Run(snapshot, table, window, findings);
         return findings.Ordered();
     }
 }

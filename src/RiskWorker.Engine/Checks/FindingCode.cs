@@ -12,4 +12,7 @@ public sealed record FindingCode(string Code, FindingSeverity Severity, string M
 {
     /// <summary>Its severity under <paramref name="settings"/>.</summary>
     public FindingSeverity SeverityUnder(CheckSettings settings) => IsFixed ? Severity : settings.Severity.GetValueOrDefault(Code, Severity);
+
+    /// <summary>A finding of this kind, at its severity under <paramref name="settings"/>.</summary>
+    public Finding Found(CheckSettings settings, string subject, string message) => new(SeverityUnder(settings), Code, subject, message);
 }

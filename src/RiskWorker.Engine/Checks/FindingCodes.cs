@@ -49,6 +49,11 @@ public static class FindingCodes
         "Fewer days than the minimum are complete over all factors",
         "load the missing prices, or name proxies for the factors that break the most days");
 
+    /// <summary>No day on which all factors moved.</summary>
+    public static readonly FindingCode DaysNone = new("days-none", Blocking,
+        "No day is complete over all factors",
+        "load the missing prices, or name proxies for the factors that break the most days", IsFixed: true);
+
     /// <summary>The last price stands in on a closed day.</summary>
     public static readonly FindingCode FactorClosed = new("factor-closed", Warning,
         "A factor's calendar is closed on the as-of date, so its last price is used",
@@ -56,7 +61,7 @@ public static class FindingCodes
 
     /// <summary>A proxy stands in for history.</summary>
     public static readonly FindingCode HistoryProxied = new("history-proxied", Warning,
-        "A factor has fewer shocks of its own than the minimum, and its proxy's moves stand in",
+        "A factor has fewer shocks of its own than the window, and its proxy's moves stand in before the first",
         "load more of its history when there is some");
 
     /// <summary>Fewer shocks than the window.</summary>
@@ -105,19 +110,20 @@ public static class FindingCodes
         "keep one fx factor for each foreign currency");
 
     /// <summary>A drift for nothing.</summary>
-    public static readonly FindingCode DriftUnknown = new("drift-unknown", Warning,
+    /// <remarks>Blocking, like any fault of the settings: the factor that was meant would be left without its drift.</remarks>
+    public static readonly FindingCode DriftUnknown = new("drift-unknown", Blocking,
         "The settings give a drift for a factor that does not exist",
-        "correct the factor's name under drifts");
+        "correct the factor's name under drifts", IsFixed: true);
 
     /// <summary>A covariance for nothing.</summary>
     public static readonly FindingCode CovarianceUnknown = new("covariance-unknown", Warning,
         "The given covariance names a factor that does not exist",
         "correct the factor's name in covariance.csv");
 
-    /// <summary>A factor without a given variance.</summary>
-    public static readonly FindingCode CovarianceMissing = new("covariance-missing", Warning,
-        "The given covariance holds no variance for a factor, so it does not move",
-        "add the factor's variance to covariance.csv");
+    /// <summary>A given covariance that is none.</summary>
+    public static readonly FindingCode CovarianceUnusable = new("covariance-unusable", Blocking,
+        "The given covariance lacks a variance or a pair, contradicts itself, or is no covariance",
+        "complete and correct covariance.csv", IsFixed: true);
 
     /// <summary>A split or roll of nothing.</summary>
     public static readonly FindingCode AdjustmentUnknown = new("adjustment-unknown", Warning,
@@ -200,6 +206,11 @@ public static class FindingCodes
         "An instrument has a term that its kind does not use",
         "correct the kind or the term in instruments.csv");
 
+    /// <summary>A limit relative to a value that is not positive.</summary>
+    public static readonly FindingCode LimitUndecidable = new("limit-undecidable", Warning,
+        "A limit is relative to a value or measure that is not positive, so no number of scenarios decides it",
+        "give the limit an amount in money");
+
     /// <summary>A rate that was left out; found when the feed is loaded.</summary>
     public static readonly FindingCode AssumedZeroRate = new("assumed-zero-rate", Warning,
         "A forward or an option has no curve or no carry, which counts as 0",
@@ -208,12 +219,12 @@ public static class FindingCodes
     /// <summary>Every code, in the order of reports.</summary>
     public static IReadOnlyList<FindingCode> All { get; } =
     [
-        BookTree, BookCurrency, PositionsNone, FactorUnobserved, FactorMissing, PriceNotPositive, HistoryShort, DaysFew,
+        BookTree, BookCurrency, PositionsNone, FactorUnobserved, FactorMissing, PriceNotPositive, HistoryShort, DaysNone, DaysFew,
+        CovarianceUnusable, DriftUnknown,
         BookUnknown, InstrumentUnknown, FactorUnknown, CurrencyUnpriced, CurrencyMismatch, InstrumentExpired, NotModelled, LevelMissing,
-        ValueDifference, HoldingsChange,
+        ValueDifference, HoldingsChange, LimitUndecidable,
         FactorClosed, PriceStale, PriceJump, DayMissing, DayClosed, DaysDropped, HistoryProxied, HistoryPartial,
-        CalendarUnknown, ProxyUnusable, FxFactorUnused, DriftUnknown, CovarianceUnknown, CovarianceMissing, AdjustmentUnknown,
-        LimitBookUnknown, ProfitBookUnknown,
+        CalendarUnknown, ProxyUnusable, FxFactorUnused, CovarianceUnknown, AdjustmentUnknown, LimitBookUnknown, ProfitBookUnknown,
         AssumedZeroRate, UnusedTerm, UnknownColumn, UnknownFile,
     ];
 }

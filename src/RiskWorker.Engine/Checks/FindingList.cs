@@ -14,7 +14,7 @@ internal sealed class FindingList(CheckSettings settings)
     /// <summary>Adds a finding: <paramref name="statement"/> says what, how often, and what it does to the figures; the code's mend ends the sentence.</summary>
     public void Add(FindingCode code, string subject, string statement)
     {
-        _findings.Add((s_order[code.Code], new(code.SeverityUnder(settings), code.Code, subject, $"{statement}; {code.Mend}.")));
+        _findings.Add((s_order[code.Code], code.Found(settings, subject, $"{statement}; {code.Mend}.")));
     }
 
     /// <summary>The findings: blocking ones first, then in the table's order, then by subject.</summary>

@@ -77,10 +77,10 @@ public sealed class LossSampler
     private TailRecord Evaluate(BlockRange range) =>
         _evaluator.Evaluate(range, _reduction, _scenariosDone is null ? null : () => _scenariosDone(Blocks.Size), _cancellation);
 
-    private bool LowerCutoffs(IReadOnlyList<SampledLoss> series, int deepest)
+    private bool LowerCutoffs(SampledLoss[] series, int deepest)
     {
         var lowered = false;
-        for (var row = 0; row < series.Count; row++)
+        for (var row = 0; row < series.Length; row++)
         {
             if (series[row].Known >= deepest) continue;
             var reached = Array.FindIndex(_worstFirst[row], loss => loss < _cutoffs[row]);

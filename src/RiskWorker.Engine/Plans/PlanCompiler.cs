@@ -16,7 +16,7 @@ public sealed class PlanCompiler
     private readonly IReadOnlyList<Horizon> _horizons;
 
     // Without ageing the valuation date stays; with it, an option's remaining life shrinks by horizon.
-    private readonly Func<BoundInstrument, int, double>? _yearsAtHorizon;
+    private readonly Func<BoundInstrument, int, double>? _remainingYears;
 
     /// <summary>Takes what the plan rests on.</summary>
     /// <param name="tree">The books.</param>
@@ -24,12 +24,12 @@ public sealed class PlanCompiler
     /// <param name="currencies">The currencies known.</param>
     /// <param name="asOf">Valuation date.</param>
     /// <param name="horizons">Horizons, in any order.</param>
-    /// <param name="yearsAtHorizon">Remaining life in years of an instrument at a horizon of so many business days; null leaves the valuation date where it is.</param>
-    public PlanCompiler(BookTree tree, CalibratedModel model, CurrencyTable currencies, DateOnly asOf, IEnumerable<Horizon> horizons, Func<BoundInstrument, int, double>? yearsAtHorizon = null)
+    /// <param name="remainingYears">Life in years that is left to an instrument after so many business days, 0 being today; null leaves the valuation date where it is.</param>
+    public PlanCompiler(BookTree tree, CalibratedModel model, CurrencyTable currencies, DateOnly asOf, IEnumerable<Horizon> horizons, Func<BoundInstrument, int, double>? remainingYears = null)
     {
         (_tree, _model, _currencies, _asOf) = (tree, model, currencies, asOf);
         _horizons = [.. horizons.Distinct().Order()];
-        _yearsAtHorizon = yearsAtHorizon;
+        _remainingYears = remainingYears;
     }
 
     /// <summary>The plan of the priced ones among <paramref name="lines"/>.</summary>
@@ -151,7 +151,7 @@ public sealed class PlanCompiler
                 break;
             case PayoffShape.Forward:
                 // At a flat rate the strike leg is a constant, so only the discounted underlying moves.
-                group.AddLinear(cell, units * Valuer.ForwardUnits(bound, bound.YearsFrom(_asOf)));
+                group.AddLinear(cell, units * Valuer.ForwardUnits(bound, Years(bound, 0)));
                 break;
             default:
                 group.AddOption(bound, Option(cell, units, bound));
@@ -160,18 +160,19 @@ public sealed class PlanCompiler
     }
 
     private OptionItem Option(int cell, double units, in BoundInstrument bound) =>
-        new(cell, units, Valuer.OptionValue(bound, bound.Underlying.LevelOf(_model.Levels), bound.YearsFrom(_asOf), VolatilityOf(bound)));
+        new(cell, units, Valuer.OptionValue(bound, bound.Underlying.LevelOf(_model.Levels), Years(bound, 0), VolatilityOf(bound)));
 
     private EuropeanOptionTerms Terms(in BoundInstrument bound, double years) =>
         Valuer.OptionTerms(bound, bound.Underlying.LevelOf(_model.Levels), years, VolatilityOf(bound));
 
     private double VolatilityOf(in BoundInstrument bound) => bound.VolatilityFactor < 0 ? bound.Volatility : _model.Levels[bound.VolatilityFactor];
 
+    private double Years(in BoundInstrument bound, int days) => _remainingYears is null ? bound.YearsFrom(_asOf) : _remainingYears(bound, days);
+
     private EuropeanOptionTerms[][] TermsByHorizon(List<BoundInstrument> options)
     {
-        EuropeanOptionTerms[] At(Func<BoundInstrument, double> years) => [.. options.Select(o => Terms(o, years(o)))];
-        if (_yearsAtHorizon is null) return [.. Enumerable.Repeat(At(o => o.YearsFrom(_asOf)), _horizons.Count)];
-        return [.. _horizons.Select(h => At(o => _yearsAtHorizon(o, h.Days)))];
+        EuropeanOptionTerms[] After(int days) => [.. options.Select(o => Terms(o, Years(o, days)))];
+        return _remainingYears is null ? [.. Enumerable.Repeat(After(0), _horizons.Count)] : [.. _horizons.Select(h => After(h.Days))];
     }
 
     private FactorMoves Moves()

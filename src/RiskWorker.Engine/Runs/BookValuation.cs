@@ -1,5 +1,6 @@
 using RiskWorker.Domain.Books;
 using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Backtesting;
 using RiskWorker.Engine.Calibration;
 using RiskWorker.Engine.Checks;
 using RiskWorker.Engine.Pricing;
@@ -15,8 +16,8 @@ public sealed class BookValuation
         Binder = new(tree.ReportingCurrency, model.Factors);
         Today = LineValuation.Of(snapshot.Positions, snapshot.Instruments, Binder, model.Levels, snapshot.AsOf);
         if (snapshot.Previous is { } previous)
-            Previous = LineValuation.Of(previous.Positions, snapshot.Instruments, Binder, model.LevelsAt(previous.Date), previous.Date);
-        Holdings = HoldingsSummary.Of(snapshot, Binder.Currencies, model.Levels, Today, Previous);
+            Previous = LineValuation.Of(previous.Positions, snapshot.Instruments, Binder, new ClosingLevels(snapshot).At(previous.Date), previous.Date);
+        Holdings = HoldingsSummary.Of(snapshot, tree, Today, Previous);
     }
 
     /// <summary>Resolves instruments against the model's factors.</summary>

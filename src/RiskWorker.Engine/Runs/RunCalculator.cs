@@ -1,12 +1,10 @@
 using System.Diagnostics;
 using RiskWorker.Domain.Books;
-using RiskWorker.Domain.Limits;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Engine.Backtesting;
 using RiskWorker.Engine.Calibration;
 using RiskWorker.Engine.Checks;
 using RiskWorker.Engine.Plans;
-using RiskWorker.Engine.Pricing;
 
 namespace RiskWorker.Engine.Runs;
 
@@ -67,7 +65,7 @@ public sealed class RunCalculator
         var plan = new PlanCompiler(tree, model, valued.Binder.Currencies, _snapshot.AsOf, measures.Select(m => m.Horizon)).Compile(_snapshot.Settings.Simulation.Seed, valued.Today);
         var outcome = new LookedRun(tree, plan, limits, measures, _snapshot.Settings.Simulation).Run(_threads, _progress, _cancellation);
         Timings = Timings with { Simulate = clock.Elapsed.TotalSeconds };
-        _findings.AddRange(UndecidableLimits.Findings(outcome, limits, _snapshot.Settings.Checks));
+        _findings.AddRange(UndecidableLimits.Of(outcome, limits, _snapshot.Settings.Checks));
         var hypothetical = HypotheticalProfits.Of(_snapshot, tree);
         return new RunResults
         {
@@ -87,7 +85,7 @@ public sealed class RunCalculator
     private static CalibrationSummary SummaryOf(CalibratedModel model, RevaluationPlan plan) => new()
     {
         Shocks = model.Shocks,
-        DroppedDays = model.DroppedDays,
+        DroppedDays = model.DroppedDays.Count,
         From = model.From,
         To = model.To,
         Factors = model.Factors.Count,

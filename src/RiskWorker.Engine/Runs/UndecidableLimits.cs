@@ -8,11 +8,15 @@ namespace RiskWorker.Engine.Runs;
 public static class UndecidableLimits
 {
     /// <summary>A finding for each book concerned.</summary>
-    public static IEnumerable<Finding> Findings(LookOutcome outcome, IReadOnlyList<Limit> limits, CheckSettings settings) =>
-        from limit in limits
-        let clause = outcome.Evaluator.Undecidable(limit)
-        where clause is not null
-        group $"'{limit.Name}' ({clause})" by limit.Book into undecidable
-        select FindingCodes.LimitUndecidable.Found(settings, undecidable.Key,
-            $"{undecidable.Count()} limits of this book cannot be decided by any number of scenarios: {string.Join(", ", undecidable.Take(10))}. Give them an amount in money instead.");
+    public static IReadOnlyList<Finding> Of(LookOutcome outcome, IReadOnlyList<Limit> limits, CheckSettings settings)
+    {
+        var findings = new FindingList(settings);
+        var clauses = limits.Select(l => (l.Book, l.Name, Clause: outcome.Evaluator.Undecidable(l))).Where(l => l.Clause is not null);
+        foreach (var book in clauses.GroupBy(l => l.Book, StringComparer.Ordinal))
+        {
+            var names = book.Select(l => $"'{l.Name}' ({l.Clause})").ToList();
+            findings.Add(FindingCodes.LimitUndecidable, book.Key, $"{FindingList.Count(names.Count, "limit", "limits")} of this book cannot be decided: {FindingList.Names(names)}");
+        }
+        return findings.Ordered();
+    }
 }

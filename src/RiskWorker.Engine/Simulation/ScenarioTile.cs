@@ -102,7 +102,7 @@ public sealed class ScenarioTile
         foreach (var group in _plan.Groups)
         {
             Underlying(group, horizon, width);
-            var (returns, spots) = (_returns.AsSpan(0, width), _spots.AsSpan(0, width));
+            Span<double> returns = _returns.AsSpan(0, width), spots = _spots.AsSpan(0, width);
             foreach (var holding in group.Linear)
                 BookProfit.AddLinear(spots, group.Spot, holding.Units, _cells.AsSpan(holding.Cell * Width, width));
             foreach (var batch in group.Options) Options(batch, horizon, returns, spots);
@@ -111,7 +111,7 @@ public sealed class ScenarioTile
 
     private void Underlying(UnderlyingGroup group, int horizon, int width)
     {
-        var (returns, spots) = (_returns.AsSpan(0, width), _spots.AsSpan(0, width));
+        Span<double> returns = _returns.AsSpan(0, width), spots = _spots.AsSpan(0, width);
         if (!group.Key.IsCross)
         {
             Move(group.Key.Factor, horizon, returns, spots);
@@ -122,7 +122,7 @@ public sealed class ScenarioTile
         if (group.Key.Factor >= 0) Move(group.Key.Factor, horizon, returns, spots);
         if (group.Key.Quote >= 0)
         {
-            var (quoteReturns, quotes) = (_quoteReturns.AsSpan(0, width), _volatilities.AsSpan(0, width));
+            Span<double> quoteReturns = _quoteReturns.AsSpan(0, width), quotes = _volatilities.AsSpan(0, width);
             Move(group.Key.Quote, horizon, quoteReturns, quotes);
             Elementwise.Subtract(quoteReturns, returns);
             Elementwise.DivideBy(quotes, spots);

@@ -38,6 +38,40 @@ public sealed class LogNormalCasesTests
         if (es > 0) AssertWithin(es, MeasureOf(results, MeasureKind.Es).Value, 4 * ErrorOf(MeasureOf(results, MeasureKind.Es)));
     }
 
+    /// <summary>Short position: VaR = V(exp(m + z s) - 1), the loss having no upper bound.</summary>
+    [Theory]
+    [InlineData("0.975", 45.06225322879847, 56.82782657559136)]
+    [InlineData("0.99", 56.09109213838135, 67.37152290146733)]
+    public void Short_position_meets_its_closed_form(string confidence, double var, double es)
+    {
+        var level = decimal.Parse(confidence, CultureInfo.InvariantCulture);
+        var results = Measured([("X", 1.0, -100)], new double[,] { { 0.04 / 252 } }, 0, level, 252);
+        AssertInside(var, MeasureOf(results, MeasureKind.Var));
+        AssertInside(es, MeasureOf(results, MeasureKind.Es));
+    }
+
+    /// <summary>Two correlated assets, both long, each row by conditioning quadrature.</summary>
+    [Theory]
+    [InlineData("0.99", 1, 600_000, 400_000, 0.08, 0.05, 0.25, 0.15, 0.5, 26851.727359718636, 30715.089785080978)]
+    [InlineData("0.99", 10, 600_000, 400_000, 0.08, 0.05, 0.25, 0.15, 0.5, 80993.25912661961, 92352.02271950667)]
+    [InlineData("0.975", 20, 500_000, 500_000, 0, 0, 0.3, 0.4, -0.3, 111110.3819492293, 130397.36889585004)]
+    [InlineData("0.99", 20, 500_000, 500_000, 0, 0, 0.3, 0.4, -0.3, 129999.76085884433, 146933.2740579077)]
+    public void Two_correlated_positions_meet_the_quadrature(string confidence, int days, double v1, double v2, double mu1, double mu2, double sigma1, double sigma2, double rho, double var, double es)
+    {
+        var cross = rho * sigma1 * sigma2 / 252;
+        var covariance = new double[,] { { sigma1 * sigma1 / 252, cross }, { cross, sigma2 * sigma2 / 252 } };
+        var results = Measured([("X", 1.0, v1), ("Y", 1.0, v2)], covariance, [mu1, mu2], decimal.Parse(confidence, CultureInfo.InvariantCulture), days);
+        AssertInside(var, MeasureOf(results, MeasureKind.Var));
+        AssertInside(es, MeasureOf(results, MeasureKind.Es));
+    }
+
+    // Four standard errors are 2.04 half-widths of a 95% interval; the two ends of a quantile's interval differ, so each side has its own.
+    private static void AssertInside(double expected, MeasureResult measure)
+    {
+        var side = expected < measure.Value ? measure.Value - measure.Low!.Value : measure.High!.Value - measure.Value;
+        AssertWithin(expected, measure.Value, 4 / 1.959963984540054 * side);
+    }
+
     private static double ErrorOf(MeasureResult measure) => (measure.High!.Value - measure.Low!.Value) / 2 / 1.959963984540054;
 
     private static void AssertWithin(double expected, double actual, double tolerance) =>
@@ -45,7 +79,10 @@ public sealed class LogNormalCasesTests
 
     private static MeasureResult MeasureOf(RunResults results, MeasureKind kind) => results.Nodes[0].Measures.Single(m => m.Spec.Kind == kind);
 
-    private static RunResults Measured((string Factor, double Price, double Quantity)[] holdings, double[,] covariance, double mu, decimal confidence, int days)
+    private static RunResults Measured((string Factor, double Price, double Quantity)[] holdings, double[,] covariance, double mu, decimal confidence, int days) =>
+        Measured(holdings, covariance, [.. holdings.Select(_ => mu)], confidence, days);
+
+    private static RunResults Measured((string Factor, double Price, double Quantity)[] holdings, double[,] covariance, double[] mu, decimal confidence, int days)
     {
         var entries = from i in Enumerable.Range(0, holdings.Length) from j in Enumerable.Range(i, holdings.Length - i) select new CovarianceEntry(holdings[i].Factor, holdings[j].Factor, covariance[i, j]);
         var snapshot = new SnapshotBuilder
@@ -53,7 +90,7 @@ public sealed class LogNormalCasesTests
             AsOf = s_asOf,
             Settings = new RunSettings
             {
-                Model = new ModelSettings { Covariance = CovarianceEstimator.Given, Drift = DriftKind.Explicit, Drifts = holdings.ToDictionary(h => h.Factor, _ => mu) },
+                Model = new ModelSettings { Covariance = CovarianceEstimator.Given, Drift = DriftKind.Explicit, Drifts = holdings.Zip(mu).ToDictionary(h => h.First.Factor, h => h.Second) },
                 Measures = [new(MeasureKind.Var, new(confidence), new(days)), new(MeasureKind.Es, new(confidence), new(days))],
                 Simulation = new SimulationSettings { Scenarios = Scenarios },
             },

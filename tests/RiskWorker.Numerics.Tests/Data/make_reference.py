@@ -2,8 +2,10 @@
 
 Usage: python3 make_reference.py [rows per function] [folder]
 Needs mpmath (BSD licence). Seeded: the same arguments give the same files.
-A result stands as two doubles, head + tail, so that a kernel's error can be told to a thousandth of an ulp.
+A function's value stands as the nearest double and what it lacks in ulps of that double, an option's as the sum of
+two doubles, so that an error can be told to a small part of an ulp.
 """
+import math
 import random
 import sys
 
@@ -18,6 +20,11 @@ rng = random.Random(20250101)
 def two(value):
     head = float(value)
     return head, float(value - mp.mpf(head))
+
+
+def in_ulps(value):
+    head = float(value)
+    return head, float(mp.nstr((value - mp.mpf(head)) / mp.mpf(math.ulp(head)), 6))
 
 
 def either(*ranges):
@@ -87,14 +94,14 @@ FUNCTIONS = (
 )
 
 with open(f"{folder}/kernel-reference.csv", "w", newline="\n") as out:
-    out.write("function,x,head,tail\n")
+    out.write("function,x,nearest,lacking_ulps\n")
     for name, draw, function in FUNCTIONS:
         for _ in range(rows):
             x = draw()
             if name == "quantile" and not 0 < x < 1:
                 continue
-            head, tail = two(function(mp.mpf(x)))
-            out.write(f"{name},{x!r},{head!r},{tail!r}\n")
+            nearest, lacking = in_ulps(function(mp.mpf(x)))
+            out.write(f"{name},{x!r},{nearest!r},{lacking!r}\n")
 
 
 def price(spot, strike, years, volatility, rate, carry, call):
