@@ -79,7 +79,7 @@ public sealed class ConfigurationReaderTests
             }
             """));
         Assert.Equal("""
-            riskworker.json: 14 faults
+            riskworker.json: 13 faults
               simulaton: found an unknown key, expected one of store, timeEffects, models, record, challengers, measures, simulation, backfill, checks, schedules, delivery, page; did you mean 'simulation'?
               models["a b"].lambda: found 1, expected a number strictly between 0 and 1
               models["a b"].window: found 1, expected a whole number from 2 to 100,000
@@ -93,8 +93,7 @@ public sealed class ConfigurationReaderTests
               simulation.scenarios: found 999, expected a whole number from 1,000 to 100,000,000
               simulation.looks: found 0, expected a whole number from 1 to 20
               simulation.cap: found 10, expected a whole number from 100,000 to 100,000,000
-            """.ReplaceLineEndings("\n").Replace("14 faults", $"{refusal.Faults.Count} faults", StringComparison.Ordinal), WithoutReasons(refusal.Message));
-        Assert.Equal(13, refusal.Faults.Count);
+            """.ReplaceLineEndings("\n"), WithoutReasons(refusal.Message));
     }
 
     [Theory]
@@ -128,7 +127,7 @@ public sealed class ConfigurationReaderTests
     [InlineData("{\n  \"backfill\": 1\n", "line 3, byte 1")]
     [InlineData("{ \"record\": \"x", "line 1, byte 15")]
     [InlineData("{}\n{}", "line 2, byte 1")]
-    [InlineData("{\n \"store\": { \"path\": \"\\ud800\" } }", "line 2, byte 22")]
+    [InlineData("{\n \"store\": { \"path\": \"\\ud800\" } }", "line 2, byte 21")]
     public void Read_broken_json_names_the_place(string json, string place) =>
         Assert.Equal(place, Assert.Single(Assert.Throws<SettingsException>(() => Read(json)).Faults).Path);
 
