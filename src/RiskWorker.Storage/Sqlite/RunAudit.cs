@@ -1,0 +1,63 @@
+using Microsoft.Data.Sqlite;
+using RiskWorker.Domain.Runs;
+using RiskWorker.Storage.Feed.Rows;
+
+namespace RiskWorker.Storage.Sqlite;
+
+/// <summary>Holds the stored runs against the chain: every record, every document list, and every column kept beside a record.</summary>
+internal static class RunAudit
+{
+    public const string ChainColumns = "sequence, kind, run, content, previous, hash";
+
+    public static List<ChainEntry> Chain(SqliteConnection connection) => connection.Query($"SELECT {ChainColumns} FROM chain ORDER BY sequence", Entry);
+
+    public static ChainEntry Entry(SqliteDataReader row) =>
+        new(row.GetInt64(0), Spelling.Of<ChainEntryKind>()[row.GetString(1)], row.GetString(2), row.GetString(3), row.GetString(4), row.GetString(5));
+
+    public static string? FirstBreak(SqliteConnection connection)
+    {
+        var chain = Chain(connection);
+        if (RunChain.FirstBreak(chain) is { } broken) return broken;
+        foreach (var entry in chain)
+        {
+            var fault = entry.Kind == ChainEntryKind.Results ? FaultOfRun(connection, entry) : FaultOfDocuments(connection, entry);
+            if (fault is not null) return fault;
+        }
+        var unchained = connection.Query("SELECT run FROM run WHERE run NOT IN (SELECT run FROM chain WHERE kind = 'results') ORDER BY sequence LIMIT 1", r => r.GetString(0));
+        return unchained.Count == 0 ? null : $"Run {unchained[0]} is stored but the chain holds no entry for its results: the entry was removed.";
+    }
+
+    private static string? FaultOfRun(SqliteConnection connection, ChainEntry entry)
+    {
+        var found = connection.Query($"SELECT {RunRows.Columns}, record FROM run WHERE run = ?1", row =>
+        {
+            var cells = new object[row.FieldCount];
+            row.GetValues(cells);
+            return cells;
+        }, entry.Run);
+        if (found.Count == 0) return $"The record of run {entry.Run} is missing: the chain vouches for it in entry {entry.Sequence}.";
+        byte[] json;
+        try
+        {
+            json = RecordJson.Unpack((byte[])found[0][^1]);
+        }
+        catch (InvalidDataException)
+        {
+            return Altered(entry);
+        }
+        if (SnapshotHash.OfBytes(json) != entry.Content) return Altered(entry);
+        var expected = RunRows.Of(RecordJson.Read(json), entry.Content);
+        var columns = found[0].AsSpan(0, expected.Run.Count).ToArray().Select(c => c is DBNull ? null : c);
+        var whole = columns.SequenceEqual(expected.Run)
+            && RunRows.StoredVars(connection, entry.Run).SequenceEqual(expected.Vars) && RunRows.StoredProfit(connection, entry.Run).SequenceEqual(expected.Profit);
+        return whole ? null : $"What is kept beside the record of run {entry.Run} differs from the record: it was altered.";
+    }
+
+    private static string? FaultOfDocuments(SqliteConnection connection, ChainEntry entry)
+    {
+        var documents = connection.Query("SELECT name, sha256 FROM document WHERE entry = ?1", r => new DocumentHash(r.GetString(0), r.GetString(1)), entry.Sequence);
+        return RunJournal.ContentOf(documents) == entry.Content ? null : $"The document hashes of run {entry.Run} differ from what entry {entry.Sequence} of the chain vouches for: they were altered.";
+    }
+
+    private static string Altered(ChainEntry entry) => $"The record of run {entry.Run} was altered: its hash is not the one in entry {entry.Sequence} of the chain.";
+}

@@ -1,0 +1,138 @@
+using System.Globalization;
+using System.Text;
+using Microsoft.Data.Sqlite;
+using RiskWorker.Domain.Runs;
+using RiskWorker.Storage.Feed.Rows;
+
+namespace RiskWorker.Storage.Sqlite;
+
+/// <summary>
+/// The stored runs. Nothing here is ever changed or removed; each run is vouched for by an entry of the chain, and its documents by a later one.
+/// </summary>
+public sealed class RunJournal
+{
+    private const string SummaryColumns = "r.run, attempt, as_of, status, evidence, model, scenarios, started, finished, snapshot, figures, c.hash";
+    private const string FromRuns = "FROM run r JOIN chain c ON c.run = r.run AND c.kind = 'results'";
+
+    private readonly RiskStore _store;
+
+    internal RunJournal(RiskStore store) => _store = store;
+
+    /// <summary>Stores a run and chains it, in one transaction.</summary>
+    /// <returns>The head of the chain: the hash that the run's documents print.</returns>
+    /// <exception cref="StoreException">A run of this id, or of this attempt at the same inputs, is stored already; or the store cannot be written.</exception>
+    public string Append(RunRecord record)
+    {
+        ArgumentNullException.ThrowIfNull(record);
+        var json = RecordJson.Write(record);
+        var content = SnapshotHash.OfBytes(json);
+        var packed = RecordJson.Pack(json);
+        return _store.Write(connection =>
+        {
+            if (connection.Scalar("SELECT run FROM run WHERE run = ?1 OR snapshot = ?2 AND attempt = ?3", record.Run, record.Snapshot, record.Attempt) is { } taken)
+                throw new StoreException(StoreFault.Refused, $"The run {record.Run} (attempt {record.Attempt}) cannot be stored: run {taken} is stored already.");
+            RunRows.Of(record, content).Insert(connection, packed);
+            return Chain(connection, ChainEntryKind.Results, record.Run, content).Hash;
+        });
+    }
+
+    /// <summary>Chains the hashes of the documents rendered from a stored run.</summary>
+    /// <returns>The head of the chain.</returns>
+    /// <exception cref="StoreException">The run is not stored, or the store cannot be written.</exception>
+    public string AppendDocuments(string run, IReadOnlyList<DocumentHash> documents)
+    {
+        ArgumentNullException.ThrowIfNull(documents);
+        return _store.Write(connection =>
+        {
+            if (connection.Scalar("SELECT 1 FROM run WHERE run = ?1", run) is null)
+                throw new StoreException(StoreFault.Refused, $"The run {run} is not stored, so no document of it can be.");
+            var entry = Chain(connection, ChainEntryKind.Documents, run, ContentOf(documents));
+            foreach (var (name, sha256) in documents)
+                connection.Run("INSERT INTO document (entry, name, sha256) VALUES (?1, ?2, ?3)", entry.Sequence, name, sha256);
+            return entry.Hash;
+        });
+    }
+
+    /// <summary>The run with this id, or the only one whose id begins so; null when there is none.</summary>
+    /// <exception cref="StoreException">Several runs begin so, or the record is damaged.</exception>
+    public StoredRun? Find(string runOrPrefix)
+    {
+        ArgumentException.ThrowIfNullOrEmpty(runOrPrefix);
+        return _store.Read(connection =>
+        {
+            var matches = connection.Query($"SELECT r.run, r.record, c.hash {FromRuns} WHERE substr(r.run, 1, length(?1)) = ?1 ORDER BY r.run LIMIT 2",
+                r => (Run: r.GetString(0), Packed: r.GetFieldValue<byte[]>(1), Head: r.GetString(2)), runOrPrefix);
+            if (matches.Count > 1 && matches[0].Run != runOrPrefix) throw new StoreException(StoreFault.Refused, $"Several runs begin with '{runOrPrefix}', {matches[0].Run} and {matches[1].Run} among them. Give more digits.");
+            return matches.Count == 0 ? null : new StoredRun(Unpacked(matches[0].Run, matches[0].Packed), matches[0].Head);
+        });
+    }
+
+    /// <summary>All runs, in the order in which they were stored.</summary>
+    public IReadOnlyList<RunSummary> List() => Summaries("ORDER BY r.sequence");
+
+    /// <summary>The runs of the same inputs, by attempt.</summary>
+    public IReadOnlyList<RunSummary> AttemptsOf(string snapshotHash) => Summaries("WHERE r.snapshot = ?1 ORDER BY r.attempt", snapshotHash);
+
+    /// <summary>
+    /// What a run at <paramref name="asOf"/> is compared with: of the runs of the model that did not fail, the newest of the latest earlier date;
+    /// where there is none, the newest at the same date.
+    /// </summary>
+    public PreviousRun? PreviousRun(DateOnly asOf, string model) => _store.Read(connection =>
+    {
+        var found = connection.Query(
+            "SELECT run, record FROM run WHERE model = ?1 AND status <> 'failed' AND as_of <= ?2 ORDER BY as_of = ?2, as_of DESC, sequence DESC LIMIT 1",
+            r => (Run: r.GetString(0), Packed: r.GetFieldValue<byte[]>(1)), model, Iso.Of(asOf));
+        return found.Count == 0 ? null : Previous(Unpacked(found[0].Run, found[0].Packed));
+    });
+
+    /// <summary>The chain in stored order.</summary>
+    public IReadOnlyList<ChainEntry> ReadChain() => _store.Use(RunAudit.Chain);
+
+    /// <summary>The documents chained for a run, by name; of one rendered twice the newer.</summary>
+    public IReadOnlyList<DocumentHash> DocumentsOf(string run) => _store.Use(connection => connection.Query(
+        "SELECT name, sha256, max(entry) FROM document d JOIN chain c ON c.sequence = d.entry WHERE c.run = ?1 GROUP BY name ORDER BY name",
+        r => new DocumentHash(r.GetString(0), r.GetString(1)), run));
+
+    /// <summary>The first thing wrong with the chain, the records or what is kept beside them, as a sentence; null when all is whole.</summary>
+    public string? FirstBreak() => _store.Read(RunAudit.FirstBreak);
+
+    internal static string ContentOf(IEnumerable<DocumentHash> documents)
+    {
+        var text = new StringBuilder();
+        foreach (var (name, sha256) in documents.OrderBy(d => d.Name, StringComparer.Ordinal)) text.Append(sha256).Append(' ').Append(name).Append('\n');
+        return SnapshotHash.OfText(text.ToString());
+    }
+
+    private static ChainEntry Chain(SqliteConnection connection, ChainEntryKind kind, string run, string content)
+    {
+        var last = connection.Query($"SELECT {RunAudit.ChainColumns} FROM chain ORDER BY sequence DESC LIMIT 1", RunAudit.Entry).SingleOrDefault();
+        var entry = RunChain.Append(last, kind, run, content);
+        connection.Run($"INSERT INTO chain ({RunAudit.ChainColumns}) VALUES (?1, ?2, ?3, ?4, ?5, ?6)", entry.Sequence, Spelling.Of(kind), run, content, entry.Previous, entry.Hash);
+        return entry;
+    }
+
+    private List<RunSummary> Summaries(string condition, params object?[] values) => _store.Use(connection => connection.Query(
+        $"SELECT {SummaryColumns} {FromRuns} {condition}",
+        r => new RunSummary(r.GetString(0), r.GetInt32(1), Iso.Date(r.GetString(2)), Spelling.Of<RunStatus>()[r.GetString(3)], Spelling.Of<EvidenceKind>()[r.GetString(4)],
+            r.GetString(5), r.IsDBNull(6) ? null : r.GetInt32(6), Time(r.GetString(7)), Time(r.GetString(8)), r.GetString(9), r.GetString(10), r.GetString(11)),
+        values));
+
+    private static DateTimeOffset Time(string text) => DateTimeOffset.Parse(text, CultureInfo.InvariantCulture);
+
+    private static RunRecord Unpacked(string run, byte[] packed)
+    {
+        try
+        {
+            return RecordJson.Read(RecordJson.Unpack(packed));
+        }
+        catch (Exception error) when (error is InvalidDataException or System.Text.Json.JsonException)
+        {
+            throw new StoreException(StoreFault.Corrupt, $"The record of run {run} cannot be read: {error.Message} Restore a backup.", error);
+        }
+    }
+
+    private static PreviousRun Previous(RunRecord record) => new(
+        record.Run, record.AsOf, record.Results.Simulation?.Scenarios ?? 0, record.Settings.Model.Name, record.SettingsHash,
+        [.. record.Results.Nodes.Select(n => new PreviousNode(n.Book, n.Value, n.Measures))],
+        [.. record.Results.Limits.Select(l => new PreviousLimit(l.Limit.Name, l.Used ?? double.NaN, l.Status, l.StatusSince ?? record.AsOf))]);
+}

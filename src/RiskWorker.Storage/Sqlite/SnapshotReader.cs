@@ -1,0 +1,137 @@
+using System.Globalization;
+using Microsoft.Data.Sqlite;
+using RiskWorker.Domain.Books;
+using RiskWorker.Domain.Market;
+using RiskWorker.Domain.Runs;
+using RiskWorker.Storage.Feed.Rows;
+
+namespace RiskWorker.Storage.Sqlite;
+
+/// <summary>
+/// Takes snapshots from a store. What does not depend on the as-of date is read and hashed once for each load, so many dates cost little more than one;
+/// a load or a run that is stored in between is seen by the next snapshot. It may be used from several threads.
+/// </summary>
+public sealed class SnapshotReader(RiskStore store)
+{
+    /// <summary>Observation dates before the as-of date whose runs and profit are read: 250 days are counted, and gaps need a few more.</summary>
+    public const int Window = 260;
+
+    private readonly Lock _gate = new();
+    private readonly CountableRuns _runs = new();
+    private FeedState? _state;
+
+    /// <summary>Dates with positions, ascending.</summary>
+    public IReadOnlyList<DateOnly> PositionDates => Reading(_ => _state!.PositionDates);
+
+    /// <summary>Dates with an observation of a listed factor, ascending.</summary>
+    public IReadOnlyList<DateOnly> ObservationDates => Reading(_ => _state!.Observations.Dates.ToArray());
+
+    /// <summary>
+    /// Freezes what a run for <paramref name="asOf"/> reads. A date without positions or observations gives a snapshot without them; the checks say so.
+    /// </summary>
+    /// <param name="asOf">The date.</param>
+    /// <param name="settings">Settings that figures depend on.</param>
+    /// <param name="model">Name of the model whose earlier runs are counted.</param>
+    /// <exception cref="StoreException">The store cannot be read.</exception>
+    public Snapshot Take(DateOnly asOf, RunSettings settings, string model)
+    {
+        ArgumentNullException.ThrowIfNull(settings);
+        ArgumentNullException.ThrowIfNull(model);
+        return Reading(connection => Take(connection, _state!, asOf, settings, model));
+    }
+
+    private T Reading<T>(Func<SqliteConnection, T> work)
+    {
+        lock (_gate)
+        {
+            return store.Read(connection =>
+            {
+                var load = Convert.ToInt64(connection.Scalar("SELECT max(id) FROM feed_load") ?? 0L, CultureInfo.InvariantCulture);
+                if (_state?.Load != load) _state = new(connection, load);
+                return work(connection);
+            });
+        }
+    }
+
+    private Snapshot Take(SqliteConnection connection, FeedState state, DateOnly asOf, RunSettings settings, string model)
+    {
+        _runs.Follow(connection);
+        var observations = state.Observations.UpTo(asOf);
+        var from = observations.Count == 0 ? asOf : observations.Dates[Math.Max(0, observations.Count - 1 - Window)];
+        var profit = state.Profit(from, asOf);
+        var counted = _runs.Between(connection, model, from, asOf);
+        var positions = Positions(connection, asOf);
+        var before = Array.FindLastIndex(state.PositionDates, date => date < asOf);
+        var previous = before < 0 ? null : Dated(connection, state.PositionDates[before]);
+        var earlier = WithoutProfit(observations, counted)
+            .Where(day => !(day.To == asOf && day.From == previous?.Date) && Array.BinarySearch(state.PositionDates, day.From) >= 0)
+            .Select(day => Dated(connection, day.From)).ToArray();
+        var withCovariance = settings.Model.Covariance == CovarianceEstimator.Given;
+        return new()
+        {
+            AsOf = asOf,
+            Settings = settings,
+            Books = state.Reference.Books,
+            Factors = state.Reference.Factors,
+            Observations = observations,
+            Adjustments = [.. state.Reference.Adjustments.Where(a => a.Date <= asOf)],
+            Holidays = state.Reference.Holidays,
+            Instruments = state.Reference.Instruments,
+            Positions = positions,
+            Previous = previous,
+            Limits = state.Reference.Limits,
+            ProfitAndLoss = profit,
+            Covariance = withCovariance ? state.Reference.Covariance : [],
+            CountedRuns = counted,
+            EarlierPositions = earlier,
+            Hash = SnapshotHash.Of(
+            [
+                SnapshotLeaves.AsOf(asOf, previous?.Date), new("settings", SettingsHash.Of(settings)), new("model", SnapshotHash.OfText(model)),
+                .. state.Leaves(asOf, observations.Count, profit, withCovariance),
+                SnapshotLeaves.Positions(asOf, positions), .. earlier.Append(previous).OfType<DatedPositions>().DistinctBy(d => d.Date).Select(d => SnapshotLeaves.Positions(d.Date, d.Positions)),
+                .. counted.Select(SnapshotLeaves.Run),
+            ]),
+        };
+    }
+
+    /// <summary>Dates of counted runs and the observation dates that follow them, where no counted run holds the profit between the two.</summary>
+    private static IEnumerable<(DateOnly From, DateOnly To)> WithoutProfit(ObservationHistory observations, IReadOnlyList<CountedRun> counted)
+    {
+        var profitFrom = counted.ToDictionary(c => c.AsOf, c => c.HypotheticalDate);
+        foreach (var run in counted)
+        {
+            var at = observations.IndexOf(run.AsOf);
+            var next = at >= 0 ? at + 1 : ~at;
+            if (next == observations.Count) continue;
+            var to = observations.Dates[next];
+            if (profitFrom.GetValueOrDefault(to) != run.AsOf) yield return (run.AsOf, to);
+        }
+    }
+
+    private static DatedPositions Dated(SqliteConnection connection, DateOnly date) => new(date, Positions(connection, date));
+
+    private static Position[] Positions(SqliteConnection connection, DateOnly date)
+    {
+        var names = new HashSet<string>(StringComparer.Ordinal);
+        var positions = connection.Query("SELECT book, instrument, quantity, trade, market_value FROM position WHERE as_of = ?1",
+            r => new Position(Shared(names, r.GetString(0)), Shared(names, r.GetString(1)), r.Number(2)!.Value, r.Text(3), r.Number(4)), Iso.Of(date)).ToArray();
+        Array.Sort(positions, Canonical);
+        return positions;
+    }
+
+    private static string Shared(HashSet<string> names, string name)
+    {
+        if (names.TryGetValue(name, out var known)) return known;
+        names.Add(name);
+        return name;
+    }
+
+    private static int Canonical(Position a, Position b)
+    {
+        var order = string.CompareOrdinal(a.Book, b.Book);
+        if (order == 0) order = string.CompareOrdinal(a.Instrument, b.Instrument);
+        if (order == 0) order = string.CompareOrdinal(a.Trade, b.Trade);
+        if (order == 0) order = a.Quantity.CompareTo(b.Quantity);
+        return order != 0 ? order : Nullable.Compare(a.MarketValue, b.MarketValue);
+    }
+}
