@@ -6,19 +6,18 @@ namespace RiskWorker.Host;
 public static class Composition
 {
     /// <summary>The use cases of this process.</summary>
-    public static UseCaseSet UseCases()
+    /// <param name="clock">Gives the times that go on record.</param>
+    public static UseCaseSet UseCases(TimeProvider clock)
     {
+        var refresh = new FeedRefresh(clock);
         return new()
         {
-            Load = Pending<LoadRequest, LoadReport>,
-            Measure = Pending<MeasureRequest, MeasureReport>,
-            ListRuns = Pending<ListRunsRequest, IReadOnlyList<RunSummary>>,
-            ShowRun = Pending<ShowRunRequest, ShowRunReport>,
-            Holidays = Pending<HolidaysRequest, IReadOnlyList<Domain.Market.Holiday>>,
-            RecordInterrupted = Pending<InterruptedRun, bool>,
+            Load = new LoadFeed(refresh).RunAsync,
+            Measure = new MeasureRun(refresh, clock).RunAsync,
+            ListRuns = StoredRuns.ListAsync,
+            ShowRun = StoredRuns.ShowAsync,
+            Holidays = new ServiceRecords(refresh).HolidaysAsync,
+            RecordInterrupted = ServiceRecords.RecordInterruptedAsync,
         };
     }
-
-    private static Task<TReport> Pending<TRequest, TReport>(TRequest request, IProgress<WorkProgress> progress, CancellationToken cancellationToken) =>
-        throw new NotSupportedException($"No use case takes a {typeof(TRequest).Name} yet.");
 }

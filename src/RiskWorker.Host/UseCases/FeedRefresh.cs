@@ -17,6 +17,6 @@ public sealed class FeedRefresh(TimeProvider clock)
 
     private sealed class FeedSteps(IProgress<WorkProgress> progress) : IProgress<FeedProgress>
     {
-        public void Report(FeedProgress value) => progress.Report(value.AsWork());
+        public void Report(FeedProgress value) => progress.Report(new("load", 0, $"{value.File}: {value.Rows:N0} rows {(value.Storing ? "stored" : "checked")}"));
     }
 }

@@ -1,6 +1,21 @@
+using RiskWorker.Domain.Runs;
 using RiskWorker.Storage.Sqlite;
 
 namespace RiskWorker.Host.UseCases;
+
+/// <summary>Loads the feed.</summary>
+public sealed record LoadRequest(Workspace Workspace);
+
+/// <summary>What loading did.</summary>
+/// <param name="Files">Every file read, in order.</param>
+/// <param name="Warnings">Unknown columns, ignored terms and the like.</param>
+public sealed record LoadReport(IReadOnlyList<LoadedFile> Files, IReadOnlyList<Finding> Warnings);
+
+/// <summary>One file of the feed.</summary>
+/// <param name="File">Its name.</param>
+/// <param name="Rows">Its rows.</param>
+/// <param name="IsNew">False where the store held the same content already.</param>
+public sealed record LoadedFile(string File, long Rows, bool IsNew);
 
 /// <summary>Loads the feed into the store.</summary>
 public sealed class LoadFeed(FeedRefresh refresh)

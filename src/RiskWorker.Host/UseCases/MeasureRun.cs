@@ -7,9 +7,12 @@ using RiskWorker.Storage.Sqlite;
 namespace RiskWorker.Host.UseCases;
 
 /// <summary>One complete run: feed, snapshot, calculation, record, documents; or a span of past dates, kept without documents.</summary>
-public sealed class MeasureRun(FeedRefresh refresh, RunDocuments documents, TimeProvider clock)
+public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
 {
     private const int BackfillScenarios = 20_000;
+
+    // The steps of one past date would only flicker: the span reports dates.
+    private static readonly Progress<WorkProgress> s_quiet = new();
 
     /// <summary>Runs.</summary>
     /// <exception cref="DataRefusedException">The feed was refused, or there is no date to run on.</exception>
@@ -44,7 +47,7 @@ public sealed class MeasureRun(FeedRefresh refresh, RunDocuments documents, Time
         var outcome = Calculate(work, asOf, work.Settings, started, load);
         var stored = new StoredRun(outcome, work.Store.Runs.Append(outcome));
         work.Progress.Report(new("report", 0));
-        var written = documents.Write(stored, work.Request.Workspace.OutFolder);
+        var written = RunDocuments.Write(stored, work.Request.Workspace.OutFolder);
         work.Store.Runs.AppendDocuments(outcome.Run, written.Hashes);
         return new MeasureReport
         {
@@ -67,7 +70,7 @@ public sealed class MeasureRun(FeedRefresh refresh, RunDocuments documents, Time
             work.Progress.Report(new("backfill", (double)i / dates.Count, $"{dates[i]:yyyy-MM-dd}"));
             last = Backfill(work, dates[i], work.Settings);
         }
-        return new MeasureReport { Record = last!, Folder = null, Documents = [], Json = documents.JsonOf(last!), ExitCode = ExitCodeOf(last!), Backfilled = dates.Count };
+        return new MeasureReport { Record = last!, Folder = null, Documents = [], Json = RunDocuments.JsonOf(last!), ExitCode = ExitCodeOf(last!), Backfilled = dates.Count };
     }
 
     // The newest past dates with positions that have no run of this model, oldest first.
@@ -93,7 +96,7 @@ public sealed class MeasureRun(FeedRefresh refresh, RunDocuments documents, Time
 
     private RunRecord Backfill(Work work, DateOnly asOf, RunSettings settings)
     {
-        var record = Calculate(work with { Progress = Quiet.Instance }, asOf, settings, clock.GetUtcNow(), 0) with { Evidence = EvidenceKind.Backfilled };
+        var record = Calculate(work with { Progress = s_quiet }, asOf, settings, clock.GetUtcNow(), 0) with { Evidence = EvidenceKind.Backfilled };
         work.Store.Runs.Append(record);
         return record;
     }
@@ -101,7 +104,7 @@ public sealed class MeasureRun(FeedRefresh refresh, RunDocuments documents, Time
     private RunRecord Calculate(Work work, DateOnly asOf, RunSettings settings, DateTimeOffset started, double load)
     {
         var watch = Stopwatch.StartNew();
-        var snapshot = work.Reader.Take(asOf, settings);
+        var snapshot = work.Reader.Take(asOf, settings, settings.Model.Name);
         load += watch.Elapsed.TotalSeconds;
         var calculator = new RunCalculator(snapshot, work.Store.FeedWarnings, work.Request.Threads ?? Environment.ProcessorCount, new SimulationSteps(work.Progress), work.Cancellation);
         var results = calculator.Calculate();
@@ -129,14 +132,5 @@ public sealed class MeasureRun(FeedRefresh refresh, RunDocuments documents, Time
     private sealed class SimulationSteps(IProgress<WorkProgress> progress) : IProgress<RunProgress>
     {
         public void Report(RunProgress value) => progress.Report(new(value.Phase, Math.Min(1, (double)value.Done / value.Planned), $"{value.Planned:N0} scenarios"));
-    }
-
-    private sealed class Quiet : IProgress<WorkProgress>
-    {
-        public static Quiet Instance { get; } = new();
-
-        public void Report(WorkProgress value)
-        {
-        }
     }
 }

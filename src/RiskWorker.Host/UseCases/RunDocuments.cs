@@ -16,16 +16,16 @@ namespace RiskWorker.Host.UseCases;
 public sealed record WrittenDocuments(string Folder, IReadOnlyList<string> Paths, IReadOnlyList<DocumentHash> Hashes, string Json);
 
 /// <summary>Renders a stored run. A folder appears whole, under its final name, or not at all.</summary>
-public sealed class RunDocuments
+public static class RunDocuments
 {
     /// <summary>File name of the daily limit report.</summary>
     public const string LimitReportName = "limit-report.pdf";
 
     /// <summary>The daily limit report of a run.</summary>
-    public byte[] LimitReportOf(StoredRun run) => PdfRenderer.Render(LimitReport.Build(run.Record, run.Head));
+    public static byte[] LimitReportOf(StoredRun run) => PdfRenderer.Render(LimitReport.Build(run.Record, run.Head));
 
     /// <summary>The text of a run's <c>results.json</c>.</summary>
-    public string JsonOf(RunRecord record)
+    public static string JsonOf(RunRecord record)
     {
         using var stream = new MemoryStream();
         ResultsJson.Write(record, stream);
@@ -33,7 +33,7 @@ public sealed class RunDocuments
     }
 
     /// <summary>Writes OUT/AS-OF/RUN-ID with the report, results.json and results.csv.</summary>
-    public WrittenDocuments Write(StoredRun run, string outFolder)
+    public static WrittenDocuments Write(StoredRun run, string outFolder)
     {
         var watch = Stopwatch.StartNew();
         var report = LimitReportOf(run);
