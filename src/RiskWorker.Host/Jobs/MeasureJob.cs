@@ -18,8 +18,9 @@ public sealed class MeasureJob(
         var schedule = request.Configuration.Schedules.Single(s => s.Name == context.JobDetail.Key.Name);
         var due = context.ScheduledFireTimeUtc ?? context.FireTimeUtc;
         using var stop = CancellationTokenSource.CreateLinkedTokenSource(cancellationToken, grace.Over);
-        await MeasureAsync(schedule, due, stop.Token);
-        if (stop.IsCancellationRequested) return;
+        if (grace.HasBegun) await RecordInterruptionAsync(schedule, due, clock.GetUtcNow()); // it waited behind the run that the stop waits for
+        else await MeasureAsync(schedule, due, stop.Token);
+        if (grace.HasBegun) return;
         if (schedule.DeadlineAfter(due) is { } deadline && clock.GetUtcNow() > deadline) ServiceLog.DeadlineMissed(logger, schedule.Name, Instants.Utc(due), Instants.Utc(deadline));
         await businessDays.RunAsync(context.Scheduler, new PhaseLog(logger, schedule.Name), stop.Token);
     }

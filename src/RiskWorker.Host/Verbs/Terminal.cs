@@ -47,5 +47,9 @@ public sealed class Terminal(TextWriter output, TextWriter error, bool isInterac
         return await running;
     }
 
-    private static IAnsiConsole On(TextWriter writer) => AnsiConsole.Create(new() { Out = new AnsiConsoleOutput(writer) });
+    private static IAnsiConsole On(TextWriter writer)
+    {
+        var target = new AnsiConsoleOutput(writer);
+        return AnsiConsole.Create(new() { Out = target, Ansi = target.IsTerminal ? AnsiSupport.Detect : AnsiSupport.No });
+    }
 }
