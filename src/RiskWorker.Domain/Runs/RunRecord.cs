@@ -294,7 +294,7 @@ public sealed record PreviousNode(string Book, double Value, IReadOnlyList<Measu
 
 /// <summary>A limit in the previous run.</summary>
 /// <param name="Limit">Its name.</param>
-/// <param name="Used">Utilisation.</param>
+/// <param name="Used">Utilisation; null where it could not be decided.</param>
 /// <param name="Status">Status.</param>
 /// <param name="StatusSince">First as-of date of the unbroken row of runs with that status.</param>
-public sealed record PreviousLimit(string Limit, double Used, Limits.LimitStatus Status, DateOnly StatusSince);
+public sealed record PreviousLimit(string Limit, double? Used, Limits.LimitStatus Status, DateOnly StatusSince);

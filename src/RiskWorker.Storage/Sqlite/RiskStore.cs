@@ -25,6 +25,7 @@ public sealed class RiskStore : IDisposable
         }.ToString();
         _patience = string.Create(CultureInfo.InvariantCulture, $"PRAGMA busy_timeout = {(long)patience.TotalMilliseconds}");
         Runs = new(this);
+        Interruptions = new(this);
     }
 
     /// <summary>The file.</summary>
@@ -32,6 +33,9 @@ public sealed class RiskStore : IDisposable
 
     /// <summary>The runs that it keeps.</summary>
     public RunJournal Runs { get; }
+
+    /// <summary>Scheduled runs that were stopped before their end.</summary>
+    public InterruptionLog Interruptions { get; }
 
     /// <summary>
     /// Opens the store at <paramref name="path"/>; creates file and folder where they are missing and applies the migrations that it lacks.

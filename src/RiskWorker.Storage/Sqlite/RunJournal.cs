@@ -11,7 +11,7 @@ namespace RiskWorker.Storage.Sqlite;
 /// </summary>
 public sealed class RunJournal
 {
-    private const string SummaryColumns = "r.run, attempt, as_of, status, evidence, model, scenarios, started, finished, snapshot, figures, c.hash";
+    private const string SummaryColumns = "r.run, attempt, as_of, status, evidence, model, scenarios, started, finished, snapshot, figures, c.hash, seed, breached";
     private const string FromRuns = "FROM run r JOIN chain c ON c.run = r.run AND c.kind = 'results'";
 
     private readonly RiskStore _store;
@@ -114,7 +114,7 @@ public sealed class RunJournal
     private List<RunSummary> Summaries(string condition, params object?[] values) => _store.Use(connection => connection.Query(
         $"SELECT {SummaryColumns} {FromRuns} {condition}",
         r => new RunSummary(r.GetString(0), r.GetInt32(1), Iso.Date(r.GetString(2)), Spelling.Of<RunStatus>()[r.GetString(3)], Spelling.Of<EvidenceKind>()[r.GetString(4)],
-            r.GetString(5), r.IsDBNull(6) ? null : r.GetInt32(6), Time(r.GetString(7)), Time(r.GetString(8)), r.GetString(9), r.GetString(10), r.GetString(11)),
+            r.GetString(5), r.IsDBNull(6) ? null : r.GetInt32(6), Time(r.GetString(7)), Time(r.GetString(8)), r.GetString(9), r.GetString(10), r.GetString(11), ulong.Parse(r.GetString(12), CultureInfo.InvariantCulture), r.GetInt32(13)),
         values));
 
     private static DateTimeOffset Time(string text) => DateTimeOffset.Parse(text, CultureInfo.InvariantCulture);
@@ -134,5 +134,5 @@ public sealed class RunJournal
     private static PreviousRun Previous(RunRecord record) => new(
         record.Run, record.AsOf, record.Results.Simulation?.Scenarios ?? 0, record.Settings.Model.Name, record.SettingsHash,
         [.. record.Results.Nodes.Select(n => new PreviousNode(n.Book, n.Value, n.Measures))],
-        [.. record.Results.Limits.Select(l => new PreviousLimit(l.Limit.Name, l.Used ?? double.NaN, l.Status, l.StatusSince ?? record.AsOf))]);
+        [.. record.Results.Limits.Select(l => new PreviousLimit(l.Limit.Name, l.Used, l.Status, l.StatusSince ?? record.AsOf))]);
 }

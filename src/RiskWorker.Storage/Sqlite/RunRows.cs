@@ -1,5 +1,6 @@
 using System.Globalization;
 using Microsoft.Data.Sqlite;
+using RiskWorker.Domain.Limits;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Storage.Feed.Rows;
 
@@ -8,7 +9,7 @@ namespace RiskWorker.Storage.Sqlite;
 /// <summary>The columns that stand beside a run's record: what queries need without unpacking it. A pure function of the record.</summary>
 internal sealed record RunRows(IReadOnlyList<object?> Run, IReadOnlyList<CountedVar> Vars, IReadOnlyList<BookAmount> Profit)
 {
-    public const string Columns = "run, attempt, as_of, status, evidence, model, scenarios, started, finished, snapshot, settings_hash, figures, version, epoch, content, profit_from";
+    public const string Columns = "run, attempt, as_of, status, evidence, model, scenarios, started, finished, snapshot, settings_hash, figures, version, epoch, content, profit_from, seed, breached";
 
     private static readonly Horizon s_oneDay = new(1);
 
@@ -18,7 +19,7 @@ internal sealed record RunRows(IReadOnlyList<object?> Run, IReadOnlyList<Counted
         return new(
             [
                 record.Run, (long)record.Attempt, Iso.Of(record.AsOf), Spelling.Of(record.Status), Spelling.Of(record.Evidence), record.Settings.Model.Name, (long?)results.Simulation?.Scenarios,
-                Utc(record.Started), Utc(record.Finished), record.Snapshot, record.SettingsHash, record.Figures, record.Version, (long)record.Epoch, content, Iso.Of(results.Hypothetical?.From),
+                Utc(record.Started), Utc(record.Finished), record.Snapshot, record.SettingsHash, record.Figures, record.Version, (long)record.Epoch, content, Iso.Of(results.Hypothetical?.From), record.Settings.Simulation.Seed.ToString(CultureInfo.InvariantCulture), (long)results.Limits.Count(l => l.Status == LimitStatus.Breached),
             ],
             [
                 .. results.Nodes.SelectMany(n => n.Measures
@@ -31,7 +32,7 @@ internal sealed record RunRows(IReadOnlyList<object?> Run, IReadOnlyList<Counted
 
     public void Insert(SqliteConnection connection, byte[] packed)
     {
-        connection.Run($"INSERT INTO run ({Columns}, record) VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, ?12, ?13, ?14, ?15, ?16, ?17)", [.. Run, packed]);
+        connection.Run($"INSERT INTO run ({Columns}, record) VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, ?12, ?13, ?14, ?15, ?16, ?17, ?18, ?19)", [.. Run, packed]);
         using var insertVar = new Statement(connection, "INSERT INTO run_var (run, book, confidence, value) VALUES (?1, ?2, ?3, ?4)", 4);
         foreach (var (book, confidence, value) in Vars) insertVar.Set(0, Run[0]).Set(1, book).Set(2, Text(confidence)).Set(3, value).Run();
         using var insertProfit = new Statement(connection, "INSERT INTO run_profit (run, book, amount) VALUES (?1, ?2, ?3)", 3);

@@ -15,9 +15,11 @@ namespace RiskWorker.Storage.Sqlite;
 /// <param name="Snapshot">Hash of its inputs.</param>
 /// <param name="Figures">Hash of its figures.</param>
 /// <param name="Head">Hash of its results entry in the chain: the head that its documents print.</param>
+/// <param name="Seed">Seed of its draws.</param>
+/// <param name="Breached">Limits that it found breached.</param>
 public sealed record RunSummary(
     string Run, int Attempt, DateOnly AsOf, RunStatus Status, EvidenceKind Evidence, string Model, int? Scenarios,
-    DateTimeOffset Started, DateTimeOffset Finished, string Snapshot, string Figures, string Head);
+    DateTimeOffset Started, DateTimeOffset Finished, string Snapshot, string Figures, string Head, ulong Seed, int Breached);
 
 /// <summary>A stored run: its record, and the hash that its documents print.</summary>
 /// <param name="Record">The record.</param>

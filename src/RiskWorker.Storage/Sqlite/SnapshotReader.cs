@@ -26,6 +26,9 @@ public sealed class SnapshotReader(RiskStore store)
     /// <summary>Dates with an observation of a listed factor, ascending.</summary>
     public IReadOnlyList<DateOnly> ObservationDates => Reading(_ => _state!.Observations.Dates.ToArray());
 
+    /// <summary>Holidays of every calendar.</summary>
+    public IReadOnlyList<Holiday> Holidays => Reading(_ => _state!.Reference.Holidays);
+
     /// <summary>
     /// Freezes what a run for <paramref name="asOf"/> reads. A date without positions or observations gives a snapshot without them; the checks say so.
     /// </summary>

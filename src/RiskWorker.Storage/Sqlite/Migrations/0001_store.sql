@@ -170,6 +170,8 @@ CREATE TABLE run (
     epoch         INTEGER NOT NULL,
     content       TEXT NOT NULL,
     profit_from   TEXT,
+    seed          TEXT NOT NULL,
+    breached      INTEGER NOT NULL,
     record        BLOB NOT NULL,
     UNIQUE (snapshot, attempt)
 ) STRICT;

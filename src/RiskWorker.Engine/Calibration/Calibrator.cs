@@ -1,0 +1,91 @@
+using RiskWorker.Domain.Market;
+using RiskWorker.Domain.Runs;
+
+namespace RiskWorker.Engine.Calibration;
+
+/// <summary>From observations to the law of the factors' moves. Its bits depend on the snapshot alone.</summary>
+public static class Calibrator
+{
+    /// <summary>Calibrates the model of record of <paramref name="snapshot"/>.</summary>
+    /// <exception cref="CalibrationException">The data cannot be used.</exception>
+    public static CalibratedModel Calibrate(Snapshot snapshot) => Calibrate(snapshot, ShockTable.From(snapshot));
+
+    /// <summary>The same with the snapshot's <paramref name="table"/> of shocks, where it is at hand.</summary>
+    /// <exception cref="CalibrationException">The data cannot be used.</exception>
+    public static CalibratedModel Calibrate(Snapshot snapshot, ShockTable table)
+    {
+        var (model, factors) = (snapshot.Settings.Model, snapshot.Factors);
+        var estimated = model.Covariance != CovarianceEstimator.Given;
+        var window = factors.Count > 0 && (estimated || Drift.NeedsShocks(model)) ? ShockWindow.Newest(table, model.Window) : null;
+        if (window is not null) RequirePositivePrices(table, window);
+        var last = LastObservations(table);
+        var covariance = model.Covariance switch
+        {
+            CovarianceEstimator.Given => GivenCovariance.Of(snapshot.Covariance, factors),
+            _ when window is null => [],
+            CovarianceEstimator.Ewma => CovarianceEstimation.Ewma(window, factors.Count, model.Lambda),
+            _ => CovarianceEstimation.Equal(window, factors.Count),
+        };
+        var correlation = MovingCorrelation.Of(covariance, factors.Count);
+        return new()
+        {
+            Factors = factors,
+            Levels = [.. last.Select((t, j) => table.Values(j)[t])],
+            LevelDates = [.. last.Select(t => table.Dates[t])],
+            Deviations = correlation.Deviations,
+            DailyDrift = Drift.Daily(model, factors, correlation.Deviations, window),
+            Moving = correlation.Order,
+            Rank = correlation.Factor.Rank,
+            Lower = correlation.Factor.Lower,
+            RepairDistance = correlation.RepairDistance,
+            Shocks = estimated ? window?.Days.Count ?? 0 : 0,
+            From = window?.Days[0],
+            To = window?.Days[^1],
+            DroppedDays = window?.Dropped ?? [],
+            DropCauses = window?.DropCauses ?? [],
+            Proxies = window is null ? [] : Proxies(factors, window),
+            Adjustments = Adjustments(table, window, last),
+            ClosedDayObservations = Enumerable.Range(0, factors.Count).Sum(table.ClosedDayObservations),
+        };
+    }
+
+    /// <summary>Index of the date of each factor's level.</summary>
+    private static int[] LastObservations(ShockTable table)
+    {
+        var last = new int[table.Factors.Count];
+        for (var j = 0; j < last.Length; j++)
+        {
+            last[j] = table.LastObserved(j);
+            if (last[j] < 0) throw new CalibrationException(table.Factors[j].Name, "It has no observation on an open day of its calendar.");
+            RequirePositive(table, j, last[j]);
+        }
+        return last;
+    }
+
+    private static void RequirePositivePrices(ShockTable table, ShockWindow window)
+    {
+        for (var j = 0; j < table.Factors.Count; j++)
+        {
+            for (var t = FirstUsed(table, window, j); t < table.Dates.Length; t++) RequirePositive(table, j, t);
+        }
+    }
+
+    private static void RequirePositive(ShockTable table, int factor, int t)
+    {
+        if (table.Factors[factor].Shock == ShockKind.Lognormal && table.Values(factor)[t] <= 0)
+            throw new CalibrationException(table.Factors[factor].Name, $"Its value on {table.Dates[t]:yyyy-MM-dd} is {table.Values(factor)[t]:r}; a factor with lognormal shocks must be positive.");
+    }
+
+    /// <summary>Index of the oldest value of the factor that the window reads: that of the business day before its first day.</summary>
+    private static int FirstUsed(ShockTable table, ShockWindow window, int factor) =>
+        table.Previous(factor, window.First) is var before and >= 0 ? before : window.First;
+
+    private static UsedProxy[] Proxies(IReadOnlyList<Factor> factors, ShockWindow window) =>
+        [.. factors.Select((factor, j) => (factor, days: window.Filled[j]))
+            .Where(f => f.days > 0)
+            .Select(f => new UsedProxy(f.factor.Name, f.factor.Proxy!, f.factor.Beta!.Value, f.days, (double)f.days / window.Days.Count))];
+
+    private static AppliedAdjustment[] Adjustments(ShockTable table, ShockWindow? window, int[] last) =>
+        [.. table.Factors.SelectMany((factor, j) =>
+            table.History.Applied(factor.Name, table.Dates[window is null ? last[j] : Math.Min(last[j], FirstUsed(table, window, j))]))];
+}

@@ -1,0 +1,68 @@
+using System.Globalization;
+using RiskWorker.Domain.Books;
+using RiskWorker.Domain.Instruments;
+using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Backtesting;
+using RiskWorker.Engine.Pricing;
+
+namespace RiskWorker.Engine.Checks;
+
+/// <summary>Estimates how large a line is that no figure holds, in the reporting currency.</summary>
+internal sealed class LineSize
+{
+    private const double BondNotional = 100; // what a bond's or floater's row means when it names none
+
+    private readonly Dictionary<string, double> _price = new(StringComparer.Ordinal);
+    private readonly CurrencyTable _currencies;
+    private readonly double[] _levels;
+
+    public LineSize(Snapshot snapshot, BookTree tree)
+    {
+        _currencies = new(tree.ReportingCurrency, snapshot.Factors);
+        _levels = new ClosingLevels(snapshot).At(snapshot.AsOf);
+        for (var j = 0; j < _levels.Length; j++) _price[snapshot.Factors[j].Name] = _levels[j];
+    }
+
+    /// <summary>Price of one unit of <paramref name="currency"/>; NaN where there is none.</summary>
+    public double RateOf(string currency)
+    {
+        var index = _currencies.IndexOf(currency);
+        return index < 0 ? double.NaN : _currencies.RateOf(index, _levels);
+    }
+
+    /// <summary>
+    /// The size of the market value where one is given, else quantity times multiplier times strike, notional or price, whichever the
+    /// instrument has first; null where nothing gives one.
+    /// </summary>
+    public double? Of(in LineValue line)
+    {
+        if (line.Instrument is not { } instrument) return null;
+        if (line.Unpriced is null) return Math.Abs(line.Exposure);
+        var amount = line.Position.MarketValue ?? (line.Position.Quantity * instrument.Multiplier * UnitOf(instrument));
+        var size = Math.Abs(amount) * RateOf(instrument.Currency);
+        return double.IsFinite(size) ? size : null;
+    }
+
+    private double UnitOf(Instrument instrument) => instrument switch
+    {
+        Spot s => PriceOf(s.Factor),
+        Future f => PriceOf(f.Factor),
+        Forward f => f.Strike,
+        Option o => o.Strike,
+        UnmodelledInstrument u => UnitOf(u),
+        _ => 1,
+    };
+
+    private double UnitOf(UnmodelledInstrument instrument)
+    {
+        if (Term(instrument, "strike") is { } strike) return strike;
+        if (Term(instrument, "notional") is { } notional) return notional;
+        return instrument.Terms.TryGetValue("factor", out var factor) ? PriceOf(factor)
+            : instrument.Kind is "bond" or "floater" ? BondNotional : double.NaN;
+    }
+
+    private double PriceOf(string factor) => _price.GetValueOrDefault(factor, double.NaN);
+
+    private static double? Term(UnmodelledInstrument instrument, string term) =>
+        instrument.Terms.TryGetValue(term, out var text) && double.TryParse(text, NumberStyles.Float, CultureInfo.InvariantCulture, out var value) ? value : null;
+}

@@ -1,0 +1,45 @@
+using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Plans;
+
+namespace RiskWorker.Engine.Measures;
+
+/// <summary>Every series of a run as sampled losses, and the measures on them.</summary>
+public sealed class NodeMeasures
+{
+    private readonly RevaluationPlan _plan;
+    private readonly Dictionary<PlanRow, SampledLoss> _series;
+
+    /// <summary>Takes one sampled series for each row of <paramref name="plan"/>, in order.</summary>
+    public NodeMeasures(RevaluationPlan plan, IReadOnlyList<SampledLoss> series)
+    {
+        _plan = plan;
+        _series = plan.Rows.Zip(series).ToDictionary(p => p.First, p => p.Second);
+    }
+
+    /// <summary>A measure of <paramref name="node"/> with its interval at <paramref name="level"/>.</summary>
+    /// <param name="node">Node number.</param>
+    /// <param name="spec">The measure; its horizon must be one of the plan's.</param>
+    /// <param name="level">Level of the interval.</param>
+    /// <param name="inReportingCurrency">In the reporting currency, else in the node's own.</param>
+    public MeasureResult Of(int node, MeasureSpec spec, decimal level, bool inReportingCurrency = false)
+    {
+        var sample = SeriesOf(node, spec.Horizon, inReportingCurrency);
+        if (spec.Kind == MeasureKind.Es)
+        {
+            var (low, high) = sample.ExpectedShortfallInterval(spec.Confidence, level);
+            return new(spec, sample.ExpectedShortfall(spec.Confidence), low, high, (double)level);
+        }
+        var interval = sample.VarInterval(spec.Confidence, level);
+        return new(spec, sample.Var(spec.Confidence), interval.Low, interval.High, (double)level);
+    }
+
+    /// <summary>The series of <paramref name="node"/> at <paramref name="horizon"/>.</summary>
+    public SampledLoss SeriesOf(int node, Horizon horizon, bool inReportingCurrency = false)
+    {
+        var place = _plan.Horizons.ToList().IndexOf(horizon);
+        return _series[new(node, place, !inReportingCurrency && HasOwnCurrency(node))];
+    }
+
+    /// <summary>Whether the node's currency is another than the reporting currency.</summary>
+    public bool HasOwnCurrency(int node) => _plan.Nodes[node].Currency != 0;
+}

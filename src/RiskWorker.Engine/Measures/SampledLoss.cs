@@ -1,0 +1,102 @@
+using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Reductions;
+using RiskWorker.Numerics.Kernels;
+using RiskWorker.Numerics.Statistics;
+
+namespace RiskWorker.Engine.Measures;
+
+/// <summary>
+/// One series of N losses as its tail is known: the losses beyond a cutoff in full, those equal to it by count.
+/// Ranks count from the worst, 1. Tails by cutoff give what sorting all N losses would.
+/// </summary>
+public sealed class SampledLoss
+{
+    private readonly TailEntry[] _tail;
+    private readonly double[] _losses;
+    private readonly double _cutoff;
+    private readonly long _equal;
+
+    /// <summary>Takes the sorted tail of a series.</summary>
+    /// <param name="count">All losses of the series, N.</param>
+    /// <param name="tail">Those beyond the cutoff, worst first.</param>
+    /// <param name="cutoff">The cutoff.</param>
+    /// <param name="equal">Losses equal to the cutoff.</param>
+    public SampledLoss(int count, TailEntry[] tail, double cutoff, long equal)
+    {
+        (Count, _tail, _cutoff, _equal) = (count, tail, cutoff, equal);
+        _losses = [.. tail.Select(t => t.Loss)];
+    }
+
+    /// <summary>Number of losses, N.</summary>
+    public int Count { get; }
+
+    /// <summary>Worst ranks that are known.</summary>
+    public long Known => _tail.Length + _equal;
+
+    /// <summary>The loss of <paramref name="rank"/>, 1 being the worst.</summary>
+    /// <exception cref="ArgumentOutOfRangeException">The rank lies below the cutoff.</exception>
+    public double AtRank(long rank)
+    {
+        if (rank < 1 || rank > Known) throw new ArgumentOutOfRangeException(nameof(rank), rank, $"Ranks 1 to {Known} are known.");
+        return rank <= _tail.Length ? _losses[rank - 1] : _cutoff;
+    }
+
+    /// <summary>The rank from the worst that VaR at <paramref name="confidence"/> stands on: N - ceil(N alpha) + 1.</summary>
+    public int VarRank(Confidence confidence) => Count - BinomialRanks.VarRank(Count, confidence.Level) + 1;
+
+    /// <summary>The smallest l with P(L &lt;= l) >= confidence.</summary>
+    public double Var(Confidence confidence) => AtRank(VarRank(confidence));
+
+    /// <summary>The distribution-free interval of VaR from order statistics; an end whose rank lies outside the sample is null.</summary>
+    public (double? Low, double? High) VarInterval(Confidence confidence, decimal level)
+    {
+        var ranks = BinomialRanks.Interval(Count, confidence.Level, level);
+        return (ranks.Low is { } low ? AtRank(Count - low + 1) : null, ranks.High is { } high ? AtRank(Count - high + 1) : null);
+    }
+
+    /// <summary>The mean of the worst N(1 - alpha) losses, the boundary loss weighted by the fraction needed (Acerbi and Tasche 2002).</summary>
+    public double ExpectedShortfall(Confidence confidence)
+    {
+        var (whole, fraction, weight) = TailOf(confidence);
+        return Weighted(whole, fraction, static losses => LaneSum.Of(losses), static loss => loss) / weight;
+    }
+
+    /// <summary>
+    /// The interval of expected shortfall by its asymptotic variance,
+    /// (Var(L given L >= VaR) + alpha (ES - VaR)²) / (N (1 - alpha)) (Manistre and Hancock 2005).
+    /// </summary>
+    public (double Low, double High) ExpectedShortfallInterval(Confidence confidence, decimal level)
+    {
+        var (whole, fraction, weight) = TailOf(confidence);
+        var es = ExpectedShortfall(confidence);
+        var excess = es - Var(confidence);
+        var squares = Deviations(whole, es);
+        var variance = Weighted(whole, fraction, _ => LaneSum.OfSquares(squares), loss => (loss - es) * (loss - es)) / weight;
+        var error = Math.Sqrt((variance + ((double)confidence.Level * excess * excess)) / weight);
+        var half = InverseNormal.Of((double)((1 + level) / 2)) * error;
+        return (es - half, es + half);
+    }
+
+    private (long Whole, double Fraction, double Weight) TailOf(Confidence confidence)
+    {
+        var weight = BinomialRanks.TailWeight(Count, confidence.Level);
+        var whole = decimal.Floor(weight);
+        return ((long)whole, (double)(weight - whole), (double)weight);
+    }
+
+    // Sums a function over the worst `whole` losses and a fraction of the next one; losses below the kept tail equal the cutoff.
+    private double Weighted(long whole, double fraction, Func<double[], double> sumKept, Func<double, double> of)
+    {
+        var kept = Math.Min(whole, _losses.Length);
+        var sum = kept == _losses.Length ? sumKept(_losses) : sumKept(_losses[..(int)kept]);
+        if (whole > kept) sum = Math.FusedMultiplyAdd(whole - kept, of(AtRank(whole)), sum);
+        return fraction > 0 ? Math.FusedMultiplyAdd(fraction, of(AtRank(whole + 1)), sum) : sum;
+    }
+
+    private double[] Deviations(long whole, double center)
+    {
+        var deviations = _losses[..(int)Math.Min(whole, _losses.Length)];
+        for (var i = 0; i < deviations.Length; i++) deviations[i] -= center;
+        return deviations;
+    }
+}

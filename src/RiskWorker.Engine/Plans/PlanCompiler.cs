@@ -1,0 +1,207 @@
+using RiskWorker.Domain.Books;
+using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Calibration;
+using RiskWorker.Engine.Pricing;
+using RiskWorker.Numerics.Kernels;
+
+namespace RiskWorker.Engine.Plans;
+
+/// <summary>Compiles valued lines into a <see cref="RevaluationPlan"/>. Lines of one node and instrument add up; the order of rows does not matter.</summary>
+public sealed class PlanCompiler
+{
+    private readonly BookTree _tree;
+    private readonly CalibratedModel _model;
+    private readonly CurrencyTable _currencies;
+    private readonly DateOnly _asOf;
+    private readonly IReadOnlyList<Horizon> _horizons;
+
+    // Without ageing the valuation date stays; with it, an option's remaining life shrinks by horizon.
+    private readonly Func<BoundInstrument, int, double>? _remainingYears;
+
+    /// <summary>Takes what the plan rests on.</summary>
+    /// <param name="tree">The books.</param>
+    /// <param name="model">How the factors move.</param>
+    /// <param name="currencies">The currencies known.</param>
+    /// <param name="asOf">Valuation date.</param>
+    /// <param name="horizons">Horizons, in any order.</param>
+    /// <param name="remainingYears">Life in years that is left to an instrument after so many business days, 0 being today; null leaves the valuation date where it is.</param>
+    public PlanCompiler(BookTree tree, CalibratedModel model, CurrencyTable currencies, DateOnly asOf, IEnumerable<Horizon> horizons, Func<BoundInstrument, int, double>? remainingYears = null)
+    {
+        (_tree, _model, _currencies, _asOf) = (tree, model, currencies, asOf);
+        _horizons = [.. horizons.Distinct().Order()];
+        _remainingYears = remainingYears;
+    }
+
+    /// <summary>The plan of the priced ones among <paramref name="lines"/>.</summary>
+    public RevaluationPlan Compile(ulong seed, IReadOnlyList<LineValue> lines)
+    {
+        var holdings = Holdings(lines);
+        var currencies = Currencies(holdings);
+        var cells = Cells(holdings, currencies);
+        var nodes = Nodes(cells, currencies);
+        var plan = new RevaluationPlan
+        {
+            Seed = seed,
+            Moves = Moves(),
+            Horizons = _horizons,
+            Currencies = currencies,
+            Groups = Groups(holdings, cells, currencies),
+            Cells = cells,
+            Nodes = nodes,
+            Rows = Rows(nodes),
+            Hash = "",
+        };
+        return plan with { Hash = PlanHash.Of(plan) };
+    }
+
+    private readonly record struct Holding(int Node, string Instrument, BoundInstrument Bound, double Quantity, double Value);
+
+    private List<Holding> Holdings(IReadOnlyList<LineValue> lines)
+    {
+        var holdings = new List<Holding>(lines.Count);
+        foreach (var line in lines)
+        {
+            if (line.Unpriced is not null) continue;
+            var node = _tree.IndexOf(line.Position.Book);
+            if (node >= 0) holdings.Add(new(node, line.Position.Instrument, line.Bound, line.Position.Quantity, line.Value));
+        }
+        holdings.Sort((a, b) =>
+        {
+            var order = a.Node.CompareTo(b.Node);
+            if (order == 0) order = string.CompareOrdinal(a.Instrument, b.Instrument);
+            return order != 0 ? order : a.Quantity.CompareTo(b.Quantity);
+        });
+        var merged = new List<Holding>(holdings.Count);
+        foreach (var next in holdings)
+        {
+            if (merged.Count > 0 && merged[^1] is var last && last.Node == next.Node && last.Instrument == next.Instrument)
+                merged[^1] = last with { Quantity = last.Quantity + next.Quantity, Value = last.Value + next.Value };
+            else
+                merged.Add(next);
+        }
+        return merged;
+    }
+
+    private List<PlanCurrency> Currencies(List<Holding> holdings)
+    {
+        var used = new SortedSet<int> { 0 };
+        foreach (var holding in holdings) used.Add(holding.Bound.Currency);
+        foreach (var book in _tree.Books) used.Add(_currencies.IndexOf(book.Currency));
+        return [.. used.Select(i => new PlanCurrency(CodeOf(i), _currencies.FactorOf(i), _currencies.RateOf(i, _model.Levels)))];
+    }
+
+    private string CodeOf(int currency) => _currencies.FactorOf(currency) is var factor && factor < 0 ? _currencies.Reporting : _model.Factors[factor].Currency!;
+
+    private List<PlanCell> Cells(List<Holding> holdings, List<PlanCurrency> currencies)
+    {
+        var values = new SortedDictionary<(int Node, int Currency), double>();
+        foreach (var holding in holdings)
+        {
+            var key = (holding.Node, PlaceOf(holding.Bound.Currency, currencies));
+            values[key] = values.GetValueOrDefault(key) + holding.Value;
+        }
+        return [.. values.Select(v => new PlanCell(v.Key.Node, v.Key.Currency, v.Value))];
+    }
+
+    private int PlaceOf(int currency, List<PlanCurrency> currencies) => currencies.FindIndex(c => c.Factor == _currencies.FactorOf(currency));
+
+    private List<PlanNode> Nodes(List<PlanCell> cells, List<PlanCurrency> currencies)
+    {
+        var values = new double[_tree.Books.Count];
+        foreach (var cell in cells) values[cell.Node] += cell.Value * currencies[cell.Currency].Rate;
+        for (var node = values.Length - 1; node > 0; node--) values[_tree.ParentOf(node)] += values[node];
+        return [.. _tree.Books.Select((book, node) => new PlanNode(book.Name, _tree.ParentOf(node), PlaceOf(_currencies.IndexOf(book.Currency), currencies), values[node]))];
+    }
+
+    private List<PlanRow> Rows(List<PlanNode> nodes)
+    {
+        var rows = new List<PlanRow>();
+        for (var node = 0; node < nodes.Count; node++)
+        {
+            for (var horizon = 0; horizon < _horizons.Count; horizon++)
+            {
+                rows.Add(new(node, horizon, false));
+                if (nodes[node].Currency != 0) rows.Add(new(node, horizon, true));
+            }
+        }
+        return rows;
+    }
+
+    private List<UnderlyingGroup> Groups(List<Holding> holdings, List<PlanCell> cells, List<PlanCurrency> currencies)
+    {
+        var cellOf = cells.Select((cell, place) => ((cell.Node, cell.Currency), place)).ToDictionary(c => c.Item1, c => c.place);
+        var groups = new SortedDictionary<UnderlyingKey, GroupBuilder>();
+        foreach (var holding in holdings)
+        {
+            if (holding.Bound.Shape == PayoffShape.Cash) continue;
+            if (!groups.TryGetValue(holding.Bound.Underlying, out var group)) groups[holding.Bound.Underlying] = group = new();
+            var cell = cellOf[(holding.Node, PlaceOf(holding.Bound.Currency, currencies))];
+            Add(group, cell, holding);
+        }
+        return [.. groups.Select(g => g.Value.Build(g.Key, g.Key.LevelOf(_model.Levels), TermsByHorizon))];
+    }
+
+    private void Add(GroupBuilder group, int cell, in Holding holding)
+    {
+        var (bound, units) = (holding.Bound, holding.Quantity * holding.Bound.Multiplier);
+        switch (bound.Shape)
+        {
+            case PayoffShape.Spot or PayoffShape.Future:
+                group.AddLinear(cell, units);
+                break;
+            case PayoffShape.Forward:
+                // At a flat rate the strike leg is a constant, so only the discounted underlying moves.
+                group.AddLinear(cell, units * Valuer.ForwardUnits(bound, Years(bound, 0)));
+                break;
+            default:
+                group.AddOption(bound, Option(cell, units, bound));
+                break;
+        }
+    }
+
+    private OptionItem Option(int cell, double units, in BoundInstrument bound) =>
+        new(cell, units, Valuer.OptionValue(bound, bound.Underlying.LevelOf(_model.Levels), Years(bound, 0), VolatilityOf(bound)));
+
+    private EuropeanOptionTerms Terms(in BoundInstrument bound, double years) =>
+        Valuer.OptionTerms(bound, bound.Underlying.LevelOf(_model.Levels), years, VolatilityOf(bound));
+
+    private double VolatilityOf(in BoundInstrument bound) => bound.VolatilityFactor < 0 ? bound.Volatility : _model.Levels[bound.VolatilityFactor];
+
+    private double Years(in BoundInstrument bound, int days) => _remainingYears is null ? bound.YearsFrom(_asOf) : _remainingYears(bound, days);
+
+    private EuropeanOptionTerms[][] TermsByHorizon(List<BoundInstrument> options)
+    {
+        EuropeanOptionTerms[] After(int days) => [.. options.Select(o => Terms(o, Years(o, days)))];
+        return _remainingYears is null ? [.. Enumerable.Repeat(After(0), _horizons.Count)] : [.. _horizons.Select(h => After(h.Days))];
+    }
+
+    private FactorMoves Moves()
+    {
+        var rowOf = new int[_model.Factors.Count];
+        Array.Fill(rowOf, -1);
+        for (var row = 0; row < _model.Moving.Length; row++) rowOf[_model.Moving[row]] = row;
+        var laws = new FactorLaw[rowOf.Length];
+        for (var j = 0; j < laws.Length; j++)
+            laws[j] = new(_model.Levels[j], _model.Deviations[j], _model.DailyDrift[j], _model.Factors[j].Shock == Domain.Market.ShockKind.Lognormal);
+        return new(_model.Rank, _model.Lower, rowOf, _model.Moving.Length, laws);
+    }
+
+    private sealed class GroupBuilder
+    {
+        private readonly SortedDictionary<int, double> _units = [];
+        private readonly SortedDictionary<int, (List<BoundInstrument> Bound, List<OptionItem> Items)> _options = [];
+
+        public void AddLinear(int cell, double units) => _units[cell] = _units.GetValueOrDefault(cell) + units;
+
+        public void AddOption(in BoundInstrument bound, OptionItem item)
+        {
+            if (!_options.TryGetValue(bound.VolatilityFactor, out var batch)) _options[bound.VolatilityFactor] = batch = ([], []);
+            batch.Bound.Add(bound);
+            batch.Items.Add(item);
+        }
+
+        public UnderlyingGroup Build(UnderlyingKey key, double spot, Func<List<BoundInstrument>, EuropeanOptionTerms[][]> terms) => new(key, spot,
+            [.. _units.Select(u => new LinearHolding(u.Key, u.Value))],
+            [.. _options.Select(o => new OptionBatch(o.Key, [.. o.Value.Items], terms(o.Value.Bound)))]);
+    }
+}

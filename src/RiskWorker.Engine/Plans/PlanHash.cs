@@ -1,0 +1,77 @@
+using System.Buffers.Binary;
+using System.Security.Cryptography;
+using System.Text;
+using RiskWorker.Numerics.Kernels;
+
+namespace RiskWorker.Engine.Plans;
+
+/// <summary>SHA-256 over every number and name of a plan, in the plan's own order, numbers as little-endian bits.</summary>
+internal sealed class PlanHash : IDisposable
+{
+    private readonly IncrementalHash _hash = IncrementalHash.CreateHash(HashAlgorithmName.SHA256);
+
+    /// <summary>The hash as 64 lower-case hex digits; the plan's own hash field is left out.</summary>
+    public static string Of(RevaluationPlan plan)
+    {
+        using var hash = new PlanHash();
+        hash.Add((long)plan.Seed);
+        hash.Add(plan.Moves);
+        foreach (var horizon in plan.Horizons) hash.Add(horizon.Days);
+        foreach (var currency in plan.Currencies) hash.Text(currency.Code).Add(currency.Factor).Add(currency.Rate);
+        foreach (var group in plan.Groups) hash.Add(group);
+        foreach (var cell in plan.Cells) hash.Add(cell.Node).Add(cell.Currency).Add(cell.Value);
+        foreach (var node in plan.Nodes) hash.Text(node.Book).Add(node.Parent).Add(node.Currency).Add(node.ValueRoot);
+        foreach (var row in plan.Rows) hash.Add(row.Node).Add(row.Horizon).Add(row.InOwnCurrency ? 1 : 0);
+        return Convert.ToHexStringLower(hash._hash.GetHashAndReset());
+    }
+
+    public void Dispose() => _hash.Dispose();
+
+    private void Add(FactorMoves moves)
+    {
+        Add(moves.Rank).Add(moves.Rows);
+        foreach (var value in moves.Lower) Add(value);
+        foreach (var row in moves.RowOf) Add(row);
+        foreach (var law in moves.Factors) Add(law.Level).Add(law.Deviation).Add(law.Drift).Add(law.IsLognormal ? 1 : 0);
+    }
+
+    private void Add(UnderlyingGroup group)
+    {
+        Add(group.Key.IsCross ? 1 : 0).Add(group.Key.Factor).Add(group.Key.Quote).Add(group.Spot).Add(group.Linear.Count).Add(group.Options.Count);
+        foreach (var holding in group.Linear) Add(holding.Cell).Add(holding.Units);
+        foreach (var batch in group.Options)
+        {
+            Add(batch.VolatilityFactor).Add(batch.Items.Length);
+            foreach (var item in batch.Items)
+            {
+                Add(item.Cell).Add(item.Quantity).Add(item.BaseValue);
+            }
+            foreach (var terms in batch.Terms.SelectMany(t => t)) Add(terms);
+        }
+    }
+
+    private void Add(in EuropeanOptionTerms terms)
+    {
+        Span<double> numbers = stackalloc double[EuropeanOptionTerms.NumberCount];
+        terms.CopyTo(numbers);
+        foreach (var number in numbers) Add(number);
+    }
+
+    private PlanHash Text(string text)
+    {
+        var bytes = Encoding.UTF8.GetBytes(text);
+        Add(bytes.Length);
+        _hash.AppendData(bytes);
+        return this;
+    }
+
+    private PlanHash Add(double value) => Add(BitConverter.DoubleToInt64Bits(value));
+
+    private PlanHash Add(long value)
+    {
+        Span<byte> bytes = stackalloc byte[8];
+        BinaryPrimitives.WriteInt64LittleEndian(bytes, value);
+        _hash.AppendData(bytes);
+        return this;
+    }
+}

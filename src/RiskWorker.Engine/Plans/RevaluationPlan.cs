@@ -1,0 +1,100 @@
+using RiskWorker.Domain.Runs;
+using RiskWorker.Numerics.Kernels;
+
+namespace RiskWorker.Engine.Plans;
+
+/// <summary>
+/// A book compiled for simulation: which factors move and how, what is held of each underlying, and how the parts add up
+/// to nodes. Frozen and content-hashed: two plans of one hash give the same losses for every scenario, to the last bit.
+/// </summary>
+public sealed record RevaluationPlan
+{
+    /// <summary>Seed of every draw.</summary>
+    public required ulong Seed { get; init; }
+
+    /// <summary>How the factors move.</summary>
+    public required FactorMoves Moves { get; init; }
+
+    /// <summary>Horizons, ascending.</summary>
+    public required IReadOnlyList<Horizon> Horizons { get; init; }
+
+    /// <summary>Every currency held or reported in, the reporting currency first.</summary>
+    public required IReadOnlyList<PlanCurrency> Currencies { get; init; }
+
+    /// <summary>What is held, grouped by underlying in the order of <see cref="Pricing.UnderlyingKey"/>.</summary>
+    public required IReadOnlyList<UnderlyingGroup> Groups { get; init; }
+
+    /// <summary>Sums of positions by node and currency, in that order.</summary>
+    public required IReadOnlyList<PlanCell> Cells { get; init; }
+
+    /// <summary>The tree, depth first: a parent before its children.</summary>
+    public required IReadOnlyList<PlanNode> Nodes { get; init; }
+
+    /// <summary>The series of losses that reductions see.</summary>
+    public required IReadOnlyList<PlanRow> Rows { get; init; }
+
+    /// <summary>SHA-256 of all of the above.</summary>
+    public required string Hash { get; init; }
+}
+
+/// <summary>How factors move over one business day: scale times a correlated normal, plus a drift.</summary>
+/// <param name="Rank">Independent draws a scenario.</param>
+/// <param name="Lower">Lower factor of the correlation, one row a moving factor in pivot order, row by row, <paramref name="Rank"/> entries each.</param>
+/// <param name="RowOf">For each factor its row in <paramref name="Lower"/>, or -1 where its variance is zero.</param>
+/// <param name="Rows">Moving factors.</param>
+/// <param name="Factors">Each factor's law.</param>
+public sealed record FactorMoves(int Rank, double[] Lower, int[] RowOf, int Rows, FactorLaw[] Factors);
+
+/// <summary>The law of one factor over h days: x = Deviation sqrt(h) Z + Drift h, then S = Level e^x or Level + x.</summary>
+/// <param name="Level">Level today.</param>
+/// <param name="Deviation">Standard deviation of a day's shock.</param>
+/// <param name="Drift">Mean of a day's shock: for a log-normal factor the log-drift.</param>
+/// <param name="IsLognormal">Whether the shock is a log-return.</param>
+public readonly record struct FactorLaw(double Level, double Deviation, double Drift, bool IsLognormal);
+
+/// <summary>A currency and its price in the reporting currency.</summary>
+/// <param name="Code">ISO code.</param>
+/// <param name="Factor">Its fx factor, or -1 for the reporting currency.</param>
+/// <param name="Rate">Its price today.</param>
+public readonly record struct PlanCurrency(string Code, int Factor, double Rate);
+
+/// <summary>Everything that is held of one underlying.</summary>
+/// <param name="Key">The underlying.</param>
+/// <param name="Spot">Its price today.</param>
+/// <param name="Linear">Units held by cell.</param>
+/// <param name="Options">Options with a flat volatility, and those on each volatility factor, batch by batch.</param>
+public sealed record UnderlyingGroup(Pricing.UnderlyingKey Key, double Spot, IReadOnlyList<LinearHolding> Linear, IReadOnlyList<OptionBatch> Options);
+
+/// <summary>Units of an underlying in a cell: its profit is units times the change of price.</summary>
+public readonly record struct LinearHolding(int Cell, double Units);
+
+/// <summary>Options on one underlying that share their source of volatility.</summary>
+/// <param name="VolatilityFactor">The factor that carries it, or -1 for a flat one.</param>
+/// <param name="Items">The options, by cell, then instrument.</param>
+/// <param name="Terms">Their terms by horizon, then in the order of <paramref name="Items"/>; one array for all horizons unless the valuation date moves.</param>
+public sealed record OptionBatch(int VolatilityFactor, OptionItem[] Items, EuropeanOptionTerms[][] Terms);
+
+/// <summary>One option held in one cell.</summary>
+/// <param name="Cell">Where its profit goes.</param>
+/// <param name="Quantity">Units times multiplier.</param>
+/// <param name="BaseValue">Its value today.</param>
+public readonly record struct OptionItem(int Cell, double Quantity, double BaseValue);
+
+/// <summary>The positions of a node in one currency.</summary>
+/// <param name="Node">The node.</param>
+/// <param name="Currency">Place in the plan's currencies.</param>
+/// <param name="Value">Value today in that currency.</param>
+public readonly record struct PlanCell(int Node, int Currency, double Value);
+
+/// <summary>A node of the tree.</summary>
+/// <param name="Book">Its book.</param>
+/// <param name="Parent">Its parent's place; -1 for the root.</param>
+/// <param name="Currency">Place of its own currency in the plan's currencies.</param>
+/// <param name="ValueRoot">Value today, children included, in the reporting currency.</param>
+public readonly record struct PlanNode(string Book, int Parent, int Currency, double ValueRoot);
+
+/// <summary>A series of losses: a node at a horizon, in its own or in the reporting currency.</summary>
+/// <param name="Node">The node.</param>
+/// <param name="Horizon">Place in the plan's horizons.</param>
+/// <param name="InOwnCurrency">True for the node's own currency, where that is not the reporting currency.</param>
+public readonly record struct PlanRow(int Node, int Horizon, bool InOwnCurrency);

@@ -1,0 +1,20 @@
+using RiskWorker.Engine.Simulation;
+
+namespace RiskWorker.Engine.Reductions;
+
+/// <summary>
+/// What is kept of the losses of many blocks. Records merge in any order and any grouping to the same answer, so blocks
+/// may be computed anywhere.
+/// </summary>
+/// <typeparam name="TRecord">The record kept.</typeparam>
+public abstract class Reduction<TRecord>
+{
+    /// <summary>A record of no blocks.</summary>
+    public abstract TRecord Empty();
+
+    /// <summary>Adds one block to <paramref name="record"/>.</summary>
+    public abstract void Accumulate(TRecord record, in LossBlock block);
+
+    /// <summary>Adds the blocks of <paramref name="from"/>, which shares none with <paramref name="record"/>.</summary>
+    public abstract void Merge(TRecord record, TRecord from);
+}

@@ -1,0 +1,78 @@
+using RiskWorker.Engine.Simulation;
+using RiskWorker.Numerics.Kernels;
+
+namespace RiskWorker.Engine.Reductions;
+
+/// <summary>Equal bins over the losses of a series, with a count below and one above.</summary>
+/// <param name="Low">Lower end of the first bin.</param>
+/// <param name="High">Upper end of the last bin; above <paramref name="Low"/>.</param>
+public readonly record struct HistogramEdges(double Low, double High)
+{
+    /// <summary>Number of bins.</summary>
+    public const int Bins = 256;
+
+    /// <summary>Width of a bin.</summary>
+    public double Width => (High - Low) / Bins;
+
+    /// <summary>Edges that hold all of <paramref name="losses"/>; a constant sample gets a bin around it.</summary>
+    public static HistogramEdges Holding(ReadOnlySpan<double> losses)
+    {
+        var (low, high) = (double.PositiveInfinity, double.NegativeInfinity);
+        foreach (var loss in losses) (low, high) = (Math.Min(low, loss), Math.Max(high, loss));
+        var room = Math.Max((high - low) / (2 * Bins), Math.Max(Math.Abs(low) * 1e-12, 1e-12));
+        return new(low - room, high + room);
+    }
+}
+
+/// <summary>Keeps every scenario beyond a cutoff, and counts and sums of the rest.</summary>
+public sealed class TailReduction : Reduction<TailRecord>
+{
+    private readonly double[] _cutoffs;
+    private readonly HistogramEdges[] _edges;
+
+    /// <summary>Takes a cutoff and the histogram's edges for each series of the plan.</summary>
+    public TailReduction(double[] cutoffs, HistogramEdges[] edges) => (_cutoffs, _edges) = (cutoffs, edges);
+
+    /// <inheritdoc/>
+    public override TailRecord Empty() => new(_cutoffs.Length, HistogramEdges.Bins);
+
+    /// <inheritdoc/>
+    public override void Accumulate(TailRecord record, in LossBlock block)
+    {
+        Span<int> beyond = stackalloc int[Blocks.Size];
+        var rows = _cutoffs.Length;
+        var sums = new double[2 * rows];
+        for (var row = 0; row < rows; row++)
+        {
+            var losses = block.Row(row);
+            sums[row] = LaneSum.Of(losses);
+            if (!double.IsFinite(sums[row])) throw new NotFiniteNumberException($"A loss of series {row} among scenarios {block.FirstScenario} to {block.FirstScenario + block.Width - 1} is not a finite number.", sums[row]);
+            sums[rows + row] = LaneSum.OfSquares(losses);
+            Histogram.Accumulate(losses, _edges[row].Low, 1 / _edges[row].Width, record.HistogramOf(row));
+            var count = Selection.Greater(losses, _cutoffs[row], beyond, out var equal);
+            record.Equal[row] += equal;
+            var tail = record.TailOf(row);
+            foreach (var place in beyond[..count]) tail.Add(new(losses[place], block.FirstScenario + place));
+        }
+        record.Sums.Add(block.Index, sums);
+        record.Count += block.Width;
+    }
+
+    /// <inheritdoc/>
+    public override void Merge(TailRecord record, TailRecord from)
+    {
+        for (var row = 0; row < _cutoffs.Length; row++)
+        {
+            record.TailOf(row).AddRange(from.TailOf(row));
+            record.Equal[row] += from.Equal[row];
+            Elementwise(record.HistogramOf(row), from.HistogramOf(row));
+        }
+        record.Sums.Merge(from.Sums);
+        record.Count += from.Count;
+    }
+
+    private static void Elementwise(long[] counts, long[] more)
+    {
+        for (var i = 0; i < counts.Length; i++) counts[i] += more[i];
+    }
+}

@@ -1,0 +1,34 @@
+using RiskWorker.Domain.Books;
+using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Backtesting;
+using RiskWorker.Engine.Calibration;
+using RiskWorker.Engine.Checks;
+using RiskWorker.Engine.Pricing;
+
+namespace RiskWorker.Engine.Runs;
+
+/// <summary>The positions of a snapshot valued at their own close, today's and those of the date before.</summary>
+public sealed class BookValuation
+{
+    /// <summary>Values them.</summary>
+    public BookValuation(Snapshot snapshot, BookTree tree, CalibratedModel model)
+    {
+        Binder = new(tree.ReportingCurrency, model.Factors);
+        Today = LineValuation.Of(snapshot.Positions, snapshot.Instruments, Binder, model.Levels, snapshot.AsOf);
+        if (snapshot.Previous is { } previous)
+            Previous = LineValuation.Of(previous.Positions, snapshot.Instruments, Binder, new ClosingLevels(snapshot).At(previous.Date), previous.Date);
+        Holdings = HoldingsSummary.Of(snapshot, tree, Today, Previous);
+    }
+
+    /// <summary>Resolves instruments against the model's factors.</summary>
+    public InstrumentBinder Binder { get; }
+
+    /// <summary>Today's lines.</summary>
+    public LineValue[] Today { get; }
+
+    /// <summary>The lines of the newest earlier date, or null.</summary>
+    public LineValue[]? Previous { get; }
+
+    /// <summary>What is held, what is priced and how it ties to the book of record.</summary>
+    public Holdings Holdings { get; }
+}

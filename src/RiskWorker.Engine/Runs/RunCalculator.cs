@@ -1,0 +1,97 @@
+using System.Diagnostics;
+using RiskWorker.Domain.Books;
+using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Backtesting;
+using RiskWorker.Engine.Calibration;
+using RiskWorker.Engine.Checks;
+using RiskWorker.Engine.Plans;
+
+namespace RiskWorker.Engine.Runs;
+
+/// <summary>
+/// One run from snapshot to results: checks, calibration, plan, simulation by looks, measures, limits, exception counts.
+/// A pure function of the snapshot; threads and progress change no bit.
+/// </summary>
+public sealed class RunCalculator
+{
+    private readonly Snapshot _snapshot;
+    private readonly int _threads;
+    private readonly IProgress<RunProgress>? _progress;
+    private readonly CancellationToken _cancellation;
+    private readonly List<Finding> _findings;
+
+    /// <summary>Takes what the run needs.</summary>
+    /// <param name="snapshot">The frozen inputs.</param>
+    /// <param name="feedFindings">What loading the feed found; part of the results.</param>
+    /// <param name="threads">Threads to use.</param>
+    /// <param name="progress">Told how far the run has come, or null.</param>
+    /// <param name="cancellation">Stops the run.</param>
+    public RunCalculator(Snapshot snapshot, IEnumerable<Finding> feedFindings, int threads, IProgress<RunProgress>? progress, CancellationToken cancellation)
+    {
+        (_snapshot, _threads, _progress, _cancellation) = (snapshot, threads, progress, cancellation);
+        _findings = [.. feedFindings];
+    }
+
+    /// <summary>Seconds spent calibrating and simulating; the other phases are not this class's.</summary>
+    public Timings Timings { get; private set; } = new(0, 0, 0, 0);
+
+    /// <summary>Runs.</summary>
+    public RunResults Calculate()
+    {
+        _findings.AddRange(FeedChecks.Run(_snapshot));
+        var (tree, _) = BookTree.Build(_snapshot.Books);
+        if (tree is null || Blocked) return Failed(tree);
+        var clock = Stopwatch.StartNew();
+        var model = Calibrator.Calibrate(_snapshot);
+        Timings = Timings with { Calibrate = clock.Elapsed.TotalSeconds };
+
+        var valued = new BookValuation(_snapshot, tree, model);
+        _findings.AddRange(ValuationChecks.Run(_snapshot, tree, valued.Today, valued.Previous));
+        if (Blocked) return Failed(tree) with { Holdings = valued.Holdings };
+        return Simulate(tree, model, valued);
+    }
+
+    private bool Blocked => _findings.Exists(f => f.Severity == FindingSeverity.Blocking);
+
+    private RunResults Failed(BookTree? tree) => new() { Findings = _findings, Firm = tree is null ? null : FirmOf(tree) };
+
+    private static FirmIdentity FirmOf(BookTree tree) => new(tree.Books[0].DisplayName, tree.ReportingCurrency);
+
+    private RunResults Simulate(BookTree tree, CalibratedModel model, BookValuation valued)
+    {
+        var limits = _snapshot.Limits.Where(l => l.IsValidOn(_snapshot.AsOf) && tree.IndexOf(l.Book) >= 0 && (l.ReferenceBook is null || tree.IndexOf(l.ReferenceBook) >= 0)).ToList();
+        var measures = _snapshot.Settings.Measures.Concat(limits.Select(l => l.Measure)).Distinct().Order().ToList();
+        var clock = Stopwatch.StartNew();
+        var plan = new PlanCompiler(tree, model, valued.Binder.Currencies, _snapshot.AsOf, measures.Select(m => m.Horizon)).Compile(_snapshot.Settings.Simulation.Seed, valued.Today);
+        var outcome = new LookedRun(tree, plan, limits, measures, _snapshot.Settings.Simulation).Run(_threads, _progress, _cancellation);
+        Timings = Timings with { Simulate = clock.Elapsed.TotalSeconds };
+        _findings.AddRange(UndecidableLimits.Of(outcome, limits, _snapshot.Settings.Checks));
+        var hypothetical = HypotheticalProfits.Of(_snapshot, tree);
+        return new RunResults
+        {
+            Findings = _findings,
+            Firm = FirmOf(tree),
+            Calibration = SummaryOf(model, plan),
+            Simulation = outcome.Simulation,
+            Nodes = NodeResults.Of(tree, plan, outcome, measures, _snapshot.Positions),
+            Limits = outcome.Limits,
+            Hypothetical = hypothetical,
+            Backtest = ExceptionCount.Of(_snapshot, tree, measures, hypothetical),
+            Holdings = valued.Holdings,
+            Adjustments = model.Adjustments,
+        };
+    }
+
+    private static CalibrationSummary SummaryOf(CalibratedModel model, RevaluationPlan plan) => new()
+    {
+        Shocks = model.Shocks,
+        DroppedDays = model.DroppedDays.Count,
+        From = model.From,
+        To = model.To,
+        Factors = model.Factors.Count,
+        Still = model.Factors.Count - model.Moving.Length,
+        Rank = model.Rank,
+        RepairDistance = model.RepairDistance,
+        Plan = plan.Hash,
+    };
+}

@@ -1,0 +1,42 @@
+using RiskWorker.Domain.Runs;
+
+namespace RiskWorker.Host.Options;
+
+/// <summary>Reads <c>simulation</c>: scenarios, seed, looks and their cap.</summary>
+public static class SimulationSection
+{
+    /// <summary>Fewest scenarios of a run: below, a 99% quantile rests on a handful of losses.</summary>
+    public const int FewestScenarios = 1_000;
+
+    /// <summary>Most scenarios of a run.</summary>
+    public const int MostScenarios = 100_000_000;
+
+    private const int MostLooks = 20;
+
+    private static readonly Dictionary<string, int> s_revaluations = new(StringComparer.Ordinal) { ["surface"] = 0, ["full"] = 1 };
+
+    /// <summary>Reads the section; absent means the defaults. A cap that is not given is never below the scenarios.</summary>
+    public static SimulationSettings Read(SettingsValue? value)
+    {
+        var defaults = new SimulationSettings();
+        if (value?.Section("scenarios", "seed", "looks", "cap", "precision", "revaluation", "surfaceError", "exactTail") is not { } section) return defaults;
+        var scenarios = section["scenarios"]?.Whole(FewestScenarios, MostScenarios) ?? defaults.Scenarios;
+        CheckRevaluation(section);
+        return defaults with
+        {
+            Scenarios = scenarios,
+            Seed = section["seed"]?.Unsigned() ?? defaults.Seed,
+            Looks = section["looks"]?.Whole(1, MostLooks) ?? defaults.Looks,
+            Cap = section["cap"]?.Whole(scenarios, MostScenarios) ?? Math.Max(defaults.Cap, scenarios),
+            Precision = section["precision"] is { IsNull: false } precision ? precision.Number(p => p is > 0 and < 1, "null or a number strictly between 0 and 1") : null,
+        };
+    }
+
+    /// <summary>How values are found is no part of the run's settings: whichever way is taken, the figures are the same.</summary>
+    private static void CheckRevaluation(SettingsSection section)
+    {
+        section["revaluation"]?.Choice(s_revaluations);
+        section["surfaceError"]?.Number(e => e is > 0 and <= 0.01, "a number above 0, at most 0.01");
+        section["exactTail"]?.Flag();
+    }
+}

@@ -1,0 +1,25 @@
+using RiskWorker.Domain.Market;
+
+namespace RiskWorker.Host.UseCases;
+
+/// <summary>The use cases that verbs and jobs call.</summary>
+public sealed record UseCaseSet
+{
+    /// <summary>Loads the feed into the store.</summary>
+    public required UseCase<LoadRequest, LoadReport> Load { get; init; }
+
+    /// <summary>Runs the measure.</summary>
+    public required UseCase<MeasureRequest, MeasureReport> Measure { get; init; }
+
+    /// <summary>Lists stored runs, newest first.</summary>
+    public required UseCase<ListRunsRequest, IReadOnlyList<RunSummary>> ListRuns { get; init; }
+
+    /// <summary>Shows one stored run.</summary>
+    public required UseCase<ShowRunRequest, ShowRunReport> ShowRun { get; init; }
+
+    /// <summary>Lists holidays.</summary>
+    public required UseCase<HolidaysRequest, IReadOnlyList<Holiday>> Holidays { get; init; }
+
+    /// <summary>Records an interrupted run; reports whether it was recorded.</summary>
+    public required UseCase<InterruptedRun, bool> RecordInterrupted { get; init; }
+}

@@ -1,0 +1,75 @@
+using System.CommandLine;
+using System.CommandLine.Parsing;
+using RiskWorker.Host.Options;
+using RiskWorker.Host.UseCases;
+
+namespace RiskWorker.Host.Verbs;
+
+/// <summary>The options that every verb takes, and what they amount to.</summary>
+public sealed class CommonOptions
+{
+    private readonly Option<string> _config = new("--config")
+    {
+        Description = "Folder that holds riskworker.json and feed/",
+        HelpName = "FOLDER",
+        Recursive = true,
+        DefaultValueFactory = _ => ".",
+    };
+
+    private readonly Option<string> _out = new("--out")
+    {
+        Description = "Folder for the store and the reports",
+        HelpName = "FOLDER",
+        Recursive = true,
+        DefaultValueFactory = _ => "out",
+    };
+
+    private readonly Option<bool> _verbose = new("--verbose") { Description = "More log lines, and where a failure happened", Recursive = true };
+
+    /// <summary>Gives the options to <paramref name="root"/> and to every verb below it.</summary>
+    public void AddTo(RootCommand root)
+    {
+        root.Options.Add(_config);
+        root.Options.Add(_out);
+        root.Options.Add(_verbose);
+    }
+
+    /// <summary>Whether more should be said.</summary>
+    public bool IsVerbose(ParseResult parsed) => parsed.GetValue(_verbose);
+
+    /// <summary>Reads the settings and resolves the folders.</summary>
+    /// <exception cref="SettingsException">The folder or its settings cannot be used.</exception>
+    public async Task<(Configuration Configuration, Workspace Workspace)> ReadAsync(ParseResult parsed, CancellationToken cancellationToken)
+    {
+        var config = Folder(parsed.GetValue(_config)!, "--config");
+        var output = Folder(parsed.GetValue(_out)!, "--out");
+        if (File.Exists(output)) throw new SettingsException("command line", [new("--out", $"'{Printable.Of(output)}', a file", "a folder, there or yet to be made")]);
+        var configuration = await ConfigurationReader.ReadAsync(config, cancellationToken);
+        return (configuration, new(config, output, Path.Combine(output, configuration.StorePath)));
+    }
+
+    /// <summary>The switch that leaves nothing but JSON on the output; each verb that has a result adds one.</summary>
+    public static Option<bool> Json() => new("--json") { Description = "Print the result as JSON on the output, and nothing else there" };
+
+    /// <summary>An option whose text is read by <paramref name="read"/>, which returns null for what it refuses.</summary>
+    public static Option<T?> Parsed<T>(string name, string helpName, string description, string expected, Func<string, T?> read) where T : struct => new(name)
+    {
+        Description = description,
+        HelpName = helpName,
+        CustomParser = argument => Read(argument, name, expected, read),
+    };
+
+    private static T? Read<T>(ArgumentResult argument, string name, string expected, Func<string, T?> read) where T : struct
+    {
+        var text = argument.Tokens[0].Value;
+        if (read(text) is { } value) return value;
+        argument.AddError(new SettingsFault(name, $"'{Printable.Of(text, 60)}'", expected).ToString());
+        return null;
+    }
+
+    private static string Folder(string path, string option)
+    {
+        if (path.Length > 0 && !path.Contains('\0')) return Path.GetFullPath(path);
+        throw new SettingsException("command line", [new(option, "an empty path", "a folder")]);
+    }
+}

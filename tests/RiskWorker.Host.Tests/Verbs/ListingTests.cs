@@ -1,0 +1,104 @@
+using System.Text.Json;
+using RiskWorker.Domain.Runs;
+using RiskWorker.Host.UseCases;
+using RiskWorker.Host.Verbs;
+
+namespace RiskWorker.Host.Tests.Verbs;
+
+public sealed class ListingTests : IDisposable
+{
+    private readonly StringWriter _output = new();
+
+    public void Dispose() => _output.Dispose();
+
+    [Fact]
+    public void Measure_listing_shows_figures_intervals_and_statuses_worst_first()
+    {
+        MeasureListing.Write(SampleRuns.Report(), Tables());
+        Assert.Equal("""
+            Sample Firm, 2026-11-27: degraded, with warnings
+            run r-0123456789ab, model lognormal, seed 1, 100,000 scenarios, look 2 of 5
+
+            Finding  Subject                       What
+            warning  PRICE-STALE observations.csv  2 factors did not move for 3 days: AAA,
+                                                   BBB.
+
+            Book                 Measure          Loss      99.0% interval
+            FIRM            EUR  VaR 99% 1d    316,286  314,900 to 317,650
+                                 ES 97.5% 10d   987.65         980.10 to …
+              [red]DESK[/]  EUR  VaR 99% 1d    316,286  314,900 to 317,650
+                                 ES 97.5% 10d   987.65         980.10 to …
+
+            Intervals hold simulation noise only, not the error of model or estimates.
+
+            Limit       Book          Measure      Amount  Measured    Used  Status
+            L-breached  [red]DESK[/]  VaR 99% 1d  300,000   316,286  105.4%  BREACHED
+            L-open      [red]DESK[/]  VaR 99% 1d  300,000   316,286  105.4%  undecided
+            L-warned    [red]DESK[/]  VaR 99% 1d  300,000   316,286  105.4%  warning
+            L-within    [red]DESK[/]  VaR 99% 1d  300,000   316,286  105.4%  within
+
+            1 of 4 limits is breached; 1 lies within simulation error and is undecided.
+            /out/x/limit-report.pdf
+
+            """.ReplaceLineEndings("\n"), Lines());
+    }
+
+    [Fact]
+    public void Measure_listing_fits_eighty_columns()
+    {
+        MeasureListing.Write(SampleRuns.Report(), Tables());
+        Assert.All(Lines().Split('\n'), line => Assert.True(line.Length <= 80, line));
+    }
+
+    [Fact]
+    public void Runs_listing_without_runs_says_so()
+    {
+        RunsListing.Write([], Tables());
+        Assert.Equal("No run is stored.\n", Lines());
+    }
+
+    [Fact]
+    public void Runs_listing_shows_a_line_for_each_run()
+    {
+        RunsListing.Write([Summary()], Tables());
+        Assert.Equal("""
+            As of       Run             Status    Evidence  Model      Scenarios  Breached
+            2026-11-27  r-0123456789ab  complete  recorded  lognormal    100,000         2
+
+
+            """.ReplaceLineEndings("\n"), Lines());
+    }
+
+    [Fact]
+    public void Runs_listing_as_json_is_an_array_of_facts()
+    {
+        RunsListing.WriteJson([Summary()], _output);
+        using var json = JsonDocument.Parse(_output.ToString());
+        var run = Assert.Single(json.RootElement.EnumerateArray());
+        Assert.Equal(("r-0123456789ab", "2026-11-27", "complete", 100_000), (run.GetProperty("run").GetString(), run.GetProperty("asOf").GetString(), run.GetProperty("status").GetString(), run.GetProperty("scenarios").GetInt32()));
+        Assert.Equal("1970-01-01T00:00:00Z", run.GetProperty("finished").GetString());
+    }
+
+    [Fact]
+    public void Load_listing_shows_files_and_warnings()
+    {
+        LoadListing.Write(new([new("books.csv", 12, true), new("pnl.csv", 1_234_567, false)], [new(FindingSeverity.Warning, "COLUMN-UNKNOWN", "books.csv", "column 'colour' is not used")]), Tables());
+        Assert.Equal("""
+            File            Rows  Store
+            books.csv         12  loaded
+            pnl.csv    1,234,567  unchanged
+
+            Warning         Subject    What
+            COLUMN-UNKNOWN  books.csv  column 'colour' is not used
+
+
+            """.ReplaceLineEndings("\n"), Lines());
+    }
+
+    private static RunSummary Summary() => new("r-0123456789ab", new(2026, 11, 27), RunStatus.Complete, EvidenceKind.Recorded, "lognormal", 100_000, 1, DateTimeOffset.UnixEpoch, 2);
+
+    private Spectre.Console.IAnsiConsole Tables() => new Terminal(_output, TextWriter.Null, false, TimeProvider.System).Tables();
+
+    /// <summary>What was printed, blanks at the ends of lines left out.</summary>
+    private string Lines() => string.Join('\n', _output.ToString().ReplaceLineEndings("\n").Split('\n').Select(l => l.TrimEnd()));
+}

@@ -1,0 +1,112 @@
+using System.Runtime.InteropServices;
+using System.Security.Cryptography;
+using RiskWorker.Numerics.Kernels;
+using RiskWorker.Numerics.Random;
+using RiskWorker.TestKit;
+
+namespace RiskWorker.Numerics.Tests.Kernels;
+
+/// <summary>
+/// The first half of SHA-256 over the bits of 100,000 outputs of each kernel. The same values stand for every hardware and every setting; one
+/// that changes moves the figures of stored runs and asks for a new numerics epoch.
+/// </summary>
+public sealed class KernelBitsTests
+{
+    private const int Count = 100_000;
+    private const double Spot0 = 100.0;
+
+    private static readonly Dictionary<string, Action<SeededNumbers, double[]>> Outputs = new()
+    {
+        [nameof(UniformDraws)] = (_, y) => UniformDraws.FillPair(Stream, ulong.MaxValue / 3, 5, y.AsSpan(0, Count / 2), y.AsSpan(Count / 2)),
+        [nameof(NormalDraws)] = (_, y) => NormalDraws.FillPair(Stream, 0xFFFFFF00, 2, y.AsSpan(0, Count / 2), y.AsSpan(Count / 2)),
+        [nameof(Exponential)] = (n, y) => Exponential.Of(Spread(n, -1, 1, -750, 712), y),
+        [nameof(Logarithm)] = (n, y) => Logarithm.Of(AnyPositive(n), y),
+        [nameof(NormalCdf)] = (n, y) => NormalCdf.Of(Spread(n, -6, 6, -39, 39), y),
+        [nameof(NormalDensity)] = (n, y) => NormalDensity.Of(Spread(n, -6, 6, -39, 39), y),
+        [nameof(InverseNormal)] = (n, y) => InverseNormal.Of(Spread(n, 0, 1, 0, 1e-9), y),
+        [nameof(TriangularProduct)] = (n, y) => TriangularProduct.Multiply(n.Between(-1, 1, 250 * 150), 250, 150, n.Between(-4, 4, 150 * 400), y, 400),
+        [nameof(LogNormalMoves)] = (n, y) => LogNormalMoves.Spots(Returns(n), Spot0, y),
+        [nameof(LogNormalMoves.Levels)] = (n, y) => LogNormalMoves.Levels(n.Between(-6, 6, Count), 0.0007, 1e-5, 0.031, y),
+        [nameof(EuropeanOption)] = OptionProfits,
+        ["EuropeanOption at own volatility"] = OptionProfitsAtOwnVolatility,
+        [nameof(LaneSum)] = (n, y) => Sums(n.Between(-1e6, 1e6, 600), y),
+    };
+
+    public static IEnumerable<string> Names => Outputs.Keys;
+
+    private static DrawStream Stream => new(20_250_101, DrawPurpose.FactorMoves, 1);
+
+    [Theory]
+    [InlineData("UniformDraws", "95e54531151760163179f33f04c8b0e2")]
+    [InlineData("NormalDraws", "20f1fb50250de7ae30f21ce50949bc55")]
+    [InlineData("Exponential", "0015cdc2a39c7a275cdcd6f760243318")]
+    [InlineData("Logarithm", "acd0ed11e78620bd95af08b8eb9a430d")]
+    [InlineData("NormalCdf", "adc67faef084b012b99615e2735602d4")]
+    [InlineData("NormalDensity", "fef94e38f5172aae8b4f3d3f8619a514")]
+    [InlineData("InverseNormal", "2f9b83daa270e033ec99ae97d26a3304")]
+    [InlineData("TriangularProduct", "740901deb566724a72f35a4adc538c17")]
+    [InlineData("LogNormalMoves", "59ff726c0f3af0ab35d7dc8778b2dfcc")]
+    [InlineData("Levels", "d6aefabddabeab3dd7d9ff6cfc07c044")]
+    [InlineData("EuropeanOption", "b45aa79c3634d5bd7569d0648bf31b98")]
+    [InlineData("EuropeanOption at own volatility", "64dfd4692444283dc1e9bcd9fe212fe4")]
+    [InlineData("LaneSum", "092d79c6bd865de46f059ec3ddc79409")]
+    public void Outputs_bits_are_the_pinned_ones(string name, string expected)
+    {
+        double[] outputs = new double[Count];
+        Outputs[name](new SeededNumbers(2_025), outputs);
+        Assert.DoesNotContain(outputs, double.IsNaN);
+        Assert.Equal(expected, Convert.ToHexStringLower(SHA256.HashData(MemoryMarshal.AsBytes<double>(outputs)))[..32]);
+    }
+
+    private static double[] Spread(SeededNumbers n, double low, double high, double farLow, double farHigh)
+    {
+        double[] x = n.Between(low, high, Count);
+        for (int i = 0; i < Count; i += 3)
+            x[i] = n.Between(farLow, farHigh);
+        return x;
+    }
+
+    private static double[] AnyPositive(SeededNumbers n)
+    {
+        double[] x = n.Between(0.5, 2.0, Count);
+        for (int i = 0; i < Count; i += 3)
+            x[i] = BitConverter.UInt64BitsToDouble(n.Bits() % 0x7FF0000000000000UL);
+        return x;
+    }
+
+    private static double[] Returns(SeededNumbers n)
+    {
+        double[] x = new double[Count];
+        LogNormalMoves.LogReturns(n.Between(-8, 8, Count), 0.02, -0.0002, x);
+        return x;
+    }
+
+    private static void OptionProfits(SeededNumbers n, double[] y)
+    {
+        double[] x = Returns(n), spot = new double[Count];
+        LogNormalMoves.Spots(x, Spot0, spot);
+        for (int i = 0; i < 100; i++)
+        {
+            var terms = new EuropeanOptionTerms(
+                Spot0, n.Between(60, 160), n.Between(0.002, 3), n.Between(0.05, 0.8), n.Between(-0.01, 0.08), n.Between(-0.05, 0.05), i % 2 == 0);
+            EuropeanOption.AccumulateValue(terms, x, spot, n.Between(-100, 100), EuropeanOption.Value(terms, 0, Spot0), y);
+        }
+    }
+
+    private static void OptionProfitsAtOwnVolatility(SeededNumbers n, double[] y)
+    {
+        double[] x = Returns(n), spot = new double[Count], volatility = n.Between(0, 0.6, Count);
+        LogNormalMoves.Spots(x, Spot0, spot);
+        for (int i = 0; i < 30; i++)
+        {
+            var terms = new EuropeanOptionTerms(Spot0, n.Between(60, 160), n.Between(0.002, 3), 0.2, 0.03, 0.01, i % 2 == 0);
+            EuropeanOption.AccumulateValue(terms, x, spot, volatility, n.Between(-100, 100), 1.5, y);
+        }
+    }
+
+    private static void Sums(double[] values, double[] y)
+    {
+        for (int i = 0; i < Count; i++)
+            y[i] = i % 2 == 0 ? LaneSum.Of(values.AsSpan(i % 300, i % 257)) : LaneSum.OfSquares(values.AsSpan(i % 300, i % 257));
+    }
+}
