@@ -73,6 +73,6 @@ internal static class BookChecks
         if (rows.Length == 0) return;
         string[] names = [.. rows.Distinct(StringComparer.Ordinal).Order(StringComparer.Ordinal)];
         findings.Add(FindingCodes.ProfitBookUnknown, "pnl.csv",
-            $"{FindingList.Count(rows.Length, "row is", "rows are")} of {FindingList.Count(names.Length, "a book", "books")} that books.csv lacks ({FindingList.Names(names)}), so no backtest counts them");
+            $"{FindingList.Count(rows.Length, "row is", "rows are")} of {FindingList.Count(names.Length, "book", "books")} that books.csv lacks ({FindingList.Names(names)}), so no backtest counts them");
     }
 }

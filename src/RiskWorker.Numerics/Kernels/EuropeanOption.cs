@@ -11,8 +11,7 @@ namespace RiskWorker.Numerics.Kernels;
 /// <remarks>
 /// Both tails share one exponential, because S e^((b-r)T) φ(d₁) = K e^(-rT) φ(d₂): with w = S e^((b-r)T) e^(-d₁²/2) and
 /// <see cref="ScaledNormalTail"/> g, each term is w g(|d|) or its level less that. Absolute error below 4e-16 times
-/// (S e^((b-r)T) + K e^(-rT)), so that a value far out of the money may lie that much below zero. A NaN in a scenario gives a
-/// NaN there; allocates nothing.
+/// (S e^((b-r)T) + K e^(-rT)), and never below zero. A NaN in a scenario gives a NaN there; allocates nothing.
 /// </remarks>
 public static class EuropeanOption
 {
@@ -30,7 +29,7 @@ public static class EuropeanOption
     {
         double asset = terms.SpotFactor * spot;
         if (terms.IsCertain)
-            return Certain(asset, terms.StrikeValue);
+            return NotNegative(asset - terms.StrikeValue);
         double d1 = Math.FusedMultiplyAdd(x, terms.SignedInverse, terms.SignedOffset);
         return Value(asset, terms.StrikeValue, d1, d1 - terms.SignedDeviation);
     }
@@ -40,7 +39,7 @@ public static class EuropeanOption
     {
         double asset = terms.SpotFactor * spot;
         if (terms.IsExpired)
-            return Certain(asset, terms.StrikeValue);
+            return NotNegative(asset - terms.StrikeValue);
         double deviation = volatility * terms.RootYears;
         deviation = deviation < SmallestDeviation ? SmallestDeviation : deviation;
         double signed = terms.Sign * deviation;
@@ -168,20 +167,19 @@ public static class EuropeanOption
         nuint s = 0, length = (nuint)spot.Length;
         for (; s + 8 <= length; s += 8)
         {
-            Vector512<double> open = (factor * Vector512.LoadUnsafe(ref levels, s)) - strike;
-            Vector512<double> value = Vector512.ConditionalSelect(Vector512.LessThan(open, Vector512<double>.Zero), Vector512<double>.Zero, open);
+            Vector512<double> value = NotNegative((factor * Vector512.LoadUnsafe(ref levels, s)) - strike);
             Vector512.FusedMultiplyAdd(units, value - today, Vector512.LoadUnsafe(ref to, s)).StoreUnsafe(ref to, s);
         }
 
         for (int i = (int)s; i < spot.Length; i++)
-            profit[i] = Math.FusedMultiplyAdd(quantity, Certain(terms.SpotFactor * spot[i], terms.StrikeValue) - baseValue, profit[i]);
+            profit[i] = Math.FusedMultiplyAdd(quantity, NotNegative((terms.SpotFactor * spot[i]) - terms.StrikeValue) - baseValue, profit[i]);
     }
 
-    private static double Certain(double asset, double strike)
-    {
-        double open = asset - strike;
-        return open < 0.0 ? 0.0 : open;
-    }
+    private static double NotNegative(double value) => value < 0.0 ? 0.0 : value;
+
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    private static Vector512<double> NotNegative(Vector512<double> value) =>
+        Vector512.ConditionalSelect(Vector512.LessThan(value, Vector512<double>.Zero), Vector512<double>.Zero, value);
 
     /// <summary>asset·Φ(d₁) - strike·Φ(d₂), every argument carrying the option's sign.</summary>
     private static double Value(double asset, double strike, double d1, double d2)
@@ -192,8 +190,8 @@ public static class EuropeanOption
         double weight = asset * Exponential.OfNormal(-0.5 * t1 * t1);
         double tail1 = d1 > 0.0 ? -weight : weight, tail2 = d2 > 0.0 ? weight : -weight;
         double levels = (d1 > 0.0 ? asset : 0.0) - (d2 > 0.0 ? strike : 0.0);
-        levels = Math.FusedMultiplyAdd(tail1, ScaledNormalTail.Of(t1), levels);
-        return Math.FusedMultiplyAdd(tail2, ScaledNormalTail.Of(t2), levels);
+        double value = Math.FusedMultiplyAdd(tail1, ScaledNormalTail.Of(t1), levels);
+        return NotNegative(Math.FusedMultiplyAdd(tail2, ScaledNormalTail.Of(t2), value));
     }
 
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
@@ -209,8 +207,8 @@ public static class EuropeanOption
         Vector512<double> tail1 = Vector512.ConditionalSelect(above1, -weight, weight);
         Vector512<double> tail2 = Vector512.ConditionalSelect(above2, weight, -weight);
         Vector512<double> levels = Vector512.ConditionalSelect(above1, asset, zero) - Vector512.ConditionalSelect(above2, strike, zero);
-        levels = Vector512.FusedMultiplyAdd(tail1, ScaledNormalTail.Of(t1), levels);
-        return Vector512.FusedMultiplyAdd(tail2, ScaledNormalTail.Of(t2), levels);
+        Vector512<double> value = Vector512.FusedMultiplyAdd(tail1, ScaledNormalTail.Of(t1), levels);
+        return NotNegative(Vector512.FusedMultiplyAdd(tail2, ScaledNormalTail.Of(t2), value));
     }
 
     private static void Require(

@@ -30,8 +30,8 @@ public readonly struct EuropeanOptionTerms
         Sign = isCall ? 1.0 : -1.0;
         RootYears = Math.Sqrt(years);
         LogForwardMoneyness = Math.FusedMultiplyAdd(costOfCarry, years, Logarithm.Of(spot0 / strike));
-        SpotFactor = Sign * Exponential.Of((costOfCarry - rate) * years);
-        StrikeValue = Sign * (strike * Exponential.Of(-rate * years));
+        SpotFactor = Sign * Growth(costOfCarry, rate, years);
+        StrikeValue = Sign * (strike * Growth(0.0, rate, years));
 
         double deviation = volatility * RootYears;
         IsExpired = years == 0.0;
@@ -84,6 +84,16 @@ public readonly struct EuropeanOptionTerms
 
     /// <summary>Neither time nor volatility leaves anything open: the value is the discounted intrinsic value of the forward.</summary>
     internal bool IsCertain { get; }
+
+    /// <summary>e^((up - down)·years), the exponent carried in two pieces: at twenty years its rounding would be the largest error.</summary>
+    private static double Growth(double up, double down, double years)
+    {
+        double net = up - down;
+        double back = net - up;
+        double lost = up - (net - back) - (down + back);
+        double head = net * years;
+        return Exponential.OfSum(head, Math.FusedMultiplyAdd(lost, years, Math.FusedMultiplyAdd(net, years, -head)));
+    }
 
     private static void RequireFinite(double value, string name)
     {

@@ -5,7 +5,8 @@ namespace RiskWorker.Numerics.Kernels;
 
 /// <summary>
 /// Φ(-t) e^(t²/2) for 0 ≤ t ≤ 40: the normal tail without its exponential, between ½ at 0 and 1/(t√2π) far out.
-/// Every coefficient is positive, so the two polynomials lose nothing to cancellation.
+/// Every coefficient is positive, so the two polynomials lose nothing to cancellation; taken in pairs (Estrin) they round
+/// five times deep instead of eleven, and what t² and t⁴ lose is common to both and drops out of the ratio.
 /// </summary>
 /// <remarks>
 /// Rational minimax fit of degrees 10 over 11 by Remez in 60 digits on [0, 40] with ½ and 1 held at t = 0;
@@ -40,54 +41,42 @@ internal static class ScaledNormalTail
 
     public static double Of(double t)
     {
-        double p = Math.FusedMultiplyAdd(P10, t, P9);
-        p = Math.FusedMultiplyAdd(p, t, P8);
-        p = Math.FusedMultiplyAdd(p, t, P7);
-        p = Math.FusedMultiplyAdd(p, t, P6);
-        p = Math.FusedMultiplyAdd(p, t, P5);
-        p = Math.FusedMultiplyAdd(p, t, P4);
-        p = Math.FusedMultiplyAdd(p, t, P3);
-        p = Math.FusedMultiplyAdd(p, t, P2);
-        p = Math.FusedMultiplyAdd(p, t, P1);
-        p = Math.FusedMultiplyAdd(p, t, 0.5);
-        double q = Math.FusedMultiplyAdd(Q11, t, Q10);
-        q = Math.FusedMultiplyAdd(q, t, Q9);
-        q = Math.FusedMultiplyAdd(q, t, Q8);
-        q = Math.FusedMultiplyAdd(q, t, Q7);
-        q = Math.FusedMultiplyAdd(q, t, Q6);
-        q = Math.FusedMultiplyAdd(q, t, Q5);
-        q = Math.FusedMultiplyAdd(q, t, Q4);
-        q = Math.FusedMultiplyAdd(q, t, Q3);
-        q = Math.FusedMultiplyAdd(q, t, Q2);
-        q = Math.FusedMultiplyAdd(q, t, Q1);
-        q = Math.FusedMultiplyAdd(q, t, 1.0);
-        return p / q;
+        double t2 = t * t;
+        double t4 = t2 * t2;
+        double p1 = Math.FusedMultiplyAdd(Line(P4, P3, t), t2, Line(P2, P1, t));
+        double p5 = Math.FusedMultiplyAdd(Line(P8, P7, t), t2, Line(P6, P5, t));
+        double p9 = Line(P10, P9, t);
+        double numerator = Math.FusedMultiplyAdd(
+            Math.FusedMultiplyAdd(Math.FusedMultiplyAdd(p9, t4, p5), t4, p1), t, 0.5);
+        double q1 = Math.FusedMultiplyAdd(Line(Q4, Q3, t), t2, Line(Q2, Q1, t));
+        double q5 = Math.FusedMultiplyAdd(Line(Q8, Q7, t), t2, Line(Q6, Q5, t));
+        double q9 = Math.FusedMultiplyAdd(Q11, t2, Line(Q10, Q9, t));
+        double denominator = Math.FusedMultiplyAdd(
+            Math.FusedMultiplyAdd(Math.FusedMultiplyAdd(q9, t4, q5), t4, q1), t, 1.0);
+        return numerator / denominator;
     }
 
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static Vector512<double> Of(Vector512<double> t)
     {
-        Vector512<double> p = Vector512.FusedMultiplyAdd(Vector512.Create(P10), t, Vector512.Create(P9));
-        p = Vector512.FusedMultiplyAdd(p, t, Vector512.Create(P8));
-        p = Vector512.FusedMultiplyAdd(p, t, Vector512.Create(P7));
-        p = Vector512.FusedMultiplyAdd(p, t, Vector512.Create(P6));
-        p = Vector512.FusedMultiplyAdd(p, t, Vector512.Create(P5));
-        p = Vector512.FusedMultiplyAdd(p, t, Vector512.Create(P4));
-        p = Vector512.FusedMultiplyAdd(p, t, Vector512.Create(P3));
-        p = Vector512.FusedMultiplyAdd(p, t, Vector512.Create(P2));
-        p = Vector512.FusedMultiplyAdd(p, t, Vector512.Create(P1));
-        p = Vector512.FusedMultiplyAdd(p, t, Vector512.Create(0.5));
-        Vector512<double> q = Vector512.FusedMultiplyAdd(Vector512.Create(Q11), t, Vector512.Create(Q10));
-        q = Vector512.FusedMultiplyAdd(q, t, Vector512.Create(Q9));
-        q = Vector512.FusedMultiplyAdd(q, t, Vector512.Create(Q8));
-        q = Vector512.FusedMultiplyAdd(q, t, Vector512.Create(Q7));
-        q = Vector512.FusedMultiplyAdd(q, t, Vector512.Create(Q6));
-        q = Vector512.FusedMultiplyAdd(q, t, Vector512.Create(Q5));
-        q = Vector512.FusedMultiplyAdd(q, t, Vector512.Create(Q4));
-        q = Vector512.FusedMultiplyAdd(q, t, Vector512.Create(Q3));
-        q = Vector512.FusedMultiplyAdd(q, t, Vector512.Create(Q2));
-        q = Vector512.FusedMultiplyAdd(q, t, Vector512.Create(Q1));
-        q = Vector512.FusedMultiplyAdd(q, t, Vector512.Create(1.0));
-        return p / q;
+        Vector512<double> t2 = t * t;
+        Vector512<double> t4 = t2 * t2;
+        Vector512<double> p1 = Vector512.FusedMultiplyAdd(Line(P4, P3, t), t2, Line(P2, P1, t));
+        Vector512<double> p5 = Vector512.FusedMultiplyAdd(Line(P8, P7, t), t2, Line(P6, P5, t));
+        Vector512<double> p9 = Line(P10, P9, t);
+        Vector512<double> numerator = Vector512.FusedMultiplyAdd(
+            Vector512.FusedMultiplyAdd(Vector512.FusedMultiplyAdd(p9, t4, p5), t4, p1), t, Vector512.Create(0.5));
+        Vector512<double> q1 = Vector512.FusedMultiplyAdd(Line(Q4, Q3, t), t2, Line(Q2, Q1, t));
+        Vector512<double> q5 = Vector512.FusedMultiplyAdd(Line(Q8, Q7, t), t2, Line(Q6, Q5, t));
+        Vector512<double> q9 = Vector512.FusedMultiplyAdd(Vector512.Create(Q11), t2, Line(Q10, Q9, t));
+        Vector512<double> denominator = Vector512.FusedMultiplyAdd(
+            Vector512.FusedMultiplyAdd(Vector512.FusedMultiplyAdd(q9, t4, q5), t4, q1), t, Vector512.Create(1.0));
+        return numerator / denominator;
     }
+
+    private static double Line(double slope, double constant, double t) => Math.FusedMultiplyAdd(slope, t, constant);
+
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
+    private static Vector512<double> Line(double slope, double constant, Vector512<double> t) =>
+        Vector512.FusedMultiplyAdd(Vector512.Create(slope), t, Vector512.Create(constant));
 }

@@ -1,4 +1,5 @@
 using System.Numerics;
+using System.Runtime.CompilerServices;
 using System.Runtime.InteropServices;
 
 namespace RiskWorker.Numerics.LinearAlgebra;
@@ -7,6 +8,7 @@ namespace RiskWorker.Numerics.LinearAlgebra;
 internal static class Axpy
 {
     /// <summary>Adds <paramref name="a"/> times <paramref name="x"/> to <paramref name="y"/>; both have one length.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     public static void Add(double a, ReadOnlySpan<double> x, Span<double> y)
     {
         var wideX = MemoryMarshal.Cast<double, Vector<double>>(x);

@@ -44,7 +44,7 @@ public sealed class NearestCorrelation
             throw new ArithmeticException($"The nearest correlation matrix was not found: the diagonal is {point.Residual:g3} away from 1; at most {Acceptable} is let pass.");
         var nearest = point.PositivePart;
         RescaleDiagonal(nearest, n);
-        return new(nearest, Distances(given, nearest));
+        return new(nearest, DistanceBetween(given, nearest));
     }
 
     /// <summary>A Newton step, halved until the dual falls or, where rounding hides that, its gradient does; null where neither happens.</summary>
@@ -75,7 +75,7 @@ public sealed class NearestCorrelation
         }
     }
 
-    private static double Distances(double[] given, double[] nearest)
+    private static double DistanceBetween(double[] given, double[] nearest)
     {
         var squares = 0.0;
         for (var i = 0; i < given.Length; i++)

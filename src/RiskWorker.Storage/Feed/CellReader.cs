@@ -1,6 +1,7 @@
 using System.Globalization;
 using System.Text;
 using nietras.SeparatedValues;
+using RiskWorker.Storage.Feed.Rows;
 
 namespace RiskWorker.Storage.Feed;
 
@@ -220,7 +221,7 @@ internal sealed class CellReader : IDisposable
     private DateOnly AnyDate(int column)
     {
         var cell = Cell(column);
-        if (DateOnly.TryParseExact(cell, "yyyy-MM-dd", CultureInfo.InvariantCulture, DateTimeStyles.None, out var date)) return date;
+        if (Iso.TryParse(cell, out var date)) return date;
         Fault(column, cell, "a date as yyyy-MM-dd");
         return default;
     }

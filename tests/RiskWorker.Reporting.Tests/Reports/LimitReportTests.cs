@@ -15,7 +15,7 @@ public sealed class LimitReportTests
         var page = Page(new SampleRun().Build(), 0);
         Assert.Contains("Two of ten limits are breached, one is undecided; one of these breaches is new.", page);
         Assert.Contains("412.3", page);
-        Assert.Contains("95% interval 408.2 to 416.4; +12.4 since 2026-11-26", page);
+        Assert.Contains("99% interval 408.2 to 416.4; +12.4 since 2026-11-26", page);
         Assert.Contains("Intervals hold simulation noise only", page);
         Assert.Contains("They do not hold model or estimation error.", page);
         Assert.Contains("What changed since 2026-11-26", page);
@@ -61,6 +61,23 @@ public sealed class LimitReportTests
         var run = new SampleRun().Build();
         Assert.DoesNotContain("Settings or model changed", Flat(run));
         Assert.Contains("Settings or model changed", Flat(run with { SettingsHash = SnapshotHash.OfText("other") }));
+    }
+
+    [Fact]
+    public void Build_backfilled_run_says_so_on_page_one()
+    {
+        var run = new SampleRun().Build();
+        Assert.DoesNotContain("afterwards", Page(run, 0));
+        Assert.Contains("It was made afterwards (backfilled): nobody had these figures on their date.", Page(run with { Evidence = EvidenceKind.Backfilled }, 0));
+    }
+
+    [Fact]
+    public void Build_names_the_urgent_limits_and_since_when()
+    {
+        var page = Page(new SampleRun().Build(), 0);
+        Assert.Contains("Halden & Moss VaR 1", page);
+        Assert.Contains("breached, since 2026-11-23, 112.0% used (110.9% to 113.1%).", page);
+        Assert.Contains("inconclusive, new, 100.3% used (99.3% to 101.3%).", page);
     }
 
     [Fact]

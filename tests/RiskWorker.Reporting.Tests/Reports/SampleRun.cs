@@ -59,7 +59,7 @@ internal sealed class SampleRun
     }
 
     private static MeasureResult Measure(MeasureSpec spec, double value, double width = 0.01) =>
-        new(spec, value, value * (1 - width), value * (1 + width), 0.95);
+        new(spec, value, value * (1 - width), value * (1 + width), 0.99);
 
     private RunResults Results()
     {

@@ -14,7 +14,7 @@ internal static class BooksSection
 
     public static IReadOnlyList<Block> Blocks(RunReading run)
     {
-        if (run.Root is null)
+        if (run.HeadlineSpecs.Count == 0)
             return [];
 
         IReadOnlyList<MeasureSpec> first = [.. run.HeadlineSpecs.Concat(run.Specs.Except(run.HeadlineSpecs)).Take(MeasuresInTree)];
@@ -27,14 +27,14 @@ internal static class BooksSection
                 $"Figures in {run.Scale().Unit}, whatever the currency of the book; intervals stand below. Stand-alone: the sum of {Phrases.Short(first[0])} over the books directly below; "
                 + "it is left out where a book also holds positions of its own. Diversification: the part of that sum by which the whole is smaller.", Voice.Note),
             .. others.SelectMany(specs => (Block[])[new Heading("Other measures", 3), Tree(run, specs, null)]),
-            Chart(run, first[0]),
+            .. run.Results.Nodes.Count > 1 ? [Chart(run, first[0])] : (Block[])[],
         ];
     }
 
     private static Table Tree(RunReading run, IReadOnlyList<MeasureSpec> specs, MeasureSpec? sumOf)
     {
         var unit = run.Scale().Unit;
-        var columns = specs.Select(spec => new Column(spec.ToString(), 1.25, Alignment.Right, unit));
+        var columns = specs.Select(spec => new Column(Phrases.Head(spec), 1.25, Alignment.Right, unit));
         if (sumOf is not null)
             columns = [new("Value", 1.1, Alignment.Right, unit), .. columns, new("Stand-alone", 1.1, Alignment.Right, unit), new("Diversification", 1, Alignment.Right, "%")];
 

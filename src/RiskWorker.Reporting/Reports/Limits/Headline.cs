@@ -59,7 +59,7 @@ internal static class Headline
     private static string Age(RunReading run)
     {
         var breached = run.Results.Limits.Where(limit => limit.Status == LimitStatus.Breached).ToList();
-        var fresh = breached.Count(limit => limit.StatusSince == run.Record.AsOf);
+        var fresh = breached.Count(limit => IsNew(run, limit));
         if (run.Record.Previous is null || breached.Any(limit => limit.StatusSince is null))
             return "";
         if (fresh == 0)
@@ -68,6 +68,9 @@ internal static class Headline
             ? (fresh == 1 ? "; the breach is new" : "; all these breaches are new")
             : $"; {Phrases.Number(fresh)} of these breaches {Is(fresh)} new";
     }
+
+    private static bool IsNew(RunReading run, LimitResult limit) =>
+        run.Record.Previous is not null && limit.StatusSince == run.Record.AsOf;
 
     private static string Since(RunReading run, LimitResult limit) =>
         limit.StatusSince is { } since && since < run.Record.AsOf ? $", since {Numerals.Date(since)}" : "";
@@ -80,7 +83,7 @@ internal static class Headline
             var used = limit.Used is null ? "its use could not be computed" : $"{Phrases.Used(limit.Used)} used{(interval.Length > 0 ? $" ({interval})" : "")}";
             yield return RichText.Of(
                 new TextRun(limit.Limit.Name, Strong: true),
-                new TextRun($" ({Phrases.Bound(run, limit)}): {Phrases.Word(limit.Status)}{Since(run, limit)}, {used}."));
+                new TextRun($" ({Phrases.Bound(run, limit)}): {Phrases.Word(limit.Status)}{(IsNew(run, limit) ? ", new" : Since(run, limit))}, {used}."));
         }
 
         if (urgent.Count > Named)

@@ -77,6 +77,9 @@ internal static class Phrases
     /// <summary>A measure without its horizon: VaR 99%.</summary>
     public static string Short(MeasureSpec spec) => spec.Kind == MeasureKind.Var ? $"VaR {spec.Confidence}" : $"ES {spec.Confidence}";
 
+    /// <summary>A measure as a column's head: the horizon stays on one line.</summary>
+    public static string Head(MeasureSpec spec) => $"{Short(spec)}, {spec.Horizon.ToString().Replace(' ', '\u00A0')}";
+
     /// <summary>An interval of money: 313.1 to 319.4; an end outside the sample is named.</summary>
     public static string Interval(MoneyScale scale, double? low, double? high) =>
         (low, high) is (null, null) ? "interval outside the sample" : $"{Ends(low, scale.Text)} to {Ends(high, scale.Text)}";

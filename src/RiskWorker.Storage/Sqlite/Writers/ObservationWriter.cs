@@ -7,7 +7,7 @@ namespace RiskWorker.Storage.Sqlite.Writers;
 /// <summary>Adds observations; one that differs in value replaces the stored one, which goes to the corrections. What the file leaves out stays.</summary>
 internal sealed class ObservationWriter(SqliteConnection connection, long load) : IRowWriter<ObservationRow>
 {
-    private readonly Statement _insert = new(connection, "INSERT INTO observation (date, factor, value) VALUES (?1, ?2, ?3) ON CONFLICT DO NOTHING", 3);
+    private readonly BulkStatement _insert = new(connection, "INSERT INTO observation (date, factor, value) VALUES (?1, ?2, ?3) ON CONFLICT DO NOTHING");
     private readonly Statement _stored = new(connection, "SELECT value FROM observation WHERE date = ?1 AND factor = ?2", 2);
     private readonly Statement _update = new(connection, "UPDATE observation SET value = ?3 WHERE date = ?1 AND factor = ?2", 3);
     private readonly Statement _correct = new(connection, "INSERT INTO observation_correction (date, factor, new_value, old_value, load) VALUES (?1, ?2, ?3, ?4, ?5)", 5);

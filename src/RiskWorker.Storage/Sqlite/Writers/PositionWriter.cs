@@ -7,7 +7,7 @@ namespace RiskWorker.Storage.Sqlite.Writers;
 /// <summary>Replaces the positions of each date in the file whose digest differs from the stored one; other dates stay.</summary>
 internal sealed class PositionWriter : IRowWriter<PositionRow>
 {
-    private readonly Statement _insert;
+    private readonly BulkStatement _insert;
     private readonly HashSet<DateOnly> _replaced = [];
     private readonly IsoText _iso = new();
     private readonly long _added, _changed, _removed, _unchanged;
@@ -15,7 +15,7 @@ internal sealed class PositionWriter : IRowWriter<PositionRow>
 
     public PositionWriter(SqliteConnection connection, PositionDigests digests)
     {
-        _insert = new(connection, "INSERT INTO position (as_of, row, book, instrument, quantity, trade, market_value) VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7)", 7);
+        _insert = new(connection, "INSERT INTO position (as_of, row, book, instrument, quantity, trade, market_value) VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7)");
         var stored = connection.Query("SELECT as_of, rows, digest FROM position_date", r => (AsOf: r.GetString(0), Rows: r.GetInt64(1), Digest: r.GetString(2)))
             .ToDictionary(d => d.AsOf, StringComparer.Ordinal);
         foreach (var (date, (rows, sum)) in digests.ByDate)
