@@ -794,8 +794,9 @@ internal sealed class House(Market market)
 
     public void TradeThrough()
     {
-        var home = Enumerable.Range(0, market.Days.Length).Where(t => Calendars.IsOpen("Lowland", market.Days[t]));
-        int[] dates = [.. home.TakeLast(Span.PositionDates)];
+        // The house deals in all markets, so it closes its books on every day that one of them is open.
+        var days = Enumerable.Range(0, market.Days.Length).Where(t => Calendars.Names.Any(c => Calendars.IsOpen(c, market.Days[t])));
+        int[] dates = [.. days.TakeLast(Span.PositionDates)];
         foreach (var line in Firm.Lines) Open(line, dates[0]);
         OpenCash();
         Close(dates[0]);

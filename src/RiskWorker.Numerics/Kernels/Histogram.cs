@@ -10,7 +10,10 @@ public static class Histogram
     // Adding 2^52 to a whole number below it leaves the number in the low bits.
     private const double TwoTo52 = 4503599627370496.0;
 
-    /// <summary>The count that a value belongs to: 0 below <paramref name="low"/>, bins + 1 from the upper end on, else 1 + floor((value - low)·inverseWidth).</summary>
+    /// <summary>
+    /// The count that a value belongs to: 0 below <paramref name="low"/>, bins + 1 from the upper end on, else
+    /// 1 + floor((value - low)·inverseWidth).
+    /// </summary>
     /// <exception cref="ArgumentException">The value is NaN.</exception>
     public static int BinOf(double value, double low, double inverseWidth, int bins)
     {

@@ -9,7 +9,10 @@ public static class NormalDraws
     public static double At(DrawStream stream, ulong scenario, uint draw) =>
         InverseNormal.Of(UniformDraws.At(stream, scenario, draw));
 
-    /// <summary>Both draws of a pair for consecutive scenarios; spans and errors as in <see cref="UniformDraws.FillPair(DrawStream, ulong, uint, Span{double}, Span{double})"/>.</summary>
+    /// <summary>
+    /// Both draws of a pair for consecutive scenarios; spans and errors as in
+    /// <see cref="UniformDraws.FillPair(DrawStream, ulong, uint, Span{double}, Span{double})"/>.
+    /// </summary>
     [ScalarTwin(nameof(At))]
     public static void FillPair(DrawStream stream, ulong firstScenario, uint pair, Span<double> first, Span<double> second)
     {

@@ -28,6 +28,7 @@ internal sealed class CellReader : IDisposable
     private readonly int[] _place;
     private int _width;
     private long _faultsBefore;
+    private long _nextLine = 1;
     private char[] _unquoted = new char[256];
 
     /// <summary>Starts before the header of <paramref name="stream"/>, which is read as UTF-8 and stays open.</summary>
@@ -98,7 +99,7 @@ internal sealed class CellReader : IDisposable
                 if (RowIsSound) return true;
                 continue;
             }
-            var spans = row.LineNumberToExcl - row.LineNumberFrom > 1 ? " (a quotation mark opens a cell that ends lines later)" : "";
+            var spans = _nextLine - Line > 1 ? " (a quotation mark opens a cell that ends lines later)" : "";
             _faults.Add(Line, null, string.Create(CultureInfo.InvariantCulture, $"{row.ColCount} cells"), string.Create(CultureInfo.InvariantCulture, $"{_width} as in the header{spans}"));
         }
         return false;
@@ -195,14 +196,21 @@ internal sealed class CellReader : IDisposable
     /// <summary>A date of a close: ISO 8601, from 1900 to 2199.</summary>
     public DateOnly Date(int column)
     {
-        var date = AnyDate(column);
-        if (date.Year is >= 1900 and < 2200) return date;
-        if (date != default) Fault(column, "a date from 1900 to 2199");
+        var cell = Cell(column);
+        if (Iso.TryParse(cell, out var date) && date.Year is >= 1900 and < 2200) return date;
+        Fault(column, cell, "a date as yyyy-MM-dd, from 1900 to 2199");
         return default;
     }
 
-    /// <summary>An ISO 8601 date, or null where the cell is empty.</summary>
-    public DateOnly? OptionalDate(int column) => IsEmpty(column) ? null : AnyDate(column);
+    /// <summary>Any ISO 8601 date, or null where the cell is empty.</summary>
+    public DateOnly? OptionalDate(int column)
+    {
+        var cell = Cell(column);
+        if (cell.IsEmpty) return null;
+        if (Iso.TryParse(cell, out var date)) return date;
+        Fault(column, cell, "a date as yyyy-MM-dd, or nothing");
+        return null;
+    }
 
     /// <summary>One of <paramref name="choices"/> by its spelling in the feed.</summary>
     public T Choice<T>(int column, IReadOnlyDictionary<string, T> choices) where T : struct
@@ -217,14 +225,6 @@ internal sealed class CellReader : IDisposable
     }
 
     public void Dispose() => _rows.Dispose();
-
-    private DateOnly AnyDate(int column)
-    {
-        var cell = Cell(column);
-        if (Iso.TryParse(cell, out var date)) return date;
-        Fault(column, cell, "a date as yyyy-MM-dd");
-        return default;
-    }
 
     private bool IsName(int column, ReadOnlySpan<char> cell)
     {
@@ -273,12 +273,13 @@ internal sealed class CellReader : IDisposable
         try
         {
             if (!_rows.MoveNext()) return false;
-            Line = _rows.Current.LineNumberFrom;
+            // Not LineNumberFrom: of a first row without a header that is one too many (Sep 0.17.1).
+            (Line, _nextLine) = (_nextLine, _rows.Current.LineNumberToExcl);
             return true;
         }
         catch (NotSupportedException)
         {
-            _faults.Add(Line + 1, null, "a row longer than 16 million characters", "shorter rows; a quotation mark may be left open");
+            _faults.Add(_nextLine, null, "a row longer than 16 million characters", "shorter rows; a quotation mark may be left open");
             return false;
         }
     }

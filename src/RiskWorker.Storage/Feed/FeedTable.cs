@@ -53,7 +53,7 @@ internal sealed class FeedTable<TRow>(
             if (rows.TryParse(cells, out var row)) onChecked?.Invoke(row);
             Report(cells.Rows, false, progress, cancellation);
         }
-        if (Format.Required && cells.Rows == 0) faults.Add(0, null, "no row below the header", "at least one row");
+        if (Format.Required && cells.Rows == 0 && faults.Count == 0) faults.Add(0, null, "no row below the header", "at least one row");
         return cells.Rows;
     }
 

@@ -5,6 +5,7 @@ using RiskWorker.Storage.Feed.Rows;
 namespace RiskWorker.Storage.Sqlite;
 
 /// <summary>Holds the stored runs against the chain: every record, every document list, and every column kept beside a record.</summary>
+/// <remarks>A chain cut at its end together with everything it vouched for looks whole: the printed heads of later documents show it.</remarks>
 internal static class RunAudit
 {
     public const string ChainColumns = "sequence, kind, run, content, previous, hash";
@@ -23,8 +24,14 @@ internal static class RunAudit
             var fault = entry.Kind == ChainEntryKind.Results ? FaultOfRun(connection, entry) : FaultOfDocuments(connection, entry);
             if (fault is not null) return fault;
         }
-        var unchained = connection.Query("SELECT run FROM run WHERE run NOT IN (SELECT run FROM chain WHERE kind = 'results') ORDER BY sequence LIMIT 1", r => r.GetString(0));
-        return unchained.Count == 0 ? null : $"Run {unchained[0]} is stored but the chain holds no entry for its results: the entry was removed.";
+        return connection.Query(
+            """
+            SELECT 'The results of run ' || run FROM run WHERE run NOT IN (SELECT run FROM chain WHERE kind = 'results')
+            UNION ALL
+            SELECT 'The document ' || name FROM document WHERE entry NOT IN (SELECT sequence FROM chain WHERE kind = 'documents')
+            LIMIT 1
+            """,
+            row => row.GetString(0) + " is stored without an entry in the chain: the entry was removed.").FirstOrDefault();
     }
 
     private static string? FaultOfRun(SqliteConnection connection, ChainEntry entry)

@@ -20,14 +20,15 @@ internal sealed class ProfitWriter(SqliteConnection connection, long load) : IRo
             return;
         }
         var (actual, hypothetical) = connection.Query("SELECT actual, hypothetical FROM pnl WHERE date = ?1 AND book = ?2", r => (r.Text(0), r.Text(1)), date, row.Book)[0];
-        if (Same(actual, row.Actual) && Same(hypothetical, row.Hypothetical))
+        var (newActual, newHypothetical) = (Newer(actual, row.Actual), Newer(hypothetical, row.Hypothetical));
+        if (newActual == actual && newHypothetical == hypothetical)
         {
             _unchanged++;
             return;
         }
-        connection.Run("UPDATE pnl SET actual = ?3, hypothetical = ?4 WHERE date = ?1 AND book = ?2", date, row.Book, row.Actual?.Text, row.Hypothetical?.Text);
+        connection.Run("UPDATE pnl SET actual = ?3, hypothetical = ?4 WHERE date = ?1 AND book = ?2", date, row.Book, newActual, newHypothetical);
         connection.Run("INSERT INTO pnl_correction (date, book, old_actual, new_actual, old_hypothetical, new_hypothetical, load) VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7)",
-            date, row.Book, actual, row.Actual?.Text, hypothetical, row.Hypothetical?.Text, load);
+            date, row.Book, actual, newActual, hypothetical, newHypothetical, load);
         _changed++;
     }
 
@@ -35,6 +36,7 @@ internal sealed class ProfitWriter(SqliteConnection connection, long load) : IRo
 
     public void Dispose() => _insert.Dispose();
 
-    private static bool Same(string? stored, TypedNumber? read) =>
-        stored is null ? read is null : read is { } number && double.Parse(stored, CultureInfo.InvariantCulture) == number.Value;
+    /// <summary>What was read; the stored text where both are the same number.</summary>
+    private static string? Newer(string? stored, TypedNumber? read) =>
+        stored is not null && read is { } number && double.Parse(stored, CultureInfo.InvariantCulture) == number.Value ? stored : read?.Text;
 }

@@ -1,0 +1,54 @@
+using System.Globalization;
+using System.Text;
+using RiskWorker.Domain.Runs;
+
+namespace RiskWorker.Storage.Export;
+
+/// <summary>
+/// Writes <c>results.csv</c>: one tidy table for spreadsheets, a row for each node and measure and a row for each limit
+/// (<c>row</c> says which). RFC 4180, UTF-8, '.' decimals; the same record gives the same bytes.
+/// </summary>
+public static class ResultsCsv
+{
+    private const string Header =
+        "run,as_of,row,book,parent,currency,book_value,measure,confidence,horizon_days,value,low,high,level,limit,amount,basis,reference_book,used,used_low,used_high,status,status_since";
+
+    /// <summary>Writes <paramref name="record"/> to <paramref name="stream"/>.</summary>
+    public static void Write(RunRecord record, Stream stream)
+    {
+        ArgumentNullException.ThrowIfNull(record);
+        ArgumentNullException.ThrowIfNull(stream);
+        using var text = new StreamWriter(stream, new UTF8Encoding(false), leaveOpen: true) { NewLine = "\r\n" };
+        text.WriteLine(Header);
+        var root = record.Results.Firm?.ReportingCurrency ?? "";
+        foreach (var node in record.Results.Nodes)
+        {
+            foreach (var measure in node.Measures) text.WriteLine(Node(record, node, node.Currency, node.Value, measure));
+            foreach (var measure in node.MeasuresRoot ?? []) text.WriteLine(Node(record, node, root, node.ValueRoot, measure));
+        }
+        foreach (var limit in record.Results.Limits) text.WriteLine(Limit(record, limit));
+    }
+
+    private static string Node(RunRecord record, NodeResult node, string currency, double value, MeasureResult measure) => string.Join(',',
+        Text(record.Run), Words.Date(record.AsOf), "node", Text(node.Book), Text(node.Parent), Text(currency), Number(value),
+        Spec(measure.Spec), Number(measure.Value), Number(measure.Low), Number(measure.High), Number(measure.Level), ",,,,,,,,");
+
+    private static string Limit(RunRecord record, LimitResult result) => string.Join(',',
+        Text(record.Run), Words.Date(record.AsOf), "limit", Text(result.Limit.Book), "", Text(result.Currency), "",
+        Spec(result.Limit.Measure), Number(result.Value), Number(result.Low), Number(result.High), Number(result.Level),
+        Text(result.Limit.Name), Number(result.Limit.Amount), Words.Of(result.Limit.Basis), Text(result.Limit.ReferenceBook),
+        Number(result.Used), Number(result.UsedLow), Number(result.UsedHigh), Words.Of(result.Status), Words.Date(result.StatusSince));
+
+    private static string Spec(MeasureSpec spec) =>
+        string.Create(CultureInfo.InvariantCulture, $"{Words.Of(spec.Kind)},{spec.Confidence.Level},{spec.Horizon.Days}");
+
+    private static string Number(double? value) => value is { } number && double.IsFinite(number) ? number.ToString("R", CultureInfo.InvariantCulture) : "";
+
+    /// <summary>A cell that a spreadsheet will not take for a formula, quoted where RFC 4180 asks for it.</summary>
+    private static string Text(string? text)
+    {
+        if (string.IsNullOrEmpty(text)) return "";
+        if (text[0] is '=' or '+' or '-' or '@' or '\t' or '\r' or '\n') text = "'" + text;
+        return text.AsSpan().IndexOfAny(",\"\r\n") < 0 ? text : $"\"{text.Replace("\"", "\"\"", StringComparison.Ordinal)}\"";
+    }
+}
