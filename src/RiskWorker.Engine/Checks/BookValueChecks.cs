@@ -27,7 +27,7 @@ internal static class BookValueChecks
             if (Reconciliation.IsBreak(line.Value, market, tolerance)) (books[node].Breaks ??= []).Add(i);
         }
         if (books.All(b => b.Breaks is null)) return;
-        var sizes = new LineSize(snapshot, tree);
+        var sizes = LineSize.Of(snapshot, tree);
         for (var node = 0; node < books.Length; node++)
         {
             if (books[node].Breaks is not { } breaks) continue;

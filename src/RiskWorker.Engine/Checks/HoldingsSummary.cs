@@ -1,4 +1,3 @@
-using RiskWorker.Domain.Books;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Engine.Pricing;
 
@@ -9,17 +8,19 @@ public static class HoldingsSummary
 {
     /// <summary>Sums up the lines of a date.</summary>
     /// <param name="snapshot">Where they are from.</param>
-    /// <param name="tree">Its books.</param>
+    /// <param name="currencies">Turns amounts into the reporting currency.</param>
+    /// <param name="levels">Today's level of every factor of the snapshot.</param>
     /// <param name="today">Its positions, valued.</param>
     /// <param name="previous">Those of the previous date at its own prices; null where there are none.</param>
-    public static Holdings Of(Snapshot snapshot, BookTree tree, LineValue[] today, LineValue[]? previous)
+    public static Holdings Of(Snapshot snapshot, CurrencyTable currencies, double[] levels, LineValue[] today, LineValue[]? previous)
     {
-        var sizes = new LineSize(snapshot, tree);
+        var books = snapshot.Books.Select(b => b.Name).ToHashSet(StringComparer.Ordinal);
+        var sizes = new LineSize(snapshot, currencies, levels);
         var (priced, reconciled, breakTotal) = (0, 0, 0.0);
         var (breaks, unpriced) = (new List<(double Size, ReconciliationBreak Break)>(), new List<UnpricedLine>());
         foreach (ref readonly var line in today.AsSpan())
         {
-            if (ReasonLeftOut(line, tree) is { } reason)
+            if (ReasonLeftOut(line, books) is { } reason)
             {
                 unpriced.Add(new(line.Position.Book, line.Position.Instrument, line.Instrument?.Kind ?? "-", line.Position.Quantity, sizes.Of(line), reason));
                 continue;
@@ -37,8 +38,8 @@ public static class HoldingsSummary
         {
             Positions = today.Length,
             Priced = priced,
-            GrossValue = GrossValue(today, tree),
-            PreviousGrossValue = previous is null ? null : GrossValue(previous, tree),
+            GrossValue = GrossValue(today, books),
+            PreviousGrossValue = previous is null ? null : GrossValue(previous, books),
             Reconciled = reconciled,
             Breaks = [.. breaks.OrderByDescending(b => b.Size).Select(b => b.Break)],
             BreakTotal = breakTotal,
@@ -46,15 +47,15 @@ public static class HoldingsSummary
         };
     }
 
-    private static string? ReasonLeftOut(in LineValue line, BookTree tree) =>
-        tree.IndexOf(line.Position.Book) < 0 ? "its book is not in books.csv" : line.Unpriced?.Clause;
+    private static string? ReasonLeftOut(in LineValue line, HashSet<string> books) =>
+        books.Contains(line.Position.Book) ? line.Unpriced?.Clause : "its book is not in books.csv";
 
-    private static double GrossValue(LineValue[] lines, BookTree tree)
+    private static double GrossValue(LineValue[] lines, HashSet<string> books)
     {
         var sum = 0.0;
         foreach (ref readonly var line in lines.AsSpan())
         {
-            if (ReasonLeftOut(line, tree) is null) sum += Math.Abs(line.Exposure);
+            if (ReasonLeftOut(line, books) is null) sum += Math.Abs(line.Exposure);
         }
         return sum;
     }

@@ -16,12 +16,15 @@ internal sealed class LineSize
     private readonly CurrencyTable _currencies;
     private readonly double[] _levels;
 
-    public LineSize(Snapshot snapshot, BookTree tree)
+    public LineSize(Snapshot snapshot, CurrencyTable currencies, double[] levels)
     {
-        _currencies = new(tree.ReportingCurrency, snapshot.Factors);
-        _levels = new ClosingLevels(snapshot).At(snapshot.AsOf);
-        for (var j = 0; j < _levels.Length; j++) _price[snapshot.Factors[j].Name] = _levels[j];
+        (_currencies, _levels) = (currencies, levels);
+        for (var j = 0; j < levels.Length; j++) _price[snapshot.Factors[j].Name] = levels[j];
     }
+
+    /// <summary>The same at the prices of the snapshot's date.</summary>
+    public static LineSize Of(Snapshot snapshot, BookTree tree) =>
+        new(snapshot, new(tree.ReportingCurrency, snapshot.Factors), new ClosingLevels(snapshot).At(snapshot.AsOf));
 
     /// <summary>Price of one unit of <paramref name="currency"/>; NaN where there is none.</summary>
     public double RateOf(string currency)

@@ -18,7 +18,7 @@ internal static class UnpricedChecks
         {
             if (line.Unpriced is not { } unpriced) continue;
             if (!groups.TryGetValue(unpriced.Reason, out var group)) groups[unpriced.Reason] = group = new();
-            group.Add(line, unpriced.Clause, (sizes ??= new(snapshot, tree)).Of(line));
+            group.Add(line, unpriced.Clause, (sizes ??= LineSize.Of(snapshot, tree)).Of(line));
         }
         foreach (var (reason, group) in groups)
         {

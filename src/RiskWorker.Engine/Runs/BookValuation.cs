@@ -17,7 +17,7 @@ public sealed class BookValuation
         Today = LineValuation.Of(snapshot.Positions, snapshot.Instruments, Binder, model.Levels, snapshot.AsOf);
         if (snapshot.Previous is { } previous)
             Previous = LineValuation.Of(previous.Positions, snapshot.Instruments, Binder, new ClosingLevels(snapshot).At(previous.Date), previous.Date);
-        Holdings = HoldingsSummary.Of(snapshot, tree, Today, Previous);
+        Holdings = HoldingsSummary.Of(snapshot, Binder.Currencies, model.Levels, Today, Previous);
     }
 
     /// <summary>Resolves instruments against the model's factors.</summary>

@@ -26,7 +26,7 @@ internal static class FindingsOf
     {
         var snapshot = builder.Build();
         var (tree, today, previous) = Valued(snapshot);
-        return HoldingsSummary.Of(snapshot, tree, today, previous);
+        return HoldingsSummary.Of(snapshot, new(tree.ReportingCurrency, snapshot.Factors), new ClosingLevels(snapshot).At(snapshot.AsOf), today, previous);
     }
 
     private static (BookTree Tree, LineValue[] Today, LineValue[]? Previous) Valued(Snapshot snapshot)

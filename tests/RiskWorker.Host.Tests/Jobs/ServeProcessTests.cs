@@ -1,6 +1,7 @@
 using System.Diagnostics;
 using System.Globalization;
 using System.Text.Json;
+using RiskWorker.Host.Verbs;
 
 namespace RiskWorker.Host.Tests.Jobs;
 
@@ -15,7 +16,7 @@ public sealed class ServeProcessTests : IDisposable
     [Fact]
     public async Task Serve_second_process_on_one_store_is_refused_and_names_the_first()
     {
-        WriteSettings(DateTime.UtcNow.AddHours(2));
+        WriteSettings("0 0 0 1 1 ?");
         using var first = Start();
         try
         {
@@ -45,10 +46,33 @@ public sealed class ServeProcessTests : IDisposable
         Assert.False(Directory.Exists(Path.Combine(_folder.Path, "out")));
     }
 
-    /// <summary>Settings with one schedule due at <paramref name="due"/>, every day at that second.</summary>
-    private void WriteSettings(DateTime due) => _folder.Write("riskworker.json", JsonSerializer.Serialize(new
+    [Fact]
+    public async Task Serve_schedule_that_comes_due_writes_its_report()
     {
-        schedules = new { daily = new { cron = string.Create(CultureInfo.InvariantCulture, $"{due.Second} {due.Minute} {due.Hour} * * ?"), timeZone = "UTC" } },
+        WriteSettings("0/5 * * * * ?");
+        TinyFeed.Write(_folder);
+        using var service = Start();
+        try
+        {
+            await LineAsync(service, "[2002]");
+        }
+        finally
+        {
+            await StopAsync(service);
+        }
+        Assert.Equal(0, service.ExitCode);
+        var day = Path.Combine(_folder.Path, "out", Figures.Date(TinyFeed.AsOf));
+        var run = Directory.GetDirectories(day).Order(StringComparer.Ordinal).First();
+        using var results = JsonDocument.Parse(await File.ReadAllBytesAsync(Path.Combine(run, "results.json"), TestContext.Current.CancellationToken));
+        Assert.Equal("FIRM", results.RootElement.GetProperty("nodes")[0].GetProperty("book").GetString());
+        Assert.NotEmpty(Directory.GetFiles(run, "*.pdf"));
+    }
+
+    /// <summary>Settings with one schedule.</summary>
+    private void WriteSettings(string cron) => _folder.Write("riskworker.json", JsonSerializer.Serialize(new
+    {
+        simulation = new { scenarios = 2_000 },
+        schedules = new { daily = new { cron, timeZone = "UTC" } },
     }));
 
     private Process Start()

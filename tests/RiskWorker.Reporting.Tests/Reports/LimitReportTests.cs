@@ -36,8 +36,8 @@ public sealed class LimitReportTests
     [InlineData("BWW", "One of three limits is breached, since 2026-11-20.")]
     [InlineData("BBU", "Two of three limits are breached, one is undecided; none of these breaches is new.")]
     [InlineData("bW", "One of two limits is breached; the breach is new.")]
-    [InlineData("bb", "Two of two limits are breached; all these breaches are new.")]
-    [InlineData("bBB", "Three of three limits are breached; one of these breaches is new.")]
+    [InlineData("bb", "Both limits are breached; all these breaches are new.")]
+    [InlineData("bBB", "All three limits are breached; one of these breaches is new.")]
     public void Build_says_in_one_sentence_where_the_limits_stand(string limits, string sentence)
     {
         var run = new SampleRun { Limits = limits.Length }.Build();
@@ -59,8 +59,8 @@ public sealed class LimitReportTests
     public void Build_run_with_other_settings_than_the_previous_says_so()
     {
         var run = new SampleRun().Build();
-        Assert.DoesNotContain("Settings or model changed", Flat(run));
-        Assert.Contains("Settings or model changed", Flat(run with { SettingsHash = SnapshotHash.OfText("other") }));
+        Assert.DoesNotContain("Settings differ", Flat(run));
+        Assert.Contains("which used model house and 100,000 scenarios", Flat(run with { SettingsHash = SnapshotHash.OfText("other") }));
     }
 
     [Fact]

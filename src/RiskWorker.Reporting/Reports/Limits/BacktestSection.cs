@@ -13,7 +13,7 @@ internal static class BacktestSection
     public static IReadOnlyList<Block> Blocks(RunReading run)
     {
         var counts = run.Results.Backtest;
-        if (counts.Count == 0)
+        if (counts.All(count => count.Days == 0))
             return [new Heading("VaR against P&L"), new Paragraph("No earlier run is stored, so there is no VaR to hold against the P&L.")];
 
         var root = counts.FirstOrDefault(count => count.Book == run.Root?.Book);

@@ -95,7 +95,7 @@ internal static class BooksSection
             .Take(Charted).Select(pair => ChartRow(run, pair.Node, pair.Measure!)).ToList();
         var books = rows.Count < run.Results.Nodes.Count ? $"The {Phrases.Number(rows.Count)} books with the largest {Phrases.Short(spec)}" : $"{Phrases.Short(spec)} by book";
         return new Figure(
-            books, new MeasureChart(rows, spec.ToString(), run.Currency), 42 + (15 * rows.Count),
+            books, new MeasureChart(rows, spec.ToString(), run.Currency), 38 + (14 * rows.Count),
             "Whisker: interval. Upright stroke: limit in money on this measure, where the book is in the reporting currency. Square: breached; diamond: inconclusive; triangle: warning; circle: within or without limit.");
     }
 

@@ -37,7 +37,7 @@ internal static class Headline
         if (limits.Count == 1)
             return Alone(run, limits[0]);
         if (breached > 0)
-            return Phrases.Sentence($"{Phrases.Number(breached)} {all} {Is(breached)} breached{Undecided(undecided)}{Age(run)}.");
+            return Phrases.Sentence($"{(breached == limits.Count ? Every(breached) : $"{Phrases.Number(breached)} {all}")} {Is(breached)} breached{Undecided(undecided)}{Age(run)}.");
         if (undecided > 0)
             return Phrases.Sentence($"{Phrases.Number(undecided)} {all} {Is(undecided)} undecided within simulation noise; none is breached.");
         return near > 0
@@ -107,7 +107,7 @@ internal static class Headline
             yield return new("Most used limit", Phrases.Used(most.Used), "", $"{most.Limit.Name}, {Phrases.UsedInterval(most.UsedLow, most.UsedHigh)}", Phrases.Mark(most.Status));
         foreach (var spec in run.HeadlineSpecs)
             yield return Measure(run, spec);
-        if (run.Results.Backtest.FirstOrDefault(count => count.Book == run.Root?.Book) is { } backtest)
+        if (run.Results.Backtest.FirstOrDefault(count => count.Book == run.Root?.Book && count.Days > 0) is { } backtest)
             yield return Exceptions(backtest);
     }
 
@@ -130,6 +130,8 @@ internal static class Headline
             $"Exceptions in {Phrases.Plural(count.Days, "day")}", Numerals.Count(count.Exceptions), "",
             $"VaR {count.Confidence}: {actual}, hypothetical {Numerals.Count(count.Hypothetical)}; {zone}", mark);
     }
+
+    private static string Every(int count) => count == 2 ? "both limits" : $"all {Phrases.Number(count)} limits";
 
     private static string Is(int count) => count == 1 ? "is" : "are";
 }

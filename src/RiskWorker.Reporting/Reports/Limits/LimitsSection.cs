@@ -29,10 +29,10 @@ internal static class LimitsSection
 
     private static Column[] Columns(string unit) =>
     [
-        new("Limit", 2.4),
-        new("Measure", 1, Alignment.Right, unit),
+        new("Limit", 2.3),
+        new("Measure", 1.35, Alignment.Right, unit),
         new("Amount", 1, Alignment.Right, unit),
-        new("Used", 2.6),
+        new("Used", 2.3),
         new("Status", 1.3),
         new("Change", 0.9, Alignment.Right, "% points"),
     ];

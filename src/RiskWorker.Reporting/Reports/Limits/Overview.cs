@@ -72,8 +72,13 @@ internal static class Overview
 
     private static IEnumerable<RichText> ChangeNotes(RunReading run, PreviousRun previous)
     {
-        if (previous.SettingsHash != run.Record.SettingsHash || previous.Model != run.Record.Settings.Model.Name)
-            yield return RichText.Strong("Settings or model changed since: the change is not the market's alone.");
+        if (previous.SettingsHash != run.Record.SettingsHash)
+        {
+            yield return RichText.Of(
+                new TextRun("Settings differ from the run before", Strong: true),
+                new TextRun($", which used model {previous.Model} and {Numerals.Count(previous.Scenarios)} scenarios: the change is not the market's alone."));
+        }
+
         var moved = run.Results.Limits.Where(limit => run.PreviousOf(limit) is { } before && before.Status != limit.Status).ToList();
         if (moved.Count == 0 && run.Results.Limits.Count > 0)
             yield return "No limit changed its status.";
@@ -86,7 +91,6 @@ internal static class Overview
     private static IEnumerable<Block> LeftOut(RunReading run)
     {
         var held = run.Results.Holdings;
-        var scale = run.Scale();
         if (held.Unpriced.Count == 0)
             yield return new Paragraph($"Every position line is in the figures: {Numerals.Count(held.Priced)} of {Numerals.Count(held.Positions)}.");
         else
@@ -94,8 +98,12 @@ internal static class Overview
         if (held.Unpriced.Count > ListedUnpriced)
             yield return new Paragraph($"{Phrases.Sentence(Phrases.Number(held.Unpriced.Count - ListedUnpriced))} more lines are listed under Holdings.", Voice.Note);
         yield return new Paragraph(
-            $"Tied to the book of record: {Numerals.Count(held.Reconciled)} of {Numerals.Count(held.Positions)} lines carried its value; "
-            + $"{Phrases.Plural(held.Breaks.Count, "line")} differ{(held.Breaks.Count == 1 ? "s" : "")} by more than {Numerals.Percent(run.Record.Settings.Checks.ValueTolerance, 1)}, "
-            + $"together by {scale.Text(held.BreakTotal)} {scale.Unit}. Also left out: what the model does not know, such as jumps, changing volatility within the horizon, and the cost of leaving a position.", Voice.Note);
+            Tied(run, held) + " Also left out: what the model does not know, such as jumps, changing volatility within the horizon, and the cost of leaving a position.", Voice.Note);
     }
+
+    private static string Tied(RunReading run, Holdings held) => held.Reconciled == 0
+        ? "No line carried a value of the book of record, so none could be tied to it."
+        : $"Tied to the book of record: {Numerals.Count(held.Reconciled)} of {Numerals.Count(held.Positions)} lines carried its value; "
+            + $"{Phrases.Plural(held.Breaks.Count, "line")} differ{(held.Breaks.Count == 1 ? "s" : "")} by more than {Numerals.Percent(run.Record.Settings.Checks.ValueTolerance, 1)}, "
+            + $"together by {run.Scale().Text(held.BreakTotal)} {run.Scale().Unit}.";
 }

@@ -64,7 +64,7 @@ internal static class Phrases
         BacktestZone.Green => (StatusMark.Good, "green"),
         BacktestZone.Yellow => (StatusMark.Warning, "yellow"),
         BacktestZone.Red => (StatusMark.Bad, "red"),
-        _ => (StatusMark.None, "too few days"),
+        _ => (StatusMark.None, "too\u00A0few\u00A0days"),
     };
 
     /// <summary>What a limit binds: book and measure; the book is left out where the limit's name says it.</summary>
