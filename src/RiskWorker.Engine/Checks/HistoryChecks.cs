@@ -67,8 +67,9 @@ internal static class HistoryChecks
                 $"{FindingList.Count(window.Kept, "day is", "days are")} complete over all factors, of at least {snapshot.Settings.Checks.MinimumHistory} wanted, although the single factors have more, so there is too little to estimate a covariance from");
         }
         if (window.Dropped == 0) return;
+        string[] causes = [.. window.DropCauses().Select(c => $"{c.Factor} {FindingList.Count(c.Days, "day", "days")}")];
         findings.Add(FindingCodes.DaysDropped, File,
-            $"{FindingList.Count(window.Dropped, "day is", "days are")} left out of the covariance because not every factor has a shock on them, so the {window.Kept} days used, of a window of {snapshot.Settings.Model.Window}, are not consecutive");
+            $"{FindingList.Count(window.Dropped, "day is", "days are")} left out of the covariance because not every factor has a shock on them ({FindingList.Names(causes)}), so the {window.Kept} days used, of a window of {snapshot.Settings.Model.Window}, are not consecutive");
     }
 
     /// <summary>The minimum, or what the shortest factor has where that was let pass.</summary>

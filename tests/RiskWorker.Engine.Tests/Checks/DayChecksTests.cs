@@ -23,7 +23,7 @@ public sealed class DayChecksTests
 
         Assert.StartsWith("3 prices are missing in the window where others of the same calendar have one (A 1 day, B 2 days)", findings.One(FindingCodes.DayMissing).Message, StringComparison.Ordinal);
         // Each of the three isolated gaps takes out two shocks; 75 and 77 share the one between them: days 70, 71, 75, 76, 77, 78.
-        Assert.StartsWith("6 days are left out", findings.One(FindingCodes.DaysDropped).Message, StringComparison.Ordinal);
+        Assert.StartsWith("6 days are left out of the covariance because not every factor has a shock on them (B 4 days, A 2 days)", findings.One(FindingCodes.DaysDropped).Message, StringComparison.Ordinal);
     }
 
     [Fact]
