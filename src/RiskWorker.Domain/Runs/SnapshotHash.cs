@@ -29,7 +29,7 @@ public sealed record SnapshotHash
     /// <exception cref="ArgumentException">Two leaves share a path.</exception>
     public static SnapshotHash Of(IEnumerable<SnapshotPart> leaves)
     {
-        var files = leaves.GroupBy(l => l.Path.Split('/')[0], StringComparer.Ordinal)
+        var files = leaves.GroupBy(l => FileOf(l.Path), StringComparer.Ordinal)
             .Select(g => new SnapshotPart(g.Key, Combine(g)))
             .OrderBy(f => f.Path, StringComparer.Ordinal)
             .ToArray();
@@ -42,16 +42,22 @@ public sealed record SnapshotHash
     /// <summary>SHA-256 of <paramref name="bytes"/> as 64 lower-case hex digits.</summary>
     public static string OfBytes(ReadOnlySpan<byte> bytes) => Convert.ToHexStringLower(SHA256.HashData(bytes));
 
+    private static string FileOf(string path) => path.IndexOf('/') is var slash and >= 0 ? path[..slash] : path;
+
     private static string Combine(IEnumerable<SnapshotPart> parts)
     {
-        var text = new StringBuilder();
+        var ordered = parts.ToArray();
+        Array.Sort(ordered, static (a, b) => string.CompareOrdinal(a.Path, b.Path));
+        using var hash = IncrementalHash.CreateHash(HashAlgorithmName.SHA256);
+        Span<byte> line = stackalloc byte[256];
         string? last = null;
-        foreach (var part in parts.OrderBy(p => p.Path, StringComparer.Ordinal))
+        foreach (var part in ordered)
         {
             if (part.Path == last) throw new ArgumentException($"The path '{part.Path}' stands twice in one snapshot.", nameof(parts));
-            text.Append(part.Path).Append(' ').Append(part.Hash).Append('\n');
+            var text = string.Concat(part.Path, " ", part.Hash, "\n");
+            hash.AppendData(Encoding.UTF8.TryGetBytes(text, line, out var written) ? line[..written] : Encoding.UTF8.GetBytes(text));
             last = part.Path;
         }
-        return OfText(text.ToString());
+        return Convert.ToHexStringLower(hash.GetHashAndReset());
     }
 }

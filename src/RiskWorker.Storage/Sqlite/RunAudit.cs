@@ -12,8 +12,9 @@ internal static class RunAudit
 
     public static List<ChainEntry> Chain(SqliteConnection connection) => connection.Query($"SELECT {ChainColumns} FROM chain ORDER BY sequence", Entry);
 
+    // A kind that is none of ours was put there by somebody: it must break the chain, not the reading of it.
     public static ChainEntry Entry(SqliteDataReader row) =>
-        new(row.GetInt64(0), Spelling.Of<ChainEntryKind>()[row.GetString(1)], row.GetString(2), row.GetString(3), row.GetString(4), row.GetString(5));
+        new(row.GetInt64(0), Spelling.Of<ChainEntryKind>().GetValueOrDefault(row.GetString(1), (ChainEntryKind)(-1)), row.GetString(2), row.GetString(3), row.GetString(4), row.GetString(5));
 
     public static string? FirstBreak(SqliteConnection connection)
     {

@@ -13,7 +13,7 @@ public sealed class RiskStoreTests
 
         Assert.True(File.Exists(fixture.StorePath));
         Assert.Equal("wal", Scalar(fixture.StorePath, "PRAGMA journal_mode"));
-        Assert.Equal(1L, Scalar(fixture.StorePath, "PRAGMA user_version"));
+        Assert.Equal((long)Schema.Newest, Scalar(fixture.StorePath, "PRAGMA user_version"));
     }
 
     [Fact]
@@ -27,7 +27,7 @@ public sealed class RiskStoreTests
         var error = Assert.Throws<StoreException>(fixture.Open);
 
         Assert.Equal(StoreFault.Newer, error.Fault);
-        Assert.Equal($"The store '{fixture.StorePath}' has schema 99; this version of the program knows schemas up to 1. Use the newer version that wrote it.", error.Message);
+        Assert.Equal($"The store '{fixture.StorePath}' has schema 99; this version of the program knows schemas up to {Schema.Newest}. Use the newer version that wrote it.", error.Message);
         Assert.Equal(before, fixture.StoreBytes());
     }
 

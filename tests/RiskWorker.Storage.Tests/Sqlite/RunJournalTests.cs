@@ -102,7 +102,7 @@ public sealed class RunJournalTests : IDisposable
         var head = _store.Runs.Append(record);
 
         Assert.Equal(
-            new RunSummary(record.Run, 1, s_day, RunStatus.Degraded, EvidenceKind.Backfilled, "lognormal", 200_000, record.Started, record.Finished, record.Snapshot, record.Figures, head),
+            new RunSummary(record.Run, 1, s_day, RunStatus.Degraded, EvidenceKind.Backfilled, "lognormal", 200_000, record.Started, record.Finished, record.Snapshot, record.Figures, head, ulong.MaxValue, 0),
             Assert.Single(_store.Runs.List()));
     }
 
@@ -140,7 +140,7 @@ public sealed class RunJournalTests : IDisposable
 
         Assert.Equal((wanted.Run, s_day.AddDays(-2), 200_000), (previous.Run, previous.AsOf, previous.Scenarios));
         Assert.Equal(["ALL", "FX"], previous.Nodes.Select(n => n.Book));
-        Assert.Equal([("firm-var", 0.5, LimitStatus.Within, s_day.AddDays(-5)), ("fx-es", double.NaN, LimitStatus.Inconclusive, s_day.AddDays(-2))],
+        Assert.Equal([("firm-var", 0.5, LimitStatus.Within, s_day.AddDays(-5)), ("fx-es", null, LimitStatus.Inconclusive, s_day.AddDays(-2))],
             previous.Limits.Select(l => (l.Limit, l.Used, l.Status, l.StatusSince)));
     }
 
@@ -177,6 +177,7 @@ public sealed class RunJournalTests : IDisposable
     [InlineData("DELETE FROM chain WHERE sequence = 6", "was removed")]
     [InlineData("UPDATE chain SET content = (SELECT content FROM chain WHERE sequence = 1) WHERE sequence = 3", "was altered")]
     [InlineData("UPDATE chain SET sequence = CASE sequence WHEN 3 THEN -3 WHEN 4 THEN 3 END WHERE sequence IN (3, 4); UPDATE chain SET sequence = 4 WHERE sequence = -3", "does not follow")]
+    [InlineData("UPDATE chain SET kind = 'other' WHERE sequence = 2", "was altered")]
     [InlineData("UPDATE run SET record = (SELECT record FROM run WHERE sequence = 1) WHERE sequence = 2", "was altered")]
     [InlineData("UPDATE run SET record = x'00112233' WHERE sequence = 2", "was altered")]
     [InlineData("DELETE FROM run WHERE sequence = 2", "is missing")]
