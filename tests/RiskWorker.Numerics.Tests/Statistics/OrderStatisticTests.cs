@@ -10,7 +10,7 @@ public sealed class OrderStatisticTests
     [InlineData(1)]
     public void Largest_equals_the_sorted_values_at_every_rank(int distinct)
     {
-        var random = new Random(17);
+        var random = new System.Random(17);
         for (var length = 1; length <= 60; length++)
         {
             var values = Enumerable.Range(0, length).Select(_ => distinct == 0 ? random.NextDouble() - 0.5 : random.Next(distinct)).ToArray();
