@@ -70,7 +70,7 @@ internal static class MixedBook
         {
             Model = new() { Covariance = CovarianceEstimator.Given, Drift = DriftKind.Explicit, Drifts = new Dictionary<string, double> { ["EQ"] = 0.07, ["OIL"] = -0.03, ["STILL"] = 0.1, ["RATE"] = 0.002 } },
             Measures = Measures,
-            Simulation = new() { Scenarios = 10_000, Looks = 2, Cap = 20_000 },
+            Simulation = new() { Scenarios = 10_000, Looks = 2, Cap = 20_000, Precision = 0.001 },
         },
         Books = [new("ALL", null, "All", "EUR"), new("AMERICA", "ALL", "America", "USD"), new("LONDON", "AMERICA", "London", "GBP"), new("EUROPE", "ALL", "Europe", "EUR")],
         Factors =
