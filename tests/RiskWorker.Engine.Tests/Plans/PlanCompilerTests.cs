@@ -35,7 +35,8 @@ public sealed class PlanCompilerTests
     public void Hash_does_not_depend_on_the_order_of_positions()
     {
         var snapshot = MixedBook.Whole().Build();
-        var rows = snapshot.Positions.Concat(snapshot.Positions.Select((p, i) => p with { Quantity = p.Quantity * (i + 0.1), Trade = $"t{i}" })).ToArray();
+        // Five rows of a node and instrument, of sizes apart: added in another order they would round to another sum.
+        Position[] rows = [.. snapshot.Positions.SelectMany((p, i) => new[] { 1, 0.1, -1e5, 1.0 / 3, 1e-7 }.Select(scale => p with { Quantity = p.Quantity * scale * (i + 0.1) }))];
         var expected = CompiledBook.Of(snapshot with { Positions = rows }, 1, 10).Plan.Hash;
         for (var seed = 0; seed < 20; seed++)
         {
