@@ -1,4 +1,3 @@
-using RiskWorker.Domain.Books;
 using RiskWorker.Domain.Instruments;
 using RiskWorker.Domain.Market;
 using RiskWorker.Domain.Runs;

@@ -16,6 +16,8 @@ public enum BacktestZone
 /// <summary>Exceptions of a book's one-day VaR over the last 250 days.</summary>
 public sealed record BacktestResult
 {
+    private readonly int? _days;
+
     /// <summary>The book.</summary>
     public required string Book { get; init; }
 
@@ -25,7 +27,7 @@ public sealed record BacktestResult
     /// <summary>Currency of VaR and profit.</summary>
     public required string Currency { get; init; }
 
-    /// <summary>Days counted, oldest first: at most 250, none before the first stored run.</summary>
+    /// <summary>Days counted, oldest first: at most 250, none before the first stored run. Empty in the record of a backfilled run, which keeps the counts alone.</summary>
     public required IReadOnlyList<BacktestDay> Series { get; init; }
 
     /// <summary>Exceptions by actual profit; null where the book has no actual series.</summary>
@@ -43,8 +45,12 @@ public sealed record BacktestResult
     /// <summary>Zone of the greater count; null below 125 days.</summary>
     public required BacktestZone? Zone { get; init; }
 
-    /// <summary>Days counted.</summary>
-    public int Days => Series.Count;
+    /// <summary>Days counted; more than <see cref="Series"/> holds where a record leaves the series out.</summary>
+    public int Days
+    {
+        get => _days ?? Series.Count;
+        init => _days = value;
+    }
 
     /// <summary>The greater of the two counts.</summary>
     public int Exceptions => Math.Max(Actual ?? 0, Hypothetical);

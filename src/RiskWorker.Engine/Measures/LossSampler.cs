@@ -2,6 +2,7 @@ using System.Diagnostics.CodeAnalysis;
 using RiskWorker.Engine.Plans;
 using RiskWorker.Engine.Reductions;
 using RiskWorker.Engine.Simulation;
+using RiskWorker.Numerics.Statistics;
 
 namespace RiskWorker.Engine.Measures;
 
@@ -20,7 +21,7 @@ public sealed class LossSampler
     private readonly Action<int>? _scenariosDone;
     private readonly CancellationToken _cancellation;
     private readonly double[][] _pilot;
-    private readonly double[][] _worstFirst;
+    private readonly double[] _scratch;
     private readonly int _pilotCount;
     private readonly HistogramEdges[] _edges;
     private readonly double[] _cutoffs;
@@ -42,9 +43,9 @@ public sealed class LossSampler
         _pilotCount = Math.Min(PilotScenarios, firstLook);
         _pilot = _evaluator.Evaluate(BlockRange.From(0, _pilotCount), new LossSampleReduction(plan.Rows.Count, _pilotCount), null, cancellation);
         _edges = [.. _pilot.Select(losses => HistogramEdges.Holding(losses))];
-        _worstFirst = [.. _pilot.Select(SortedFromWorst)];
+        _scratch = new double[_pilotCount];
         var mass = (double)demand.DeepestRank(firstLook) / firstLook;
-        _cutoffs = [.. _worstFirst.Select(losses => CutoffAt(losses, mass + (6 * Math.Sqrt(mass / _pilotCount))))];
+        _cutoffs = [.. _pilot.Select(losses => CutoffAt(losses, mass + (6 * Math.Sqrt(mass / _pilotCount))))];
         Restart();
     }
 
@@ -83,8 +84,8 @@ public sealed class LossSampler
         for (var row = 0; row < series.Length; row++)
         {
             if (series[row].Known >= deepest) continue;
-            var reached = Array.FindIndex(_worstFirst[row], loss => loss < _cutoffs[row]);
-            _cutoffs[row] = reached < 0 ? double.NegativeInfinity : CutoffAt(_worstFirst[row], 2.0 * reached / _pilotCount);
+            var reached = _pilot[row].Count(loss => loss >= _cutoffs[row]);
+            _cutoffs[row] = CutoffAt(_pilot[row], 2.0 * reached / _pilotCount);
             lowered = true;
         }
         if (lowered) Restart();
@@ -106,17 +107,12 @@ public sealed class LossSampler
         }
     }
 
-    private static double[] SortedFromWorst(double[] losses)
+    // Nothing needs to be left out where the mass is nearly all of the sample.
+    private double CutoffAt(double[] losses, double mass)
     {
-        var sorted = (double[])losses.Clone();
-        Array.Sort(sorted);
-        Array.Reverse(sorted);
-        return sorted;
-    }
-
-    private static double CutoffAt(double[] worstFirst, double mass)
-    {
-        var rank = (int)Math.Ceiling(mass * worstFirst.Length);
-        return rank < worstFirst.Length ? worstFirst[rank - 1] : double.NegativeInfinity;
+        var rank = (int)Math.Ceiling(mass * losses.Length);
+        if (rank >= losses.Length) return double.NegativeInfinity;
+        losses.CopyTo(_scratch, 0);
+        return OrderStatistic.Largest(_scratch, rank);
     }
 }

@@ -1,10 +1,11 @@
 using System.Globalization;
+using System.Text.RegularExpressions;
 using Quartz;
 
 namespace RiskWorker.Host.Options;
 
 /// <summary>Reads <c>schedules</c>: when the service runs what.</summary>
-public static class SchedulesSection
+public static partial class SchedulesSection
 {
     private const string CronForm = "a cron expression 'second minute hour day-of-month month day-of-week [year]', such as '0 30 6 ? * MON-FRI'";
     private const string ZoneForm = "an IANA time zone known on this machine, such as 'Europe/Oslo'";
@@ -33,7 +34,9 @@ public static class SchedulesSection
         try
         {
             _ = CronExpression.Parse(text);
-            return text;
+            if (!text.Split(' ', '\t').Where(f => f.Length > 0).Take(6).Any(f => BeyondAnyField().IsMatch(f))) return text;
+            value.Value.Fault($"{CronForm} (no field but the year goes beyond 59)");
+            return null;
         }
         catch (FormatException refusal)
         {
@@ -41,6 +44,10 @@ public static class SchedulesSection
             return null;
         }
     }
+
+    /// <summary>The scheduler's parser takes 98 and 99, its own marks for '?' and '*', as numbers: a minute of 99 would fire every minute.</summary>
+    [GeneratedRegex(@"(?<!\d)0*([6-9]\d|[1-9]\d{2,})(?!\d)")]
+    private static partial Regex BeyondAnyField();
 
     private static TimeZoneInfo? Zone(SettingsValue? value)
     {

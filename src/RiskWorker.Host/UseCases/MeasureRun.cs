@@ -97,6 +97,9 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
     private RunRecord Backfill(Work work, DateOnly asOf, RunSettings settings)
     {
         var record = Calculate(work with { Progress = s_quiet }, asOf, settings, clock.GetUtcNow(), 0) with { Evidence = EvidenceKind.Backfilled };
+        // The days behind each count stand in the runs that are counted; a copy in each of 250 records would be most of the store.
+        var counts = record.Results.Backtest.Select(b => b with { Days = b.Days, Series = [] });
+        record = record with { Results = record.Results with { Backtest = [.. counts] } };
         work.Store.Runs.Append(record);
         return record;
     }

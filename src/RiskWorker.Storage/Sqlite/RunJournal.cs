@@ -16,6 +16,9 @@ public sealed class RunJournal
 
     private readonly RiskStore _store;
 
+    // A span of dates compares each run with the one before it, which need not be unpacked again.
+    private volatile RunRecord? _newest;
+
     internal RunJournal(RiskStore store) => _store = store;
 
     /// <summary>Stores a run and chains it, in one transaction.</summary>
@@ -27,13 +30,15 @@ public sealed class RunJournal
         var json = RecordJson.Write(record);
         var content = SnapshotHash.OfBytes(json);
         var packed = RecordJson.Pack(json);
-        return _store.Write(connection =>
+        var head = _store.Write(connection =>
         {
             if (connection.Scalar("SELECT run FROM run WHERE run = ?1 OR snapshot = ?2 AND attempt = ?3", record.Run, record.Snapshot, record.Attempt) is { } taken)
                 throw new StoreException(StoreFault.Refused, $"The run {record.Run} (attempt {record.Attempt}) cannot be stored: run {taken} is stored already.");
             RunRows.Of(record, content).Insert(connection, packed);
             return Chain(connection, ChainEntryKind.Results, record.Run, content).Hash;
         });
+        _newest = record;
+        return head;
     }
 
     /// <summary>Chains the hashes of the documents rendered from a stored run.</summary>
@@ -80,9 +85,9 @@ public sealed class RunJournal
     public PreviousRun? PreviousRun(DateOnly asOf, string model) => _store.Read(connection =>
     {
         var found = connection.Query(
-            "SELECT run, record FROM run WHERE model = ?1 AND status <> 'failed' AND as_of <= ?2 ORDER BY as_of = ?2, as_of DESC, sequence DESC LIMIT 1",
-            r => (Run: r.GetString(0), Packed: r.GetFieldValue<byte[]>(1)), model, Iso.Of(asOf));
-        return found.Count == 0 ? null : Previous(Unpacked(found[0].Run, found[0].Packed));
+            "SELECT run FROM run WHERE model = ?1 AND status <> 'failed' AND as_of <= ?2 ORDER BY as_of = ?2, as_of DESC, sequence DESC LIMIT 1",
+            r => r.GetString(0), model, Iso.Of(asOf));
+        return found.Count == 0 ? null : Previous(RecordOf(connection, found[0]));
     });
 
     /// <summary>The chain in stored order.</summary>
@@ -116,6 +121,11 @@ public sealed class RunJournal
         r => new RunSummary(r.GetString(0), r.GetInt32(1), Iso.Date(r.GetString(2)), Spelling.Of<RunStatus>()[r.GetString(3)], Spelling.Of<EvidenceKind>()[r.GetString(4)],
             r.GetString(5), r.IsDBNull(6) ? null : r.GetInt32(6), Time(r.GetString(7)), Time(r.GetString(8)), r.GetString(9), r.GetString(10), r.GetString(11), ulong.Parse(r.GetString(12), CultureInfo.InvariantCulture), r.GetInt32(13)),
         values));
+
+    private RunRecord RecordOf(SqliteConnection connection, string run) =>
+        _newest is { } newest && newest.Run == run
+            ? newest
+            : Unpacked(run, connection.Query("SELECT record FROM run WHERE run = ?1", r => r.GetFieldValue<byte[]>(0), run)[0]);
 
     private static DateTimeOffset Time(string text) => DateTimeOffset.Parse(text, CultureInfo.InvariantCulture);
 

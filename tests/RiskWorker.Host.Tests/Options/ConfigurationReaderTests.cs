@@ -121,6 +121,24 @@ public sealed class ConfigurationReaderTests
         Assert.Equal(faults, Assert.Throws<SettingsException>(() => Read(json)).Faults.Select(f => f.ToString()));
 
     [Theory]
+    [InlineData("0 99 6 * * ?")] // the parser's own mark for '*': it would fire every minute of the hour
+    [InlineData("0 5,99 6 * * ?")]
+    [InlineData("0 98 6 * * ?")]
+    [InlineData("0 0 099 * * ?")]
+    [InlineData("0 60 6 * * ?")]
+    [InlineData("0 0 24 * * ?")]
+    [InlineData("0 0 6 ? * 8")]
+    [InlineData("0 6 * * *")]
+    public void Read_cron_out_of_range_is_a_fault(string cron) =>
+        Assert.Equal("schedules.d.cron", Assert.Single(Assert.Throws<SettingsException>(() => Read(Schedule(cron))).Faults).Path);
+
+    [Theory]
+    [InlineData("0 30 6 ? * MON-FRI")]
+    [InlineData("0/5 * * * * ?")]
+    [InlineData("59 59 23 L * ? 2099")]
+    public void Read_cron_in_range_is_kept(string cron) => Assert.Equal(cron, Assert.Single(Read(Schedule(cron)).Schedules).Cron);
+
+    [Theory]
     [InlineData("", "line 1, byte 1")]
     [InlineData("{ // no\n}", "line 1, byte 3")]
     [InlineData("{ \"backfill\": 1, }", "line 1, byte 18")]
@@ -160,6 +178,8 @@ public sealed class ConfigurationReaderTests
         Directory.CreateDirectory(Path.Combine(folder.Path, "riskworker.json"));
         await Assert.ThrowsAsync<SettingsException>(() => ConfigurationReader.ReadAsync(folder.Path, TestContext.Current.CancellationToken));
     }
+
+    private static string Schedule(string cron) => $$"""{ "schedules": { "d": { "cron": "{{cron}}", "timeZone": "UTC" } } }""";
 
     private static Configuration Read(string json) => ConfigurationReader.Read(Encoding.UTF8.GetBytes(json), "riskworker.json");
 
