@@ -50,6 +50,9 @@ public sealed record Snapshot
     /// <summary>A given covariance; empty unless the settings ask for it.</summary>
     public IReadOnlyList<CovarianceEntry> Covariance { get; init; } = [];
 
+    /// <summary>What loading the feed found odd; part of the run's findings.</summary>
+    public IReadOnlyList<Finding> FeedWarnings { get; init; } = [];
+
     /// <summary>The earlier runs whose VaR is counted against profit and loss, oldest first.</summary>
     public IReadOnlyList<CountedRun> CountedRuns { get; init; } = [];
 

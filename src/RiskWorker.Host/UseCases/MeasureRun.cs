@@ -109,7 +109,7 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
         var watch = Stopwatch.StartNew();
         var snapshot = work.Reader.Take(asOf, settings, settings.Model.Name);
         load += watch.Elapsed.TotalSeconds;
-        var calculator = new RunCalculator(snapshot, work.Store.FeedWarnings, work.Request.Threads ?? Environment.ProcessorCount, new SimulationSteps(work.Progress), work.Cancellation);
+        var calculator = new RunCalculator(snapshot, work.Request.Threads ?? Environment.ProcessorCount, new SimulationSteps(work.Progress), work.Cancellation);
         var results = calculator.Calculate();
         var attempt = work.Store.Runs.AttemptsOf(snapshot.Hash.Root).Count + 1;
         var previous = work.Store.Runs.PreviousRun(asOf, settings.Model.Name);

@@ -86,6 +86,7 @@ public sealed class SnapshotReader(RiskStore store)
             Limits = state.Reference.Limits,
             ProfitAndLoss = profit,
             Covariance = withCovariance ? state.Reference.Covariance : [],
+            FeedWarnings = state.Reference.FeedWarnings,
             CountedRuns = counted,
             EarlierPositions = earlier,
             Hash = SnapshotHash.Of(
