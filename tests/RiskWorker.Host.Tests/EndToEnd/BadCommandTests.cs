@@ -78,6 +78,28 @@ public sealed class BadCommandTests : IDisposable
         Assert.Equal(before, await File.ReadAllBytesAsync(_folder.Store, TestContext.Current.CancellationToken));
     }
 
+    /// <summary>Run ids follow from the inputs, so a run on a new store meets the folder of the old one; a full disk ends the same way.</summary>
+    [Fact]
+    public async Task Measure_documents_that_cannot_be_put_in_place_leave_no_half()
+    {
+        await _folder.MeasureAsync(0, "--scenarios", "1000");
+        File.Delete(_folder.Store);
+        var report = await File.ReadAllBytesAsync(Path.Combine(_folder.Runs.Single(), "limit-report.pdf"), TestContext.Current.CancellationToken);
+
+        AssertRefused(await _folder.RunAsync("measure", "--scenarios", "1000"), 4, _folder.Runs.First());
+
+        Assert.Equal(report, await File.ReadAllBytesAsync(Path.Combine(_folder.Runs.Single(), "limit-report.pdf"), TestContext.Current.CancellationToken));
+    }
+
+    [Fact]
+    public async Task Show_report_that_cannot_be_put_in_place_leaves_no_half()
+    {
+        var run = (await _folder.MeasureAsync(0, "--scenarios", "1000")).GetProperty("run").GetString()!;
+        var taken = Directory.CreateDirectory(Path.Combine(_folder.Config, "report.pdf")).FullName;
+        AssertRefused(await _folder.RunAsync("runs", "show", run, "--pdf", taken), 4, taken);
+        Assert.Empty(Directory.GetFiles(_folder.Config, "report.pdf*"));
+    }
+
     private static void AssertRefused(Ending ending, int code, string said)
     {
         Assert.Equal(code, ending.Code);
