@@ -5,7 +5,7 @@ namespace RiskWorker.Host.Tests.EndToEnd;
 /// <summary><c>riskworker</c> as a process of its own.</summary>
 internal static class RiskworkerProcess
 {
-    private static readonly TimeSpan s_patience = TimeSpan.FromSeconds(120);
+    private static readonly TimeSpan s_patience = TimeSpan.FromMinutes(5);
 
     public static Process Start(IEnumerable<string> args, params (string Name, string Value)[] environment) =>
         Start(Path.Combine(AppContext.BaseDirectory, OperatingSystem.IsWindows() ? "riskworker.exe" : "riskworker"), args, null, environment);
