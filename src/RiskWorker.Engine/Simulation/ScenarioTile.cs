@@ -5,13 +5,13 @@ using RiskWorker.Numerics.Random;
 namespace RiskWorker.Engine.Simulation;
 
 /// <summary>
-/// Draws and revalues a few hundred consecutive scenarios of a plan: the buffers of one thread, sized for its cache.
+/// Draws and revalues some two hundred consecutive scenarios of a plan: the buffers of one thread, sized for its cache.
 /// Every scenario is computed on its own, so the width of a tile changes no bit.
 /// </summary>
 public sealed class ScenarioTile
 {
-    /// <summary>Scenarios in a tile.</summary>
-    public const int Width = 256;
+    /// <summary>Scenarios in a tile: ten panels of the triangular product, and buffers that fit the second-level cache.</summary>
+    public const int Width = 240;
 
     private readonly RevaluationPlan _plan;
     private readonly DrawStream _stream;
