@@ -59,6 +59,22 @@ public sealed class StrangeFeedsTests : IDisposable
         Assert.Contains(listing, line => line.Contains("B99", StringComparison.Ordinal) && line.Contains("VaR 99% 1d", StringComparison.Ordinal));
     }
 
+    /// <summary>Nothing at risk is a loss of nothing: 0, not what is printed for -0.</summary>
+    [Theory]
+    [InlineData("positions.csv")]
+    [InlineData("observations.csv")]
+    public async Task Measure_book_that_cannot_move_loses_nothing(string still)
+    {
+        if (still == "positions.csv") _folder.WriteFeed(still, "as_of,book,instrument,quantity\n2026-11-27,FIRM,AAA share,0\n");
+        else _folder.WriteFeed(still, string.Join('\n', _folder.ReadFeed(still).TrimEnd('\n').Split('\n').Select((row, i) => i == 0 ? row : row[..(row.LastIndexOf(',') + 1)] + "100")));
+        var results = await _folder.MeasureAsync(0, "--scenarios", "1000");
+        foreach (var measure in results.GetProperty("nodes")[0].GetProperty("measures").EnumerateArray())
+            Assert.Equal(("0", "0", "0"), (measure.GetProperty("value").GetRawText(), measure.GetProperty("low").GetRawText(), measure.GetProperty("high").GetRawText()));
+        foreach (var moment in new[] { "mean", "deviation" }) Assert.Equal("0", results.GetProperty("nodes")[0].GetProperty("distributions")[0].GetProperty(moment).GetRawText());
+        Assert.DoesNotContain("-0,", results.GetRawText(), StringComparison.Ordinal);
+        Assert.DoesNotContain("-0}", results.GetRawText(), StringComparison.Ordinal);
+    }
+
     [Theory]
     [InlineData("1e15")]
     [InlineData("-1e15")]
