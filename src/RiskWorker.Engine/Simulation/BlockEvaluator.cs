@@ -23,9 +23,9 @@ public sealed class BlockEvaluator
     /// <summary>Evaluates <paramref name="range"/>.</summary>
     /// <param name="range">The blocks.</param>
     /// <param name="reduction">What to keep of them.</param>
-    /// <param name="blockDone">Told after each block; called from many threads.</param>
+    /// <param name="blockDone">Told the width of each block when it is done; called from many threads.</param>
     /// <param name="cancellation">Stops between tiles.</param>
-    public TRecord Evaluate<TRecord>(BlockRange range, Reduction<TRecord> reduction, Action? blockDone, CancellationToken cancellation)
+    public TRecord Evaluate<TRecord>(BlockRange range, Reduction<TRecord> reduction, Action<int>? blockDone, CancellationToken cancellation)
     {
         var total = reduction.Empty();
         if (range.Count == 0) return total;
@@ -40,7 +40,7 @@ public sealed class BlockEvaluator
                     var width = range.WidthOf(block);
                     Fill(worker.Tile, worker.Losses, block, width, cancellation);
                     reduction.Accumulate(worker.Record, new(block, width, worker.Losses));
-                    blockDone?.Invoke();
+                    blockDone?.Invoke(width);
                     return worker;
                 },
                 worker =>
