@@ -1,3 +1,4 @@
+using RiskWorker.Domain.Runs;
 using static RiskWorker.Domain.Runs.FindingSeverity;
 
 namespace RiskWorker.Engine.Checks;
@@ -227,4 +228,8 @@ public static class FindingCodes
         CalendarUnknown, ProxyUnusable, FxFactorUnused, CovarianceUnknown, AdjustmentUnknown, LimitBookUnknown, ProfitBookUnknown,
         AssumedZeroRate, UnusedTerm, UnknownColumn, UnknownFile,
     ];
+
+    /// <summary><paramref name="finding"/> at the severity that <paramref name="settings"/> give its code: for findings made where no settings are at hand.</summary>
+    public static Finding Under(CheckSettings settings, Finding finding) =>
+        All.FirstOrDefault(c => c.Code == finding.Code) is { } code ? finding with { Severity = code.SeverityUnder(settings) } : finding;
 }

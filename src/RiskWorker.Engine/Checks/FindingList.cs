@@ -8,20 +8,19 @@ internal sealed class FindingList(CheckSettings settings)
 {
     private const int MostNames = 10;
 
-    private readonly List<(int Order, Finding Finding)> _findings = [];
+    private readonly List<Finding> _findings = [];
     private static readonly Dictionary<string, int> s_order = FindingCodes.All.Select((c, i) => (c.Code, i)).ToDictionary(StringComparer.Ordinal);
 
     /// <summary>Adds a finding: <paramref name="statement"/> says what, how often, and what it does to the figures; the code's mend ends the sentence.</summary>
-    public void Add(FindingCode code, string subject, string statement)
-    {
-        _findings.Add((s_order[code.Code], code.Found(settings, subject, $"{statement}; {code.Mend}.")));
-    }
+    public void Add(FindingCode code, string subject, string statement) => _findings.Add(code.Found(settings, subject, $"{statement}; {code.Mend}."));
 
-    /// <summary>The findings: blocking ones first, then in the table's order, then by subject.</summary>
-    public IReadOnlyList<Finding> Ordered() =>
+    /// <summary>The findings gathered, as <see cref="InOrder"/> has them.</summary>
+    public IReadOnlyList<Finding> Ordered() => InOrder(_findings);
+
+    /// <summary>Blocking ones first, then in the table's order, then by subject.</summary>
+    public static IReadOnlyList<Finding> InOrder(IEnumerable<Finding> findings) =>
     [
-        .. _findings.OrderByDescending(f => f.Finding.Severity).ThenBy(f => f.Order)
-            .ThenBy(f => f.Finding.Subject, StringComparer.Ordinal).Select(f => f.Finding),
+        .. findings.OrderByDescending(f => f.Severity).ThenBy(f => s_order.GetValueOrDefault(f.Code, int.MaxValue)).ThenBy(f => f.Subject, StringComparer.Ordinal),
     ];
 
     /// <summary>The first ten of <paramref name="names"/> and how many more there are.</summary>

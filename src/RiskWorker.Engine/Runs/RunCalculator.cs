@@ -22,14 +22,13 @@ public sealed class RunCalculator
 
     /// <summary>Takes what the run needs.</summary>
     /// <param name="snapshot">The frozen inputs.</param>
-    /// <param name="feedFindings">What loading the feed found; part of the results.</param>
     /// <param name="threads">Threads to use.</param>
     /// <param name="progress">Told how far the run has come, or null.</param>
     /// <param name="cancellation">Stops the run.</param>
-    public RunCalculator(Snapshot snapshot, IEnumerable<Finding> feedFindings, int threads, IProgress<RunProgress>? progress, CancellationToken cancellation)
+    public RunCalculator(Snapshot snapshot, int threads, IProgress<RunProgress>? progress, CancellationToken cancellation)
     {
         (_snapshot, _threads, _progress, _cancellation) = (snapshot, threads, progress, cancellation);
-        _findings = [.. feedFindings];
+        _findings = [.. snapshot.FeedWarnings.Select(w => FindingCodes.Under(snapshot.Settings.Checks, w))];
     }
 
     /// <summary>Seconds spent calibrating and simulating; the other phases are not this class's.</summary>
@@ -53,7 +52,7 @@ public sealed class RunCalculator
 
     private bool Blocked => _findings.Exists(f => f.Severity == FindingSeverity.Blocking);
 
-    private RunResults Failed(BookTree? tree) => new() { Findings = _findings, Firm = tree is null ? null : FirmOf(tree) };
+    private RunResults Failed(BookTree? tree) => new() { Findings = FindingList.InOrder(_findings), Firm = tree is null ? null : FirmOf(tree) };
 
     private static FirmIdentity FirmOf(BookTree tree) => new(tree.Books[0].DisplayName, tree.ReportingCurrency);
 
@@ -69,7 +68,7 @@ public sealed class RunCalculator
         var hypothetical = HypotheticalProfits.Of(_snapshot, tree);
         return new RunResults
         {
-            Findings = _findings,
+            Findings = FindingList.InOrder(_findings),
             Firm = FirmOf(tree),
             Calibration = SummaryOf(model, plan),
             Simulation = outcome.Simulation,

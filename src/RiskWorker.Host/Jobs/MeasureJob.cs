@@ -51,7 +51,7 @@ public sealed class MeasureJob(
     {
         Workspace = request.Workspace,
         Configuration = request.Configuration,
-        CommandLine = ShellText.Of(["riskworker", "measure", "--config", request.Workspace.ConfigFolder, "--out", request.Workspace.OutFolder]),
+        Command = ["riskworker", "measure", "--config", request.Workspace.ConfigFolder, "--out", request.Workspace.OutFolder],
     };
 
     private void LogOutcome(ScheduleOptions schedule, MeasureReport report)

@@ -12,8 +12,8 @@ public sealed record MeasureRequest
     /// <summary>The settings, overrides of the command line applied.</summary>
     public required Configuration Configuration { get; init; }
 
-    /// <summary>The command that asks for it, as the record prints it.</summary>
-    public required string CommandLine { get; init; }
+    /// <summary>The words of a command that runs it, up to the options that pin one run: the record adds date, scenarios, seed and model.</summary>
+    public required IReadOnlyList<string> Command { get; init; }
 
     /// <summary>As-of date; null for the newest with positions.</summary>
     public DateOnly? AsOf { get; init; }

@@ -1,7 +1,9 @@
 using System.Diagnostics;
+using System.Globalization;
 using RiskWorker.Domain.Limits;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Engine.Runs;
+using RiskWorker.Host.Options;
 using RiskWorker.Storage.Sqlite;
 
 namespace RiskWorker.Host.UseCases;
@@ -109,7 +111,7 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
         var watch = Stopwatch.StartNew();
         var snapshot = work.Reader.Take(asOf, settings, settings.Model.Name);
         load += watch.Elapsed.TotalSeconds;
-        var calculator = new RunCalculator(snapshot, work.Store.FeedWarnings, work.Request.Threads ?? Environment.ProcessorCount, new SimulationSteps(work.Progress), work.Cancellation);
+        var calculator = new RunCalculator(snapshot, work.Request.Threads ?? Environment.ProcessorCount, new SimulationSteps(work.Progress), work.Cancellation);
         var results = calculator.Calculate();
         var attempt = work.Store.Runs.AttemptsOf(snapshot.Hash.Root).Count + 1;
         var previous = work.Store.Runs.PreviousRun(asOf, settings.Model.Name);
@@ -120,10 +122,16 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
             Started = started,
             Finished = clock.GetUtcNow(),
             Evidence = work.Reader.ObservationDates[^1] > asOf ? EvidenceKind.Backfilled : EvidenceKind.Recorded,
-            Command = work.Request.CommandLine,
+            Command = CommandFor(work.Request, asOf, settings),
             Timings = calculator.Timings with { Load = load },
         };
     }
+
+    private static string CommandFor(MeasureRequest request, DateOnly asOf, RunSettings settings) => ShellText.Of(
+    [
+        .. request.Command, "--as-of", asOf.ToString("yyyy-MM-dd", CultureInfo.InvariantCulture), "--scenarios", settings.Simulation.Scenarios.ToString(CultureInfo.InvariantCulture),
+        "--seed", settings.Simulation.Seed.ToString(CultureInfo.InvariantCulture), "--model", settings.Model.Name,
+    ]);
 
     private static ExitCode ExitCodeOf(RunRecord record)
     {

@@ -45,7 +45,15 @@ public static class StoredRuns
     private static void WriteWhole(string file, byte[] content)
     {
         var beside = file + ".partial";
-        File.WriteAllBytes(beside, content);
-        File.Move(beside, file, overwrite: true);
+        try
+        {
+            File.WriteAllBytes(beside, content);
+            File.Move(beside, file, overwrite: true);
+        }
+        catch
+        {
+            File.Delete(beside);
+            throw;
+        }
     }
 }

@@ -37,6 +37,9 @@ public sealed class CommonOptions
     /// <summary>Whether more should be said.</summary>
     public bool IsVerbose(ParseResult parsed) => parsed.GetValue(_verbose);
 
+    /// <summary>The folders as they were typed, as words of a command.</summary>
+    public string[] FolderWords(ParseResult parsed) => ["--config", parsed.GetValue(_config)!, "--out", parsed.GetValue(_out)!];
+
     /// <summary>Reads the settings and resolves the folders.</summary>
     /// <exception cref="SettingsException">The folder or its settings cannot be used.</exception>
     public async Task<(Configuration Configuration, Workspace Workspace)> ReadAsync(ParseResult parsed, CancellationToken cancellationToken)

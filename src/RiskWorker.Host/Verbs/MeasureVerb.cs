@@ -50,7 +50,7 @@ public sealed class MeasureVerb : IVerb
         {
             Workspace = workspace,
             Configuration = settings.With(new RunOverrides(parsed.GetValue(_scenarios), parsed.GetValue(_seed), parsed.GetValue(_model))),
-            CommandLine = ShellText.Of(["riskworker", .. parsed.Tokens.Select(t => t.Value)]),
+            Command = ["riskworker", "measure", .. _options.FolderWords(parsed)],
             AsOf = parsed.GetValue(_asOf),
             From = parsed.GetValue(_from),
             To = parsed.GetValue(_to),

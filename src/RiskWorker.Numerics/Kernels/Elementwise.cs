@@ -6,6 +6,13 @@ namespace RiskWorker.Numerics.Kernels;
 /// <summary>Plain arithmetic on two spans, element by element; a NaN stays one; allocates nothing.</summary>
 public static class Elementwise
 {
+    private interface IOperation
+    {
+        static abstract double Of(double value, double total);
+
+        static abstract Vector512<double> Of(Vector512<double> value, Vector512<double> total);
+    }
+
     /// <summary>A sum.</summary>
     public static double Add(double value, double total) => total + value;
 
@@ -20,57 +27,58 @@ public static class Elementwise
 
     /// <summary>total[s] += values[s].</summary>
     [ScalarTwin(nameof(Add))]
-    public static void Add(ReadOnlySpan<double> values, Span<double> total)
-    {
-        Spans.RequireLength(values.Length, total.Length, nameof(total));
-        ref double from = ref MemoryMarshal.GetReference(values);
-        ref double to = ref MemoryMarshal.GetReference(total);
-        nuint s = 0, length = (nuint)values.Length;
-        for (; s + 8 <= length; s += 8)
-            (Vector512.LoadUnsafe(ref to, s) + Vector512.LoadUnsafe(ref from, s)).StoreUnsafe(ref to, s);
-        for (int i = (int)s; i < values.Length; i++)
-            total[i] = Add(values[i], total[i]);
-    }
+    public static void Add(ReadOnlySpan<double> values, Span<double> total) => Apply<Sum>(values, total);
 
     /// <summary>total[s] -= values[s].</summary>
     [ScalarTwin(nameof(Subtract))]
-    public static void Subtract(ReadOnlySpan<double> values, Span<double> total)
+    public static void Subtract(ReadOnlySpan<double> values, Span<double> total) => Apply<Difference>(values, total);
+
+    /// <summary>total[s] /= divisors[s].</summary>
+    [ScalarTwin(nameof(DivideBy))]
+    public static void DivideBy(ReadOnlySpan<double> divisors, Span<double> total) => Apply<Quotient>(divisors, total);
+
+    /// <summary>negated[s] = -values[s].</summary>
+    [ScalarTwin(nameof(Negate))]
+    public static void Negate(ReadOnlySpan<double> values, Span<double> negated) => Apply<Negative>(values, negated);
+
+    private static void Apply<TOperation>(ReadOnlySpan<double> values, Span<double> total)
+        where TOperation : struct, IOperation
     {
         Spans.RequireLength(values.Length, total.Length, nameof(total));
         ref double from = ref MemoryMarshal.GetReference(values);
         ref double to = ref MemoryMarshal.GetReference(total);
         nuint s = 0, length = (nuint)values.Length;
         for (; s + 8 <= length; s += 8)
-            (Vector512.LoadUnsafe(ref to, s) - Vector512.LoadUnsafe(ref from, s)).StoreUnsafe(ref to, s);
+            TOperation.Of(Vector512.LoadUnsafe(ref from, s), Vector512.LoadUnsafe(ref to, s)).StoreUnsafe(ref to, s);
         for (int i = (int)s; i < values.Length; i++)
-            total[i] = Subtract(values[i], total[i]);
+            total[i] = TOperation.Of(values[i], total[i]);
     }
 
-    /// <summary>total[s] /= divisors[s].</summary>
-    [ScalarTwin(nameof(DivideBy))]
-    public static void DivideBy(ReadOnlySpan<double> divisors, Span<double> total)
+    private readonly struct Sum : IOperation
     {
-        Spans.RequireLength(divisors.Length, total.Length, nameof(total));
-        ref double from = ref MemoryMarshal.GetReference(divisors);
-        ref double to = ref MemoryMarshal.GetReference(total);
-        nuint s = 0, length = (nuint)divisors.Length;
-        for (; s + 8 <= length; s += 8)
-            (Vector512.LoadUnsafe(ref to, s) / Vector512.LoadUnsafe(ref from, s)).StoreUnsafe(ref to, s);
-        for (int i = (int)s; i < divisors.Length; i++)
-            total[i] = DivideBy(divisors[i], total[i]);
+        public static double Of(double value, double total) => Add(value, total);
+
+        public static Vector512<double> Of(Vector512<double> value, Vector512<double> total) => total + value;
     }
 
-    /// <summary>negated[s] = -values[s].</summary>
-    [ScalarTwin(nameof(Negate))]
-    public static void Negate(ReadOnlySpan<double> values, Span<double> negated)
+    private readonly struct Difference : IOperation
     {
-        Spans.RequireLength(values.Length, negated.Length, nameof(negated));
-        ref double from = ref MemoryMarshal.GetReference(values);
-        ref double to = ref MemoryMarshal.GetReference(negated);
-        nuint s = 0, length = (nuint)values.Length;
-        for (; s + 8 <= length; s += 8)
-            (-Vector512.LoadUnsafe(ref from, s)).StoreUnsafe(ref to, s);
-        for (int i = (int)s; i < values.Length; i++)
-            negated[i] = Negate(values[i]);
+        public static double Of(double value, double total) => Subtract(value, total);
+
+        public static Vector512<double> Of(Vector512<double> value, Vector512<double> total) => total - value;
+    }
+
+    private readonly struct Quotient : IOperation
+    {
+        public static double Of(double value, double total) => DivideBy(value, total);
+
+        public static Vector512<double> Of(Vector512<double> value, Vector512<double> total) => total / value;
+    }
+
+    private readonly struct Negative : IOperation
+    {
+        public static double Of(double value, double total) => Negate(value);
+
+        public static Vector512<double> Of(Vector512<double> value, Vector512<double> total) => -value;
     }
 }

@@ -18,7 +18,8 @@ internal sealed record ReferenceData(
     IReadOnlyList<Limit> Limits,
     IReadOnlyList<Holiday> Holidays,
     IReadOnlyList<Adjustment> Adjustments,
-    IReadOnlyList<CovarianceEntry> Covariance)
+    IReadOnlyList<CovarianceEntry> Covariance,
+    IReadOnlyList<Finding> FeedWarnings)
 {
     // TEXT compares by its UTF-8 bytes in SQLite and by UTF-16 units here; the order that counts is the ordinal one.
     public static ReferenceData Read(SqliteConnection connection) => new(
@@ -40,7 +41,13 @@ internal sealed record ReferenceData(
         [
             .. connection.Query("SELECT factor, other, value FROM covariance", r => new CovarianceEntry(r.GetString(0), r.GetString(1), r.Number(2)!.Value))
                 .OrderBy(c => c.Factor, StringComparer.Ordinal).ThenBy(c => c.Other, StringComparer.Ordinal),
-        ]);
+        ],
+        Warnings(connection));
+
+    /// <summary>Warnings of the newest load, by file and code.</summary>
+    public static List<Finding> Warnings(SqliteConnection connection) => connection.Query(
+        "SELECT code, subject, message FROM feed_warning ORDER BY subject, code",
+        row => new Finding(FindingSeverity.Warning, row.GetString(0), row.GetString(1), row.GetString(2)));
 
     private static Book ReadBook(SqliteDataReader row) => new(row.GetString(0), row.Text(1), row.Text(2) ?? row.GetString(0), row.Text(3) ?? "");
 

@@ -72,9 +72,7 @@ public sealed class RiskStore : IDisposable
     }
 
     /// <summary>Warnings of the newest load, by file and code.</summary>
-    public IReadOnlyList<Finding> FeedWarnings => Use(connection => connection.Query(
-        "SELECT code, subject, message FROM feed_warning ORDER BY subject, code",
-        row => new Finding(FindingSeverity.Warning, row.GetString(0), row.GetString(1), row.GetString(2))));
+    public IReadOnlyList<Finding> FeedWarnings => Use(ReferenceData.Warnings);
 
     /// <summary>Every value that a later feed replaced, oldest correction first.</summary>
     public IReadOnlyList<Correction> Corrections => Use(connection => connection.Query(

@@ -27,7 +27,9 @@ internal static class SnapshotLeaves
         }
         var limits = text.Leaf("limits");
         foreach (var h in data.Holidays) text.Text(h.Calendar).Date(h.Date).End();
-        return [books, factors, limits, text.Leaf("holidays")];
+        var holidays = text.Leaf("holidays");
+        foreach (var w in data.FeedWarnings) text.Text(w.Code).Text(w.Subject).Text(w.Message).End();
+        return [books, factors, limits, holidays, text.Leaf("feed-warnings")];
     }
 
     /// <summary>Instruments by the terms as they are stored, which decide what is read from them.</summary>

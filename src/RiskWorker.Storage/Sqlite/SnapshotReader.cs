@@ -62,7 +62,8 @@ public sealed class SnapshotReader(RiskStore store)
         var observations = state.Observations.UpTo(asOf);
         var from = observations.Count == 0 ? asOf : observations.Dates[Math.Max(0, observations.Count - 1 - Window)];
         var profit = state.Profit(from, asOf);
-        var counted = _runs.Between(connection, model, from, asOf);
+        var runs = _runs.Between(connection, model, from, asOf);
+        var counted = runs.ConvertAll(r => r.Run);
         var positions = Positions(connection, asOf);
         var before = Array.FindLastIndex(state.PositionDates, date => date < asOf);
         var previous = before < 0 ? null : Dated(connection, state.PositionDates[before]);
@@ -85,6 +86,7 @@ public sealed class SnapshotReader(RiskStore store)
             Limits = state.Reference.Limits,
             ProfitAndLoss = profit,
             Covariance = withCovariance ? state.Reference.Covariance : [],
+            FeedWarnings = state.Reference.FeedWarnings,
             CountedRuns = counted,
             EarlierPositions = earlier,
             Hash = SnapshotHash.Of(
@@ -92,13 +94,13 @@ public sealed class SnapshotReader(RiskStore store)
                 SnapshotLeaves.AsOf(asOf, previous?.Date), new("settings", SettingsHash.Of(settings)), new("model", SnapshotHash.OfText(model)),
                 .. state.Leaves(asOf, observations.Count, profit, withCovariance),
                 SnapshotLeaves.Positions(asOf, positions), .. earlier.Append(previous).OfType<DatedPositions>().DistinctBy(d => d.Date).Select(d => SnapshotLeaves.Positions(d.Date, d.Positions)),
-                .. counted.Select(SnapshotLeaves.Run),
+                .. runs.Select(r => r.Leaf),
             ]),
         };
     }
 
     /// <summary>Dates of counted runs and the observation dates that follow them, where no counted run holds the profit between the two.</summary>
-    private static IEnumerable<(DateOnly From, DateOnly To)> WithoutProfit(ObservationHistory observations, IReadOnlyList<CountedRun> counted)
+    private static IEnumerable<(DateOnly From, DateOnly To)> WithoutProfit(ObservationHistory observations, List<CountedRun> counted)
     {
         var profitFrom = counted.ToDictionary(c => c.AsOf, c => c.HypotheticalDate);
         foreach (var run in counted)

@@ -101,6 +101,6 @@ public sealed class LogNormalCasesTests
             Positions = [.. holdings.Select(h => new Position("ALL", h.Factor + "-UNIT", h.Quantity))],
             Covariance = [.. entries],
         }.Build();
-        return new RunCalculator(snapshot, [], Environment.ProcessorCount, null, CancellationToken.None).Calculate();
+        return new RunCalculator(snapshot, Environment.ProcessorCount, null, CancellationToken.None).Calculate();
     }
 }

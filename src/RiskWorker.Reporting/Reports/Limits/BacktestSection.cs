@@ -20,14 +20,18 @@ internal static class BacktestSection
         return
         [
             new Heading("VaR against P&L"),
-            .. root is { Days: > 0 } ? Figures(run, root) : [],
+            .. root is { Series.Count: > 0 } ? Figures(run, root) : [],
             Counts(run, counts),
             new Paragraph(
                 "An exception is a loss strictly greater than the VaR of the previous close; a day without VaR or P&L counts as one. The greater of the two counts decides the zone, which needs at least 125 days. "
                 + "So few days can show that a model fails; they cannot show that it is right.", Voice.Note),
-            .. root is { Days: > 0 } ? Days(run, root) : [],
+            .. root is { Series.Count: > 0 } ? Days(run, root) : NoDays(root),
         ];
     }
+
+    // A backfilled run keeps its counts; the days behind them stand in the newest run.
+    private static Block[] NoDays(BacktestResult? root) =>
+        root is { Days: > 0 } ? [new Paragraph("The days behind the counts are not kept with a backfilled run; the report of a recorded run lists them.", Voice.Note)] : [];
 
     private static List<Block> Figures(RunReading run, BacktestResult root)
     {

@@ -41,13 +41,13 @@ internal static class BooksSection
         return new Table([new("Book", 2.6), .. columns], [.. Branches(run).Select(branch => new RowGroup([.. branch.Select(node => Row(run, node, specs, sumOf))]))], "");
     }
 
-    // The root alone, then each branch below it: branches stay together on a page where they fit.
+    // Each branch below the root, the root with the first: branches stay together on a page where they fit.
     private static IEnumerable<IReadOnlyList<NodeResult>> Branches(RunReading run)
     {
         var branch = new List<NodeResult>();
         foreach (var node in run.Results.Nodes)
         {
-            if (node.Depth <= 1 && branch.Count > 0)
+            if (node.Depth <= 1 && branch.Count > 0 && branch[^1].Depth > 0)
             {
                 yield return branch;
                 branch = [];

@@ -1,0 +1,49 @@
+namespace RiskWorker.Domain.Runs;
+
+/// <summary>A node of the tree with its figures.</summary>
+public sealed record NodeResult
+{
+    /// <summary>The book.</summary>
+    public required string Book { get; init; }
+
+    /// <summary>Its display name.</summary>
+    public required string Name { get; init; }
+
+    /// <summary>Its parent; null for the root.</summary>
+    public required string? Parent { get; init; }
+
+    /// <summary>Steps from the root.</summary>
+    public required int Depth { get; init; }
+
+    /// <summary>Currency of its figures.</summary>
+    public required string Currency { get; init; }
+
+    /// <summary>Value today.</summary>
+    public required double Value { get; init; }
+
+    /// <summary>Value today in the reporting currency.</summary>
+    public required double ValueRoot { get; init; }
+
+    /// <summary>Positions held on the node itself, its children's left out.</summary>
+    public required int Positions { get; init; }
+
+    /// <summary>Measures in the node's currency.</summary>
+    public required IReadOnlyList<MeasureResult> Measures { get; init; }
+
+    /// <summary>Measures in the reporting currency; null where that is the node's own.</summary>
+    public IReadOnlyList<MeasureResult>? MeasuresRoot { get; init; }
+
+    /// <summary>Distribution of profit by horizon, in the node's currency.</summary>
+    public required IReadOnlyList<ProfitDistribution> Distributions { get; init; }
+
+    /// <summary>The measures in the reporting currency, whichever list holds them.</summary>
+    public IReadOnlyList<MeasureResult> InReportingCurrency => MeasuresRoot ?? Measures;
+}
+
+/// <summary>A measure with its sampling interval. Positive is a loss.</summary>
+/// <param name="Spec">What is measured.</param>
+/// <param name="Value">The estimate.</param>
+/// <param name="Low">Lower end; null where its rank lies outside the sample.</param>
+/// <param name="High">Upper end; null where its rank lies outside the sample.</param>
+/// <param name="Level">Level of the interval.</param>
+public sealed record MeasureResult(MeasureSpec Spec, double Value, double? Low, double? High, double Level);
