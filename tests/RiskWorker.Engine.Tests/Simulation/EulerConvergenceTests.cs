@@ -11,7 +11,7 @@ namespace RiskWorker.Engine.Tests.Simulation;
 /// </summary>
 public sealed class EulerConvergenceTests
 {
-    private const int Paths = 8_000;
+    private const int Paths = 4_000;
     private const int Batches = 40;
     private const double S0 = 1, Mu = 0.05, Sigma = 0.2;
     private static readonly int[] s_steps = [8, 16, 32, 64, 128, 256, 512];
