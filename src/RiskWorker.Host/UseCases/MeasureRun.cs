@@ -46,8 +46,8 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
 
     private MeasureReport Single(Work work, DateOnly asOf, DateTimeOffset started, double load, int filled)
     {
-        var outcome = Calculate(work, asOf, work.Settings, started, load);
-        var stored = new StoredRun(outcome, work.Store.Runs.Append(outcome));
+        var stored = work.Store.Runs.AppendNext(Calculate(work, asOf, work.Settings, started, load));
+        var outcome = stored.Record;
         work.Progress.Report(new("report", 0));
         var written = RunDocuments.Write(stored, work.Request.Workspace.OutFolder);
         work.Store.Runs.AppendDocuments(outcome.Run, written.Hashes);
@@ -101,9 +101,7 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
         var record = Calculate(work with { Progress = s_quiet }, asOf, settings, clock.GetUtcNow(), 0) with { Evidence = EvidenceKind.Backfilled };
         // The days behind each count stand in the runs that are counted; a copy in each of 250 records would be most of the store.
         var counts = record.Results.Backtest.Select(b => b with { Days = b.Days, Series = [] });
-        record = record with { Results = record.Results with { Backtest = [.. counts] } };
-        work.Store.Runs.Append(record);
-        return record;
+        return work.Store.Runs.AppendNext(record with { Results = record.Results with { Backtest = [.. counts] } }).Record;
     }
 
     private RunRecord Calculate(Work work, DateOnly asOf, RunSettings settings, DateTimeOffset started, double load)
@@ -113,12 +111,9 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
         load += watch.Elapsed.TotalSeconds;
         var calculator = new RunCalculator(snapshot, work.Request.Threads ?? Environment.ProcessorCount, new SimulationSteps(work.Progress), work.Cancellation);
         var results = calculator.Calculate();
-        var attempt = work.Store.Runs.AttemptsOf(snapshot.Hash.Root).Count + 1;
         var previous = work.Store.Runs.PreviousRun(asOf, settings.Model.Name);
         return RunRecords.Of(snapshot, results, previous) with
         {
-            Run = RunIdentity.Of(snapshot.Hash.Root, attempt),
-            Attempt = attempt,
             Started = started,
             Finished = clock.GetUtcNow(),
             Evidence = work.Reader.ObservationDates[^1] > asOf ? EvidenceKind.Backfilled : EvidenceKind.Recorded,
