@@ -35,4 +35,27 @@ public sealed class SharedStoreTests : IDisposable
         await transaction.RollbackAsync(TestContext.Current.CancellationToken);
         Assert.Equal(1, (await measured).GetProperty("attempt").GetInt32());
     }
+
+    [Theory]
+    [InlineData("runs")]
+    [InlineData("runs", "show", "abc")]
+    public async Task Runs_of_a_folder_without_store_are_refused_and_none_is_made(params string[] args)
+    {
+        var ending = await _folder.RunAsync(args);
+        Assert.Equal(3, ending.Code);
+        Assert.Contains($"There is no store '{_folder.Store}'", ending.Error, StringComparison.Ordinal);
+        Assert.Empty(Directory.GetFileSystemEntries(_folder.Out));
+    }
+
+    [Theory]
+    [InlineData("abc")]
+    [InlineData("")]
+    [InlineData("%")]
+    public async Task Show_run_that_is_not_stored_is_refused(string id)
+    {
+        await _folder.RunAsync("load");
+        var ending = await _folder.RunAsync("runs", "show", id);
+        Assert.Equal(3, ending.Code);
+        Assert.Contains($"There is no run '{id}'", ending.Error, StringComparison.Ordinal);
+    }
 }
