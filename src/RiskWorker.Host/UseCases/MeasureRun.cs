@@ -70,7 +70,7 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
         for (var i = 0; i < dates.Count; i++)
         {
             work.Progress.Report(new("backfill", (double)i / dates.Count, $"{dates[i]:yyyy-MM-dd}"));
-            last = Backfill(work, dates[i], work.Settings);
+            last = work.Store.Runs.AppendNext(Past(work, dates[i], work.Settings)).Record;
         }
         return new MeasureReport { Record = last!, Folder = null, Documents = [], Json = RunDocuments.JsonOf(last!), ExitCode = ExitCodeOf(last!), Backfilled = dates.Count };
     }
@@ -85,23 +85,28 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
         return [.. work.Reader.PositionDates.Where(d => d < asOf).TakeLast(wanted).Where(d => !run.Contains(d))];
     }
 
+    // A date that fails is asked for again with every run, since the feed may have been mended; what failed before on the same inputs is on record.
     private int Fill(Work work, List<DateOnly> dates)
     {
         var settings = work.Settings with { Simulation = work.Settings.Simulation with { Scenarios = BackfillScenarios, Looks = 1, Cap = BackfillScenarios, Precision = null } };
+        var filled = 0;
         for (var i = 0; i < dates.Count; i++)
         {
             work.Progress.Report(new("backfill", (double)i / dates.Count, $"{dates[i]:yyyy-MM-dd}"));
-            Backfill(work, dates[i], settings);
+            var record = Past(work, dates[i], settings);
+            var hasFailed = record.Status == RunStatus.Failed;
+            if (!hasFailed) filled++;
+            if (!hasFailed || work.Store.Runs.AttemptsOf(record.Snapshot).Count == 0) work.Store.Runs.AppendNext(record);
         }
-        return dates.Count;
+        return filled;
     }
 
-    private RunRecord Backfill(Work work, DateOnly asOf, RunSettings settings)
+    private RunRecord Past(Work work, DateOnly asOf, RunSettings settings)
     {
-        var record = Calculate(work with { Progress = s_quiet }, asOf, settings, clock.GetUtcNow(), 0) with { Evidence = EvidenceKind.Backfilled };
+        var record = Calculate(work with { Progress = s_quiet }, asOf, settings, clock.GetUtcNow(), 0);
         // The days behind each count stand in the runs that are counted; a copy in each of 250 records would be most of the store.
         var counts = record.Results.Backtest.Select(b => b with { Days = b.Days, Series = [] });
-        return work.Store.Runs.AppendNext(record with { Results = record.Results with { Backtest = [.. counts] } }).Record;
+        return record with { Evidence = EvidenceKind.Backfilled, Results = record.Results with { Backtest = [.. counts] } };
     }
 
     private RunRecord Calculate(Work work, DateOnly asOf, RunSettings settings, DateTimeOffset started, double load)

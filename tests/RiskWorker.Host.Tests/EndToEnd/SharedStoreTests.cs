@@ -58,4 +58,21 @@ public sealed class SharedStoreTests : IDisposable
         Assert.Equal(3, ending.Code);
         Assert.Contains($"There is no run '{id}'", ending.Error, StringComparison.Ordinal);
     }
+
+    /// <summary>The first of the past dates have too little history: they fail once on record, not again with every run, and count as not filled.</summary>
+    [Fact]
+    public async Task Measure_past_dates_that_cannot_be_filled_are_recorded_once()
+    {
+        var dates = _folder.ReadFeed("observations.csv").TrimEnd('\n').Split('\n').Skip(1).Select(row => row[..10]).ToList();
+        _folder.WriteFeed("positions.csv", "as_of,book,instrument,quantity\n" + string.Concat(dates.Skip(55).Select(d => $"{d},FIRM,AAA share,1000\n")));
+        _folder.WriteSettings("""{ "simulation": { "scenarios": 1000 }, "backfill": 44 }""");
+        var first = await _folder.RunAsync("measure");
+        Assert.Contains("39 past dates filled", first.Output, StringComparison.Ordinal); // 61 prices are the least that give 60 shocks
+        var second = await _folder.RunAsync("measure");
+        Assert.DoesNotContain("filled", second.Output, StringComparison.Ordinal);
+
+        var runs = JsonSerializer.Deserialize<JsonElement>((await _folder.RunAsync("runs", "--json")).Output).EnumerateArray().ToList();
+        Assert.Equal(5, runs.Count(r => r.GetProperty("status").GetString() == "failed"));
+        Assert.Equal(44 + 2, runs.Count);
+    }
 }
