@@ -25,6 +25,7 @@ public sealed class LossSampler
     private readonly int _pilotCount;
     private readonly HistogramEdges[] _edges;
     private readonly double[] _cutoffs;
+    private readonly double _mass;
     private TailReduction _reduction;
     private TailRecord _whole;
     private int _wholeBlocks;
@@ -45,8 +46,9 @@ public sealed class LossSampler
         _pilot = Evaluate(BlockRange.From(0, _pilotCount), new LossSampleReduction(plan.Rows.Count, _pilotCount));
         _edges = [.. _pilot.Select(losses => HistogramEdges.Holding(losses))];
         _scratch = new double[_pilotCount];
-        var mass = (double)demand.DeepestRank(firstLook) / firstLook;
-        _cutoffs = [.. _pilot.Select(losses => CutoffAt(losses, mass + (6 * Math.Sqrt(mass / _pilotCount))))];
+        var needed = (double)demand.DeepestRank(firstLook) / firstLook;
+        _mass = needed + (6 * Math.Sqrt(needed / _pilotCount));
+        _cutoffs = [.. _pilot.Select(losses => CutoffAt(losses, _mass))];
         Restart();
     }
 
@@ -98,7 +100,7 @@ public sealed class LossSampler
     [MemberNotNull(nameof(_reduction), nameof(_whole))]
     private void Restart()
     {
-        _reduction = new(_cutoffs, _edges);
+        _reduction = new(_cutoffs, _edges, _mass);
         _whole = _reduction.Empty();
         _wholeBlocks = _pilotCount / Blocks.Size;
         var losses = new double[_plan.Rows.Count * Blocks.Size];

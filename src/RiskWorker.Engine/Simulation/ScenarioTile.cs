@@ -99,13 +99,15 @@ public sealed class ScenarioTile
     private void Cells(int horizon, int width)
     {
         Array.Clear(_cells);
-        foreach (var group in _plan.Groups)
+        for (var g = 0; g < _plan.Groups.Count; g++)
         {
+            var group = _plan.Groups[g];
             Underlying(group, horizon, width);
             Span<double> returns = _returns.AsSpan(0, width), spots = _spots.AsSpan(0, width);
-            foreach (var holding in group.Linear)
-                BookProfit.AddLinear(spots, group.Spot, holding.Units, _cells.AsSpan(holding.Cell * Width, width));
-            foreach (var batch in group.Options) Options(batch, horizon, returns, spots);
+            // By index: an enumerator of an interface would be allocated for every tile.
+            for (var h = 0; h < group.Linear.Count; h++)
+                BookProfit.AddLinear(spots, group.Spot, group.Linear[h].Units, _cells.AsSpan(group.Linear[h].Cell * Width, width));
+            for (var b = 0; b < group.Options.Count; b++) Options(group.Options[b], horizon, returns, spots);
         }
     }
 

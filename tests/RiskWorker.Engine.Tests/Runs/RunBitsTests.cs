@@ -40,11 +40,11 @@ public sealed class RunBitsTests
 
     [Fact]
     public void Cancelled_run_has_no_results() =>
-        Assert.ThrowsAny<OperationCanceledException>(() => new RunCalculator(MixedBook.Whole().Build(), [], 2, null, new CancellationToken(true)).Calculate());
+        Assert.ThrowsAny<OperationCanceledException>(() => new RunCalculator(MixedBook.Whole().Build(), 2, null, new CancellationToken(true)).Calculate());
 
     private static RunResults Calculated(int threads)
     {
-        var results = new RunCalculator(MixedBook.Whole().Build(), [], threads, null, CancellationToken.None).Calculate();
+        var results = new RunCalculator(MixedBook.Whole().Build(), threads, null, CancellationToken.None).Calculate();
         Assert.DoesNotContain(results.Findings, f => f.Severity == FindingSeverity.Blocking);
         return results;
     }

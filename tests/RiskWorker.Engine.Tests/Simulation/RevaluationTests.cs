@@ -1,4 +1,5 @@
 using RiskWorker.Domain.Books;
+using RiskWorker.Domain.Runs;
 using RiskWorker.Engine.Tests.Plans;
 
 namespace RiskWorker.Engine.Tests.Simulation;
@@ -60,6 +61,21 @@ public sealed class RevaluationTests
         Assert.DoesNotContain(book.Model.Moving, j => book.Model.Factors[j].Name == "STILL");
         Assert.All(losses[book.RowOf("EUROPE")], loss => Assert.Equal(losses[book.RowOf("EUROPE")][0], loss));
         Assert.Equal(-100 * (Math.Exp(0.1 * 10 / 252) - 1), losses[book.RowOf("EUROPE", 10)][7], Precision * 100);
+    }
+
+    // With no variance and no drift nothing moves: base values and scenarios agree to the last bit, so every loss is exactly 0.
+    [Fact]
+    public void Scenario_without_a_move_loses_exactly_nothing()
+    {
+        var snapshot = MixedBook.Whole().Build();
+        snapshot = snapshot with
+        {
+            Settings = snapshot.Settings with { Model = snapshot.Settings.Model with { Drift = DriftKind.Zero } },
+            Covariance = [.. snapshot.Covariance.Select(c => c with { Value = 0 })],
+        };
+        var book = CompiledBook.Of(snapshot, 1, 10);
+        Assert.Equal(0, book.Model.Rank);
+        Assert.All(book.Losses(300), row => Assert.All(row, loss => Assert.Equal(0, loss)));
     }
 
     // x(h) = x(0) + b h/252 + s sqrt(h) z: the future's loss is linear in the draw, and may carry the factor below zero.

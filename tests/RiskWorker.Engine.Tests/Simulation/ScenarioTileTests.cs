@@ -13,8 +13,8 @@ public sealed class ScenarioTileTests
     [InlineData(7)]
     [InlineData(8)]
     [InlineData(61)]
-    [InlineData(255)]
-    [InlineData(256)]
+    [InlineData(239)]
+    [InlineData(ScenarioTile.Width)]
     public void Evaluate_width_of_a_tile_changes_no_bit(int width)
     {
         var book = CompiledBook.Of(MixedBook.Whole().Build(), 1, 10);
