@@ -36,7 +36,7 @@ public sealed class BadCommandTests : IDisposable
     [InlineData("--as-of: found '2026-02-30'", "measure", "--as-of", "2026-02-30")]
     [InlineData("--model: found 'other'", "measure", "--model", "other")]
     [InlineData("did you mean 'measure'?", "mesure")]
-    [InlineData("There is no run 'abc'", "runs", "show", "abc")]
+    [InlineData("Required argument 'ID'", "runs", "show")]
     public async Task Verb_bad_usage_names_what_was_found(string said, params string[] args)
     {
         AssertRefused(await _folder.RunAsync(args), 3, said);
