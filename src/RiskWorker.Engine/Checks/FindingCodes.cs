@@ -141,6 +141,11 @@ public static class FindingCodes
         "Profit and loss of a book that does not exist",
         "correct the book's name in pnl.csv");
 
+    /// <summary>Positions, and no price for any of them.</summary>
+    public static readonly FindingCode PricedNone = new("priced-none", Blocking,
+        "Not one of the positions can be priced, so figures of zero would mean nothing",
+        "mend what the other findings name", IsFixed: true);
+
     /// <summary>A position outside the tree.</summary>
     /// <remarks>A warning, since no issue calls it blocking: its lines are listed and sized as unpriced, so what the root lacks is on page 1.</remarks>
     public static readonly FindingCode BookUnknown = new("book-unknown", Warning,
@@ -221,7 +226,7 @@ public static class FindingCodes
     public static IReadOnlyList<FindingCode> All { get; } =
     [
         BookTree, BookCurrency, PositionsNone, FactorUnobserved, FactorMissing, PriceNotPositive, HistoryShort, DaysNone, DaysFew,
-        CovarianceUnusable, DriftUnknown,
+        CovarianceUnusable, DriftUnknown, PricedNone,
         BookUnknown, InstrumentUnknown, FactorUnknown, CurrencyUnpriced, CurrencyMismatch, InstrumentExpired, NotModelled, LevelMissing,
         ValueDifference, HoldingsChange, LimitUndecidable,
         FactorClosed, PriceStale, PriceJump, DayMissing, DayClosed, DaysDropped, HistoryProxied, HistoryPartial,

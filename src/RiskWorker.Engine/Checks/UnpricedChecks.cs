@@ -20,6 +20,8 @@ internal static class UnpricedChecks
             if (!groups.TryGetValue(unpriced.Reason, out var group)) groups[unpriced.Reason] = group = new();
             group.Add(line, unpriced.Clause, (sizes ??= LineSize.Of(snapshot, tree)).Of(line));
         }
+        if (lines.Length > 0 && Array.TrueForAll(lines, l => l.Unpriced is not null))
+            findings.Add(FindingCodes.PricedNone, Positions, $"None of the {FindingList.Count(lines.Length, "position", "positions")} can be priced, so no figure holds anything");
         foreach (var (reason, group) in groups)
         {
             var (code, subject) = CodeOf(reason);

@@ -46,6 +46,21 @@ public sealed class LimitEvaluator
         };
     }
 
+    /// <summary>A limit whose book, or reference book, is not in the tree: undecided, never left out.</summary>
+    public static LimitResult WithoutBook(Limit limit, string currency, double level) => new()
+    {
+        Limit = limit,
+        Currency = currency,
+        Value = null,
+        Low = null,
+        High = null,
+        Level = level,
+        Used = null,
+        UsedLow = null,
+        UsedHigh = null,
+        Status = LimitStatus.Inconclusive,
+    };
+
     /// <summary>Whether the value that <paramref name="limit"/> is relative to allows a decision; otherwise a clause that says why not.</summary>
     public string? Undecidable(Limit limit)
     {

@@ -56,8 +56,10 @@ public sealed class LossSampler
     public IReadOnlyList<HistogramEdges> Edges => _edges;
 
     /// <summary>The tails of the first <paramref name="scenarios"/> scenarios; never fewer than at the look before.</summary>
+    /// <exception cref="ArgumentOutOfRangeException">Fewer scenarios than the pilot's, or than at the look before.</exception>
     public (TailRecord Record, IReadOnlyList<SampledLoss> Series) Look(int scenarios)
     {
+        ArgumentOutOfRangeException.ThrowIfLessThan(scenarios, Math.Max(_pilotCount, _wholeBlocks * Blocks.Size));
         while (true)
         {
             var record = Draw(scenarios);

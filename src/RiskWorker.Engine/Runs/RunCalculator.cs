@@ -4,6 +4,7 @@ using RiskWorker.Domain.Runs;
 using RiskWorker.Engine.Backtesting;
 using RiskWorker.Engine.Calibration;
 using RiskWorker.Engine.Checks;
+using RiskWorker.Engine.Limits;
 using RiskWorker.Engine.Plans;
 
 namespace RiskWorker.Engine.Runs;
@@ -58,7 +59,8 @@ public sealed class RunCalculator
 
     private RunResults Simulate(BookTree tree, CalibratedModel model, BookValuation valued)
     {
-        var limits = _snapshot.Limits.Where(l => l.IsValidOn(_snapshot.AsOf) && tree.IndexOf(l.Book) >= 0 && (l.ReferenceBook is null || tree.IndexOf(l.ReferenceBook) >= 0)).ToList();
+        var valid = _snapshot.Limits.Where(l => l.IsValidOn(_snapshot.AsOf)).ToLookup(l => tree.IndexOf(l.Book) >= 0 && (l.ReferenceBook is null || tree.IndexOf(l.ReferenceBook) >= 0));
+        var limits = valid[true].ToList();
         var measures = _snapshot.Settings.Measures.Concat(limits.Select(l => l.Measure)).Distinct().Order().ToList();
         var clock = Stopwatch.StartNew();
         var plan = new PlanCompiler(tree, model, valued.Binder.Currencies, _snapshot.AsOf, measures.Select(m => m.Horizon)).Compile(_snapshot.Settings.Simulation.Seed, valued.Today);
@@ -73,7 +75,7 @@ public sealed class RunCalculator
             Calibration = SummaryOf(model, plan),
             Simulation = outcome.Simulation,
             Nodes = NodeResults.Of(tree, plan, outcome, measures, _snapshot.Positions),
-            Limits = outcome.Limits,
+            Limits = [.. outcome.Limits.Concat(valid[false].Select(l => LimitEvaluator.WithoutBook(l, tree.ReportingCurrency, (double)outcome.Level))).OrderBy(l => l.Limit.Name, StringComparer.Ordinal)],
             Hypothetical = hypothetical,
             Backtest = ExceptionCount.Of(_snapshot, tree, measures, hypothetical),
             Holdings = valued.Holdings,

@@ -26,13 +26,15 @@ public sealed class PlainTable
     /// <summary>Prints the table and an empty line.</summary>
     public void Write(IAnsiConsole console)
     {
+        // Many columns leave less room between them, or names would break inside words on a terminal of 80 columns.
+        foreach (var column in _table.Columns) column.Padding = new Padding(0, 0, _table.Columns.Count > 6 ? 1 : 2, 0);
         console.Write(_table);
         console.WriteLine();
     }
 
     private PlainTable Column(string head, Justify justify, bool wraps)
     {
-        _table.AddColumn(new TableColumn(new Text(head, new Style(decoration: Decoration.Bold))) { Alignment = justify, NoWrap = !wraps, Padding = new Padding(0, 0, 2, 0) });
+        _table.AddColumn(new TableColumn(new Text(head, new Style(decoration: Decoration.Bold))) { Alignment = justify, NoWrap = !wraps });
         return this;
     }
 }

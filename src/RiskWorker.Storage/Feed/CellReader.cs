@@ -175,12 +175,12 @@ internal sealed class CellReader : IDisposable
     public TypedNumber? OptionalNumber(int column, string expected, Func<double, bool> holds) =>
         IsEmpty(column) ? null : Number(column, expected, holds);
 
-    /// <summary>A whole number of at least 1.</summary>
-    public int Count(int column)
+    /// <summary>A whole number from 1 to <paramref name="most"/>.</summary>
+    public int Count(int column, int most = int.MaxValue)
     {
         var cell = Cell(column);
-        if (int.TryParse(cell, NumberStyles.None, CultureInfo.InvariantCulture, out var count) && count >= 1) return count;
-        Fault(column, cell, "a whole number from 1 on");
+        if (int.TryParse(cell, NumberStyles.None, CultureInfo.InvariantCulture, out var count) && count >= 1 && count <= most) return count;
+        Fault(column, cell, most == int.MaxValue ? "a whole number from 1 on" : string.Create(CultureInfo.InvariantCulture, $"a whole number from 1 to {most:N0}"));
         return 1;
     }
 

@@ -14,6 +14,9 @@ internal sealed class LimitParser : IRowParser<string?[]>
         FeedColumn.May("approver"), FeedColumn.May("reason"),
     ]);
 
+    // Ten years: what the settings allow for a measure, too.
+    private const int MostDays = 2_520;
+
     private const int Basis = 6, Reference = 7, WarnAt = 8, ValidFrom = 9, ValidTo = 10;
 
     private readonly FirstLines<string> _names = new(StringComparer.Ordinal);
@@ -23,7 +26,7 @@ internal sealed class LimitParser : IRowParser<string?[]>
         var (name, book) = (cells.Name(0), cells.Name(1));
         var measure = cells.Choice(2, Spelling.Of<MeasureKind>());
         var confidence = new Confidence(cells.Fraction(3)).Level.ToString(CultureInfo.InvariantCulture);
-        var horizon = cells.Count(4).ToString(CultureInfo.InvariantCulture);
+        var horizon = cells.Count(4, MostDays).ToString(CultureInfo.InvariantCulture);
         var amount = cells.Number(5, "a number above 0", value => value > 0);
         var basis = cells.IsEmpty(Basis) ? LimitBasis.Amount : cells.Choice(Basis, Spelling.Of<LimitBasis>());
         var reference = cells.OptionalName(Reference);

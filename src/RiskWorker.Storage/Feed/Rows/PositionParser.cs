@@ -11,9 +11,12 @@ internal sealed class PositionParser : IRowParser<PositionRow>
         FeedColumn.Must("as_of"), FeedColumn.Must("book"), FeedColumn.Must("instrument"), FeedColumn.Must("quantity"), FeedColumn.May("trade"), FeedColumn.May("market_value"),
     ]);
 
+    // Beyond this sums of prices lose their cents, and squares of losses their range.
+    private const double MostUnits = 1e15;
+
     public bool TryParse(CellReader cells, out PositionRow row)
     {
-        row = new(cells.Date(0), cells.Name(1), cells.Name(2), cells.Number(3), cells.OptionalReference(4), cells.OptionalNumber(5));
+        row = new(cells.Date(0), cells.Name(1), cells.Name(2), cells.Number(3, "a number between -1e15 and 1e15", q => Math.Abs(q) <= MostUnits), cells.OptionalReference(4), cells.OptionalNumber(5));
         return cells.RowIsSound;
     }
 }
