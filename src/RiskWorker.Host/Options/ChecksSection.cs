@@ -1,4 +1,5 @@
 using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Checks;
 
 namespace RiskWorker.Host.Options;
 
@@ -32,8 +33,19 @@ public static class ChecksSection
         var severities = new SortedDictionary<string, FindingSeverity>(StringComparer.Ordinal);
         foreach (var (code, severity) in value?.Named() ?? [])
         {
-            if (severity.Choice(s_severities) is { } chosen) severities[code] = chosen;
+            if (Refusal(code) is { } expected) severity.Fault(expected);
+            else if (severity.Choice(s_severities) is { } chosen) severities[code] = chosen;
         }
         return severities;
+    }
+
+    /// <summary>What was expected in place of <paramref name="code"/>; null where its severity may be set.</summary>
+    private static string? Refusal(string code)
+    {
+        var known = FindingCodes.All.FirstOrDefault(c => c.Code == code);
+        if (known is { IsFixed: true }) return "nothing here: nothing can be computed past this finding, so it always blocks";
+        if (known is not null) return null;
+        var nearest = NearestKey.Of(code, FindingCodes.All.Select(c => c.Code));
+        return "a code from the README's table of findings" + (nearest is null ? "" : $"; did you mean '{nearest}'?");
     }
 }

@@ -46,8 +46,8 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
 
     private MeasureReport Single(Work work, DateOnly asOf, DateTimeOffset started, double load, int filled)
     {
-        var outcome = Calculate(work, asOf, work.Settings, started, load);
-        var stored = new StoredRun(outcome, work.Store.Runs.Append(outcome));
+        var stored = work.Store.Runs.AppendNext(Calculate(work, asOf, work.Settings, started, load));
+        var outcome = stored.Record;
         work.Progress.Report(new("report", 0));
         var written = RunDocuments.Write(stored, work.Request.Workspace.OutFolder);
         work.Store.Runs.AppendDocuments(outcome.Run, written.Hashes);
@@ -70,7 +70,7 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
         for (var i = 0; i < dates.Count; i++)
         {
             work.Progress.Report(new("backfill", (double)i / dates.Count, $"{dates[i]:yyyy-MM-dd}"));
-            last = Backfill(work, dates[i], work.Settings);
+            last = work.Store.Runs.AppendNext(Past(work, dates[i], work.Settings)).Record;
         }
         return new MeasureReport { Record = last!, Folder = null, Documents = [], Json = RunDocuments.JsonOf(last!), ExitCode = ExitCodeOf(last!), Backfilled = dates.Count };
     }
@@ -85,25 +85,28 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
         return [.. work.Reader.PositionDates.Where(d => d < asOf).TakeLast(wanted).Where(d => !run.Contains(d))];
     }
 
+    // A date that fails is asked for again with every run, since the feed may have been mended; what failed before on the same inputs is on record.
     private int Fill(Work work, List<DateOnly> dates)
     {
         var settings = work.Settings with { Simulation = work.Settings.Simulation with { Scenarios = BackfillScenarios, Looks = 1, Cap = BackfillScenarios, Precision = null } };
+        var filled = 0;
         for (var i = 0; i < dates.Count; i++)
         {
             work.Progress.Report(new("backfill", (double)i / dates.Count, $"{dates[i]:yyyy-MM-dd}"));
-            Backfill(work, dates[i], settings);
+            var record = Past(work, dates[i], settings);
+            var hasFailed = record.Status == RunStatus.Failed;
+            if (!hasFailed) filled++;
+            if (!hasFailed || work.Store.Runs.AttemptsOf(record.Snapshot).Count == 0) work.Store.Runs.AppendNext(record);
         }
-        return dates.Count;
+        return filled;
     }
 
-    private RunRecord Backfill(Work work, DateOnly asOf, RunSettings settings)
+    private RunRecord Past(Work work, DateOnly asOf, RunSettings settings)
     {
-        var record = Calculate(work with { Progress = s_quiet }, asOf, settings, clock.GetUtcNow(), 0) with { Evidence = EvidenceKind.Backfilled };
+        var record = Calculate(work with { Progress = s_quiet }, asOf, settings, clock.GetUtcNow(), 0);
         // The days behind each count stand in the runs that are counted; a copy in each of 250 records would be most of the store.
         var counts = record.Results.Backtest.Select(b => b with { Days = b.Days, Series = [] });
-        record = record with { Results = record.Results with { Backtest = [.. counts] } };
-        work.Store.Runs.Append(record);
-        return record;
+        return record with { Evidence = EvidenceKind.Backfilled, Results = record.Results with { Backtest = [.. counts] } };
     }
 
     private RunRecord Calculate(Work work, DateOnly asOf, RunSettings settings, DateTimeOffset started, double load)
@@ -113,12 +116,9 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
         load += watch.Elapsed.TotalSeconds;
         var calculator = new RunCalculator(snapshot, work.Request.Threads ?? Environment.ProcessorCount, new SimulationSteps(work.Progress), work.Cancellation);
         var results = calculator.Calculate();
-        var attempt = work.Store.Runs.AttemptsOf(snapshot.Hash.Root).Count + 1;
         var previous = work.Store.Runs.PreviousRun(asOf, settings.Model.Name);
         return RunRecords.Of(snapshot, results, previous) with
         {
-            Run = RunIdentity.Of(snapshot.Hash.Root, attempt),
-            Attempt = attempt,
             Started = started,
             Finished = clock.GetUtcNow(),
             Evidence = work.Reader.ObservationDates[^1] > asOf ? EvidenceKind.Backfilled : EvidenceKind.Recorded,

@@ -27,18 +27,32 @@ public sealed class RunJournal
     public string Append(RunRecord record)
     {
         ArgumentNullException.ThrowIfNull(record);
-        var json = RecordJson.Write(record);
-        var content = SnapshotHash.OfBytes(json);
-        var packed = RecordJson.Pack(json);
         var head = _store.Write(connection =>
         {
             if (connection.Scalar("SELECT run FROM run WHERE run = ?1 OR snapshot = ?2 AND attempt = ?3", record.Run, record.Snapshot, record.Attempt) is { } taken)
                 throw new StoreException(StoreFault.Refused, $"The run {record.Run} (attempt {record.Attempt}) cannot be stored: run {taken} is stored already.");
-            RunRows.Of(record, content).Insert(connection, packed);
-            return Chain(connection, ChainEntryKind.Results, record.Run, content).Hash;
+            return Insert(connection, record);
         });
         _newest = record;
         return head;
+    }
+
+    /// <summary>
+    /// Stores a run as the next attempt at its inputs. Number and id are given here, inside the transaction: another process may
+    /// measure the same inputs at the same time.
+    /// </summary>
+    /// <exception cref="StoreException">The store cannot be written.</exception>
+    public StoredRun AppendNext(RunRecord record)
+    {
+        ArgumentNullException.ThrowIfNull(record);
+        var stored = _store.Write(connection =>
+        {
+            var attempt = Convert.ToInt32(connection.Scalar("SELECT coalesce(max(attempt), 0) + 1 FROM run WHERE snapshot = ?1", record.Snapshot), CultureInfo.InvariantCulture);
+            var next = record with { Run = RunIdentity.Of(record.Snapshot, attempt), Attempt = attempt };
+            return new StoredRun(next, Insert(connection, next));
+        });
+        _newest = stored.Record;
+        return stored;
     }
 
     /// <summary>Chains the hashes of the documents rendered from a stored run.</summary>
@@ -106,6 +120,14 @@ public sealed class RunJournal
         var text = new StringBuilder();
         foreach (var (name, sha256) in documents.OrderBy(d => d.Name, StringComparer.Ordinal)) text.Append(sha256).Append(' ').Append(name).Append('\n');
         return SnapshotHash.OfText(text.ToString());
+    }
+
+    private static string Insert(SqliteConnection connection, RunRecord record)
+    {
+        var json = RecordJson.Write(record);
+        var content = SnapshotHash.OfBytes(json);
+        RunRows.Of(record, content).Insert(connection, RecordJson.Pack(json));
+        return Chain(connection, ChainEntryKind.Results, record.Run, content).Hash;
     }
 
     private static ChainEntry Chain(SqliteConnection connection, ChainEntryKind kind, string run, string content)

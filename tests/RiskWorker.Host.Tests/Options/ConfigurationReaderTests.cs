@@ -45,7 +45,7 @@ public sealed class ConfigurationReaderTests
               "measures": [ { "measure": "es", "confidence": 0.975, "horizonDays": 10 }, { "measure": "var", "confidence": 0.99 } ],
               "simulation": { "scenarios": 50000, "seed": 18446744073709551615, "looks": 3, "cap": 200000, "precision": 0.01, "revaluation": "surface", "surfaceError": 1e-7, "exactTail": true },
               "backfill": 250,
-              "checks": { "staleDays": 4, "jumpSigmas": 6.5, "minimumHistory": 30, "valueTolerance": 0, "grossChange": 0.25, "severity": { "PRICE-STALE": "blocking" } },
+              "checks": { "staleDays": 4, "jumpSigmas": 6.5, "minimumHistory": 30, "valueTolerance": 0, "grossChange": 0.25, "severity": { "price-stale": "blocking" } },
               "schedules": { "daily": { "cron": "0 30 6 ? * MON-FRI", "timeZone": "Europe/Oslo", "calendar": "OSLO", "verb": "measure", "deadline": "07:30" } },
               "delivery": {},
               "page": {}
@@ -58,7 +58,7 @@ public sealed class ConfigurationReaderTests
         Assert.Equal(["VaR 99%, 1 day", "ES 97.5%, 10 days"], read.Run.Measures.Select(m => m.ToString()));
         Assert.Equal(new SimulationSettings { Scenarios = 50_000, Seed = ulong.MaxValue, Looks = 3, Cap = 200_000, Precision = 0.01 }, read.Run.Simulation);
         Assert.Equal((4, 6.5, 30, 0.0, 0.25), (read.Run.Checks.StaleDays, read.Run.Checks.JumpSigmas, read.Run.Checks.MinimumHistory, read.Run.Checks.ValueTolerance, read.Run.Checks.GrossChange));
-        Assert.Equal([new("PRICE-STALE", FindingSeverity.Blocking)], read.Run.Checks.Severity);
+        Assert.Equal([new("price-stale", FindingSeverity.Blocking)], read.Run.Checks.Severity);
         Assert.True(read.Run.TimeEffectsIncluded);
         Assert.Equal(("data/risk.db", 250), (read.StorePath, read.BackfillDays));
         Assert.Equal([new ScheduleOptions("daily", "0 30 6 ? * MON-FRI", TimeZoneInfo.FindSystemTimeZoneById("Europe/Oslo"), "OSLO", "measure", new TimeOnly(7, 30))], read.Schedules);
@@ -110,7 +110,9 @@ public sealed class ConfigurationReaderTests
     [InlineData("""{ "simulation": { "scenarios": 1e3 } }""", "simulation.scenarios: found 1e3, expected a whole number from 1,000 to 100,000,000")]
     [InlineData("""{ "simulation": { "precision": 1e400 } }""", "simulation.precision: found 1e400, expected null or a number strictly between 0 and 1")]
     [InlineData("""{ "simulation": { "seed": -1 } }""", "simulation.seed: found -1, expected a whole number from 0 to 18446744073709551615")]
-    [InlineData("""{ "checks": { "severity": { "X": "info" } } }""", "checks.severity.X: found \"info\", expected one of blocking, warning")]
+    [InlineData("""{ "checks": { "severity": { "price-jump": "info" } } }""", "checks.severity.price-jump: found \"info\", expected one of blocking, warning")]
+    [InlineData("""{ "checks": { "severity": { "price-jumb": "warning" } } }""", "checks.severity.price-jumb: found \"warning\", expected a code from the README's table of findings; did you mean 'price-jump'?")]
+    [InlineData("""{ "checks": { "severity": { "book-tree": "warning" } } }""", "checks.severity.book-tree: found \"warning\", expected nothing here: nothing can be computed past this finding, so it always blocks")]
     [InlineData("""{ "checks": { "jumpSigma": 3 } }""", "checks.jumpSigma: found an unknown key, expected one of staleDays, jumpSigmas, minimumHistory, valueTolerance, grossChange, severity; did you mean 'jumpSigmas'?")]
     [InlineData("""{ "schedules": { "d": { "cron": "0 0 6 * * ?", "timeZone": "UTC", "verb": "tail", "deadline": "7:30" } } }""",
         "schedules.d.verb: found \"tail\", expected one of measure; 'tail' is not available in this version", "schedules.d.deadline: found \"7:30\", expected a time of day as HH:mm")]
