@@ -39,11 +39,11 @@ internal sealed class StandardBook : IDisposable
     /// <summary>One run of the product into an empty folder, so that it reads the feed and builds its store; one look, as the yardstick takes.</summary>
     public Measurement Riskworker(int scenarios)
     {
-        File.WriteAllText(Path.Combine(_folder.FullName, "riskworker.json"), $$"""{ "simulation": { "looks": 1, "cap": {{Text(scenarios)}} } }""");
+        File.WriteAllText(Path.Combine(_folder.FullName, "riskworker.json"), $$"""{ "simulation": { "scenarios": {{Text(scenarios)}}, "cap": {{Text(scenarios)}}, "looks": 1 } }""");
         var to = Directory.CreateDirectory(Path.Combine(_folder.FullName, "out"));
         try
         {
-            string[] arguments = ["measure", "--config", _folder.FullName, "--out", to.FullName, "--scenarios", Text(scenarios), "--json"];
+            string[] arguments = ["measure", "--config", _folder.FullName, "--out", to.FullName, "--json"];
             // A breached or undecided limit is a result.
             return Measurement.OfRiskworker(ChildProcess.Run(_programs.Riskworker, arguments, 1, 6), scenarios);
         }

@@ -15,8 +15,8 @@ internal sealed class Battery(DrawKind kind)
 
     private static readonly int[] s_lags = [1, 2, 3, 8, 256, Block];
     private static readonly double[] s_tails = [4, 4.5, 5];
-    private static readonly DrawStream s_stream = new(1, DrawPurpose.FactorMoves, 0);
 
+    private readonly DrawStream _stream = new(kind.Seed, DrawPurpose.FactorMoves, 0);
     private readonly long[] _bins = new long[Bins];
     private readonly long[] _cells = new long[Side * Side];
     private readonly long[] _tails = new long[s_tails.Length + 1];
@@ -30,7 +30,7 @@ internal sealed class Battery(DrawKind kind)
     {
         for (uint pair = 0; pair < Pairs; pair++)
         {
-            foreach (var draws in kind.Series(s_stream, pair, Scenarios)) Add(draws);
+            foreach (var draws in kind.Series(_stream, pair, Scenarios)) Add(draws);
         }
         return [.. Distribution(), .. Dependence(), .. Streams()];
     }
@@ -106,8 +106,9 @@ internal sealed class Battery(DrawKind kind)
     {
         DrawStream[] streams =
         [
-            .. Enum.GetValues<DrawPurpose>().Select(purpose => new DrawStream(1, purpose, 0)),
-            new(1, DrawPurpose.FactorMoves, 1), new(1, DrawPurpose.FactorMoves, DrawStream.MaxSubIndex), new(2, DrawPurpose.FactorMoves, 0), new((1UL << 32) + 1, DrawPurpose.FactorMoves, 0),
+            .. Enum.GetValues<DrawPurpose>().Select(purpose => new DrawStream(kind.Seed, purpose, 0)),
+            new(kind.Seed, DrawPurpose.FactorMoves, 1), new(kind.Seed, DrawPurpose.FactorMoves, DrawStream.MaxSubIndex),
+            new(kind.Seed + 1, DrawPurpose.FactorMoves, 0), new(kind.Seed + (1UL << 32), DrawPurpose.FactorMoves, 0),
         ];
         var series = streams.Select(s => Array.ConvertAll(kind.Series(s, 0, Scenarios)[0], d => kind.Standardise(d))).ToList();
         yield return QualityTest.Correlations($"correlations of {streams.Length} streams (purposes, sub-indices, seeds), all pairs", PairsOf(series), Scenarios);

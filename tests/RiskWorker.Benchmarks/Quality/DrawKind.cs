@@ -4,13 +4,18 @@ using RiskWorker.Numerics.Random;
 namespace RiskWorker.Benchmarks.Quality;
 
 /// <summary>Uniforms or normals, standardised for correlations, and carried to (0, 1) by a distribution function that is not the product's.</summary>
-internal sealed record DrawKind(string Name, DrawKind.PairFill Fill, Func<double, double> Standardise, Func<double, double> Probability)
+/// <param name="Name">Which.</param>
+/// <param name="Seed">A seed of its own, so that two kinds are two samples.</param>
+/// <param name="Fill">Draws a pair.</param>
+/// <param name="Standardise">To mean 0 and variance 1.</param>
+/// <param name="Probability">To (0, 1).</param>
+internal sealed record DrawKind(string Name, ulong Seed, DrawKind.PairFill Fill, Func<double, double> Standardise, Func<double, double> Probability)
 {
     public delegate void PairFill(DrawStream stream, ulong firstScenario, uint pair, Span<double> first, Span<double> second);
 
-    public static DrawKind Uniforms { get; } = new("uniforms", UniformDraws.FillPair, u => (u - 0.5) * Math.Sqrt(12), u => u);
+    public static DrawKind Uniforms { get; } = new("uniforms", 1, UniformDraws.FillPair, u => (u - 0.5) * Math.Sqrt(12), u => u);
 
-    public static DrawKind Normals { get; } = new("normals", NormalDraws.FillPair, z => z, z => Normal.CDF(0, 1, z));
+    public static DrawKind Normals { get; } = new("normals", 2, NormalDraws.FillPair, z => z, z => Normal.CDF(0, 1, z));
 
     /// <summary>Both draws of a pair over consecutive scenarios, standardised, block by block as the engine fills them.</summary>
     public double[][] Series(DrawStream stream, uint pair, int scenarios)
