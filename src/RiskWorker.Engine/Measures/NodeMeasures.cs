@@ -8,12 +8,14 @@ public sealed class NodeMeasures
 {
     private readonly RevaluationPlan _plan;
     private readonly Dictionary<PlanRow, SampledLoss> _series;
+    private readonly Dictionary<Horizon, int> _horizons;
 
     /// <summary>Takes one sampled series for each row of <paramref name="plan"/>, in order.</summary>
     public NodeMeasures(RevaluationPlan plan, IReadOnlyList<SampledLoss> series)
     {
         _plan = plan;
         _series = plan.Rows.Zip(series).ToDictionary(p => p.First, p => p.Second);
+        _horizons = plan.Horizons.Index().ToDictionary(h => h.Item, h => h.Index);
     }
 
     /// <summary>A measure of <paramref name="node"/> with its interval at <paramref name="level"/>.</summary>
@@ -34,9 +36,10 @@ public sealed class NodeMeasures
     }
 
     /// <summary>The series of <paramref name="node"/> at <paramref name="horizon"/>.</summary>
+    /// <exception cref="ArgumentOutOfRangeException">The plan has no such horizon.</exception>
     public SampledLoss SeriesOf(int node, Horizon horizon, bool inReportingCurrency = false)
     {
-        var place = _plan.Horizons.ToList().IndexOf(horizon);
+        if (!_horizons.TryGetValue(horizon, out var place)) throw new ArgumentOutOfRangeException(nameof(horizon), horizon, $"The plan has the horizons {string.Join(", ", _plan.Horizons)}.");
         return _series[new(node, place, !inReportingCurrency && HasOwnCurrency(node))];
     }
 
