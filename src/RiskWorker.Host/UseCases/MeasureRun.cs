@@ -46,8 +46,8 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
 
     private MeasureReport Single(Work work, DateOnly asOf, DateTimeOffset started, double load, int filled)
     {
-        var outcome = Calculate(work, asOf, work.Settings, started, load);
-        var stored = new StoredRun(outcome, work.Store.Runs.Append(outcome));
+        var (outcome, inputs) = Calculate(work, asOf, work.Settings, started, load);
+        var stored = new StoredRun(outcome, work.Store.Runs.Append(outcome, inputs));
         work.Progress.Report(new("report", 0));
         var written = RunDocuments.Write(stored, work.Request.Workspace.OutFolder);
         work.Store.Runs.AppendDocuments(outcome.Run, written.Hashes);
@@ -98,24 +98,25 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
 
     private RunRecord Backfill(Work work, DateOnly asOf, RunSettings settings)
     {
-        var record = Calculate(work with { Progress = s_quiet }, asOf, settings, clock.GetUtcNow(), 0) with { Evidence = EvidenceKind.Backfilled };
+        var (calculated, inputs) = Calculate(work with { Progress = s_quiet }, asOf, settings, clock.GetUtcNow(), 0);
         // The days behind each count stand in the runs that are counted; a copy in each of 250 records would be most of the store.
-        var counts = record.Results.Backtest.Select(b => b with { Days = b.Days, Series = [] });
-        record = record with { Results = record.Results with { Backtest = [.. counts] } };
-        work.Store.Runs.Append(record);
+        var counts = calculated.Results.Backtest.Select(RunRecords.CountsAlone);
+        var record = calculated with { Evidence = EvidenceKind.Backfilled, Results = calculated.Results with { Backtest = [.. counts] } };
+        work.Store.Runs.Append(record, inputs);
         return record;
     }
 
-    private RunRecord Calculate(Work work, DateOnly asOf, RunSettings settings, DateTimeOffset started, double load)
+    private (RunRecord Record, FrozenSnapshot Inputs) Calculate(Work work, DateOnly asOf, RunSettings settings, DateTimeOffset started, double load)
     {
         var watch = Stopwatch.StartNew();
-        var snapshot = work.Reader.Take(asOf, settings, settings.Model.Name);
+        var inputs = work.Reader.Freeze(asOf, settings, settings.Model.Name);
+        var snapshot = inputs.Snapshot;
         load += watch.Elapsed.TotalSeconds;
-        var calculator = new RunCalculator(snapshot, work.Request.Threads ?? Environment.ProcessorCount, new SimulationSteps(work.Progress), work.Cancellation);
+        var calculator = new RunCalculator(snapshot, work.Request.Threads ?? Environment.ProcessorCount, new SimulationProgress(work.Progress), work.Cancellation);
         var results = calculator.Calculate();
         var attempt = work.Store.Runs.AttemptsOf(snapshot.Hash.Root).Count + 1;
         var previous = work.Store.Runs.PreviousRun(asOf, settings.Model.Name);
-        return RunRecords.Of(snapshot, results, previous) with
+        var record = RunRecords.Of(snapshot, results, previous) with
         {
             Run = RunIdentity.Of(snapshot.Hash.Root, attempt),
             Attempt = attempt,
@@ -125,6 +126,7 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
             Command = CommandFor(work.Request, asOf, settings),
             Timings = calculator.Timings with { Load = load },
         };
+        return (record, inputs);
     }
 
     private static string CommandFor(MeasureRequest request, DateOnly asOf, RunSettings settings) => ShellText.Of(
@@ -138,10 +140,5 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
         if (record.Status == RunStatus.Failed) return ExitCode.Blocked;
         if (record.Results.Limits.Any(l => l.Status == LimitStatus.Breached)) return ExitCode.Breach;
         return record.Results.Limits.Any(l => l.Status == LimitStatus.Inconclusive) ? ExitCode.Undecided : ExitCode.Done;
-    }
-
-    private sealed class SimulationSteps(IProgress<WorkProgress> progress) : IProgress<RunProgress>
-    {
-        public void Report(RunProgress value) => progress.Report(new(value.Phase, Math.Min(1, (double)value.Done / value.Planned), $"{value.Planned:N0} scenarios"));
     }
 }
