@@ -68,6 +68,11 @@ public sealed class SnapshotReaderTests(ITestOutputHelper output)
     }
 
     [Fact]
+    public void Text_of_settings_is_read_back_to_the_bit() =>
+        Assert.All(OneChangeEach(new RunSettings()).Cast<RunSettings>().Prepend(new()), settings =>
+            BitEqual.Assert(settings, SettingsText.Read(System.Text.Encoding.UTF8.GetString(SettingsText.Leaf(settings).Text))));
+
+    [Fact]
     public void Take_reads_what_the_feed_says()
     {
         using var fixture = Fixture();
