@@ -35,10 +35,10 @@ public static class VerifyListing
         {
             run = report.Run,
             asOf = report.Record is { } record ? Figures.Date(record.AsOf) : null,
-            verdict = Result(Overall(report)),
+            verdict = Word(Overall(report)),
             epoch = report.Record?.Epoch,
             programEpoch = report.Epoch,
-            checks = report.Checks.Select(c => new { check = Lower(c.Thing), result = Result(c.Outcome), findings = c.Findings }),
+            checks = report.Checks.Select(c => new { check = Lower(c.Thing), result = Word(c.Outcome), findings = c.Findings }),
             differences = report.Differences,
         },
         s_json));
@@ -61,6 +61,8 @@ public static class VerifyListing
         VerifyOutcome.OtherEpoch => "other epoch",
         _ => "not checked",
     };
+
+    private static string Word(VerifyOutcome outcome) => JsonNamingPolicy.CamelCase.ConvertName(outcome.ToString());
 
     private static string Lower<T>(T value) where T : struct, Enum => value.ToString().ToLowerInvariant();
 }
