@@ -32,9 +32,7 @@ public sealed class VerifyRun
     private VerifyReport Run()
     {
         var run = _store.Runs.Identify(_request.Run) ?? throw new NotStoredException($"There is no run '{_request.Run}' in the store; 'riskworker runs' lists those there are.");
-        _progress.Report(new("chain", 0));
-        Add(VerifiedThing.Chain, _store.Runs.FirstBreak(), "Every entry follows the one before it, and vouches for what is stored.");
-        _cancellation.ThrowIfCancellationRequested();
+        Add(VerifiedThing.Chain, _store.Runs.FirstBreak(new ChainProgress(_progress), _cancellation), "Every entry follows the one before it, and vouches for what is stored.");
         var (record, fault) = _store.Runs.Audit(run);
         Add(VerifiedThing.Record, fault, "It hashes to what its entry of the chain vouches for.");
         if (record is null)
@@ -121,4 +119,9 @@ public sealed class VerifyRun
         _checks.Add(faults.Count > 0 ? new(thing, VerifyOutcome.Different, faults) : new(thing, VerifyOutcome.Equal, [whole]));
 
     private void Skip(VerifiedThing thing, string reason) => _checks.Add(new(thing, VerifyOutcome.NotChecked, [reason]));
+
+    private sealed class ChainProgress(IProgress<WorkProgress> progress) : IProgress<double>
+    {
+        public void Report(double value) => progress.Report(new("chain", value));
+    }
 }

@@ -17,12 +17,15 @@ internal static class RunAudit
     public static ChainEntry Entry(SqliteDataReader row) =>
         new(row.GetInt64(0), Spelling.Of<ChainEntryKind>().GetValueOrDefault(row.GetString(1), (ChainEntryKind)(-1)), row.GetString(2), row.GetString(3), row.GetString(4), row.GetString(5));
 
-    public static string? FirstBreak(SqliteConnection connection)
+    public static string? FirstBreak(SqliteConnection connection, IProgress<double>? progress, CancellationToken cancellation)
     {
         var chain = Chain(connection);
         if (RunChain.FirstBreak(chain) is { } broken) return broken;
-        foreach (var entry in chain)
+        for (var i = 0; i < chain.Count; i++)
         {
+            cancellation.ThrowIfCancellationRequested();
+            progress?.Report((double)i / chain.Count);
+            var entry = chain[i];
             var fault = entry.Kind == ChainEntryKind.Results ? FaultOfRun(connection, entry) : FaultOfDocuments(connection, entry);
             if (fault is not null) return fault;
         }

@@ -119,7 +119,10 @@ public sealed class RunJournal
         r => new DocumentHash(r.GetString(0), r.GetString(1)), run));
 
     /// <summary>The first thing wrong with the chain, the records or what is kept beside them, as a sentence; null when all is whole.</summary>
-    public string? FirstBreak() => _store.Read(RunAudit.FirstBreak);
+    /// <param name="progress">Told the share of the entries that were held against what they vouch for, or null.</param>
+    /// <param name="cancellation">Stops it.</param>
+    public string? FirstBreak(IProgress<double>? progress = null, CancellationToken cancellation = default) =>
+        _store.Read(connection => RunAudit.FirstBreak(connection, progress, cancellation));
 
     internal static string ContentOf(IEnumerable<DocumentHash> documents)
     {

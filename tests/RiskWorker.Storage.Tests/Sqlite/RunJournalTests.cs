@@ -42,7 +42,7 @@ public sealed class RunJournalTests : IDisposable
         _store.Runs.Append(record);
 
         BitEqual.Assert(record, _store.Runs.Find(record.Run)!.Record);
-        Assert.Null(_store.Runs.FirstBreak());
+        Assert.Null(_store.Runs.FirstBreak(cancellation: TestContext.Current.CancellationToken));
     }
 
     [Fact]
@@ -121,7 +121,7 @@ public sealed class RunJournalTests : IDisposable
         Assert.Equal(documents, _store.Runs.DocumentsOf(record.Run));
         Assert.Equal(head, _store.Runs.Find(record.Run)!.Head);
         Assert.Equal(StoreFault.Refused, Assert.Throws<StoreException>(() => _store.Runs.AppendDocuments("000000000000", documents)).Fault);
-        Assert.Null(_store.Runs.FirstBreak());
+        Assert.Null(_store.Runs.FirstBreak(cancellation: TestContext.Current.CancellationToken));
     }
 
     [Fact]
@@ -188,11 +188,11 @@ public sealed class RunJournalTests : IDisposable
     public void FirstBreak_names_what_was_removed_altered_or_reordered_round_the_triggers(string sql, string expected)
     {
         Fill();
-        Assert.Null(_store.Runs.FirstBreak());
+        Assert.Null(_store.Runs.FirstBreak(cancellation: TestContext.Current.CancellationToken));
 
         Raw(["PRAGMA foreign_keys = OFF", .. Triggers().Select(t => $"DROP TRIGGER {t}"), sql]);
 
-        Assert.Contains(expected, _store.Runs.FirstBreak(), StringComparison.Ordinal);
+        Assert.Contains(expected, _store.Runs.FirstBreak(cancellation: TestContext.Current.CancellationToken), StringComparison.Ordinal);
     }
 
     [Fact]
@@ -209,7 +209,7 @@ public sealed class RunJournalTests : IDisposable
         });
 
         Assert.Equal(120, _store.Runs.ReadChain().Count);
-        Assert.Null(_store.Runs.FirstBreak());
+        Assert.Null(_store.Runs.FirstBreak(cancellation: TestContext.Current.CancellationToken));
     }
 
     private void Fill()
