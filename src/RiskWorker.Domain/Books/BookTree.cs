@@ -38,13 +38,14 @@ public sealed class BookTree
     public IEnumerable<int> ChildrenOf(int node) => Enumerable.Range(node + 1, Books.Count - node - 1).Where(i => _parent[i] == node);
 
     /// <summary>
-    /// Orders <paramref name="books"/> into a tree, or says what prevents it: no root, several roots, an unknown parent, a cycle.
+    /// Orders <paramref name="books"/> into a tree, or says what prevents it: a name given twice, no root, several roots, an unknown parent, a cycle.
     /// </summary>
     /// <returns>The tree and no faults, or null and at least one fault as (book, sentence).</returns>
     public static (BookTree? Tree, IReadOnlyList<(string Book, string Fault)> Faults) Build(IReadOnlyCollection<Book> books)
     {
         var faults = new List<(string, string)>();
         var names = books.Select(b => b.Name).ToHashSet(StringComparer.Ordinal);
+        foreach (var name in books.CountBy(b => b.Name, StringComparer.Ordinal).Where(n => n.Value > 1)) faults.Add((name.Key, $"its name is given to {name.Value} books"));
         var roots = books.Where(b => b.Parent is null).OrderBy(b => b.Name, StringComparer.Ordinal).ToList();
         if (roots.Count == 0) faults.Add((books.Count == 0 ? "-" : books.First().Name, "no book is without a parent, so there is no root"));
         foreach (var extra in roots.Skip(1)) faults.Add((extra.Name, $"a second root beside '{roots[0].Name}'; exactly one book may be without a parent"));
@@ -67,7 +68,18 @@ public sealed class BookTree
         if (ordered.Count == books.Count) return (new(ordered, parents, depths), faults);
         var reached = ordered.Select(b => b.Name).ToHashSet(StringComparer.Ordinal);
         foreach (var lost in books.Where(b => !reached.Contains(b.Name)).OrderBy(b => b.Name, StringComparer.Ordinal))
-            faults.Add((lost.Name, "it is its own ancestor: its parents form a cycle"));
+            faults.Add((lost.Name, IsOwnAncestor(lost, books) ? "it is its own ancestor: its parents form a cycle" : "its parents lead into a cycle, not to the root"));
         return (null, faults);
+    }
+
+    private static bool IsOwnAncestor(Book book, IReadOnlyCollection<Book> books)
+    {
+        var above = book.Parent;
+        for (var steps = 0; above is not null && steps < books.Count; steps++)
+        {
+            if (above == book.Name) return true;
+            above = books.First(b => b.Name == above).Parent;
+        }
+        return false;
     }
 }

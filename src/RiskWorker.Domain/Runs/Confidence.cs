@@ -19,5 +19,5 @@ public readonly record struct Confidence : IComparable<Confidence>
     public int CompareTo(Confidence other) => Level.CompareTo(other.Level);
 
     /// <summary>As in '99%' or '97.5%'.</summary>
-    public override string ToString() => (Level * 100).ToString("0.#######", CultureInfo.InvariantCulture) + "%";
+    public override string ToString() => (Level * 100).ToString("0.############################", CultureInfo.InvariantCulture) + "%";
 }

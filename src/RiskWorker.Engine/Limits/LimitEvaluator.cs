@@ -77,13 +77,14 @@ public sealed class LimitEvaluator
         var reference = _tree.IndexOf(limit.ReferenceBook!);
         var (own, other) = (_measures.Of(node, limit.Measure, level), _measures.Of(reference, limit.Measure, level));
         var scale = ValueOf(reference) / ValueOf(node) / limit.Amount;
+        // A gain, divided by a larger measure, is a smaller gain: below zero the reference's ends change places.
         return new(scale * own.Value / other.Value,
-            own.Low is { } low && other.High is { } above ? Quotient(scale * low, above) : null,
-            own.High is { } high && other.Low is { } below ? Quotient(scale * high, below) : null);
+            Quotient(scale * own.Low, own.Low < 0 ? other.Low : other.High),
+            Quotient(scale * own.High, own.High < 0 ? other.High : other.Low));
     }
 
     // With an end of the reference's interval at or below zero the ratio has no bound on that side.
-    private static double? Quotient(double numerator, double denominator) => denominator > 0 ? numerator / denominator : null;
+    private static double? Quotient(double? numerator, double? denominator) => denominator > 0 ? numerator / denominator : null;
 
     private double ValueOf(int node) => _plan.Nodes[node].ValueRoot / _plan.Currencies[_plan.Nodes[node].Currency].Rate;
 }

@@ -28,10 +28,10 @@ public static class DistributionSummary
         return new ProfitDistribution
         {
             Horizon = horizon,
-            Mean = -mean,
+            Mean = 0 - mean, // not -mean: nothing at risk gains 0, not -0
             Deviation = Math.Sqrt(Math.Max((squares / sample.Count) - (mean * mean), 0)),
-            Low = -edges.High,
-            High = -edges.Low,
+            Low = 0 - edges.High,
+            High = 0 - edges.Low,
             Counts = [.. histogram.Reverse()],
             Quantiles = Quantiles(histogram, edges, sample),
         };
@@ -46,7 +46,7 @@ public static class DistributionSummary
             var rank = Math.Max(1, (long)decimal.Ceiling(sample.Count * probability));
             while (rank > passed + histogram[bin]) passed += histogram[bin--];
             var known = rank <= sample.Known;
-            quantiles.Add(new((double)probability, -(known ? sample.AtRank(rank) : LossIn(bin, rank - passed, histogram[bin], edges)), known));
+            quantiles.Add(new((double)probability, 0 - (known ? sample.AtRank(rank) : LossIn(bin, rank - passed, histogram[bin], edges)), known));
         }
         return quantiles;
     }

@@ -18,34 +18,37 @@ public sealed class LossSampler
     private readonly RevaluationPlan _plan;
     private readonly BlockEvaluator _evaluator;
     private readonly TailDemand _demand;
-    private readonly Action<int>? _scenariosDone;
+    private readonly Action<long>? _drawn;
     private readonly CancellationToken _cancellation;
     private readonly double[][] _pilot;
     private readonly double[] _scratch;
     private readonly int _pilotCount;
     private readonly HistogramEdges[] _edges;
     private readonly double[] _cutoffs;
+    private readonly double _mass;
     private TailReduction _reduction;
     private TailRecord _whole;
     private int _wholeBlocks;
+    private long _known;
 
     /// <summary>Draws the pilot.</summary>
     /// <param name="plan">The plan.</param>
     /// <param name="threads">Threads to use.</param>
     /// <param name="demand">How deep the measures look.</param>
     /// <param name="firstLook">Scenarios of the first look, N0.</param>
-    /// <param name="scenariosDone">Told how many scenarios have been drawn since it was told last; called from many threads.</param>
+    /// <param name="drawn">Told after each block how many scenarios of the look that is under way are drawn; called from many threads.</param>
     /// <param name="cancellation">Stops the run.</param>
-    public LossSampler(RevaluationPlan plan, int threads, TailDemand demand, int firstLook, Action<int>? scenariosDone, CancellationToken cancellation)
+    public LossSampler(RevaluationPlan plan, int threads, TailDemand demand, int firstLook, Action<long>? drawn, CancellationToken cancellation)
     {
-        (_plan, _demand, _scenariosDone, _cancellation) = (plan, demand, scenariosDone, cancellation);
+        (_plan, _demand, _drawn, _cancellation) = (plan, demand, drawn, cancellation);
         _evaluator = new(plan, threads);
         _pilotCount = Math.Min(PilotScenarios, firstLook);
-        _pilot = _evaluator.Evaluate(BlockRange.From(0, _pilotCount), new LossSampleReduction(plan.Rows.Count, _pilotCount), null, cancellation);
+        _pilot = Evaluate(BlockRange.From(0, _pilotCount), new LossSampleReduction(plan.Rows.Count, _pilotCount));
         _edges = [.. _pilot.Select(losses => HistogramEdges.Holding(losses))];
         _scratch = new double[_pilotCount];
-        var mass = (double)demand.DeepestRank(firstLook) / firstLook;
-        _cutoffs = [.. _pilot.Select(losses => CutoffAt(losses, mass + (6 * Math.Sqrt(mass / _pilotCount))))];
+        var needed = (double)demand.DeepestRank(firstLook) / firstLook;
+        _mass = needed + (6 * Math.Sqrt(needed / _pilotCount));
+        _cutoffs = [.. _pilot.Select(losses => CutoffAt(losses, _mass))];
         Restart();
     }
 
@@ -65,18 +68,19 @@ public sealed class LossSampler
 
     private TailRecord Draw(int scenarios)
     {
+        _known = (long)_wholeBlocks * Blocks.Size;
         var whole = BlockRange.Whole(_wholeBlocks, scenarios);
-        _reduction.Merge(_whole, Evaluate(whole));
+        _reduction.Merge(_whole, Evaluate(whole, _reduction));
         _wholeBlocks = Math.Max(_wholeBlocks, whole.End);
         if (scenarios % Blocks.Size == 0) return _whole;
         var record = _reduction.Empty();
         _reduction.Merge(record, _whole);
-        _reduction.Merge(record, Evaluate(BlockRange.From(_wholeBlocks, scenarios)));
+        _reduction.Merge(record, Evaluate(BlockRange.From(_wholeBlocks, scenarios), _reduction));
         return record;
     }
 
-    private TailRecord Evaluate(BlockRange range) =>
-        _evaluator.Evaluate(range, _reduction, _scenariosDone is null ? null : () => _scenariosDone(Blocks.Size), _cancellation);
+    private TRecord Evaluate<TRecord>(BlockRange range, Reduction<TRecord> reduction) =>
+        _evaluator.Evaluate(range, reduction, _drawn is null ? null : width => _drawn(Interlocked.Add(ref _known, width)), _cancellation);
 
     private bool LowerCutoffs(SampledLoss[] series, int deepest)
     {
@@ -96,7 +100,7 @@ public sealed class LossSampler
     [MemberNotNull(nameof(_reduction), nameof(_whole))]
     private void Restart()
     {
-        _reduction = new(_cutoffs, _edges);
+        _reduction = new(_cutoffs, _edges, _mass);
         _whole = _reduction.Empty();
         _wholeBlocks = _pilotCount / Blocks.Size;
         var losses = new double[_plan.Rows.Count * Blocks.Size];

@@ -23,8 +23,8 @@ public sealed class SampledLoss
     /// <param name="equal">Losses equal to the cutoff.</param>
     public SampledLoss(int count, TailEntry[] tail, double cutoff, long equal)
     {
-        (Count, _tail, _cutoff, _equal) = (count, tail, cutoff, equal);
-        _losses = [.. tail.Select(t => t.Loss)];
+        (Count, _tail, _cutoff, _equal) = (count, tail, Unsigned(cutoff), equal);
+        _losses = [.. tail.Select(t => Unsigned(t.Loss))];
     }
 
     /// <summary>Number of losses, N.</summary>
@@ -76,6 +76,9 @@ public sealed class SampledLoss
         var half = InverseNormal.Of((double)((1 + level) / 2)) * error;
         return (es - half, es + half);
     }
+
+    // A profit of 0 is a loss of -0 to the last bit, which would be written so.
+    private static double Unsigned(double loss) => loss == 0 ? 0 : loss;
 
     private (long Whole, double Fraction, double Weight) TailOf(Confidence confidence)
     {

@@ -12,7 +12,7 @@ public sealed class LossSampleReduction : Reduction<double[][]>
     public LossSampleReduction(int rows, int scenarios) => _sample = [.. Enumerable.Range(0, rows).Select(_ => new double[scenarios])];
 
     /// <inheritdoc/>
-    public override double[][] Empty() => _sample;
+    public override double[][] Empty(int blocks = 0) => _sample;
 
     /// <inheritdoc/>
     public override void Accumulate(double[][] record, in LossBlock block)

@@ -9,8 +9,8 @@ namespace RiskWorker.Engine.Reductions;
 /// <typeparam name="TRecord">The record kept.</typeparam>
 public abstract class Reduction<TRecord>
 {
-    /// <summary>A record of no blocks.</summary>
-    public abstract TRecord Empty();
+    /// <summary>A record of no blocks, with room for about <paramref name="blocks"/> of them, so that adding them allocates nothing.</summary>
+    public abstract TRecord Empty(int blocks = 0);
 
     /// <summary>Adds one block to <paramref name="record"/>.</summary>
     public abstract void Accumulate(TRecord record, in LossBlock block);

@@ -2,45 +2,74 @@ namespace RiskWorker.Engine.Reductions;
 
 /// <summary>
 /// Sums on a fixed binary tree over blocks: a parent is its left child plus its right one, elementwise. Any split of the
-/// blocks and any order of merging give the same bits. Holds the maximal aligned subtrees of the blocks added so far.
+/// blocks and any order of merging give the same bits. Holds the maximal aligned subtrees of the blocks added so far, in
+/// one array whose places are used again as subtrees merge.
 /// </summary>
 public sealed class SumTree
 {
-    private readonly Dictionary<(int Level, int Index), double[]> _subtrees = [];
+    private readonly Dictionary<(int Level, int Index), int> _subtrees;
+    private readonly Stack<int> _free;
+    private double[] _slab = [];
+    private int _width;
+    private int _used;
 
-    /// <summary>Adds the sums of one block. The array is kept and may be changed.</summary>
+    /// <summary>A tree with room for <paramref name="blocks"/> blocks that do not merge; more are taken, at the cost of an allocation.</summary>
+    public SumTree(int blocks = 0) => (_subtrees, _free, Room) = (new(blocks), new(blocks), blocks);
+
+    private int Room { get; }
+
+    /// <summary>Adds the sums of one block; all blocks have the same number of sums.</summary>
     /// <exception cref="InvalidOperationException">The block, or a subtree that holds it, is there already.</exception>
-    public void Add(int block, double[] sums) => Insert(0, block, sums);
+    public void Add(int block, ReadOnlySpan<double> sums) => Insert(0, block, sums);
 
     /// <summary>Adds all subtrees of <paramref name="other"/>, which is left as it was.</summary>
     public void Merge(SumTree other)
     {
-        foreach (var ((level, index), sums) in other._subtrees) Insert(level, index, (double[])sums.Clone());
+        foreach (var ((level, index), place) in other._subtrees) Insert(level, index, other.At(place));
     }
 
     /// <summary>The sums over all blocks: the maximal subtrees added from the right; empty where there is no block.</summary>
     public double[] Total()
     {
         double[]? total = null;
-        foreach (var ((_, _), sums) in _subtrees.OrderByDescending(s => (long)s.Key.Index << s.Key.Level))
-            total = total is null ? (double[])sums.Clone() : Sum(sums, total);
+        foreach (var (_, place) in _subtrees.OrderByDescending(s => (long)s.Key.Index << s.Key.Level))
+        {
+            if (total is null) total = At(place).ToArray();
+            else AddTo(total, At(place));
+        }
         return total ?? [];
     }
 
-    private void Insert(int level, int index, double[] sums)
+    private Span<double> At(int place) => _slab.AsSpan(place * _width, _width);
+
+    private void Insert(int level, int index, ReadOnlySpan<double> sums)
     {
+        var place = Rent(sums);
         while (_subtrees.Remove((level, index ^ 1), out var sibling))
         {
-            sums = (index & 1) == 0 ? Sum(sums, sibling) : Sum(sibling, sums);
-            (level, index) = (level + 1, index >> 1);
+            var (left, right) = (index & 1) == 0 ? (place, sibling) : (sibling, place);
+            AddTo(At(right), At(left));
+            _free.Push(left);
+            (place, level, index) = (right, level + 1, index >> 1);
         }
-        if (!_subtrees.TryAdd((level, index), sums)) throw new InvalidOperationException($"The sums of blocks {(long)index << level} to {(((long)index + 1) << level) - 1} were added twice.");
+        if (!_subtrees.TryAdd((level, index), place)) throw new InvalidOperationException($"The sums of blocks {(long)index << level} to {(((long)index + 1) << level) - 1} were added twice.");
     }
 
-    // The result overwrites the right operand, which nobody else holds.
-    private static double[] Sum(double[] left, double[] right)
+    private int Rent(ReadOnlySpan<double> sums)
+    {
+        if (_width == 0) (_width, _slab) = (sums.Length, new double[sums.Length * Math.Max(Room, 8)]);
+        if (!_free.TryPop(out var place))
+        {
+            place = _used++;
+            if (_used * _width > _slab.Length) Array.Resize(ref _slab, 2 * _slab.Length);
+        }
+        sums.CopyTo(At(place));
+        return place;
+    }
+
+    // The right operand is overwritten with left plus right.
+    private static void AddTo(Span<double> right, ReadOnlySpan<double> left)
     {
         for (var i = 0; i < right.Length; i++) right[i] = left[i] + right[i];
-        return right;
     }
 }

@@ -12,18 +12,23 @@ public sealed class TailRecord
     private readonly List<TailEntry>[] _tails;
     private readonly long[][] _histograms;
 
-    internal TailRecord(int rows, int bins)
+    internal TailRecord(int rows, int bins, int blocks, int tail)
     {
-        _tails = [.. Enumerable.Range(0, rows).Select(_ => new List<TailEntry>())];
+        _tails = [.. Enumerable.Range(0, rows).Select(_ => new List<TailEntry>(tail))];
         _histograms = [.. Enumerable.Range(0, rows).Select(_ => new long[bins + 2])];
         Equal = new long[rows];
+        Sums = new(blocks);
+        BlockSums = new double[2 * rows];
     }
 
     /// <summary>Scenarios seen.</summary>
     public long Count { get; internal set; }
 
     /// <summary>Sums of losses, then of their squares, series by series.</summary>
-    public SumTree Sums { get; } = new();
+    public SumTree Sums { get; }
+
+    /// <summary>Where the sums of the block at hand are formed.</summary>
+    internal double[] BlockSums { get; }
 
     /// <summary>Losses equal to the cutoff, by series: counted, not kept.</summary>
     internal long[] Equal { get; }

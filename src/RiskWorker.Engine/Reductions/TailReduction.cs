@@ -29,19 +29,23 @@ public sealed class TailReduction : Reduction<TailRecord>
 {
     private readonly double[] _cutoffs;
     private readonly HistogramEdges[] _edges;
+    private readonly double _mass;
 
     /// <summary>Takes a cutoff and the histogram's edges for each series of the plan.</summary>
-    public TailReduction(double[] cutoffs, HistogramEdges[] edges) => (_cutoffs, _edges) = (cutoffs, edges);
+    /// <param name="cutoffs">Cutoffs.</param>
+    /// <param name="edges">Edges.</param>
+    /// <param name="mass">Share of losses expected beyond a cutoff: room is made for that many.</param>
+    public TailReduction(double[] cutoffs, HistogramEdges[] edges, double mass = 0) => (_cutoffs, _edges, _mass) = (cutoffs, edges, mass);
 
     /// <inheritdoc/>
-    public override TailRecord Empty() => new(_cutoffs.Length, HistogramEdges.Bins);
+    public override TailRecord Empty(int blocks = 0) => new(_cutoffs.Length, HistogramEdges.Bins, blocks, (int)Math.Ceiling(Math.Min(1, 1.2 * _mass) * blocks * Blocks.Size));
 
     /// <inheritdoc/>
     public override void Accumulate(TailRecord record, in LossBlock block)
     {
         Span<int> beyond = stackalloc int[Blocks.Size];
         var rows = _cutoffs.Length;
-        var sums = new double[2 * rows];
+        var sums = record.BlockSums;
         for (var row = 0; row < rows; row++)
         {
             var losses = block.Row(row);

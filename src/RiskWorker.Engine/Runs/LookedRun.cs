@@ -50,9 +50,9 @@ public sealed class LookedRun
     {
         var levels = new List<decimal> { _looks.Level };
         if (_limits.Any(l => l.Basis == LimitBasis.Book)) levels.Add(LimitEvaluator.LevelOfEachOfTwo(_looks.Level));
-        var (done, planned) = (0L, _looks.Scenarios[0]);
+        var planned = _looks.Scenarios[0];
         var sampler = new LossSampler(_plan, threads, new(_measures, levels), planned,
-            progress is null ? null : count => progress.Report(new("simulate", Interlocked.Add(ref done, count), planned)), cancellation);
+            progress is null ? null : drawn => progress.Report(new("simulate", drawn, planned)), cancellation);
         for (var look = 0; ; look++)
         {
             planned = _looks.Scenarios[look];

@@ -23,36 +23,49 @@ public sealed class BlockEvaluator
     /// <summary>Evaluates <paramref name="range"/>.</summary>
     /// <param name="range">The blocks.</param>
     /// <param name="reduction">What to keep of them.</param>
-    /// <param name="blockDone">Told after each block; called from many threads.</param>
+    /// <param name="blockDone">Told the width of each block when it is done; called from many threads.</param>
     /// <param name="cancellation">Stops between tiles.</param>
-    public TRecord Evaluate<TRecord>(BlockRange range, Reduction<TRecord> reduction, Action? blockDone, CancellationToken cancellation)
+    public TRecord Evaluate<TRecord>(BlockRange range, Reduction<TRecord> reduction, Action<int>? blockDone, CancellationToken cancellation)
     {
-        var total = reduction.Empty();
-        if (range.Count == 0) return total;
-        var gate = new Lock();
-        var options = new ParallelOptions { MaxDegreeOfParallelism = _threads, CancellationToken = cancellation };
+        var total = reduction.Empty(range.Count);
+        var workers = Math.Min(_threads, range.Count);
+        if (workers == 0) return total;
+        using var stop = CancellationTokenSource.CreateLinkedTokenSource(cancellation);
+        var (next, gate) = (range.First - 1, new Lock());
+        var tasks = Enumerable.Range(0, workers).Select(_ => Task.Factory.StartNew(Work, CancellationToken.None, TaskCreationOptions.LongRunning, TaskScheduler.Default)).ToArray();
         try
         {
-            Parallel.For(range.First, range.End, options,
-                () => (Tile: new ScenarioTile(_plan), Losses: new double[_plan.Rows.Count * Blocks.Size], Record: reduction.Empty()),
-                (block, _, worker) =>
-                {
-                    var width = range.WidthOf(block);
-                    Fill(worker.Tile, worker.Losses, block, width, cancellation);
-                    reduction.Accumulate(worker.Record, new(block, width, worker.Losses));
-                    blockDone?.Invoke();
-                    return worker;
-                },
-                worker =>
-                {
-                    lock (gate) reduction.Merge(total, worker.Record);
-                });
+            Task.WaitAll(tasks, CancellationToken.None);
         }
-        catch (AggregateException e) when (e.InnerExceptions.Count > 0)
+        catch (AggregateException e)
         {
-            ExceptionDispatchInfo.Throw(e.InnerExceptions[0]);
+            // Of several failures the one that is not a mere stop says what happened.
+            ExceptionDispatchInfo.Throw(e.InnerExceptions.FirstOrDefault(f => f is not OperationCanceledException) ?? e.InnerExceptions[0]);
         }
         return total;
+
+        void Work()
+        {
+            var tile = new ScenarioTile(_plan);
+            var losses = new double[_plan.Rows.Count * Blocks.Size];
+            var record = reduction.Empty((range.Count / workers) + 1);
+            try
+            {
+                for (var block = Interlocked.Increment(ref next); block < range.End; block = Interlocked.Increment(ref next))
+                {
+                    var width = range.WidthOf(block);
+                    Fill(tile, losses, block, width, stop.Token);
+                    reduction.Accumulate(record, new(block, width, losses));
+                    blockDone?.Invoke(width);
+                }
+            }
+            catch
+            {
+                stop.Cancel();
+                throw;
+            }
+            lock (gate) reduction.Merge(total, record);
+        }
     }
 
     private static void Fill(ScenarioTile tile, double[] losses, int block, int width, CancellationToken cancellation)

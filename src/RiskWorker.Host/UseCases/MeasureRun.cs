@@ -46,8 +46,9 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
 
     private MeasureReport Single(Work work, DateOnly asOf, DateTimeOffset started, double load, int filled)
     {
-        var (outcome, inputs) = Calculate(work, asOf, work.Settings, started, load);
-        var stored = new StoredRun(outcome, work.Store.Runs.Append(outcome, inputs));
+        var (calculated, inputs) = Calculate(work, asOf, work.Settings, started, load);
+        var stored = work.Store.Runs.AppendNext(calculated, inputs);
+        var outcome = stored.Record;
         work.Progress.Report(new("report", 0));
         var written = RunDocuments.Write(stored, work.Request.Workspace.OutFolder);
         work.Store.Runs.AppendDocuments(outcome.Run, written.Hashes);
@@ -70,7 +71,8 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
         for (var i = 0; i < dates.Count; i++)
         {
             work.Progress.Report(new("backfill", (double)i / dates.Count, $"{dates[i]:yyyy-MM-dd}"));
-            last = Backfill(work, dates[i], work.Settings);
+            var (record, inputs) = Past(work, dates[i], work.Settings);
+            last = work.Store.Runs.AppendNext(record, inputs).Record;
         }
         return new MeasureReport { Record = last!, Folder = null, Documents = [], Json = RunDocuments.JsonOf(last!), ExitCode = ExitCodeOf(last!), Backfilled = dates.Count };
     }
@@ -85,25 +87,28 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
         return [.. work.Reader.PositionDates.Where(d => d < asOf).TakeLast(wanted).Where(d => !run.Contains(d))];
     }
 
+    // A date that fails is asked for again with every run, since the feed may have been mended; what failed before on the same inputs is on record.
     private int Fill(Work work, List<DateOnly> dates)
     {
         var settings = work.Settings with { Simulation = work.Settings.Simulation with { Scenarios = BackfillScenarios, Looks = 1, Cap = BackfillScenarios, Precision = null } };
+        var filled = 0;
         for (var i = 0; i < dates.Count; i++)
         {
             work.Progress.Report(new("backfill", (double)i / dates.Count, $"{dates[i]:yyyy-MM-dd}"));
-            Backfill(work, dates[i], settings);
+            var (record, inputs) = Past(work, dates[i], settings);
+            var hasFailed = record.Status == RunStatus.Failed;
+            if (!hasFailed) filled++;
+            if (!hasFailed || work.Store.Runs.AttemptsOf(record.Snapshot).Count == 0) work.Store.Runs.AppendNext(record, inputs);
         }
-        return dates.Count;
+        return filled;
     }
 
-    private RunRecord Backfill(Work work, DateOnly asOf, RunSettings settings)
+    private (RunRecord Record, FrozenSnapshot Inputs) Past(Work work, DateOnly asOf, RunSettings settings)
     {
-        var (calculated, inputs) = Calculate(work with { Progress = s_quiet }, asOf, settings, clock.GetUtcNow(), 0);
+        var (record, inputs) = Calculate(work with { Progress = s_quiet }, asOf, settings, clock.GetUtcNow(), 0);
         // The days behind each count stand in the runs that are counted; a copy in each of 250 records would be most of the store.
-        var counts = calculated.Results.Backtest.Select(RunRecords.CountsAlone);
-        var record = calculated with { Evidence = EvidenceKind.Backfilled, Results = calculated.Results with { Backtest = [.. counts] } };
-        work.Store.Runs.Append(record, inputs);
-        return record;
+        var counts = record.Results.Backtest.Select(RunRecords.CountsAlone);
+        return (record with { Evidence = EvidenceKind.Backfilled, Results = record.Results with { Backtest = [.. counts] } }, inputs);
     }
 
     private (RunRecord Record, FrozenSnapshot Inputs) Calculate(Work work, DateOnly asOf, RunSettings settings, DateTimeOffset started, double load)
@@ -114,12 +119,9 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
         load += watch.Elapsed.TotalSeconds;
         var calculator = new RunCalculator(snapshot, work.Request.Threads ?? Environment.ProcessorCount, new SimulationProgress(work.Progress), work.Cancellation);
         var results = calculator.Calculate();
-        var attempt = work.Store.Runs.AttemptsOf(snapshot.Hash.Root).Count + 1;
         var previous = work.Store.Runs.PreviousRun(asOf, settings.Model.Name);
         var record = RunRecords.Of(snapshot, results, previous) with
         {
-            Run = RunIdentity.Of(snapshot.Hash.Root, attempt),
-            Attempt = attempt,
             Started = started,
             Finished = clock.GetUtcNow(),
             Evidence = work.Reader.ObservationDates[^1] > asOf ? EvidenceKind.Backfilled : EvidenceKind.Recorded,

@@ -50,8 +50,16 @@ public static class RunDocuments
         var beside = folder + ".partial";
         if (Directory.Exists(beside)) Directory.Delete(beside, recursive: true);
         Directory.CreateDirectory(beside);
-        foreach (var (name, content) in files) File.WriteAllBytes(Path.Combine(beside, name), content);
-        Directory.Move(beside, folder);
+        try
+        {
+            foreach (var (name, content) in files) File.WriteAllBytes(Path.Combine(beside, name), content);
+            Directory.Move(beside, folder);
+        }
+        catch
+        {
+            Directory.Delete(beside, recursive: true);
+            throw;
+        }
         return new(folder, [.. files.Select(f => Path.Combine(folder, f.Name))], [.. files.Select(f => new DocumentHash(f.Name, SnapshotHash.OfBytes(f.Content)))], json);
     }
 }

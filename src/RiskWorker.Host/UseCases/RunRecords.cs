@@ -9,7 +9,7 @@ public static class RunRecords
 {
     private static readonly string s_version = typeof(RunRecords).Assembly.GetCustomAttribute<AssemblyInformationalVersionAttribute>()!.InformationalVersion;
 
-    /// <summary>The record of <paramref name="results"/>; identity, times and command are still to be set.</summary>
+    /// <summary>The record of <paramref name="results"/>; times and command are still to be set, and the store gives attempt and id.</summary>
     public static RunRecord Of(Snapshot snapshot, RunResults results, PreviousRun? previous)
     {
         var dated = results with { Limits = [.. results.Limits.Select(l => l with { StatusSince = Since(l, snapshot.AsOf, previous) })] };

@@ -22,16 +22,16 @@ public sealed class VerifyRun
         (_store, _request, _progress, _cancellation) = (store, request, progress, cancellation);
 
     /// <summary>Verifies one run; nothing is written.</summary>
-    /// <exception cref="NotStoredException">Neither the store nor its chain knows the run.</exception>
+    /// <exception cref="NotStoredException">There is no store, or neither it nor its chain knows the run.</exception>
     public static Task<VerifyReport> RunAsync(VerifyRequest request, IProgress<WorkProgress> progress, CancellationToken cancellationToken) => Task.Run(() =>
     {
-        using var store = RiskStore.Open(request.Workspace.StoreFile);
+        using var store = StoredRuns.Open(request.Workspace);
         return new VerifyRun(store, request, progress, cancellationToken).Run();
     }, cancellationToken);
 
     private VerifyReport Run()
     {
-        var run = _store.Runs.Identify(_request.Run) ?? throw new NotStoredException($"There is no run '{_request.Run}' in the store; 'riskworker runs' lists those there are.");
+        var run = (_request.Run.Length > 0 ? _store.Runs.Identify(_request.Run) : null) ?? throw new NotStoredException($"There is no run '{_request.Run}' in the store; 'riskworker runs' lists those there are.");
         Add(VerifiedThing.Chain, _store.Runs.FirstBreak(new ChainProgress(_progress), _cancellation), "Every entry follows the one before it, and vouches for what is stored.");
         var (record, fault) = _store.Runs.Audit(run);
         Add(VerifiedThing.Record, fault, "It hashes to what its entry of the chain vouches for.");

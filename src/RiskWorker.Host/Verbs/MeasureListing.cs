@@ -9,6 +9,8 @@ namespace RiskWorker.Host.Verbs;
 /// <summary>A run on the terminal: what was found, each book's measures with their intervals, and the limits, worst first.</summary>
 public static class MeasureListing
 {
+    private const int DeepestIndent = 8;
+
     /// <summary>Prints a run that was just done.</summary>
     public static void Write(MeasureReport report, IAnsiConsole console)
     {
@@ -53,7 +55,7 @@ public static class MeasureListing
         var table = new PlainTable().Words("Book").Labels("").Labels("Measure").Numbers("Loss").Numbers($"{Figures.Share(level)} interval");
         foreach (var node in results.Nodes)
         {
-            var (book, currency) = (new string(' ', 2 * node.Depth) + node.Book, node.Currency);
+            var (book, currency) = (new string(' ', 2 * Math.Min(node.Depth, DeepestIndent)) + node.Book, node.Currency);
             foreach (var measure in node.Measures)
             {
                 table.Row(book, currency, Figures.Measure(measure.Spec), Figures.Money(measure.Value), Figures.Interval(measure.Low, measure.High));

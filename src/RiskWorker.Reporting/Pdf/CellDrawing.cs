@@ -8,6 +8,7 @@ namespace RiskWorker.Reporting.Pdf;
 internal abstract class CellDrawing(Typesetter typesetter, TextStyle style, float width)
 {
     private const float Indent = 10;
+    private const int DeepestIndent = 8; // deeper levels stand in line with the eighth: a tree must leave room for its figures
     private const float LongestWord = 90;
     private const float ShapeRoom = 12;
 
@@ -23,7 +24,7 @@ internal abstract class CellDrawing(Typesetter typesetter, TextStyle style, floa
     /// <summary>The width below which a word of it would have to be broken; long words other than figures may be.</summary>
     public static float Need(Typesetter typesetter, Cell cell, Emphasis emphasis) => cell switch
     {
-        TextCell text => (text.Level * Indent) + Math.Max(
+        TextCell text => IndentOf(text) + Math.Max(
             Capped(text.Text, typesetter.WidestWord(text.Text, StyleOf(emphasis))),
             Capped(text.Below, typesetter.WidestWord(text.Below, TextStyle.Unit))),
         StatusCell status => ShapeRoom + Math.Max(
@@ -35,7 +36,7 @@ internal abstract class CellDrawing(Typesetter typesetter, TextStyle style, floa
 
     public static CellDrawing Of(Typesetter typesetter, Cell cell, Emphasis emphasis, float width, double barScale) => cell switch
     {
-        TextCell text => new Words(typesetter, (text.Text, text.Below), StyleOf(emphasis), width, text.Level * Indent),
+        TextCell text => new Words(typesetter, (text.Text, text.Below), StyleOf(emphasis), width, IndentOf(text)),
         StatusCell status => new Words(typesetter, (status.Word, status.Below), StyleOf(emphasis), width, ShapeRoom, status.Mark),
         BarCell bar => new BarDrawing(typesetter, bar, StyleOf(emphasis), width, barScale),
         _ => throw new ArgumentException($"A cell of type {cell.GetType().Name} has no drawing."),
@@ -43,6 +44,8 @@ internal abstract class CellDrawing(Typesetter typesetter, TextStyle style, floa
 
     /// <summary>Draws the lines from <paramref name="first"/> on, at most <paramref name="count"/> of them.</summary>
     public abstract void Draw(SKCanvas canvas, SKPoint at, Alignment alignment, int first, int count);
+
+    private static float IndentOf(TextCell cell) => Math.Min(cell.Level, DeepestIndent) * Indent;
 
     private static float Capped(RichText text, float widest) =>
         text.ToString().AsSpan().ContainsAnyInRange('A', 'z') ? Math.Min(widest, LongestWord) : widest;

@@ -30,21 +30,37 @@ public sealed class RunJournal
     public string Append(RunRecord record, FrozenSnapshot? inputs = null)
     {
         ArgumentNullException.ThrowIfNull(record);
-        if (inputs is not null && inputs.Snapshot.Hash.Root != record.Snapshot)
-            throw new ArgumentException($"The inputs hash to {inputs.Snapshot.Hash.Root}, and the record names {record.Snapshot}.", nameof(inputs));
-        var json = RecordJson.Write(record);
-        var content = SnapshotHash.OfBytes(json);
-        var packed = Zlib.Pack(json);
+        RequireInputsOf(record, inputs);
         var head = _store.Write(connection =>
         {
             if (connection.Scalar("SELECT run FROM run WHERE run = ?1 OR snapshot = ?2 AND attempt = ?3", record.Run, record.Snapshot, record.Attempt) is { } taken)
                 throw new StoreException(StoreFault.Refused, $"The run {record.Run} (attempt {record.Attempt}) cannot be stored: run {taken} is stored already.");
-            if (inputs is not null) _store.Snapshots.Keep(connection, inputs);
-            RunRows.Of(record, content).Insert(connection, packed);
-            return Chain(connection, ChainEntryKind.Results, record.Run, content).Hash;
+            return Insert(connection, record, inputs);
         });
         _newest = record;
         return head;
+    }
+
+    /// <summary>
+    /// Stores a run as the next attempt at its inputs. Number and id are given here, inside the transaction: another process may
+    /// measure the same inputs at the same time.
+    /// </summary>
+    /// <param name="record">The run.</param>
+    /// <param name="inputs">What it read, to be kept with it; without it the run cannot be computed again later.</param>
+    /// <exception cref="ArgumentException">The inputs are not those that the record names.</exception>
+    /// <exception cref="StoreException">The store cannot be written.</exception>
+    public StoredRun AppendNext(RunRecord record, FrozenSnapshot? inputs = null)
+    {
+        ArgumentNullException.ThrowIfNull(record);
+        RequireInputsOf(record, inputs);
+        var stored = _store.Write(connection =>
+        {
+            var attempt = Convert.ToInt32(connection.Scalar("SELECT coalesce(max(attempt), 0) + 1 FROM run WHERE snapshot = ?1", record.Snapshot), CultureInfo.InvariantCulture);
+            var next = record with { Run = RunIdentity.Of(record.Snapshot, attempt), Attempt = attempt };
+            return new StoredRun(next, Insert(connection, next, inputs));
+        });
+        _newest = stored.Record;
+        return stored;
     }
 
     /// <summary>Chains the hashes of the documents rendered from a stored run.</summary>
@@ -129,6 +145,21 @@ public sealed class RunJournal
         var text = new StringBuilder();
         foreach (var (name, sha256) in documents.OrderBy(d => d.Name, StringComparer.Ordinal)) text.Append(sha256).Append(' ').Append(name).Append('\n');
         return SnapshotHash.OfText(text.ToString());
+    }
+
+    private static void RequireInputsOf(RunRecord record, FrozenSnapshot? inputs)
+    {
+        if (inputs is not null && inputs.Snapshot.Hash.Root != record.Snapshot)
+            throw new ArgumentException($"The inputs hash to {inputs.Snapshot.Hash.Root}, and the record names {record.Snapshot}.", nameof(inputs));
+    }
+
+    private string Insert(SqliteConnection connection, RunRecord record, FrozenSnapshot? inputs)
+    {
+        if (inputs is not null) _store.Snapshots.Keep(connection, inputs);
+        var json = RecordJson.Write(record);
+        var content = SnapshotHash.OfBytes(json);
+        RunRows.Of(record, content).Insert(connection, Zlib.Pack(json));
+        return Chain(connection, ChainEntryKind.Results, record.Run, content).Hash;
     }
 
     private static ChainEntry Chain(SqliteConnection connection, ChainEntryKind kind, string run, string content)

@@ -30,8 +30,8 @@ public enum StoreFault
     Internal,
 }
 
-/// <summary>The store cannot do what it was asked to; the message says what is wrong and how to mend it.</summary>
-public sealed class StoreException : Exception
+/// <summary>The store, a file, cannot do what it was asked to; the message says what is wrong and how to mend it.</summary>
+public sealed class StoreException : IOException
 {
     /// <summary>Takes the kind of fault and the sentence to show.</summary>
     public StoreException(StoreFault fault, string message, Exception? inner = null) : base(message, inner) => Fault = fault;

@@ -64,6 +64,71 @@ public sealed class LookedRunTests
         Assert.Equal((5, 5, 32_000), (outcome.Simulation.Looks, outcome.Simulation.LooksPlanned, outcome.Simulation.Scenarios));
     }
 
+    // Looks at 2,000, 4,000, ... 32,000: within each the count climbs to its scenarios and never beyond.
+    [Fact]
+    public void Progress_of_each_look_climbs_to_its_scenarios_and_never_beyond()
+    {
+        var (tree, plan) = PlanOfOne();
+        var steps = new Steps();
+        new LookedRun(tree, plan with { Seed = 3 }, [new("line", "ALL", s_var, s_exactVar)], [s_var], s_settings).Run(1, steps, CancellationToken.None);
+        Assert.Equal([2_000L, 4_000, 8_000, 16_000, 32_000], steps.Reported.Select(r => r.Planned).Distinct());
+        foreach (var look in steps.Reported.GroupBy(r => r.Planned))
+        {
+            Assert.Equal(look.Key, look.Last().Done);
+            Assert.Equal(look.Select(r => r.Done).Order(), look.Select(r => r.Done));
+        }
+    }
+
+    // The half-width of an order-statistic interval falls with the root of N: the first look that has it ends the run.
+    [Theory]
+    [InlineData(0.5, 1, true)]
+    [InlineData(0.001, 5, false)]
+    public void Wanted_precision_ends_the_looks_or_is_reported_as_missed(double precision, int looks, bool reached)
+    {
+        var (tree, plan) = PlanOfOne();
+        var summary = new LookedRun(tree, plan, [], [s_var], s_settings with { Precision = precision }).Run(1, null, CancellationToken.None).Simulation;
+        Assert.Equal((looks, 5, (bool?)reached), (summary.Looks, summary.LooksPlanned, summary.PrecisionReached));
+    }
+
+    [Fact]
+    public void Wanted_precision_takes_as_many_looks_as_its_interval_needs()
+    {
+        var (tree, plan) = PlanOfOne();
+        var sampler = new LossSampler(plan, 1, new([s_var], [0.99m]), 2_000, null, CancellationToken.None);
+        var widths = new LookSchedule(s_settings, true).Scenarios.Select(n => sampler.Look(n).Series[0]).Select(s => s.VarInterval(s_var.Confidence, 0.99m) is var (low, high) ? (high - low) / 2 / s.Var(s_var.Confidence) : null).ToArray();
+        for (var look = 0; look < widths.Length; look++)
+        {
+            // Asked for exactly what the look has: the run ends at the first look that has as much.
+            var summary = new LookedRun(tree, plan, [], [s_var], s_settings with { Precision = Math.BitIncrement(widths[look]!.Value) }).Run(1, null, CancellationToken.None).Simulation;
+            Assert.Equal(1 + Array.FindIndex(widths, w => w <= Math.BitIncrement(widths[look]!.Value)), summary.Looks);
+            Assert.True(summary.PrecisionReached);
+        }
+    }
+
+    // A breached limit is decided at once, but the precision asked for is not reached yet: the run goes on.
+    [Fact]
+    public void Run_ends_only_when_limits_and_precision_are_both_served()
+    {
+        var (tree, plan) = PlanOfOne();
+        var settings = s_settings with { Precision = 0.04 };
+        var outcome = new LookedRun(tree, plan, [new("line", "ALL", s_var, 0.5 * s_exactVar)], [s_var], settings).Run(1, null, CancellationToken.None);
+        var alone = new LookedRun(tree, plan, [], [s_var], settings).Run(1, null, CancellationToken.None);
+        Assert.Equal(LimitStatus.Breached, outcome.Limits[0].Status);
+        Assert.InRange(outcome.Simulation.Looks, 2, 5);
+        Assert.Equal(alone.Simulation, outcome.Simulation);
+    }
+
+    // Relative to a value that is not positive: no number of scenarios decides it, so none is spent on it.
+    [Fact]
+    public void Undecidable_limit_asks_for_no_further_look()
+    {
+        var (tree, plan) = PlanOfOne();
+        var shortPlan = plan with { Nodes = [plan.Nodes[0] with { ValueRoot = -100 }] };
+        var outcome = new LookedRun(tree, shortPlan, [new("nav", "ALL", s_var, 0.1, LimitBasis.Nav)], [s_var], s_settings).Run(1, null, CancellationToken.None);
+        Assert.Equal((1, LimitStatus.Inconclusive, (double?)null), (outcome.Simulation.Looks, outcome.Limits[0].Status, outcome.Limits[0].Used));
+        Assert.Null(outcome.Simulation.PrecisionReached);
+    }
+
     // A later look adds scenarios to those of the looks before: it must see what one pass over all of them sees.
     [Fact]
     public void Looks_see_what_one_pass_over_all_scenarios_sees()
@@ -78,6 +143,13 @@ public sealed class LookedRunTests
         Assert.Equal(whole.Histogram(0), record.Histogram(0));
         Assert.Equal(single[0].ExpectedShortfall(new(0.975m)), series[0].ExpectedShortfall(new(0.975m)));
         Assert.Equal(single[0].VarInterval(new(0.99m), 0.99m), series[0].VarInterval(new(0.99m), 0.99m));
+    }
+
+    private sealed class Steps : IProgress<RunProgress>
+    {
+        public List<RunProgress> Reported { get; } = [];
+
+        public void Report(RunProgress value) => Reported.Add(value);
     }
 
     private static LookOutcome Look(BookTree tree, RevaluationPlan plan, int seed, double amount) =>

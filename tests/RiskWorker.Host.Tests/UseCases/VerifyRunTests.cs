@@ -49,8 +49,20 @@ public sealed class VerifyRunTests(MeasuredRuns runs) : IClassFixture<MeasuredRu
         Assert.Equal(before, Hashes());
     }
 
+    [Theory]
+    [InlineData("no-such-run")]
+    [InlineData("")]
+    public async Task RunAsync_unknown_run_is_not_stored(string run) => await Assert.ThrowsAsync<NotStoredException>(() => VerifyAsync(run));
+
     [Fact]
-    public async Task RunAsync_unknown_run_is_not_stored() => await Assert.ThrowsAsync<NotStoredException>(() => VerifyAsync("no-such-run"));
+    public async Task RunAsync_without_a_store_makes_none()
+    {
+        File.Delete(MeasuredRuns.WorkspaceIn(_folder).StoreFile);
+
+        await Assert.ThrowsAsync<NotStoredException>(() => VerifyAsync(runs.Recorded));
+
+        Assert.False(File.Exists(MeasuredRuns.WorkspaceIn(_folder).StoreFile));
+    }
 
     [Theory]
     [InlineData("DELETE FROM chain WHERE sequence = 2", "Entry 2 of the record is missing")]

@@ -29,6 +29,8 @@ public sealed class KernelBitsTests
         [nameof(LogNormalMoves.Levels)] = (n, y) => LogNormalMoves.Levels(n.Between(-6, 6, Count), 0.0007, 1e-5, 0.031, y),
         [nameof(EuropeanOption)] = OptionProfits,
         ["EuropeanOption at own volatility"] = OptionProfitsAtOwnVolatility,
+        [nameof(BookProfit)] = BookLosses,
+        [nameof(Elementwise)] = CrossRates,
         [nameof(LaneSum)] = (n, y) => Sums(n.Between(-1e6, 1e6, 600), y),
     };
 
@@ -49,6 +51,8 @@ public sealed class KernelBitsTests
     [InlineData("Levels", "d6aefabddabeab3dd7d9ff6cfc07c044")]
     [InlineData("EuropeanOption", "b45aa79c3634d5bd7569d0648bf31b98")]
     [InlineData("EuropeanOption at own volatility", "64dfd4692444283dc1e9bcd9fe212fe4")]
+    [InlineData("BookProfit", "b588542cd2b8a658be2db308b372280d")]
+    [InlineData("Elementwise", "e83c48058ffce0ed22fe7337fccb311e")]
     [InlineData("LaneSum", "092d79c6bd865de46f059ec3ddc79409")]
     public void Outputs_bits_are_the_pinned_ones(string name, string expected)
     {
@@ -102,6 +106,23 @@ public sealed class KernelBitsTests
             var terms = new EuropeanOptionTerms(Spot0, n.Between(60, 160), n.Between(0.002, 3), 0.2, 0.03, 0.01, i % 2 == 0);
             EuropeanOption.AccumulateValue(terms, x, spot, volatility, n.Between(-100, 100), 1.5, y);
         }
+    }
+
+    private static void BookLosses(SeededNumbers n, double[] y)
+    {
+        double[] profit = n.Between(-1e4, 1e4, Count), rate = n.Between(0.5, 2, Count), total = n.Between(-1e5, 1e5, Count);
+        for (int i = 0; i < 10; i++)
+            BookProfit.AddLinear(n.Between(60, 160, Count), Spot0, n.Between(-500, 500), profit);
+        BookProfit.AddConverted(profit, n.Between(-1e6, 1e6), rate, 1.1, total);
+        BookProfit.LossInCurrency(total, n.Between(1e5, 1e6), rate, 1.1, y);
+    }
+
+    private static void CrossRates(SeededNumbers n, double[] y)
+    {
+        Elementwise.Negate(n.Between(0.5, 2, Count), y);
+        Elementwise.DivideBy(n.Between(0.5, 2, Count), y);
+        Elementwise.Subtract(n.Between(-1, 1, Count), y);
+        Elementwise.Add(n.Between(-100, 100, Count), y);
     }
 
     private static void Sums(double[] values, double[] y)

@@ -53,6 +53,18 @@ public sealed class ScalarTwinTests
             Assert.Contains(kernel.Name, KernelBitsTests.Names);
     }
 
+    [Fact]
+    public void Every_kernel_that_gives_doubles_is_pinned_by_its_bits()
+    {
+        Type[] kernels = [.. Types.Where(type => type.GetMethods(PublicStatic).Any(GivesDoubles))];
+        Assert.True(kernels.Length >= 11, $"Only {kernels.Length} kernels were found.");
+        Assert.All(kernels, kernel => Assert.Contains(kernel.Name, KernelBitsTests.Names));
+    }
+
+    private static bool GivesDoubles(MethodInfo method) =>
+        method.IsDefined(typeof(ScalarTwinAttribute))
+        && (method.ReturnType == typeof(double) || method.GetParameters().Any(parameter => parameter.ParameterType == typeof(Span<double>)));
+
     private static bool WritesOrReducesSpans(MethodInfo method) =>
         method.GetParameters().Any(parameter => parameter.ParameterType.IsByRefLike)
         && !method.IsGenericMethod

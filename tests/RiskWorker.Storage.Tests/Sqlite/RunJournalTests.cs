@@ -85,6 +85,17 @@ public sealed class RunJournalTests : IDisposable
     }
 
     [Fact]
+    public void AppendNext_gives_each_attempt_at_the_same_inputs_its_number_and_id()
+    {
+        var record = RunRecords.Of(s_day);
+        var stored = Enumerable.Range(0, 3).Select(_ => _store.Runs.AppendNext(record)).ToList();
+        Assert.Equal([1, 2, 3], stored.Select(s => s.Record.Attempt));
+        Assert.Equal(stored.Select(s => RunIdentity.Of(record.Snapshot, s.Record.Attempt)), stored.Select(s => s.Record.Run));
+        Assert.Equal(stored.Select(s => s.Head), stored.Select(s => _store.Runs.Find(s.Record.Run)!.Head));
+        Assert.Null(_store.Runs.FirstBreak(cancellation: TestContext.Current.CancellationToken));
+    }
+
+    [Fact]
     public void AttemptsOf_lists_the_runs_of_the_same_inputs_in_order()
     {
         var snapshot = SnapshotHash.OfText("same");

@@ -1,0 +1,13 @@
+using System.CommandLine;
+using RiskWorker.Benchmarks.Compare;
+using RiskWorker.Benchmarks.Kernels;
+using RiskWorker.Benchmarks.Quality;
+using RiskWorker.Benchmarks.WalkForward;
+
+var record = new Option<bool>("--record") { Description = "Put the result into results/ under this processor's name", Recursive = true };
+var root = new RootCommand("Measures speed against scalar twins and against NumPy, and the quality of the draws.") { record };
+root.Subcommands.Add(KernelCommand.Create(record));
+root.Subcommands.Add(CompareCommand.Create(record));
+root.Subcommands.Add(WalkForwardCommand.Create(record));
+root.Subcommands.Add(QualityCommand.Create(record));
+return await root.Parse(args).InvokeAsync();

@@ -1,0 +1,68 @@
+using RiskWorker.Domain.Books;
+using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Calibration;
+using RiskWorker.Engine.Measures;
+using RiskWorker.Engine.Plans;
+using RiskWorker.Engine.Pricing;
+using RiskWorker.Storage.Feed;
+using RiskWorker.Storage.Sqlite;
+
+namespace RiskWorker.Benchmarks.WalkForward;
+
+/// <summary>VaR 99% and ES 97.5% of the whole firm on one past day.</summary>
+internal readonly record struct DayMeasures(DateOnly Date, MeasureResult Var, MeasureResult Es);
+
+/// <summary>Today's positions measured day by day on what was known then: the engine's calibration, plan and sampler for each day.</summary>
+internal sealed class FixedPositions
+{
+    private const decimal Level = 0.95m;
+
+    private static readonly MeasureSpec s_var = new(MeasureKind.Var, new(0.99m), new(1));
+    private static readonly MeasureSpec s_es = new(MeasureKind.Es, new(0.975m), new(1));
+
+    private readonly Snapshot _today;
+    private readonly BookTree _tree;
+    private readonly int _scenarios;
+    private readonly ulong _seed;
+
+    public FixedPositions(string configFolder, int scenarios, ulong seed)
+    {
+        (_scenarios, _seed) = (scenarios, seed);
+        _today = SnapshotOf(configFolder);
+        _tree = BookTree.Build(_today.Books).Tree!;
+    }
+
+    /// <summary>The last <paramref name="days"/> dates with observations.</summary>
+    public DateOnly[] Dates(int days) => _today.Observations.Dates[Math.Max(0, _today.Observations.Count - days)..].ToArray();
+
+    /// <summary>One day, every book included; returns the firm's.</summary>
+    public DayMeasures Measure(DateOnly day)
+    {
+        var known = _today with { AsOf = day, Observations = _today.Observations.UpTo(day), Adjustments = [.. _today.Adjustments.Where(a => a.Date <= day)] };
+        var model = Calibrator.Calibrate(known);
+        var binder = new InstrumentBinder(_tree.ReportingCurrency, model.Factors);
+        var lines = LineValuation.Of(known.Positions, known.Instruments, binder, model.Levels, day);
+        var plan = new PlanCompiler(_tree, model, binder.Currencies, day, [s_var.Horizon]).Compile(_seed, lines);
+        var sampler = new LossSampler(plan, Environment.ProcessorCount, new TailDemand([s_var, s_es], [Level]), _scenarios, null, CancellationToken.None);
+        var measures = new NodeMeasures(plan, sampler.Look(_scenarios).Series);
+        var all = Enumerable.Range(0, plan.Nodes.Count).Select(node => new DayMeasures(day, measures.Of(node, s_var, Level), measures.Of(node, s_es, Level))).ToList();
+        return all[0];
+    }
+
+    private static Snapshot SnapshotOf(string configFolder)
+    {
+        var folder = Directory.CreateTempSubdirectory("riskworker-walk-");
+        try
+        {
+            using var store = RiskStore.Open(Path.Combine(folder.FullName, "store.db"));
+            var outcome = FeedLoader.Load(Path.Combine(configFolder, "feed"), store, TimeProvider.System.GetUtcNow());
+            if (outcome.Faults.Count > 0) throw new InvalidOperationException(string.Join('\n', outcome.Sentences()));
+            var reader = new SnapshotReader(store);
+            return reader.Take(reader.PositionDates[^1], new RunSettings(), "lognormal");
+        }
+        finally
+        {
+            folder.Delete(recursive: true);
+        }
+    }
+}
