@@ -16,6 +16,7 @@ public static class Composition
             Measure = new MeasureRun(refresh, clock).RunAsync,
             ListRuns = StoredRuns.ListAsync,
             ShowRun = StoredRuns.ShowAsync,
+            Verify = VerifyRun.RunAsync,
             Holidays = new ServiceRecords(refresh).HolidaysAsync,
             RecordInterrupted = ServiceRecords.RecordInterruptedAsync,
         };

@@ -18,7 +18,7 @@ public enum ExitCode
     /// <summary>Internal failure, or cancelled.</summary>
     Failure = 4,
 
-    /// <summary>A stored run computed again differs.</summary>
+    /// <summary>A stored run, its inputs or its files differ from what was recorded.</summary>
     Difference = 5,
 
     /// <summary>Done, and a limit is undecided at the cap.</summary>

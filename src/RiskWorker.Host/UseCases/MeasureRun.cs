@@ -46,7 +46,8 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
 
     private MeasureReport Single(Work work, DateOnly asOf, DateTimeOffset started, double load, int filled)
     {
-        var stored = work.Store.Runs.AppendNext(Calculate(work, asOf, work.Settings, started, load));
+        var (calculated, inputs) = Calculate(work, asOf, work.Settings, started, load);
+        var stored = work.Store.Runs.AppendNext(calculated, inputs);
         var outcome = stored.Record;
         work.Progress.Report(new("report", 0));
         var written = RunDocuments.Write(stored, work.Request.Workspace.OutFolder);
@@ -70,7 +71,8 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
         for (var i = 0; i < dates.Count; i++)
         {
             work.Progress.Report(new("backfill", (double)i / dates.Count, $"{dates[i]:yyyy-MM-dd}"));
-            last = work.Store.Runs.AppendNext(Past(work, dates[i], work.Settings)).Record;
+            var (record, inputs) = Past(work, dates[i], work.Settings);
+            last = work.Store.Runs.AppendNext(record, inputs).Record;
         }
         return new MeasureReport { Record = last!, Folder = null, Documents = [], Json = RunDocuments.JsonOf(last!), ExitCode = ExitCodeOf(last!), Backfilled = dates.Count };
     }
@@ -93,31 +95,32 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
         for (var i = 0; i < dates.Count; i++)
         {
             work.Progress.Report(new("backfill", (double)i / dates.Count, $"{dates[i]:yyyy-MM-dd}"));
-            var record = Past(work, dates[i], settings);
+            var (record, inputs) = Past(work, dates[i], settings);
             var hasFailed = record.Status == RunStatus.Failed;
             if (!hasFailed) filled++;
-            if (!hasFailed || work.Store.Runs.AttemptsOf(record.Snapshot).Count == 0) work.Store.Runs.AppendNext(record);
+            if (!hasFailed || work.Store.Runs.AttemptsOf(record.Snapshot).Count == 0) work.Store.Runs.AppendNext(record, inputs);
         }
         return filled;
     }
 
-    private RunRecord Past(Work work, DateOnly asOf, RunSettings settings)
+    private (RunRecord Record, FrozenSnapshot Inputs) Past(Work work, DateOnly asOf, RunSettings settings)
     {
-        var record = Calculate(work with { Progress = s_quiet }, asOf, settings, clock.GetUtcNow(), 0);
+        var (record, inputs) = Calculate(work with { Progress = s_quiet }, asOf, settings, clock.GetUtcNow(), 0);
         // The days behind each count stand in the runs that are counted; a copy in each of 250 records would be most of the store.
-        var counts = record.Results.Backtest.Select(b => b with { Days = b.Days, Series = [] });
-        return record with { Evidence = EvidenceKind.Backfilled, Results = record.Results with { Backtest = [.. counts] } };
+        var counts = record.Results.Backtest.Select(RunRecords.CountsAlone);
+        return (record with { Evidence = EvidenceKind.Backfilled, Results = record.Results with { Backtest = [.. counts] } }, inputs);
     }
 
-    private RunRecord Calculate(Work work, DateOnly asOf, RunSettings settings, DateTimeOffset started, double load)
+    private (RunRecord Record, FrozenSnapshot Inputs) Calculate(Work work, DateOnly asOf, RunSettings settings, DateTimeOffset started, double load)
     {
         var watch = Stopwatch.StartNew();
-        var snapshot = work.Reader.Take(asOf, settings, settings.Model.Name);
+        var inputs = work.Reader.Freeze(asOf, settings, settings.Model.Name);
+        var snapshot = inputs.Snapshot;
         load += watch.Elapsed.TotalSeconds;
-        var calculator = new RunCalculator(snapshot, work.Request.Threads ?? Environment.ProcessorCount, new SimulationSteps(work.Progress), work.Cancellation);
+        var calculator = new RunCalculator(snapshot, work.Request.Threads ?? Environment.ProcessorCount, new SimulationProgress(work.Progress), work.Cancellation);
         var results = calculator.Calculate();
         var previous = work.Store.Runs.PreviousRun(asOf, settings.Model.Name);
-        return RunRecords.Of(snapshot, results, previous) with
+        var record = RunRecords.Of(snapshot, results, previous) with
         {
             Started = started,
             Finished = clock.GetUtcNow(),
@@ -125,6 +128,7 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
             Command = CommandFor(work.Request, asOf, settings),
             Timings = calculator.Timings with { Load = load },
         };
+        return (record, inputs);
     }
 
     private static string CommandFor(MeasureRequest request, DateOnly asOf, RunSettings settings) => ShellText.Of(
@@ -138,10 +142,5 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
         if (record.Status == RunStatus.Failed) return ExitCode.Blocked;
         if (record.Results.Limits.Any(l => l.Status == LimitStatus.Breached)) return ExitCode.Breach;
         return record.Results.Limits.Any(l => l.Status == LimitStatus.Inconclusive) ? ExitCode.Undecided : ExitCode.Done;
-    }
-
-    private sealed class SimulationSteps(IProgress<WorkProgress> progress) : IProgress<RunProgress>
-    {
-        public void Report(RunProgress value) => progress.Report(new(value.Phase, Math.Min(1, (double)value.Done / value.Planned), $"{value.Planned:N0} scenarios"));
     }
 }

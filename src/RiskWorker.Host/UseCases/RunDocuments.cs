@@ -32,6 +32,9 @@ public static class RunDocuments
         return Encoding.UTF8.GetString(stream.GetBuffer(), 0, (int)stream.Length);
     }
 
+    /// <summary>Where the files of a run lie: OUT/AS-OF/RUN-ID.</summary>
+    public static string FolderOf(RunRecord record, string outFolder) => Path.Combine(outFolder, $"{record.AsOf:yyyy-MM-dd}", record.Run);
+
     /// <summary>Writes OUT/AS-OF/RUN-ID with the report, results.json and results.csv.</summary>
     public static WrittenDocuments Write(StoredRun run, string outFolder)
     {
@@ -43,7 +46,7 @@ public static class RunDocuments
         ResultsCsv.Write(record, table);
         (string Name, byte[] Content)[] files = [(LimitReportName, report), ("results.json", Encoding.UTF8.GetBytes(json)), ("results.csv", table.ToArray())];
 
-        var folder = Path.Combine(outFolder, $"{record.AsOf:yyyy-MM-dd}", record.Run);
+        var folder = FolderOf(record, outFolder);
         var beside = folder + ".partial";
         if (Directory.Exists(beside)) Directory.Delete(beside, recursive: true);
         Directory.CreateDirectory(beside);

@@ -35,6 +35,9 @@ public static class RunRecords
         };
     }
 
+    /// <summary>An exception count without the days behind it.</summary>
+    public static BacktestResult CountsAlone(BacktestResult count) => count with { Days = count.Days, Series = [] };
+
     private static RunStatus StatusOf(RunResults results)
     {
         if (results.Findings.Any(f => f.Severity == FindingSeverity.Blocking)) return RunStatus.Failed;

@@ -24,6 +24,12 @@ public sealed record ShowRunReport(RunRecord Record, string Json);
 /// <summary>Reads what the store keeps.</summary>
 public static class StoredRuns
 {
+    /// <summary>Opens a store to be read: who only reads should not find a new, empty one in a folder whose name was mistyped.</summary>
+    /// <exception cref="NotStoredException">There is no store.</exception>
+    internal static RiskStore Open(Workspace workspace) => File.Exists(workspace.StoreFile)
+        ? RiskStore.Open(workspace.StoreFile)
+        : throw new NotStoredException($"There is no store '{workspace.StoreFile}'; 'riskworker load' and 'riskworker measure' make one.");
+
     /// <summary>Stored runs, newest first.</summary>
     /// <exception cref="NotStoredException">There is no store.</exception>
     public static Task<IReadOnlyList<RunSummary>> ListAsync(ListRunsRequest request, IProgress<WorkProgress> progress, CancellationToken cancellationToken) => Task.Run(() =>
@@ -42,11 +48,6 @@ public static class StoredRuns
         if (request.Pdf is { } file) WriteWhole(file, RunDocuments.LimitReportOf(run));
         return new ShowRunReport(run.Record, RunDocuments.JsonOf(run.Record));
     }, cancellationToken);
-
-    // Who only reads should not find a new, empty store in a folder whose name was mistyped.
-    private static RiskStore Open(Workspace workspace) => File.Exists(workspace.StoreFile)
-        ? RiskStore.Open(workspace.StoreFile)
-        : throw new NotStoredException($"There is no store '{workspace.StoreFile}'; 'riskworker load' and 'riskworker measure' make one.");
 
     private static void WriteWhole(string file, byte[] content)
     {

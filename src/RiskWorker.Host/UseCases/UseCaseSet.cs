@@ -17,6 +17,9 @@ public sealed record UseCaseSet
     /// <summary>Shows one stored run.</summary>
     public required UseCase<ShowRunRequest, ShowRunReport> ShowRun { get; init; }
 
+    /// <summary>Computes a stored run again and holds everything about it against its record.</summary>
+    public required UseCase<VerifyRequest, VerifyReport> Verify { get; init; }
+
     /// <summary>Lists holidays.</summary>
     public required UseCase<HolidaysRequest, IReadOnlyList<Holiday>> Holidays { get; init; }
 

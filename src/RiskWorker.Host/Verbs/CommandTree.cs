@@ -21,6 +21,7 @@ public sealed class CommandTree
         "  2  stopped by a blocking finding, or a file of the feed was refused",
         "  3  the settings or the command line cannot be used",
         "  4  internal failure, or cancelled",
+        "  5  a stored run, computed again, differs from its record",
         "  6  done, a limit is undecided at the cap of scenarios",
     ];
 
@@ -64,6 +65,7 @@ public sealed class CommandTree
         new LoadVerb(useCases.Load, _options, _terminal),
         new MeasureVerb(useCases.Measure, _options, _terminal),
         new RunsVerb(useCases, _options, _terminal),
+        new VerifyVerb(useCases.Verify, _options, _terminal),
         new ServeVerb(useCases, _options, _terminal),
     ];
 

@@ -1,5 +1,6 @@
 using System.CommandLine;
 using System.CommandLine.Parsing;
+using System.Globalization;
 using RiskWorker.Host.Options;
 using RiskWorker.Host.UseCases;
 
@@ -8,6 +9,8 @@ namespace RiskWorker.Host.Verbs;
 /// <summary>The options that every verb takes, and what they amount to.</summary>
 public sealed class CommonOptions
 {
+    private const int MostThreads = 1_024;
+
     private readonly Option<string> _config = new("--config")
     {
         Description = "Folder that holds riskworker.json and feed/",
@@ -53,6 +56,10 @@ public sealed class CommonOptions
 
     /// <summary>The switch that leaves nothing but JSON on the output; each verb that has a result adds one.</summary>
     public static Option<bool> Json() => new("--json") { Description = "Print the result as JSON on the output, and nothing else there" };
+
+    /// <summary>The number of threads; each verb that computes adds one.</summary>
+    public static Option<int?> Threads() => Parsed<int>("--threads", "N", "Threads; they change no figure [default: one a core]", $"a whole number from 1 to {MostThreads}",
+        text => int.TryParse(text, NumberStyles.None, CultureInfo.InvariantCulture, out var number) && number is >= 1 and <= MostThreads ? number : null);
 
     /// <summary>An option whose text is read by <paramref name="read"/>, which returns null for what it refuses.</summary>
     public static Option<T?> Parsed<T>(string name, string helpName, string description, string expected, Func<string, T?> read) where T : struct => new(name)

@@ -9,8 +9,6 @@ namespace RiskWorker.Host.Verbs;
 /// <summary><c>measure</c>: one complete run, or a span of past dates.</summary>
 public sealed class MeasureVerb : IVerb
 {
-    private const int MostThreads = 1_024;
-
     private readonly UseCase<MeasureRequest, MeasureReport> _measure;
     private readonly CommonOptions _options;
     private readonly Terminal _terminal;
@@ -19,7 +17,7 @@ public sealed class MeasureVerb : IVerb
     private readonly Option<DateOnly?> _to = Date("--to", "Last of that span");
     private readonly Option<int?> _scenarios = CommonOptions.Parsed("--scenarios", "N", "Scenarios of the first look [default: the settings', else 100000]", "a whole number", Whole);
     private readonly Option<ulong?> _seed = CommonOptions.Parsed("--seed", "N", "Seed of every draw [default: the settings', else 1]", $"a whole number from 0 to {ulong.MaxValue}", Unsigned);
-    private readonly Option<int?> _threads = CommonOptions.Parsed("--threads", "N", "Threads; they change no figure [default: one a core]", $"a whole number from 1 to {MostThreads}", Threads);
+    private readonly Option<int?> _threads = CommonOptions.Threads();
     private readonly Option<string?> _model = new("--model") { Description = "Model of record, by its name in the settings [default: the settings']", HelpName = "NAME" };
     private readonly Option<bool> _json = CommonOptions.Json();
 
@@ -75,8 +73,6 @@ public sealed class MeasureVerb : IVerb
         text => DateOnly.TryParseExact(text, "yyyy-MM-dd", CultureInfo.InvariantCulture, DateTimeStyles.None, out var date) ? date : null);
 
     private static int? Whole(string text) => int.TryParse(text, NumberStyles.None, CultureInfo.InvariantCulture, out var number) ? number : null;
-
-    private static int? Threads(string text) => Whole(text) is { } number and >= 1 and <= MostThreads ? number : null;
 
     private static ulong? Unsigned(string text) => ulong.TryParse(text, NumberStyles.None, CultureInfo.InvariantCulture, out var number) ? number : null;
 }

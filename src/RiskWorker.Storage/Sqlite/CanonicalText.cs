@@ -1,12 +1,11 @@
 using System.Globalization;
 using System.Text;
-using RiskWorker.Domain.Runs;
 
 namespace RiskWorker.Storage.Sqlite;
 
 /// <summary>
 /// Rows as text whose hash depends on every value and on nothing else: fields escaped so that no two rows look alike,
-/// numbers by their 64 bits, rows in ordinal order whatever the order they were added in.
+/// numbers by their 64 bits, rows in ordinal order whatever the order they were added in. <see cref="CanonicalRow"/> reads them again.
 /// </summary>
 internal sealed class CanonicalText
 {
@@ -41,11 +40,11 @@ internal sealed class CanonicalText
     }
 
     /// <summary>The leaf of the rows added since the last leaf.</summary>
-    public SnapshotPart Leaf(string path)
+    public SnapshotLeaf Leaf(string path)
     {
         _rows.Sort(string.CompareOrdinal);
         var text = string.Join('\n', _rows);
         _rows.Clear();
-        return new(path, SnapshotHash.OfText(text));
+        return SnapshotLeaf.Of(path, text);
     }
 }

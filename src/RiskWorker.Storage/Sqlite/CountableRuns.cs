@@ -11,7 +11,7 @@ namespace RiskWorker.Storage.Sqlite;
 internal sealed class CountableRuns
 {
     private readonly Dictionary<string, SortedList<DateOnly, Candidate>> _byModel = new(StringComparer.Ordinal);
-    private readonly Dictionary<string, (CountedRun Run, SnapshotPart Leaf)> _read = new(StringComparer.Ordinal);
+    private readonly Dictionary<string, (CountedRun Run, SnapshotLeaf Leaf)> _read = new(StringComparer.Ordinal);
     private long _last;
 
     private readonly record struct Candidate(string Run, string Content, EvidenceKind Evidence, DateOnly? ProfitFrom);
@@ -31,16 +31,16 @@ internal sealed class CountableRuns
     }
 
     /// <summary>The counted runs of <paramref name="model"/> from <paramref name="from"/> to before <paramref name="end"/>, oldest first, with their leaves.</summary>
-    public List<(CountedRun Run, SnapshotPart Leaf)> Between(SqliteConnection connection, string model, DateOnly from, DateOnly end)
+    public List<(CountedRun Run, SnapshotLeaf Leaf)> Between(SqliteConnection connection, string model, DateOnly from, DateOnly end)
     {
-        var counted = new List<(CountedRun, SnapshotPart)>();
+        var counted = new List<(CountedRun, SnapshotLeaf)>();
         if (!_byModel.TryGetValue(model, out var dates)) return counted;
         foreach (var (date, run) in dates)
         {
             if (date < from || date >= end) continue;
             if (!_read.TryGetValue(run.Run, out var read))
             {
-                var counts = new CountedRun(run.Run, run.Content, date, run.Evidence, RunRows.StoredVars(connection, run.Run), run.ProfitFrom, RunRows.StoredProfit(connection, run.Run));
+                var counts = RunRows.Counted(connection, run.Run, run.Content, date, run.Evidence, run.ProfitFrom);
                 _read[run.Run] = read = (counts, SnapshotLeaves.Run(counts));
             }
             counted.Add(read);

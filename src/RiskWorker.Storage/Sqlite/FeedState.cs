@@ -1,7 +1,6 @@
 using Microsoft.Data.Sqlite;
 using RiskWorker.Domain.Books;
 using RiskWorker.Domain.Market;
-using RiskWorker.Domain.Runs;
 using RiskWorker.Storage.Feed.Rows;
 
 namespace RiskWorker.Storage.Sqlite;
@@ -10,10 +9,10 @@ namespace RiskWorker.Storage.Sqlite;
 internal sealed class FeedState
 {
     private readonly ProfitAndLoss[] _profit;
-    private readonly SnapshotPart[] _observationLeaves;
-    private readonly Dictionary<DateOnly, SnapshotPart> _profitLeaves, _adjustmentLeaves;
-    private readonly SnapshotPart _covarianceLeaf;
-    private readonly SnapshotPart[] _wholeLeaves;
+    private readonly SnapshotLeaf[] _observationLeaves;
+    private readonly Dictionary<DateOnly, SnapshotLeaf> _profitLeaves, _adjustmentLeaves;
+    private readonly SnapshotLeaf _covarianceLeaf;
+    private readonly SnapshotLeaf[] _wholeLeaves;
 
     public FeedState(SqliteConnection connection, long load)
     {
@@ -30,7 +29,7 @@ internal sealed class FeedState
         _wholeLeaves =
         [
             .. SnapshotLeaves.Reference(Reference),
-            SnapshotLeaves.Instruments(connection.Query("SELECT instrument, kind, currency, terms, issuer, lot, daily_volume FROM instrument", r => Enumerable.Range(0, 7).Select(r.Text).ToArray())),
+            SnapshotLeaves.Instruments(ReferenceData.InstrumentRows(connection)),
         ];
     }
 
@@ -53,7 +52,7 @@ internal sealed class FeedState
     }
 
     /// <summary>Leaves of what a run at <paramref name="asOf"/> reads beside positions and runs.</summary>
-    public IEnumerable<SnapshotPart> Leaves(DateOnly asOf, int observations, IEnumerable<ProfitAndLoss> profit, bool withCovariance)
+    public IEnumerable<SnapshotLeaf> Leaves(DateOnly asOf, int observations, IEnumerable<ProfitAndLoss> profit, bool withCovariance)
     {
         foreach (var leaf in _wholeLeaves) yield return leaf;
         for (var i = 0; i < observations; i++) yield return _observationLeaves[i];

@@ -1,4 +1,3 @@
-using System.IO.Compression;
 using System.Text.Json;
 using System.Text.Json.Serialization;
 using System.Text.Json.Serialization.Metadata;
@@ -22,21 +21,4 @@ internal static class RecordJson
 
     /// <summary>The record that <see cref="Write"/> wrote, by this version or an earlier one.</summary>
     public static RunRecord Read(ReadOnlySpan<byte> json) => JsonSerializer.Deserialize<RunRecord>(json, s_reading)!;
-
-    /// <summary>Compressed for the store.</summary>
-    public static byte[] Pack(byte[] json)
-    {
-        using var packed = new MemoryStream();
-        using (var deflate = new ZLibStream(packed, CompressionLevel.Optimal)) deflate.Write(json);
-        return packed.ToArray();
-    }
-
-    /// <summary>Undoes <see cref="Pack"/>.</summary>
-    /// <exception cref="InvalidDataException">The bytes are damaged.</exception>
-    public static byte[] Unpack(byte[] packed)
-    {
-        using var json = new MemoryStream();
-        using (var inflate = new ZLibStream(new MemoryStream(packed), CompressionMode.Decompress)) inflate.CopyTo(json);
-        return json.ToArray();
-    }
 }

@@ -24,6 +24,7 @@ public sealed class RiskStore : IDisposable
             Pooling = true,
         }.ToString();
         _patience = string.Create(CultureInfo.InvariantCulture, $"PRAGMA busy_timeout = {(long)patience.TotalMilliseconds}");
+        Snapshots = new(this);
         Runs = new(this);
         Interruptions = new(this);
     }
@@ -33,6 +34,9 @@ public sealed class RiskStore : IDisposable
 
     /// <summary>The runs that it keeps.</summary>
     public RunJournal Runs { get; }
+
+    /// <summary>What the runs read.</summary>
+    public SnapshotArchive Snapshots { get; }
 
     /// <summary>Scheduled runs that were stopped before their end.</summary>
     public InterruptionLog Interruptions { get; }

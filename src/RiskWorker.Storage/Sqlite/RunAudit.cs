@@ -1,3 +1,4 @@
+using System.Text.Json;
 using Microsoft.Data.Sqlite;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Storage.Feed.Rows;
@@ -16,12 +17,15 @@ internal static class RunAudit
     public static ChainEntry Entry(SqliteDataReader row) =>
         new(row.GetInt64(0), Spelling.Of<ChainEntryKind>().GetValueOrDefault(row.GetString(1), (ChainEntryKind)(-1)), row.GetString(2), row.GetString(3), row.GetString(4), row.GetString(5));
 
-    public static string? FirstBreak(SqliteConnection connection)
+    public static string? FirstBreak(SqliteConnection connection, IProgress<double>? progress, CancellationToken cancellation)
     {
         var chain = Chain(connection);
         if (RunChain.FirstBreak(chain) is { } broken) return broken;
-        foreach (var entry in chain)
+        for (var i = 0; i < chain.Count; i++)
         {
+            cancellation.ThrowIfCancellationRequested();
+            progress?.Report((double)i / chain.Count);
+            var entry = chain[i];
             var fault = entry.Kind == ChainEntryKind.Results ? FaultOfRun(connection, entry) : FaultOfDocuments(connection, entry);
             if (fault is not null) return fault;
         }
@@ -33,6 +37,27 @@ internal static class RunAudit
             LIMIT 1
             """,
             row => row.GetString(0) + " is stored without an entry in the chain: the entry was removed.").FirstOrDefault();
+    }
+
+    /// <summary>One run: its record, where it can be read, and what is wrong with it.</summary>
+    public static AuditedRun Of(SqliteConnection connection, string run)
+    {
+        var entry = connection.Query($"SELECT {ChainColumns} FROM chain WHERE run = ?1 AND kind = 'results' ORDER BY sequence", Entry, run).FirstOrDefault();
+        var fault = entry is null ? $"The results of run {run} are stored without an entry in the chain: the entry was removed." : FaultOfRun(connection, entry);
+        var packed = connection.Query("SELECT record FROM run WHERE run = ?1", row => row.GetFieldValue<byte[]>(0), run);
+        return new(packed.Count == 0 ? null : Readable(packed[0]), fault);
+    }
+
+    private static RunRecord? Readable(byte[] packed)
+    {
+        try
+        {
+            return RecordJson.Read(Zlib.Unpack(packed));
+        }
+        catch (Exception error) when (error is InvalidDataException or JsonException)
+        {
+            return null;
+        }
     }
 
     private static string? FaultOfRun(SqliteConnection connection, ChainEntry entry)
@@ -47,7 +72,7 @@ internal static class RunAudit
         byte[] json;
         try
         {
-            json = RecordJson.Unpack((byte[])found[0][^1]);
+            json = Zlib.Unpack((byte[])found[0][^1]);
         }
         catch (InvalidDataException)
         {

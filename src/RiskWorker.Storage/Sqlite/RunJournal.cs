@@ -22,16 +22,20 @@ public sealed class RunJournal
     internal RunJournal(RiskStore store) => _store = store;
 
     /// <summary>Stores a run and chains it, in one transaction.</summary>
+    /// <param name="record">The run.</param>
+    /// <param name="inputs">What it read, to be kept with it; without it the run cannot be computed again later.</param>
     /// <returns>The head of the chain: the hash that the run's documents print.</returns>
+    /// <exception cref="ArgumentException">The inputs are not those that the record names.</exception>
     /// <exception cref="StoreException">A run of this id, or of this attempt at the same inputs, is stored already; or the store cannot be written.</exception>
-    public string Append(RunRecord record)
+    public string Append(RunRecord record, FrozenSnapshot? inputs = null)
     {
         ArgumentNullException.ThrowIfNull(record);
+        RequireInputsOf(record, inputs);
         var head = _store.Write(connection =>
         {
             if (connection.Scalar("SELECT run FROM run WHERE run = ?1 OR snapshot = ?2 AND attempt = ?3", record.Run, record.Snapshot, record.Attempt) is { } taken)
                 throw new StoreException(StoreFault.Refused, $"The run {record.Run} (attempt {record.Attempt}) cannot be stored: run {taken} is stored already.");
-            return Insert(connection, record);
+            return Insert(connection, record, inputs);
         });
         _newest = record;
         return head;
@@ -41,15 +45,19 @@ public sealed class RunJournal
     /// Stores a run as the next attempt at its inputs. Number and id are given here, inside the transaction: another process may
     /// measure the same inputs at the same time.
     /// </summary>
+    /// <param name="record">The run.</param>
+    /// <param name="inputs">What it read, to be kept with it; without it the run cannot be computed again later.</param>
+    /// <exception cref="ArgumentException">The inputs are not those that the record names.</exception>
     /// <exception cref="StoreException">The store cannot be written.</exception>
-    public StoredRun AppendNext(RunRecord record)
+    public StoredRun AppendNext(RunRecord record, FrozenSnapshot? inputs = null)
     {
         ArgumentNullException.ThrowIfNull(record);
+        RequireInputsOf(record, inputs);
         var stored = _store.Write(connection =>
         {
             var attempt = Convert.ToInt32(connection.Scalar("SELECT coalesce(max(attempt), 0) + 1 FROM run WHERE snapshot = ?1", record.Snapshot), CultureInfo.InvariantCulture);
             var next = record with { Run = RunIdentity.Of(record.Snapshot, attempt), Attempt = attempt };
-            return new StoredRun(next, Insert(connection, next));
+            return new StoredRun(next, Insert(connection, next, inputs));
         });
         _newest = stored.Record;
         return stored;
@@ -81,10 +89,24 @@ public sealed class RunJournal
         {
             var matches = connection.Query($"SELECT r.run, r.record, c.hash {FromRuns} WHERE substr(r.run, 1, length(?1)) = ?1 ORDER BY r.run LIMIT 2",
                 r => (Run: r.GetString(0), Packed: r.GetFieldValue<byte[]>(1), Head: r.GetString(2)), runOrPrefix);
-            if (matches.Count > 1 && matches[0].Run != runOrPrefix) throw new StoreException(StoreFault.Refused, $"Several runs begin with '{runOrPrefix}', {matches[0].Run} and {matches[1].Run} among them. Give more digits.");
+            if (matches.Count > 1 && matches[0].Run != runOrPrefix) throw Ambiguous(runOrPrefix, matches[0].Run, matches[1].Run);
             return matches.Count == 0 ? null : new StoredRun(Unpacked(matches[0].Run, matches[0].Packed), matches[0].Head);
         });
     }
+
+    /// <summary>The id of the run that the store or its chain knows by this id, or by the beginning of no other; null when there is none.</summary>
+    /// <exception cref="StoreException">Several runs begin so.</exception>
+    public string? Identify(string runOrPrefix)
+    {
+        ArgumentException.ThrowIfNullOrEmpty(runOrPrefix);
+        var matches = _store.Read(connection => connection.Query(
+            "SELECT run FROM (SELECT run FROM run UNION SELECT run FROM chain) WHERE substr(run, 1, length(?1)) = ?1 ORDER BY run LIMIT 2", r => r.GetString(0), runOrPrefix));
+        if (matches.Count > 1 && matches[0] != runOrPrefix) throw Ambiguous(runOrPrefix, matches[0], matches[1]);
+        return matches.FirstOrDefault();
+    }
+
+    /// <summary>A run's record as it is stored, altered or not, held against what the chain vouches for.</summary>
+    public AuditedRun Audit(string run) => _store.Read(connection => RunAudit.Of(connection, run));
 
     /// <summary>All runs, in the order in which they were stored.</summary>
     public IReadOnlyList<RunSummary> List() => Summaries("ORDER BY r.sequence");
@@ -113,7 +135,10 @@ public sealed class RunJournal
         r => new DocumentHash(r.GetString(0), r.GetString(1)), run));
 
     /// <summary>The first thing wrong with the chain, the records or what is kept beside them, as a sentence; null when all is whole.</summary>
-    public string? FirstBreak() => _store.Read(RunAudit.FirstBreak);
+    /// <param name="progress">Told the share of the entries that were held against what they vouch for, or null.</param>
+    /// <param name="cancellation">Stops it.</param>
+    public string? FirstBreak(IProgress<double>? progress = null, CancellationToken cancellation = default) =>
+        _store.Read(connection => RunAudit.FirstBreak(connection, progress, cancellation));
 
     internal static string ContentOf(IEnumerable<DocumentHash> documents)
     {
@@ -122,11 +147,18 @@ public sealed class RunJournal
         return SnapshotHash.OfText(text.ToString());
     }
 
-    private static string Insert(SqliteConnection connection, RunRecord record)
+    private static void RequireInputsOf(RunRecord record, FrozenSnapshot? inputs)
     {
+        if (inputs is not null && inputs.Snapshot.Hash.Root != record.Snapshot)
+            throw new ArgumentException($"The inputs hash to {inputs.Snapshot.Hash.Root}, and the record names {record.Snapshot}.", nameof(inputs));
+    }
+
+    private string Insert(SqliteConnection connection, RunRecord record, FrozenSnapshot? inputs)
+    {
+        if (inputs is not null) _store.Snapshots.Keep(connection, inputs);
         var json = RecordJson.Write(record);
         var content = SnapshotHash.OfBytes(json);
-        RunRows.Of(record, content).Insert(connection, RecordJson.Pack(json));
+        RunRows.Of(record, content).Insert(connection, Zlib.Pack(json));
         return Chain(connection, ChainEntryKind.Results, record.Run, content).Hash;
     }
 
@@ -151,11 +183,14 @@ public sealed class RunJournal
 
     private static DateTimeOffset Time(string text) => DateTimeOffset.Parse(text, CultureInfo.InvariantCulture);
 
+    private static StoreException Ambiguous(string prefix, string one, string other) =>
+        new(StoreFault.Refused, $"Several runs begin with '{prefix}', {one} and {other} among them. Give more digits.");
+
     private static RunRecord Unpacked(string run, byte[] packed)
     {
         try
         {
-            return RecordJson.Read(RecordJson.Unpack(packed));
+            return RecordJson.Read(Zlib.Unpack(packed));
         }
         catch (Exception error) when (error is InvalidDataException or System.Text.Json.JsonException)
         {

@@ -48,6 +48,10 @@ internal sealed record RunRows(IReadOnlyList<object?> Run, IReadOnlyList<Counted
         "SELECT book, amount FROM run_profit WHERE run = ?1", r => new BookAmount(r.GetString(0), r.GetDouble(1)), run)
         .OrderBy(b => b.Book, StringComparer.Ordinal).ToList();
 
+    /// <summary>What the exception count takes from a stored run.</summary>
+    public static CountedRun Counted(SqliteConnection connection, string run, string content, DateOnly asOf, EvidenceKind evidence, DateOnly? profitFrom) =>
+        new(run, content, asOf, evidence, StoredVars(connection, run), profitFrom, StoredProfit(connection, run));
+
     private static string Text(Confidence confidence) => confidence.Level.ToString(CultureInfo.InvariantCulture);
 
     private static string Utc(DateTimeOffset time) => time.UtcDateTime.ToString("O", CultureInfo.InvariantCulture);

@@ -26,6 +26,11 @@ public sealed record RunSummary(
 /// <param name="Head">Hash of its results entry in the chain.</param>
 public sealed record StoredRun(RunRecord Record, string Head);
 
+/// <summary>A stored run held against the chain.</summary>
+/// <param name="Record">Its record as it is stored, altered or not; null where it is missing or cannot be read.</param>
+/// <param name="Fault">What is wrong with it, as a sentence; null where it is what the chain vouches for.</param>
+public sealed record AuditedRun(RunRecord? Record, string? Fault);
+
 /// <summary>A file rendered from a run.</summary>
 /// <param name="Name">File name.</param>
 /// <param name="Sha256">64 lower-case hex digits.</param>

@@ -9,7 +9,7 @@ namespace RiskWorker.Storage.Sqlite;
 internal static class SnapshotLeaves
 {
     /// <summary>Leaves of the files without dates; covariance apart, which only some settings read.</summary>
-    public static IReadOnlyList<SnapshotPart> Reference(ReferenceData data)
+    public static IReadOnlyList<SnapshotLeaf> Reference(ReferenceData data)
     {
         var text = new CanonicalText();
         foreach (var b in data.Books) text.Text(b.Name).Text(b.Parent).Text(b.DisplayName).Text(b.Currency).End();
@@ -33,7 +33,7 @@ internal static class SnapshotLeaves
     }
 
     /// <summary>Instruments by the terms as they are stored, which decide what is read from them.</summary>
-    public static SnapshotPart Instruments(IEnumerable<IReadOnlyList<string?>> rows)
+    public static SnapshotLeaf Instruments(IEnumerable<IReadOnlyList<string?>> rows)
     {
         var text = new CanonicalText();
         foreach (var row in rows)
@@ -44,7 +44,7 @@ internal static class SnapshotLeaves
         return text.Leaf("instruments");
     }
 
-    public static SnapshotPart Covariance(IEnumerable<CovarianceEntry> entries)
+    public static SnapshotLeaf Covariance(IEnumerable<CovarianceEntry> entries)
     {
         var text = new CanonicalText();
         foreach (var c in entries) text.Text(c.Factor).Text(c.Other).Number(c.Value).End();
@@ -52,9 +52,9 @@ internal static class SnapshotLeaves
     }
 
     /// <summary>One leaf for each date of the table.</summary>
-    public static SnapshotPart[] Observations(ObservationHistory history)
+    public static SnapshotLeaf[] Observations(ObservationHistory history)
     {
-        var leaves = new SnapshotPart[history.Count];
+        var leaves = new SnapshotLeaf[history.Count];
         var text = new CanonicalText();
         for (var i = 0; i < leaves.Length; i++)
         {
@@ -67,25 +67,25 @@ internal static class SnapshotLeaves
         return leaves;
     }
 
-    public static Dictionary<DateOnly, SnapshotPart> Adjustments(IEnumerable<Adjustment> adjustments) => ByDate(adjustments, a => a.Date, "adjustments",
+    public static Dictionary<DateOnly, SnapshotLeaf> Adjustments(IEnumerable<Adjustment> adjustments) => ByDate(adjustments, a => a.Date, "adjustments",
         (text, a) => text.Text(a.Factor).Number(a.Ratio).Text(a.Reason).End());
 
-    public static Dictionary<DateOnly, SnapshotPart> Profit(IEnumerable<ProfitAndLoss> rows) => ByDate(rows, p => p.Date, "pnl",
+    public static Dictionary<DateOnly, SnapshotLeaf> Profit(IEnumerable<ProfitAndLoss> rows) => ByDate(rows, p => p.Date, "pnl",
         (text, p) => text.Text(p.Book).Number(p.Actual).Number(p.Hypothetical).End());
 
-    public static SnapshotPart Positions(DateOnly date, IReadOnlyList<Position> positions)
+    public static SnapshotLeaf Positions(DateOnly date, IReadOnlyList<Position> positions)
     {
         var text = new CanonicalText();
         foreach (var p in positions) text.Text(p.Book).Text(p.Instrument).Number(p.Quantity).Text(p.Trade).Number(p.MarketValue).End();
         return text.Leaf("positions/" + Iso.Of(date));
     }
 
-    public static SnapshotPart Run(CountedRun run) => new("runs/" + Iso.Of(run.AsOf), SnapshotHash.OfText($"{run.Run}\n{run.Hash}\n"));
+    public static SnapshotLeaf Run(CountedRun run) => SnapshotLeaf.Of("runs/" + Iso.Of(run.AsOf), $"{run.Run}\n{run.Hash}\n");
 
     /// <summary>The date that a run is for, and the date that it takes as the one before.</summary>
-    public static SnapshotPart AsOf(DateOnly asOf, DateOnly? previous) => new("as-of", SnapshotHash.OfText($"{Iso.Of(asOf)}\n{Iso.Of(previous)}\n"));
+    public static SnapshotLeaf AsOf(DateOnly asOf, DateOnly? previous) => SnapshotLeaf.Of("as-of", $"{Iso.Of(asOf)}\n{Iso.Of(previous)}\n");
 
-    private static Dictionary<DateOnly, SnapshotPart> ByDate<T>(IEnumerable<T> rows, Func<T, DateOnly> date, string file, Action<CanonicalText, T> write)
+    private static Dictionary<DateOnly, SnapshotLeaf> ByDate<T>(IEnumerable<T> rows, Func<T, DateOnly> date, string file, Action<CanonicalText, T> write)
     {
         var text = new CanonicalText();
         return rows.GroupBy(date).ToDictionary(day => day.Key, day =>

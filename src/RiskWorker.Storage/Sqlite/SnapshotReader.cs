@@ -36,11 +36,15 @@ public sealed class SnapshotReader(RiskStore store)
     /// <param name="settings">Settings that figures depend on.</param>
     /// <param name="model">Name of the model whose earlier runs are counted.</param>
     /// <exception cref="StoreException">The store cannot be read.</exception>
-    public Snapshot Take(DateOnly asOf, RunSettings settings, string model)
+    public Snapshot Take(DateOnly asOf, RunSettings settings, string model) => Freeze(asOf, settings, model).Snapshot;
+
+    /// <summary>The same with the text of its parts, to be kept with the run.</summary>
+    /// <exception cref="StoreException">The store cannot be read.</exception>
+    public FrozenSnapshot Freeze(DateOnly asOf, RunSettings settings, string model)
     {
         ArgumentNullException.ThrowIfNull(settings);
         ArgumentNullException.ThrowIfNull(model);
-        return Reading(connection => Take(connection, _state!, asOf, settings, model));
+        return Reading(connection => Freeze(connection, _state!, asOf, settings, model));
     }
 
     private T Reading<T>(Func<SqliteConnection, T> work)
@@ -56,7 +60,7 @@ public sealed class SnapshotReader(RiskStore store)
         }
     }
 
-    private Snapshot Take(SqliteConnection connection, FeedState state, DateOnly asOf, RunSettings settings, string model)
+    private FrozenSnapshot Freeze(SqliteConnection connection, FeedState state, DateOnly asOf, RunSettings settings, string model)
     {
         _runs.Follow(connection);
         var observations = state.Observations.UpTo(asOf);
@@ -67,11 +71,17 @@ public sealed class SnapshotReader(RiskStore store)
         var positions = Positions(connection, asOf);
         var before = Array.FindLastIndex(state.PositionDates, date => date < asOf);
         var previous = before < 0 ? null : Dated(connection, state.PositionDates[before]);
-        var earlier = WithoutProfit(observations, counted)
-            .Where(day => !(day.To == asOf && day.From == previous?.Date) && Array.BinarySearch(state.PositionDates, day.From) >= 0)
-            .Select(day => Dated(connection, day.From)).ToArray();
+        var earlier = WithoutProfit(observations, counted, asOf, previous?.Date)
+            .Where(day => Array.BinarySearch(state.PositionDates, day) >= 0).Select(day => Dated(connection, day)).ToArray();
         var withCovariance = settings.Model.Covariance == CovarianceEstimator.Given;
-        return new()
+        SnapshotLeaf[] leaves =
+        [
+            SnapshotLeaves.AsOf(asOf, previous?.Date), SettingsText.Leaf(settings), SnapshotLeaf.Of("model", model),
+            .. state.Leaves(asOf, observations.Count, profit, withCovariance),
+            SnapshotLeaves.Positions(asOf, positions), .. earlier.Append(previous).OfType<DatedPositions>().DistinctBy(d => d.Date).Select(d => SnapshotLeaves.Positions(d.Date, d.Positions)),
+            .. runs.Select(r => r.Leaf),
+        ];
+        var snapshot = new Snapshot
         {
             AsOf = asOf,
             Settings = settings,
@@ -89,18 +99,16 @@ public sealed class SnapshotReader(RiskStore store)
             FeedWarnings = state.Reference.FeedWarnings,
             CountedRuns = counted,
             EarlierPositions = earlier,
-            Hash = SnapshotHash.Of(
-            [
-                SnapshotLeaves.AsOf(asOf, previous?.Date), new("settings", SettingsHash.Of(settings)), new("model", SnapshotHash.OfText(model)),
-                .. state.Leaves(asOf, observations.Count, profit, withCovariance),
-                SnapshotLeaves.Positions(asOf, positions), .. earlier.Append(previous).OfType<DatedPositions>().DistinctBy(d => d.Date).Select(d => SnapshotLeaves.Positions(d.Date, d.Positions)),
-                .. runs.Select(r => r.Leaf),
-            ]),
+            Hash = SnapshotHash.Of(leaves.Select(l => l.Part)),
         };
+        return new(snapshot, leaves);
     }
 
-    /// <summary>Dates of counted runs and the observation dates that follow them, where no counted run holds the profit between the two.</summary>
-    private static IEnumerable<(DateOnly From, DateOnly To)> WithoutProfit(ObservationHistory observations, List<CountedRun> counted)
+    /// <summary>
+    /// Dates of counted runs where no counted run holds the profit from there to the next observation date; the one that a run at
+    /// <paramref name="asOf"/> computes itself, from the positions of <paramref name="previous"/>, is not among them.
+    /// </summary>
+    internal static IEnumerable<DateOnly> WithoutProfit(ObservationHistory observations, List<CountedRun> counted, DateOnly asOf, DateOnly? previous)
     {
         var profitFrom = counted.ToDictionary(c => c.AsOf, c => c.HypotheticalDate);
         foreach (var run in counted)
@@ -109,7 +117,7 @@ public sealed class SnapshotReader(RiskStore store)
             var next = at >= 0 ? at + 1 : ~at;
             if (next == observations.Count) continue;
             var to = observations.Dates[next];
-            if (profitFrom.GetValueOrDefault(to) != run.AsOf) yield return (run.AsOf, to);
+            if (profitFrom.GetValueOrDefault(to) != run.AsOf && !(to == asOf && run.AsOf == previous)) yield return run.AsOf;
         }
     }
 
@@ -131,7 +139,8 @@ public sealed class SnapshotReader(RiskStore store)
         return name;
     }
 
-    private static int Canonical(Position a, Position b)
+    /// <summary>The order of the positions of a date: by book, instrument, trade, then quantity and market value.</summary>
+    internal static int Canonical(Position a, Position b)
     {
         var order = string.CompareOrdinal(a.Book, b.Book);
         if (order == 0) order = string.CompareOrdinal(a.Instrument, b.Instrument);

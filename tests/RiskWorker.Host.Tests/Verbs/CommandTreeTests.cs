@@ -24,6 +24,7 @@ public sealed class CommandTreeTests : IDisposable
     [InlineData("measure --as-of 2026-01-02 --from 2026-01-02 --to 2026-01-02", "riskworker: --as-of does not go with --from and --to: it is one date, they are a span\n'riskworker measure --help' lists what there is.\n")]
     [InlineData("serve --stop-timeout -1", "riskworker: --stop-timeout: found '-1', expected a whole number from 0 to 86400\n'riskworker serve --help' lists what there is.\n")]
     [InlineData("runs show", "riskworker: Required argument 'ID' missing for command: 'show'.\n'riskworker runs show --help' lists what there is.\n")]
+    [InlineData("verify", "riskworker: Required argument 'RUN' missing for command: 'verify'.\n'riskworker verify --help' lists what there is.\n")]
     [InlineData("@file", "riskworker: '@file' is not known here\n'riskworker --help' lists what there is.\n")]
     public async Task RunAsync_what_is_not_understood_ends_in_three_and_one_clear_line(string line, string error)
     {
@@ -37,6 +38,8 @@ public sealed class CommandTreeTests : IDisposable
     [InlineData("measure --help", "[default: the newest with positions]")]
     [InlineData("runs --help", "show <ID>")]
     [InlineData("runs show --help", "--pdf <FILE>")]
+    [InlineData("--help", "  5  a stored run")]
+    [InlineData("verify --help", "riskworker verify RUN --out out --threads 1 --json")]
     [InlineData("serve --help", "[default: 60]")]
     public async Task RunAsync_help_shows_defaults_and_examples(string line, string shown)
     {

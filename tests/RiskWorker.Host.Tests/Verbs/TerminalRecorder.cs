@@ -32,6 +32,7 @@ internal sealed class TerminalRecorder : IDisposable
         Measure = Uncalled<MeasureRequest, MeasureReport>,
         ListRuns = Uncalled<ListRunsRequest, IReadOnlyList<RunSummary>>,
         ShowRun = Uncalled<ShowRunRequest, ShowRunReport>,
+        Verify = Uncalled<VerifyRequest, VerifyReport>,
         Holidays = Uncalled<HolidaysRequest, IReadOnlyList<Holiday>>,
         RecordInterrupted = Uncalled<InterruptedRun, bool>,
     };

@@ -42,7 +42,7 @@ public sealed class RunJournalTests : IDisposable
         _store.Runs.Append(record);
 
         BitEqual.Assert(record, _store.Runs.Find(record.Run)!.Record);
-        Assert.Null(_store.Runs.FirstBreak());
+        Assert.Null(_store.Runs.FirstBreak(cancellation: TestContext.Current.CancellationToken));
     }
 
     [Fact]
@@ -92,7 +92,7 @@ public sealed class RunJournalTests : IDisposable
         Assert.Equal([1, 2, 3], stored.Select(s => s.Record.Attempt));
         Assert.Equal(stored.Select(s => RunIdentity.Of(record.Snapshot, s.Record.Attempt)), stored.Select(s => s.Record.Run));
         Assert.Equal(stored.Select(s => s.Head), stored.Select(s => _store.Runs.Find(s.Record.Run)!.Head));
-        Assert.Null(_store.Runs.FirstBreak());
+        Assert.Null(_store.Runs.FirstBreak(cancellation: TestContext.Current.CancellationToken));
     }
 
     [Fact]
@@ -132,7 +132,7 @@ public sealed class RunJournalTests : IDisposable
         Assert.Equal(documents, _store.Runs.DocumentsOf(record.Run));
         Assert.Equal(head, _store.Runs.Find(record.Run)!.Head);
         Assert.Equal(StoreFault.Refused, Assert.Throws<StoreException>(() => _store.Runs.AppendDocuments("000000000000", documents)).Fault);
-        Assert.Null(_store.Runs.FirstBreak());
+        Assert.Null(_store.Runs.FirstBreak(cancellation: TestContext.Current.CancellationToken));
     }
 
     [Fact]
@@ -199,11 +199,11 @@ public sealed class RunJournalTests : IDisposable
     public void FirstBreak_names_what_was_removed_altered_or_reordered_round_the_triggers(string sql, string expected)
     {
         Fill();
-        Assert.Null(_store.Runs.FirstBreak());
+        Assert.Null(_store.Runs.FirstBreak(cancellation: TestContext.Current.CancellationToken));
 
         Raw(["PRAGMA foreign_keys = OFF", .. Triggers().Select(t => $"DROP TRIGGER {t}"), sql]);
 
-        Assert.Contains(expected, _store.Runs.FirstBreak(), StringComparison.Ordinal);
+        Assert.Contains(expected, _store.Runs.FirstBreak(cancellation: TestContext.Current.CancellationToken), StringComparison.Ordinal);
     }
 
     [Fact]
@@ -220,7 +220,7 @@ public sealed class RunJournalTests : IDisposable
         });
 
         Assert.Equal(120, _store.Runs.ReadChain().Count);
-        Assert.Null(_store.Runs.FirstBreak());
+        Assert.Null(_store.Runs.FirstBreak(cancellation: TestContext.Current.CancellationToken));
     }
 
     private void Fill()

@@ -60,12 +60,17 @@ public sealed class SnapshotReaderTests(ITestOutputHelper output)
     [Fact]
     public void Hash_of_settings_depends_on_every_property_of_them()
     {
-        var hashes = new List<string> { SettingsHash.Of(new()) };
-        foreach (var changed in OneChangeEach(new RunSettings()).Cast<RunSettings>()) hashes.Add(SettingsHash.Of(changed));
+        var hashes = new List<string> { SettingsText.Leaf(new()).Part.Hash };
+        foreach (var changed in OneChangeEach(new RunSettings()).Cast<RunSettings>()) hashes.Add(SettingsText.Leaf(changed).Part.Hash);
 
         Assert.Equal(1 + 7 + 5 + 6 + 2, hashes.Count);
         Assert.Equal(hashes.Count, hashes.Distinct().Count());
     }
+
+    [Fact]
+    public void Text_of_settings_is_read_back_to_the_bit() =>
+        Assert.All(OneChangeEach(new RunSettings()).Cast<RunSettings>().Prepend(new()), settings =>
+            BitEqual.Assert(settings, SettingsText.Read(System.Text.Encoding.UTF8.GetString(SettingsText.Leaf(settings).Text))));
 
     [Fact]
     public void Take_reads_what_the_feed_says()
@@ -190,15 +195,15 @@ public sealed class SnapshotReaderTests(ITestOutputHelper output)
         for (var i = 1; i < dates.Count; i++)
         {
             watch.Restart();
-            var snapshot = reader.Take(dates[i], s_settings, "lognormal");
+            var frozen = reader.Freeze(dates[i], s_settings, "lognormal");
             taking.Add(watch.Elapsed.TotalMilliseconds);
             watch.Restart();
-            store.Runs.Append(RunRecords.Of(dates[i], snapshot: snapshot.Hash.Root, profitFrom: dates[i - 1], evidence: EvidenceKind.Backfilled));
+            store.Runs.Append(RunRecords.Of(dates[i], snapshot: frozen.Snapshot.Hash.Root, profitFrom: dates[i - 1], evidence: EvidenceKind.Backfilled), frozen);
             appending.Add(watch.Elapsed.TotalMilliseconds);
         }
         // The first two hundred run in code that is still being compiled.
         output.WriteLine(string.Create(CultureInfo.InvariantCulture,
-            $"opened in {opening.TotalMilliseconds:F0} ms; a snapshot in {taking.Average():F2} ms, of the last hundred {taking.TakeLast(100).Average():F2} ms; a small record stored in {appending.TakeLast(100).Average():F2} ms"));
+            $"opened in {opening.TotalMilliseconds:F0} ms; a snapshot in {taking.Average():F2} ms, of the last hundred {taking.TakeLast(100).Average():F2} ms; a small record stored with its inputs in {appending.TakeLast(100).Average():F2} ms"));
         Assert.True(taking.TakeLast(100).Average() < 3);
     }
 
