@@ -23,7 +23,7 @@ internal static class KernelCommand
 
     // In this process, so that the environment's switches hold; in many iterations of a few milliseconds, so that on a busy machine some are not interrupted.
     private static IConfig Settings => ManualConfig.CreateEmpty()
-        .AddJob(Job.Default.WithToolchain(InProcessEmitToolchain.Instance).WithIterationTime(TimeInterval.FromMilliseconds(4)).WithWarmupCount(50).WithIterationCount(150))
+        .AddJob(Job.Default.WithToolchain(InProcessEmitToolchain.Instance).WithIterationTime(TimeInterval.FromMilliseconds(4)).WithWarmupCount(300).WithIterationCount(150))
         .AddColumnProvider(DefaultColumnProviders.Instance)
         .AddLogger(ConsoleLogger.Default)
         .WithOption(ConfigOptions.DisableLogFile, true);
