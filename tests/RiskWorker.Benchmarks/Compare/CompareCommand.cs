@@ -32,10 +32,11 @@ internal static class CompareCommand
     {
         var programs = new Programs(parsed.GetValue(CommonPaths.Python)!, parsed.GetValue(s_peer)!, parsed.GetValue(CommonPaths.Riskworker)!);
         var size = new BookSize(parsed.GetValue(s_factors), parsed.GetValue(s_options), parsed.GetValue(s_books), parsed.GetValue(s_days));
+        var numPy = NumPy.Of(programs.Python);
         using var book = new StandardBook(programs, size);
         var comparisons = parsed.GetValue(s_scenarios)!.Select(n => Comparison.Measure(book, n, parsed.GetValue(s_pairs))).ToList();
         foreach (var comparison in comparisons)
-            ResultsFile.Publish($"Against NumPy: {size}, {comparison.Scenarios:N0} scenarios", $"{NumPy.Describe(programs.Python)}\n\n{comparison.Text()}", record);
+            ResultsFile.Publish($"Against NumPy on {numPy.Blas}: {size}, {comparison.Scenarios:N0} scenarios", $"{numPy.Description}\n\n{comparison.Text()}", record);
         if (comparisons.Count > 1)
             ResultsFile.Publish($"Growth with scenarios: {size}", Comparison.Growth(comparisons), record);
         return comparisons.TrueForAll(c => c.Agrees) ? 0 : 1;

@@ -39,6 +39,7 @@ internal static class WalkForwardCommand
     {
         var (days, scenarios, drawOnce) = (parsed.GetValue(s_days), parsed.GetValue(s_scenarios), parsed.GetValue(s_drawOnce));
         var (python, config) = (parsed.GetValue(CommonPaths.Python)!, parsed.GetValue(s_config)!);
+        var found = NumPy.Of(python);
         var table = new MarkdownTable("pair", "NumPy, s", "ours, s", "ratio");
         var worst = 0.0;
         for (var pair = 1; pair <= parsed.GetValue(s_pairs); pair++)
@@ -50,8 +51,8 @@ internal static class WalkForwardCommand
             table.Add(pair.ToString(CultureInfo.InvariantCulture), Text(theirs, "0.0"), Text(seconds, "0.00"), Text(theirs / seconds, "0.0"));
         }
         var draws = drawOnce ? "drawn once in NumPy, day by day in ours" : "drawn day by day";
-        ResultsFile.Publish($"Walk-forward: {days} days of {scenarios:N0} scenarios, normals {draws}",
-            $"{NumPy.Describe(python)}\n\n{table}\nThe firm's VaR and ES of all days: at most {Text(worst, "0.00")} standard errors of the difference apart ({(worst <= Accepted ? "within" : "BEYOND")} {Accepted}).\n", record);
+        ResultsFile.Publish($"Walk-forward against NumPy on {found.Blas}: {days} days of {scenarios:N0} scenarios, normals {draws}",
+            $"{found.Description}\n\n{table}\nThe firm's VaR and ES of all days: at most {Text(worst, "0.00")} standard errors of the difference apart ({(worst <= Accepted ? "within" : "BEYOND")} {Accepted}).\n", record);
         return worst <= Accepted ? 0 : 1;
     }
 
