@@ -7,6 +7,7 @@ namespace RiskWorker.Host.Verbs;
 public sealed class PlainTable
 {
     private readonly Table _table = new() { Border = TableBorder.None };
+    private readonly List<int> _widths = [];
 
     /// <summary>Adds a column of words; its cells may wrap.</summary>
     public PlainTable Words(string head) => Column(head, Justify.Left, wraps: true);
@@ -18,7 +19,11 @@ public sealed class PlainTable
     public PlainTable Numbers(string head) => Column(head, Justify.Right, wraps: false);
 
     /// <summary>Adds a row.</summary>
-    public void Row(params (string Text, Style? Style)[] cells) => _table.AddRow(cells.Select(c => new Text(Printable.Of(c.Text), c.Style ?? Style.Plain)));
+    public void Row(params (string Text, Style? Style)[] cells)
+    {
+        for (var i = 0; i < cells.Length; i++) _widths[i] = Math.Max(_widths[i], cells[i].Text.Length);
+        _table.AddRow(cells.Select(c => new Text(Printable.Of(c.Text), c.Style ?? Style.Plain)));
+    }
 
     /// <summary>Adds a row.</summary>
     public void Row(params string[] cells) => Row([.. cells.Select(c => (c, (Style?)null))]);
@@ -26,14 +31,16 @@ public sealed class PlainTable
     /// <summary>Prints the table and an empty line.</summary>
     public void Write(IAnsiConsole console)
     {
-        // Many columns leave less room between them, or names would break inside words on a terminal of 80 columns.
-        foreach (var column in _table.Columns) column.Padding = new Padding(0, 0, _table.Columns.Count > 6 ? 1 : 2, 0);
+        // Less room between many columns, where names would otherwise break inside words; a column of sentences wraps anyway.
+        var room = _widths.Count > 6 && _widths.Sum(w => w + 2) > console.Profile.Width ? 1 : 2;
+        foreach (var column in _table.Columns) column.Padding = new Padding(0, 0, room, 0);
         console.Write(_table);
         console.WriteLine();
     }
 
     private PlainTable Column(string head, Justify justify, bool wraps)
     {
+        _widths.Add(head.Length);
         _table.AddColumn(new TableColumn(new Text(head, new Style(decoration: Decoration.Bold))) { Alignment = justify, NoWrap = !wraps });
         return this;
     }
