@@ -67,6 +67,7 @@ public sealed class RunCalculator
         var outcome = new LookedRun(tree, plan, limits, measures, _snapshot.Settings.Simulation).Run(_threads, _progress, _cancellation);
         Timings = Timings with { Simulate = clock.Elapsed.TotalSeconds };
         _findings.AddRange(UndecidableLimits.Of(outcome, limits, _snapshot.Settings.Checks));
+        if (Blocked) return Failed(tree) with { Holdings = valued.Holdings }; // where the settings make that finding block
         var hypothetical = HypotheticalProfits.Of(_snapshot, tree);
         return new RunResults
         {
