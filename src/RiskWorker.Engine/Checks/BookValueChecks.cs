@@ -33,7 +33,7 @@ internal static class BookValueChecks
             if (books[node].Breaks is not { } breaks) continue;
             var total = breaks.Sum(i => Math.Abs(lines[i].Value - lines[i].Position.MarketValue!.Value) * sizes.RateOf(lines[i].Instrument!.Currency));
             findings.Add(FindingCodes.ValueDifference, tree.Books[node].Name, string.Create(CultureInfo.InvariantCulture,
-                $"{breaks.Count:#,0} of {books[node].Compared:#,0} lines with a market value differ from it by more than {tolerance * 100:0.##}% ({FindingList.Names(breaks.Select(i => Named(lines[i])), breaks.Count)}), {total:#,0} {tree.ReportingCurrency} in all, so value and risk may rest on other terms than the book of record"));
+                $"{breaks.Count:#,0} of {books[node].Compared:#,0} lines with a market value {(breaks.Count == 1 ? "differs" : "differ")} from it by more than {tolerance * 100:0.##}% ({FindingList.Names(breaks.Select(i => Named(lines[i])), breaks.Count)}), {total:#,0} {tree.ReportingCurrency} in all, so value and risk may rest on other terms than the book of record"));
         }
     }
 

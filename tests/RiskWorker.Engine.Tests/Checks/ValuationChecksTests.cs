@@ -98,7 +98,7 @@ public sealed class ValuationChecksTests
         // 10 EUR and 50 USD at 0.80 in DESK; a short position with a positive market value in FIRM.
         Assert.Equal(["DESK", "FIRM"], findings.Select(f => f.Subject));
         Assert.StartsWith("2 of 3 lines with a market value differ from it by more than 1% (A-UNIT 100 against 90 EUR, U-UNIT 200 against 250 USD), 50 EUR in all", findings[0].Message, StringComparison.Ordinal);
-        Assert.StartsWith("1 of 1 lines with a market value differ from it by more than 1% (A-UNIT -100 against 100 EUR), 200 EUR in all", findings[1].Message, StringComparison.Ordinal);
+        Assert.StartsWith("1 of 1 lines with a market value differs from it by more than 1% (A-UNIT -100 against 100 EUR), 200 EUR in all", findings[1].Message, StringComparison.Ordinal);
     }
 
     [Theory]

@@ -46,6 +46,17 @@ public sealed class LimitReportTests
         Assert.Equal(sentence, document.Sections[0].Blocks.OfType<Callout>().Single().Head);
     }
 
+    // A book called 'A' is a letter of nearly every limit's name: that is no reason to leave the book out.
+    [Fact]
+    public void Build_names_the_book_of_a_limit_whatever_the_limit_is_called()
+    {
+        var run = new SampleRun { Limits = 1 }.Build();
+        var limit = run.Results.Limits[0] with { Status = LimitStatus.Breached };
+        var nodes = run.Results.Nodes.Select(n => n.Book == limit.Limit.Book ? n with { Name = "A" } : n);
+        var page = Page(run with { Results = run.Results with { Nodes = [.. nodes], Limits = [limit with { Limit = limit.Limit with { Name = "market-cap" } }] } }, 0);
+        Assert.Contains($"market-cap (A, {limit.Limit.Measure})", page);
+    }
+
     [Fact]
     public void Build_first_run_claims_no_change()
     {

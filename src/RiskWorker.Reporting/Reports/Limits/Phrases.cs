@@ -67,12 +67,8 @@ internal static class Phrases
         _ => (StatusMark.None, "too\u00A0few\u00A0days"),
     };
 
-    /// <summary>What a limit binds: book and measure; the book is left out where the limit's name says it.</summary>
-    public static string Bound(RunReading run, LimitResult limit)
-    {
-        var book = run.NameOf(limit.Limit.Book);
-        return limit.Limit.Name.Contains(book, StringComparison.OrdinalIgnoreCase) ? limit.Limit.Measure.ToString() : $"{book}, {limit.Limit.Measure}";
-    }
+    /// <summary>What a limit binds: book and measure. A name that seems to hold the book's is no reason to leave it out: a book may be called 'A'.</summary>
+    public static string Bound(RunReading run, LimitResult limit) => $"{run.NameOf(limit.Limit.Book)}, {limit.Limit.Measure}";
 
     /// <summary>A measure without its horizon: VaR 99%.</summary>
     public static string Short(MeasureSpec spec) => spec.Kind == MeasureKind.Var ? $"VaR {spec.Confidence}" : $"ES {spec.Confidence}";
