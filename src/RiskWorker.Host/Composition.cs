@@ -13,7 +13,7 @@ public static class Composition
         return new()
         {
             Load = new LoadFeed(refresh).RunAsync,
-            Measure = new MeasureRun(refresh, clock).RunAsync,
+            Measure = new MeasureRun(refresh, new Rehearsal(), clock).RunAsync,
             ListRuns = StoredRuns.ListAsync,
             ShowRun = StoredRuns.ShowAsync,
             Verify = VerifyRun.RunAsync,

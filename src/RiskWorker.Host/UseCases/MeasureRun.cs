@@ -9,7 +9,7 @@ using RiskWorker.Storage.Sqlite;
 namespace RiskWorker.Host.UseCases;
 
 /// <summary>One complete run: feed, snapshot, calculation, record, documents; or a span of past dates, kept without documents.</summary>
-public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
+public sealed class MeasureRun(FeedRefresh refresh, Rehearsal rehearsal, TimeProvider clock)
 {
     private const int BackfillScenarios = 20_000;
 
@@ -25,6 +25,7 @@ public sealed class MeasureRun(FeedRefresh refresh, TimeProvider clock)
     {
         var started = clock.GetUtcNow();
         var watch = Stopwatch.StartNew();
+        rehearsal.Start();
         using var store = RiskStore.Open(request.Workspace.StoreFile);
         refresh.Into(store, request.Workspace, progress, cancellation);
         var work = new Work(request, store, new SnapshotReader(store), progress, cancellation);

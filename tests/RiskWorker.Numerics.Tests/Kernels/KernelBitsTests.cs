@@ -31,6 +31,7 @@ public sealed class KernelBitsTests
         ["EuropeanOption at own volatility"] = OptionProfitsAtOwnVolatility,
         [nameof(BookProfit)] = BookLosses,
         [nameof(Elementwise)] = CrossRates,
+        [nameof(PolynomialSum)] = Polynomials,
         [nameof(LaneSum)] = (n, y) => Sums(n.Between(-1e6, 1e6, 600), y),
     };
 
@@ -53,6 +54,7 @@ public sealed class KernelBitsTests
     [InlineData("EuropeanOption at own volatility", "64dfd4692444283dc1e9bcd9fe212fe4")]
     [InlineData("BookProfit", "b588542cd2b8a658be2db308b372280d")]
     [InlineData("Elementwise", "e83c48058ffce0ed22fe7337fccb311e")]
+    [InlineData("PolynomialSum", "48de1c7b7d8e9610abe5836b526807d8")]
     [InlineData("LaneSum", "092d79c6bd865de46f059ec3ddc79409")]
     public void Outputs_bits_are_the_pinned_ones(string name, string expected)
     {
@@ -115,6 +117,13 @@ public sealed class KernelBitsTests
             BookProfit.AddLinear(n.Between(60, 160, Count), Spot0, n.Between(-500, 500), profit);
         BookProfit.AddConverted(profit, n.Between(-1e6, 1e6), rate, 1.1, total);
         BookProfit.LossInCurrency(total, n.Between(1e5, 1e6), rate, 1.1, y);
+    }
+
+    private static void Polynomials(SeededNumbers n, double[] y)
+    {
+        double[] z = n.Between(-1, 1, Count), w = n.Between(-1, 1, Count);
+        PolynomialSum.Add(n.Between(-50, 50, 17), z, y);
+        PolynomialSum.Add(n.Between(-50, 50, 11 * 6), 6, z, w, y);
     }
 
     private static void CrossRates(SeededNumbers n, double[] y)
