@@ -5,7 +5,7 @@ using RiskWorker.Numerics.Random;
 namespace RiskWorker.Engine.Simulation;
 
 /// <summary>
-/// Draws and revalues some two hundred consecutive scenarios of a plan: the buffers of one thread, sized for its cache.
+/// Draws and revalues some two hundred consecutive scenarios of a plan fully: the buffers of one thread, sized for its cache.
 /// Every scenario is computed on its own, so the width of a tile changes no bit.
 /// </summary>
 public sealed class ScenarioTile
@@ -14,31 +14,28 @@ public sealed class ScenarioTile
     public const int Width = 240;
 
     private readonly RevaluationPlan _plan;
+    private readonly PlanSlice _whole;
     private readonly DrawStream _stream;
-    private readonly double[] _roots;
     private readonly double[] _draws;
-    private readonly double[] _normals;
-    private readonly double[] _still = new double[Width];
-    private readonly double[] _rates;
-    private readonly double[] _cells;
-    private readonly double[] _nodes;
-    private readonly double[] _returns = new double[Width];
-    private readonly double[] _quoteReturns = new double[Width];
-    private readonly double[] _spots = new double[Width];
-    private readonly double[] _volatilities = new double[Width];
+    private readonly MarketLanes _market;
+    private readonly LaneTable _cells;
+    private readonly NodeProfits _nodes;
 
     /// <summary>Allocates the buffers for <paramref name="plan"/>.</summary>
     public ScenarioTile(RevaluationPlan plan)
     {
-        _plan = plan;
+        (_plan, _whole) = (plan, PlanSlice.Whole(plan));
         _stream = new(plan.Seed, DrawPurpose.FactorMoves, 0);
-        _roots = [.. plan.Horizons.Select(h => Math.Sqrt(h.Days))];
         _draws = new double[(plan.Moves.Rank + 1) * Width]; // room for the second half of an odd last pair
-        _normals = new double[plan.Moves.Rows * Width];
-        _rates = new double[plan.Currencies.Count * Width];
-        _cells = new double[plan.Cells.Count * Width];
-        _nodes = new double[plan.Nodes.Count * Width];
+        Normals = new double[plan.Moves.Rows * Width];
+        (_market, _cells, _nodes) = (new(plan, Width), new(plan.Cells.Count, Width), new(plan, Width));
     }
+
+    /// <summary>Correlated normals of the scenarios last drawn, a row a moving factor, as far apart as there are scenarios.</summary>
+    internal double[] Normals { get; }
+
+    /// <summary>The market of the scenarios last drawn, at the horizon last moved to.</summary>
+    internal MarketLanes Market => _market;
 
     /// <summary>Writes the losses of scenarios <paramref name="first"/> to first + width - 1.</summary>
     /// <param name="first">Number of the first scenario.</param>
@@ -49,128 +46,31 @@ public sealed class ScenarioTile
     public void Evaluate(long first, int width, double[] losses, int offset, int stride)
     {
         Draw(first, width);
-        for (var horizon = 0; horizon < _plan.Horizons.Count; horizon++)
-        {
-            Rates(horizon, width);
-            Cells(horizon, width);
-            Nodes(width);
-            for (var row = 0; row < _plan.Rows.Count; row++)
-            {
-                if (_plan.Rows[row].Horizon == horizon) Losses(_plan.Rows[row], width, losses.AsSpan((row * stride) + offset, width));
-            }
-        }
+        for (var horizon = 0; horizon < _plan.Horizons.Count; horizon++) Evaluate(horizon, losses, offset, stride, null);
     }
 
-    private void Draw(long first, int width)
+    /// <summary>Draws the normals of scenarios <paramref name="first"/> to first + width - 1.</summary>
+    internal void Draw(long first, int width)
     {
         var moves = _plan.Moves;
         for (var draw = 0; draw < moves.Rank; draw += 2)
             NormalDraws.FillPair(_stream, (ulong)first, (uint)draw / 2, _draws.AsSpan(draw * width, width), _draws.AsSpan((draw + 1) * width, width));
-        TriangularProduct.Multiply(moves.Lower, moves.Rows, moves.Rank, _draws.AsSpan(0, moves.Rank * width), _normals.AsSpan(0, moves.Rows * width), width);
+        TriangularProduct.Multiply(moves.Lower, moves.Rows, moves.Rank, _draws.AsSpan(0, moves.Rank * width), Normals.AsSpan(0, moves.Rows * width), width);
+        _market.Take(Normals, moves.RowOf, width, width);
+        _cells.Width = width;
     }
 
-    private ReadOnlySpan<double> NormalsOf(int factor, int width) =>
-        _plan.Moves.RowOf[factor] is var row && row < 0 ? _still.AsSpan(0, width) : _normals.AsSpan(row * width, width);
-
-    /// <summary>Log-returns and levels of a log-normal factor; for a normal one only the levels have a meaning.</summary>
-    private void Move(int factor, int horizon, Span<double> returns, Span<double> levels)
+    /// <summary>Writes the losses of the scenarios last drawn at one horizon; by surface where <paramref name="surfaces"/> are given.</summary>
+    internal void Evaluate(int horizon, double[] losses, int offset, int stride, SurfaceProfits? surfaces)
     {
-        var law = _plan.Moves.Factors[factor];
-        var (scale, drift) = (law.Deviation * _roots[horizon], law.Drift * _plan.Horizons[horizon].Days);
-        if (law.IsLognormal)
+        _market.MoveTo(horizon, _whole);
+        _cells.Clear(0, _plan.Cells.Count);
+        if (surfaces is null) HoldingProfits.Add(_plan, _whole, _market, horizon, _cells);
+        else surfaces.Add(_market, horizon, _cells);
+        _nodes.Roll(_whole, _market, _cells);
+        for (var row = 0; row < _plan.Rows.Count; row++)
         {
-            LogNormalMoves.LogReturns(NormalsOf(factor, returns.Length), scale, drift, returns);
-            LogNormalMoves.Spots(returns, law.Level, levels);
+            if (_plan.Rows[row].Horizon == horizon) _nodes.Losses(_plan.Rows[row], _market, losses.AsSpan((row * stride) + offset, _market.Width));
         }
-        else
-        {
-            LogNormalMoves.Levels(NormalsOf(factor, returns.Length), scale, drift, law.Level, levels);
-        }
-    }
-
-    private Span<double> RatesOf(int currency, int width) => _rates.AsSpan(currency * Width, width);
-
-    private void Rates(int horizon, int width)
-    {
-        RatesOf(0, width).Fill(1);
-        for (var c = 1; c < _plan.Currencies.Count; c++) Move(_plan.Currencies[c].Factor, horizon, _returns.AsSpan(0, width), RatesOf(c, width));
-    }
-
-    private void Cells(int horizon, int width)
-    {
-        Array.Clear(_cells);
-        for (var g = 0; g < _plan.Groups.Count; g++)
-        {
-            var group = _plan.Groups[g];
-            Underlying(group, horizon, width);
-            Span<double> returns = _returns.AsSpan(0, width), spots = _spots.AsSpan(0, width);
-            // By index: an enumerator of an interface would be allocated for every tile.
-            for (var h = 0; h < group.Linear.Count; h++)
-                BookProfit.AddLinear(spots, group.Spot, group.Linear[h].Units, _cells.AsSpan(group.Linear[h].Cell * Width, width));
-            for (var b = 0; b < group.Options.Count; b++) Options(group.Options[b], horizon, returns, spots);
-        }
-    }
-
-    private void Underlying(UnderlyingGroup group, int horizon, int width)
-    {
-        Span<double> returns = _returns.AsSpan(0, width), spots = _spots.AsSpan(0, width);
-        if (!group.Key.IsCross)
-        {
-            Move(group.Key.Factor, horizon, returns, spots);
-            return;
-        }
-        returns.Clear();
-        spots.Fill(1);
-        if (group.Key.Factor >= 0) Move(group.Key.Factor, horizon, returns, spots);
-        if (group.Key.Quote >= 0)
-        {
-            Span<double> quoteReturns = _quoteReturns.AsSpan(0, width), quotes = _volatilities.AsSpan(0, width);
-            Move(group.Key.Quote, horizon, quoteReturns, quotes);
-            Elementwise.Subtract(quoteReturns, returns);
-            Elementwise.DivideBy(quotes, spots);
-        }
-    }
-
-    private void Options(OptionBatch batch, int horizon, ReadOnlySpan<double> returns, ReadOnlySpan<double> spots)
-    {
-        var (width, terms) = (returns.Length, batch.Terms[horizon]);
-        if (batch.VolatilityFactor < 0)
-        {
-            for (var i = 0; i < terms.Length; i++)
-            {
-                ref readonly var item = ref batch.Items[i];
-                EuropeanOption.AccumulateValue(terms[i], returns, spots, item.Quantity, item.BaseValue, _cells.AsSpan(item.Cell * Width, width));
-            }
-            return;
-        }
-        var volatilities = _volatilities.AsSpan(0, width);
-        Move(batch.VolatilityFactor, horizon, _quoteReturns.AsSpan(0, width), volatilities);
-        for (var i = 0; i < terms.Length; i++)
-        {
-            ref readonly var item = ref batch.Items[i];
-            EuropeanOption.AccumulateValue(terms[i], returns, spots, volatilities, item.Quantity, item.BaseValue, _cells.AsSpan(item.Cell * Width, width));
-        }
-    }
-
-    private void Nodes(int width)
-    {
-        Array.Clear(_nodes);
-        for (var c = 0; c < _plan.Cells.Count; c++)
-        {
-            var cell = _plan.Cells[c];
-            BookProfit.AddConverted(_cells.AsSpan(c * Width, width), cell.Value, RatesOf(cell.Currency, width), _plan.Currencies[cell.Currency].Rate, _nodes.AsSpan(cell.Node * Width, width));
-        }
-        for (var node = _plan.Nodes.Count - 1; node > 0; node--)
-            Elementwise.Add(_nodes.AsSpan(node * Width, width), _nodes.AsSpan(_plan.Nodes[node].Parent * Width, width));
-    }
-
-    private void Losses(PlanRow row, int width, Span<double> losses)
-    {
-        var node = _plan.Nodes[row.Node];
-        var profit = _nodes.AsSpan(row.Node * Width, width);
-        if (row.InOwnCurrency)
-            BookProfit.LossInCurrency(profit, node.ValueRoot, RatesOf(node.Currency, width), _plan.Currencies[node.Currency].Rate, losses);
-        else
-            Elementwise.Negate(profit, losses);
     }
 }

@@ -13,25 +13,32 @@ public sealed class ChebyshevGrid
     /// <summary>Highest degree: rounding then stays below 3e-10 of values near 1.</summary>
     public const int MostDegree = 20;
 
+    private static readonly Lazy<ChebyshevGrid>[] s_grids = [.. Enumerable.Range(1, MostDegree).Select(n => new Lazy<ChebyshevGrid>(() => new(n)))];
+
     // Row k, column j: coefficient of z^k in the polynomial that is 1 at point j and 0 at the others.
     private readonly double[] _powers;
 
-    /// <summary>The grid of degree <paramref name="degree"/>, 1 to <see cref="MostDegree"/>.</summary>
-    /// <exception cref="ArgumentOutOfRangeException">The degree lies outside that range.</exception>
-    public ChebyshevGrid(int degree)
+    private ChebyshevGrid(int degree)
     {
-        ArgumentOutOfRangeException.ThrowIfLessThan(degree, 1);
-        ArgumentOutOfRangeException.ThrowIfGreaterThan(degree, MostDegree);
         Degree = degree;
         Points = PointsOf(degree);
         _powers = PowersOf(degree);
     }
 
+    /// <summary>The grid of degree <paramref name="degree"/>, 1 to <see cref="MostDegree"/>; made once.</summary>
+    /// <exception cref="ArgumentOutOfRangeException">The degree lies outside that range.</exception>
+    public static ChebyshevGrid Of(int degree)
+    {
+        ArgumentOutOfRangeException.ThrowIfLessThan(degree, 1);
+        ArgumentOutOfRangeException.ThrowIfGreaterThan(degree, MostDegree);
+        return s_grids[degree - 1].Value;
+    }
+
     /// <summary>The degree n.</summary>
     public int Degree { get; }
 
-    /// <summary>The n + 1 points, from 1 down to -1.</summary>
-    public IReadOnlyList<double> Points { get; }
+    /// <summary>The n + 1 points, from 1 down to -1; not to be written to.</summary>
+    public double[] Points { get; }
 
     /// <summary>The points cos(pi j / n), from 1 down to -1; any n of 1 or more.</summary>
     public static double[] PointsOf(int degree)

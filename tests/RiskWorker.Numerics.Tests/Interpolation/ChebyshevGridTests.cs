@@ -24,7 +24,7 @@ public sealed class ChebyshevGridTests
         var numbers = new SeededNumbers(310);
         for (var degree = 1; degree <= ChebyshevGrid.MostDegree; degree++)
         {
-            var grid = new ChebyshevGrid(degree);
+            var grid = ChebyshevGrid.Of(degree);
             var wanted = numbers.Between(-1, 1, degree + 1);
             double[] values = [.. grid.Points.Select(z => PolynomialSum.AddInTurn(wanted, z, 0))];
             var found = new double[degree + 1];
@@ -44,7 +44,7 @@ public sealed class ChebyshevGridTests
     [InlineData(20)]
     public void Interpolate_of_a_rational_function_converges_as_its_poles_allow(int degree)
     {
-        var grid = new ChebyshevGrid(degree);
+        var grid = ChebyshevGrid.Of(degree);
         double[] values = [.. grid.Points.Select(z => 1 / (1 + (4 * z * z)))];
         grid.Interpolate(values, 1, values);
         var worst = Enumerable.Range(0, 1001).Max(i => Math.Abs(PolynomialSum.AddInTurn(values, (i / 500.0) - 1, 0) - (1 / (1 + (4 * ((i / 500.0) - 1) * ((i / 500.0) - 1))))));
@@ -55,7 +55,7 @@ public sealed class ChebyshevGridTests
     [Fact]
     public void Interpolate_with_a_stride_leaves_the_rest_alone()
     {
-        var grid = new ChebyshevGrid(3);
+        var grid = ChebyshevGrid.Of(3);
         double[] memory = [1, -5, 2, -5, 0.5, -5, 4];
         var alone = new double[4];
         grid.Interpolate([1, 2, 0.5, 4], 1, alone);
@@ -66,5 +66,5 @@ public sealed class ChebyshevGridTests
     [Theory]
     [InlineData(0)]
     [InlineData(ChebyshevGrid.MostDegree + 1)]
-    public void Degree_outside_the_range_is_refused(int degree) => Assert.Throws<ArgumentOutOfRangeException>(() => new ChebyshevGrid(degree));
+    public void Degree_outside_the_range_is_refused(int degree) => Assert.Throws<ArgumentOutOfRangeException>(() => ChebyshevGrid.Of(degree));
 }

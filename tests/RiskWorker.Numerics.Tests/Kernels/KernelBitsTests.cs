@@ -31,6 +31,7 @@ public sealed class KernelBitsTests
         ["EuropeanOption at own volatility"] = OptionProfitsAtOwnVolatility,
         [nameof(BookProfit)] = BookLosses,
         [nameof(Elementwise)] = CrossRates,
+        [nameof(UnitScale)] = (n, y) => UnitScale.Apply(n.Between(-0.3, 0.3, Count), 3.7, 0.01, y),
         [nameof(PolynomialSum)] = Polynomials,
         [nameof(LaneSum)] = (n, y) => Sums(n.Between(-1e6, 1e6, 600), y),
     };
@@ -54,6 +55,7 @@ public sealed class KernelBitsTests
     [InlineData("EuropeanOption at own volatility", "64dfd4692444283dc1e9bcd9fe212fe4")]
     [InlineData("BookProfit", "b588542cd2b8a658be2db308b372280d")]
     [InlineData("Elementwise", "e83c48058ffce0ed22fe7337fccb311e")]
+    [InlineData("UnitScale", "849222ae93c6890bb75d188cf11d23d0")]
     [InlineData("PolynomialSum", "48de1c7b7d8e9610abe5836b526807d8")]
     [InlineData("LaneSum", "092d79c6bd865de46f059ec3ddc79409")]
     public void Outputs_bits_are_the_pinned_ones(string name, string expected)

@@ -1,0 +1,101 @@
+using RiskWorker.Engine.Plans;
+
+namespace RiskWorker.Engine.Simulation;
+
+/// <summary>
+/// Full revaluation of single scenarios of single nodes: whatever the surfaces place near a tail or in it. Scenarios of a node
+/// are gathered with the normals of the factors that it needs, and revalued side by side, its own positions only.
+/// </summary>
+internal sealed class ExactPass
+{
+    private const int Capacity = 64;
+    private const int Lanes = 8; // a full vector of lanes: odd ones would be valued one by one
+    private readonly RevaluationPlan _plan;
+    private readonly PlanSlice[] _slices;
+    private readonly int[][][] _rows;
+    private readonly Queue[][] _queues;
+    private readonly MarketLanes _market;
+    private readonly LaneTable _cells;
+    private readonly NodeProfits _nodes;
+    private readonly double[] _losses = new double[Capacity];
+
+    /// <summary>Makes room for the nodes of <paramref name="plan"/>, whose slices are <paramref name="slices"/>.</summary>
+    public ExactPass(RevaluationPlan plan, PlanSlice[] slices)
+    {
+        (_plan, _slices) = (plan, slices);
+        (_market, _cells, _nodes) = (new(plan, Capacity), new(plan.Cells.Count, Capacity), new(plan, Capacity));
+        _queues = [.. plan.Horizons.Select(_ => slices.Select(slice => new Queue(slice.Factors.Length)).ToArray())];
+        _rows = [.. plan.Horizons.Select((_, h) => slices.Select(s => RowsOf(plan, s.Node, h)).ToArray())];
+    }
+
+    /// <summary>Scenarios revalued so far, each counted once for every node and horizon.</summary>
+    public long Revalued { get; private set; }
+
+    /// <summary>The series of <paramref name="node"/> at <paramref name="horizon"/>.</summary>
+    public int[] RowsOf(int node, int horizon) => _rows[horizon][node];
+
+    /// <summary>Puts a scenario of a node aside.</summary>
+    /// <param name="node">The node.</param>
+    /// <param name="horizon">The horizon.</param>
+    /// <param name="normals">Normals of the tile that holds the scenario, a row a moving factor of the plan.</param>
+    /// <param name="stride">Distance of those rows.</param>
+    /// <param name="lane">Its lane there.</param>
+    /// <param name="losses">The block's losses, where those by surface will be replaced.</param>
+    /// <param name="place">Its place in a row of <paramref name="losses"/>.</param>
+    public void Add(int node, int horizon, double[] normals, int stride, int lane, double[] losses, int place)
+    {
+        var (queue, slice) = (_queues[horizon][node], _slices[node]);
+        for (var row = 0; row < slice.Factors.Length; row++)
+            queue.Normals[(row * Capacity) + queue.Count] = normals[(_plan.Moves.RowOf[slice.Factors[row]] * stride) + lane];
+        queue.Places[queue.Count++] = place;
+        if (queue.Count == Capacity) Revalue(node, horizon, losses);
+    }
+
+    /// <summary>Revalues everything that has been put aside.</summary>
+    public void Finish(double[] losses)
+    {
+        for (var horizon = 0; horizon < _queues.Length; horizon++)
+        {
+            for (var node = 0; node < _slices.Length; node++)
+            {
+                if (_queues[horizon][node].Count > 0) Revalue(node, horizon, losses);
+            }
+        }
+    }
+
+    private static int[] RowsOf(RevaluationPlan plan, int node, int horizon) =>
+        [.. Enumerable.Range(0, plan.Rows.Count).Where(r => plan.Rows[r].Node == node && plan.Rows[r].Horizon == horizon)];
+
+    private void Revalue(int node, int horizon, double[] losses)
+    {
+        var (queue, slice) = (_queues[horizon][node], _slices[node]);
+        var width = (queue.Count + Lanes - 1) / Lanes * Lanes;
+        for (var row = 0; row < slice.Factors.Length; row++)
+        {
+            var lanes = queue.Normals.AsSpan(row * Capacity, width);
+            lanes[queue.Count..].Fill(lanes[queue.Count - 1]);
+        }
+        _market.Take(queue.Normals, slice.RowOf, Capacity, width);
+        _market.MoveTo(horizon, slice);
+        _cells.Width = width;
+        _cells.Clear(slice.Cells.From, slice.Cells.To);
+        HoldingProfits.Add(_plan, slice, _market, horizon, _cells);
+        _nodes.Roll(slice, _market, _cells);
+        foreach (var row in _rows[horizon][node])
+        {
+            _nodes.Losses(_plan.Rows[row], _market, _losses.AsSpan(0, width));
+            for (var i = 0; i < queue.Count; i++) losses[(row * Blocks.Size) + queue.Places[i]] = _losses[i];
+        }
+        Revalued += queue.Count;
+        queue.Count = 0;
+    }
+
+    private sealed class Queue(int factors)
+    {
+        public double[] Normals { get; } = new double[factors * Capacity];
+
+        public int[] Places { get; } = new int[Capacity];
+
+        public int Count { get; set; }
+    }
+}

@@ -1,0 +1,111 @@
+using RiskWorker.Engine.Plans;
+using RiskWorker.Numerics.Kernels;
+
+namespace RiskWorker.Engine.Simulation;
+
+/// <summary>
+/// The market in some scenarios at one horizon, as moved by their correlated normals: returns and levels of an underlying, volatilities,
+/// exchange rates. A lane a scenario; every lane is computed on its own, so which lanes stand side by side changes no bit.
+/// </summary>
+internal sealed class MarketLanes
+{
+    private readonly RevaluationPlan _plan;
+    private readonly int _capacity;
+    private readonly double[] _roots;
+    private readonly double[] _still;
+    private readonly double[] _rates;
+    private readonly double[] _returns;
+    private readonly double[] _spots;
+    private readonly double[] _volatilityReturns;
+    private readonly double[] _volatilities;
+    private double[] _normals = [];
+    private int[] _rowOf = [];
+    private int _stride;
+    private int _horizon;
+
+    /// <summary>Makes room for <paramref name="capacity"/> lanes.</summary>
+    public MarketLanes(RevaluationPlan plan, int capacity)
+    {
+        (_plan, _capacity) = (plan, capacity);
+        _roots = [.. plan.Horizons.Select(h => Math.Sqrt(h.Days))];
+        _rates = new double[plan.Currencies.Count * capacity];
+        (_still, _returns, _spots) = (new double[capacity], new double[capacity], new double[capacity]);
+        (_volatilityReturns, _volatilities) = (new double[capacity], new double[capacity]);
+    }
+
+    /// <summary>Lanes in use.</summary>
+    public int Width { get; private set; }
+
+    /// <summary>Log-returns of the underlying last asked for; meaningless where its shocks are normal.</summary>
+    public ReadOnlySpan<double> Returns => _returns.AsSpan(0, Width);
+
+    /// <summary>Its levels.</summary>
+    public ReadOnlySpan<double> Spots => _spots.AsSpan(0, Width);
+
+    /// <summary>Log-returns of the volatility last asked for.</summary>
+    public ReadOnlySpan<double> VolatilityReturns => _volatilityReturns.AsSpan(0, Width);
+
+    /// <summary>Its levels.</summary>
+    public ReadOnlySpan<double> Volatilities => _volatilities.AsSpan(0, Width);
+
+    /// <summary>Takes the normals of the lanes.</summary>
+    /// <param name="normals">A row a moving factor, <paramref name="stride"/> apart.</param>
+    /// <param name="rowOf">For each factor its row, or -1 where it does not move.</param>
+    /// <param name="stride">Distance of rows.</param>
+    /// <param name="width">Lanes.</param>
+    public void Take(double[] normals, int[] rowOf, int stride, int width) => (_normals, _rowOf, _stride, Width) = (normals, rowOf, stride, width);
+
+    /// <summary>Goes to a horizon and converts the currencies of <paramref name="slice"/>.</summary>
+    public void MoveTo(int horizon, PlanSlice slice)
+    {
+        _horizon = horizon;
+        Rate(0).Fill(1);
+        // The returns are scratch here: an underlying is moved only afterwards.
+        foreach (var currency in slice.Currencies) Move(_plan.Currencies[currency].Factor, _returns.AsSpan(0, Width), Rate(currency));
+    }
+
+    /// <summary>Price of currency <paramref name="currency"/> in each lane.</summary>
+    public ReadOnlySpan<double> RatesOf(int currency) => Rate(currency);
+
+    /// <summary>Moves an underlying: <see cref="Returns"/> and <see cref="Spots"/> are then its own.</summary>
+    public void Underlying(in Pricing.UnderlyingKey key)
+    {
+        Span<double> returns = _returns.AsSpan(0, Width), spots = _spots.AsSpan(0, Width);
+        if (!key.IsCross)
+        {
+            Move(key.Factor, returns, spots);
+            return;
+        }
+        returns.Clear();
+        spots.Fill(1);
+        if (key.Factor >= 0) Move(key.Factor, returns, spots);
+        if (key.Quote >= 0)
+        {
+            Span<double> quoteReturns = _volatilityReturns.AsSpan(0, Width), quotes = _volatilities.AsSpan(0, Width);
+            Move(key.Quote, quoteReturns, quotes);
+            Elementwise.Subtract(quoteReturns, returns);
+            Elementwise.DivideBy(quotes, spots);
+        }
+    }
+
+    /// <summary>Moves a volatility: <see cref="VolatilityReturns"/> and <see cref="Volatilities"/> are then its own.</summary>
+    public void Volatility(int factor) => Move(factor, _volatilityReturns.AsSpan(0, Width), _volatilities.AsSpan(0, Width));
+
+    private Span<double> Rate(int currency) => _rates.AsSpan(currency * _capacity, Width);
+
+    private void Move(int factor, Span<double> returns, Span<double> levels)
+    {
+        var law = _plan.Moves.Factors[factor];
+        var (scale, drift) = (law.Deviation * _roots[_horizon], law.Drift * _plan.Horizons[_horizon].Days);
+        var normals = _rowOf[factor] is var row && row < 0 ? _still.AsSpan(0, Width) : _normals.AsSpan(row * _stride, Width);
+        if (law.IsLognormal)
+        {
+            LogNormalMoves.LogReturns(normals, scale, drift, returns);
+            LogNormalMoves.Spots(returns, law.Level, levels);
+        }
+        else
+        {
+            LogNormalMoves.Levels(normals, scale, drift, law.Level, levels);
+        }
+    }
+}
