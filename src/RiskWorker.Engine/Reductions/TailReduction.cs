@@ -38,7 +38,20 @@ public sealed class TailReduction : Reduction<TailRecord>
     public TailReduction(double[] cutoffs, HistogramEdges[] edges, double mass = 0) => (_cutoffs, _edges, _mass) = (cutoffs, edges, mass);
 
     /// <inheritdoc/>
-    public override TailRecord Empty(int blocks = 0) => new(_cutoffs.Length, HistogramEdges.Bins, blocks, (int)Math.Ceiling(Math.Min(1, 1.2 * _mass) * blocks * Blocks.Size));
+    public override TailRecord Empty(int blocks = 0)
+    {
+        var record = new TailRecord(blocks);
+        record.Reset(_cutoffs.Length);
+        MakeRoom(record, blocks);
+        return record;
+    }
+
+    /// <summary>Makes room in <paramref name="record"/> for the tails of about <paramref name="blocks"/> more blocks.</summary>
+    internal void MakeRoom(TailRecord record, int blocks)
+    {
+        var more = (int)Math.Ceiling(Math.Min(1, 1.2 * _mass) * blocks * Blocks.Size);
+        for (var row = 0; row < _cutoffs.Length; row++) record.TailOf(row).EnsureCapacity(record.TailOf(row).Count + more);
+    }
 
     /// <inheritdoc/>
     public override void Accumulate(TailRecord record, in LossBlock block)
@@ -65,17 +78,26 @@ public sealed class TailReduction : Reduction<TailRecord>
     /// <inheritdoc/>
     public override void Merge(TailRecord record, TailRecord from)
     {
-        for (var row = 0; row < _cutoffs.Length; row++)
-        {
-            record.TailOf(row).AddRange(from.TailOf(row));
-            record.Equal[row] += from.Equal[row];
-            Elementwise(record.HistogramOf(row), from.HistogramOf(row));
-        }
+        for (var row = 0; row < _cutoffs.Length; row++) MergeRow(record, from, row);
+        MergeSums(record, from);
+    }
+
+    /// <summary>The part of <see cref="Merge"/> that concerns one series alone; several threads may merge a series each.</summary>
+    internal static void MergeRow(TailRecord record, TailRecord from, int row)
+    {
+        record.TailOf(row).AddRange(from.TailOf(row));
+        record.Equal[row] += from.Equal[row];
+        AddTo(record.HistogramOf(row), from.HistogramOf(row));
+    }
+
+    /// <summary>The part of <see cref="Merge"/> that concerns all series together.</summary>
+    internal static void MergeSums(TailRecord record, TailRecord from)
+    {
         record.Sums.Merge(from.Sums);
         record.Count += from.Count;
     }
 
-    private static void Elementwise(long[] counts, long[] more)
+    private static void AddTo(long[] counts, long[] more)
     {
         for (var i = 0; i < counts.Length; i++) counts[i] += more[i];
     }

@@ -1,3 +1,4 @@
+using System.Diagnostics.CodeAnalysis;
 using RiskWorker.Engine.Plans;
 using RiskWorker.Numerics.Kernels;
 using RiskWorker.Numerics.Random;
@@ -13,31 +14,36 @@ public sealed class ScenarioTile
     /// <summary>Scenarios in a tile: ten panels of the triangular product, and buffers that fit the second-level cache.</summary>
     public const int Width = 240;
 
-    private readonly RevaluationPlan _plan;
-    private readonly DrawStream _stream;
-    private readonly double[] _roots;
-    private readonly double[] _draws;
-    private readonly double[] _normals;
     private readonly double[] _still = new double[Width];
-    private readonly double[] _rates;
-    private readonly double[] _cells;
-    private readonly double[] _nodes;
     private readonly double[] _returns = new double[Width];
     private readonly double[] _quoteReturns = new double[Width];
     private readonly double[] _spots = new double[Width];
     private readonly double[] _volatilities = new double[Width];
+    private RevaluationPlan _plan;
+    private DrawStream _stream;
+    private double[] _roots = [];
+    private double[] _draws = [];
+    private double[] _normals = [];
+    private double[] _rates = [];
+    private double[] _cells = [];
+    private double[] _nodes = [];
 
     /// <summary>Allocates the buffers for <paramref name="plan"/>.</summary>
-    public ScenarioTile(RevaluationPlan plan)
+    public ScenarioTile(RevaluationPlan plan) => Serve(plan);
+
+    /// <summary>Turns to <paramref name="plan"/>; buffers that are large enough are used again.</summary>
+    [MemberNotNull(nameof(_plan))]
+    public void Serve(RevaluationPlan plan)
     {
+        if (ReferenceEquals(_plan, plan)) return;
         _plan = plan;
         _stream = new(plan.Seed, DrawPurpose.FactorMoves, 0);
         _roots = [.. plan.Horizons.Select(h => Math.Sqrt(h.Days))];
-        _draws = new double[(plan.Moves.Rank + 1) * Width]; // room for the second half of an odd last pair
-        _normals = new double[plan.Moves.Rows * Width];
-        _rates = new double[plan.Currencies.Count * Width];
-        _cells = new double[plan.Cells.Count * Width];
-        _nodes = new double[plan.Nodes.Count * Width];
+        Room.For(ref _draws, (plan.Moves.Rank + 1) * Width); // room for the second half of an odd last pair
+        Room.For(ref _normals, plan.Moves.Rows * Width);
+        Room.For(ref _rates, plan.Currencies.Count * Width);
+        Room.For(ref _cells, plan.Cells.Count * Width);
+        Room.For(ref _nodes, plan.Nodes.Count * Width);
     }
 
     /// <summary>Writes the losses of scenarios <paramref name="first"/> to first + width - 1.</summary>
@@ -98,7 +104,7 @@ public sealed class ScenarioTile
 
     private void Cells(int horizon, int width)
     {
-        Array.Clear(_cells);
+        Array.Clear(_cells, 0, _plan.Cells.Count * Width);
         for (var g = 0; g < _plan.Groups.Count; g++)
         {
             var group = _plan.Groups[g];
@@ -154,7 +160,7 @@ public sealed class ScenarioTile
 
     private void Nodes(int width)
     {
-        Array.Clear(_nodes);
+        Array.Clear(_nodes, 0, _plan.Nodes.Count * Width);
         for (var c = 0; c < _plan.Cells.Count; c++)
         {
             var cell = _plan.Cells[c];
