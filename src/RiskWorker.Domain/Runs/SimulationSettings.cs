@@ -15,6 +15,25 @@ public sealed record SimulationSettings
     /// <summary>Most scenarios that a run may use.</summary>
     public int Cap { get; init; } = 1_600_000;
 
+    /// <summary>How values in the scenarios are found.</summary>
+    public RevaluationKind Revaluation { get; init; } = RevaluationKind.Surface;
+
+    /// <summary>Largest error of a price surface, as a fraction of the gross value that it stands for.</summary>
+    public double SurfaceError { get; init; } = 1e-7;
+
+    /// <summary>Whether tails are revalued fully where surfaces are in use; then VaR, expected shortfall and their intervals are those of full revaluation to the last bit.</summary>
+    public bool ExactTail { get; init; } = true;
+
     /// <summary>Wanted half-width of the top node's measures as a fraction of their value, or null.</summary>
     public double? Precision { get; init; }
+}
+
+/// <summary>How values in the scenarios are found.</summary>
+public enum RevaluationKind
+{
+    /// <summary>By price surfaces, and fully in the tails.</summary>
+    Surface,
+
+    /// <summary>Fully, everywhere.</summary>
+    Full,
 }

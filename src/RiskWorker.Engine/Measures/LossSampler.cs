@@ -1,7 +1,9 @@
 using System.Diagnostics.CodeAnalysis;
+using RiskWorker.Domain.Runs;
 using RiskWorker.Engine.Plans;
 using RiskWorker.Engine.Reductions;
 using RiskWorker.Engine.Simulation;
+using RiskWorker.Engine.Surfaces;
 using RiskWorker.Numerics.Statistics;
 
 namespace RiskWorker.Engine.Measures;
@@ -16,22 +18,25 @@ public sealed class LossSampler
     public const int PilotScenarios = 16_384;
 
     private readonly RevaluationPlan _plan;
+    private readonly SimulationWorkspace _workspace;
+    private readonly int _number;
     private readonly BlockEvaluator _evaluator;
+    private readonly SurfaceSet? _surfaces;
+    private readonly bool _isTailExact;
     private readonly TailDemand _demand;
-    private readonly Action<long>? _drawn;
+    private readonly Action<int>? _drawn;
     private readonly CancellationToken _cancellation;
-    private readonly double[][] _pilot;
-    private readonly double[] _scratch;
+    private readonly LossSample _pilot;
     private readonly int _pilotCount;
     private readonly HistogramEdges[] _edges;
     private readonly double[] _cutoffs;
     private readonly double _mass;
     private TailReduction _reduction;
-    private TailRecord _whole;
+    private TailRecord[] _records;
     private int _wholeBlocks;
     private long _known;
 
-    /// <summary>Draws the pilot.</summary>
+    /// <summary>Draws the pilot, with a workspace of its own.</summary>
     /// <param name="plan">The plan.</param>
     /// <param name="threads">Threads to use.</param>
     /// <param name="demand">How deep the measures look.</param>
@@ -39,86 +44,149 @@ public sealed class LossSampler
     /// <param name="drawn">Told after each block how many scenarios of the look that is under way are drawn; called from many threads.</param>
     /// <param name="cancellation">Stops the run.</param>
     public LossSampler(RevaluationPlan plan, int threads, TailDemand demand, int firstLook, Action<long>? drawn, CancellationToken cancellation)
+        : this(plan, new SimulationWorkspace(threads), demand, new() { Scenarios = firstLook, Revaluation = RevaluationKind.Full }, drawn, cancellation)
     {
-        (_plan, _demand, _drawn, _cancellation) = (plan, demand, drawn, cancellation);
-        _evaluator = new(plan, threads);
+    }
+
+    /// <summary>Draws the pilot.</summary>
+    /// <param name="plan">The plan.</param>
+    /// <param name="workspace">Threads and buffers, this sampler's until another one begins on it.</param>
+    /// <param name="demand">How deep the measures look.</param>
+    /// <param name="settings">Scenarios of the first look, N0, and how to revalue.</param>
+    /// <param name="drawn">Told after each block how many scenarios of the look that is under way are drawn; called from many threads.</param>
+    /// <param name="cancellation">Stops the run.</param>
+    public LossSampler(RevaluationPlan plan, SimulationWorkspace workspace, TailDemand demand, SimulationSettings settings, Action<long>? drawn, CancellationToken cancellation)
+    {
+        var firstLook = settings.Scenarios;
+        (_plan, _workspace, _demand, _cancellation) = (plan, workspace, demand, cancellation);
+        _number = workspace.BeginSampler();
+        _surfaces = SurfacesFor(settings);
+        _isTailExact = settings.ExactTail;
+        _evaluator = new(plan, workspace, _surfaces);
+        _drawn = drawn is null ? null : width => drawn(Interlocked.Add(ref _known, width));
         _pilotCount = Math.Min(PilotScenarios, firstLook);
-        _pilot = Evaluate(BlockRange.From(0, _pilotCount), new LossSampleReduction(plan.Rows.Count, _pilotCount));
-        _edges = [.. _pilot.Select(losses => HistogramEdges.Holding(losses))];
-        _scratch = new double[_pilotCount];
+        _pilot = workspace.Pilot.Reset(plan.Rows.Count, _pilotCount);
+        // Every thread adds to the one sample, each its own blocks.
+        _evaluator.EvaluateInto(BlockRange.From(0, _pilotCount), new LossSampleReduction(plan.Rows.Count, _pilotCount), (_, _) => _pilot, null, _drawn, cancellation);
+        if (_evaluator.BoundFaults > 0) (_surfaces, _evaluator, AreSurfacesRefused) = (null, new(plan, workspace), true);
         var needed = (double)demand.DeepestRank(firstLook) / firstLook;
         _mass = needed + (6 * Math.Sqrt(needed / _pilotCount));
-        _cutoffs = [.. _pilot.Select(losses => CutoffAt(losses, _mass))];
+        (_edges, _cutoffs) = (new HistogramEdges[plan.Rows.Count], new double[plan.Rows.Count]);
+        ForEachPilotRow(Enumerable.Range(0, plan.Rows.Count), (row, losses) => (_edges[row], _cutoffs[row]) = (HistogramEdges.Holding(losses), CutoffAt(losses, _mass)));
         Restart();
     }
+
+    /// <summary>The surfaces in use, or null.</summary>
+    public SurfaceSet? Surfaces => _surfaces;
+
+    /// <summary>Whether surfaces were built and then refused, since the pilot lay outside their bound: everything is then revalued fully.</summary>
+    public bool AreSurfacesRefused { get; }
 
     /// <summary>Edges of each series' histogram.</summary>
     public IReadOnlyList<HistogramEdges> Edges => _edges;
 
-    /// <summary>The tails of the first <paramref name="scenarios"/> scenarios; never fewer than at the look before.</summary>
+    /// <summary>The tails of the first <paramref name="scenarios"/> scenarios; never fewer than at the look before. What is returned is the caller's: later looks leave it as it is.</summary>
     /// <exception cref="ArgumentOutOfRangeException">Fewer scenarios than the pilot's, or than at the look before.</exception>
+    /// <exception cref="InvalidOperationException">Another sampler has begun on the workspace.</exception>
     public (TailRecord Record, IReadOnlyList<SampledLoss> Series) Look(int scenarios)
     {
         ArgumentOutOfRangeException.ThrowIfLessThan(scenarios, Math.Max(_pilotCount, _wholeBlocks * Blocks.Size));
         while (true)
         {
-            var record = Draw(scenarios);
-            var series = _plan.Rows.Select((_, row) => new SampledLoss(scenarios, record.SortedTail(row), _cutoffs[row], record.EqualTo(row))).ToArray();
+            Draw(scenarios);
+            var (record, series) = Tails(scenarios);
             if (!LowerCutoffs(series, _demand.DeepestRank(scenarios))) return (record, series);
         }
     }
 
-    private TailRecord Draw(int scenarios)
+    // Whole blocks are kept from look to look, a record a thread; the short last one stands apart, since a later look draws it anew.
+    // The pilot's blocks are reduced from memory instead of being drawn twice.
+    private void Draw(int scenarios)
     {
-        _known = (long)_wholeBlocks * Blocks.Size;
-        var whole = BlockRange.Whole(_wholeBlocks, scenarios);
-        _reduction.Merge(_whole, Evaluate(whole, _reduction));
-        _wholeBlocks = Math.Max(_wholeBlocks, whole.End);
-        if (scenarios % Blocks.Size == 0) return _whole;
-        var record = _reduction.Empty();
-        _reduction.Merge(record, _whole);
-        _reduction.Merge(record, Evaluate(BlockRange.From(_wholeBlocks, scenarios), _reduction));
-        return record;
+        _workspace.RequireSampler(_number);
+        var range = BlockRange.From(_wholeBlocks, scenarios);
+        var (end, last) = (scenarios / Blocks.Size, _records[^1]);
+        last.Reset(_plan.Rows.Count);
+        MakeRoom(end - range.First, last);
+        _known = (long)Math.Max(_wholeBlocks, _pilotCount / Blocks.Size) * Blocks.Size;
+        try
+        {
+            _evaluator.EvaluateInto(range, _reduction, (worker, block) => block < end ? _records[worker] : last, _pilot, _drawn, _cancellation);
+        }
+        catch
+        {
+            Restart(); // the records hold who knows which blocks
+            throw;
+        }
+        _wholeBlocks = end;
     }
 
-    private TRecord Evaluate<TRecord>(BlockRange range, Reduction<TRecord> reduction) =>
-        _evaluator.Evaluate(range, reduction, _drawn is null ? null : width => _drawn(Interlocked.Add(ref _known, width)), _cancellation);
+    private void MakeRoom(int wholeBlocks, TailRecord last)
+    {
+        var workers = Math.Min(_workspace.Threads, wholeBlocks);
+        for (var worker = 0; worker < workers; worker++) _reduction.MakeRoom(_records[worker], (wholeBlocks / workers) + 1);
+        _reduction.MakeRoom(last, 1);
+    }
+
+    private (TailRecord Record, SampledLoss[] Series) Tails(int scenarios)
+    {
+        var (record, series) = (_reduction.Empty(), new SampledLoss[_plan.Rows.Count]);
+        _workspace.ForEach(series.Length, (_, buffers, row, _) =>
+        {
+            record.EnsureTail(row, _records.Sum(part => part.TailOf(row).Count));
+            foreach (var part in _records) TailReduction.MergeRow(record, part, row);
+            series[row] = new(scenarios, record.SortTail(row, buffers), _cutoffs[row], record.EqualTo(row));
+        }, _cancellation);
+        foreach (var part in _records) TailReduction.MergeSums(record, part);
+        return (record, series);
+    }
 
     private bool LowerCutoffs(SampledLoss[] series, int deepest)
     {
-        var lowered = false;
-        for (var row = 0; row < series.Length; row++)
+        var shallow = Enumerable.Range(0, series.Length).Where(row => series[row].Known < deepest).ToArray();
+        if (shallow.Length == 0) return false;
+        ForEachPilotRow(shallow, (row, losses) =>
         {
-            if (series[row].Known >= deepest) continue;
-            var reached = _pilot[row].Count(loss => loss >= _cutoffs[row]);
-            _cutoffs[row] = CutoffAt(_pilot[row], 2.0 * reached / _pilotCount);
-            lowered = true;
-        }
-        if (lowered) Restart();
-        return lowered;
+            var reached = 0;
+            foreach (var loss in losses) reached += loss >= _cutoffs[row] ? 1 : 0;
+            _cutoffs[row] = CutoffAt(losses, 2.0 * reached / _pilotCount);
+        });
+        Restart();
+        return true;
     }
 
-    // The pilot's whole blocks are the run's first blocks: they are reduced from memory instead of drawn twice.
-    [MemberNotNull(nameof(_reduction), nameof(_whole))]
+    // A run that draws little beyond its pilot is done before surfaces would pay.
+    private SurfaceSet? SurfacesFor(SimulationSettings settings)
+    {
+        if (settings.Revaluation == RevaluationKind.Full || settings.Scenarios <= 2 * PilotScenarios) return null;
+        var surfaces = new SurfaceBuilder(_plan, settings.SurfaceError).Build(_workspace, _cancellation);
+        return surfaces.Count > 0 ? surfaces : null;
+    }
+
+    [MemberNotNull(nameof(_reduction), nameof(_records))]
     private void Restart()
     {
-        _reduction = new(_cutoffs, _edges, _mass);
-        _whole = _reduction.Empty();
-        _wholeBlocks = _pilotCount / Blocks.Size;
-        var losses = new double[_plan.Rows.Count * Blocks.Size];
-        for (var block = 0; block < _wholeBlocks; block++)
+        _reduction = new(_cutoffs, _edges, _mass, _isTailExact);
+        _records = _workspace.EmptyRecords(_plan.Rows.Count);
+        _wholeBlocks = 0;
+    }
+
+    /// <summary>Gives copies of the pilot's losses of some rows, which may be reordered, to <paramref name="work"/>, over the threads.</summary>
+    private void ForEachPilotRow(IEnumerable<int> rows, Action<int, Span<double>> work)
+    {
+        var all = rows.ToArray();
+        _workspace.ForEach(all.Length, (_, buffers, item, _) =>
         {
-            for (var row = 0; row < _pilot.Length; row++) _pilot[row].AsSpan(block * Blocks.Size, Blocks.Size).CopyTo(losses.AsSpan(row * Blocks.Size));
-            _reduction.Accumulate(_whole, new(block, Blocks.Size, losses));
-        }
+            var losses = buffers.Values(_pilotCount);
+            _pilot.CopyRow(all[item], losses);
+            work(all[item], losses);
+        }, _cancellation);
     }
 
     // Nothing needs to be left out where the mass is nearly all of the sample.
-    private double CutoffAt(double[] losses, double mass)
+    private static double CutoffAt(Span<double> losses, double mass)
     {
         var rank = (int)Math.Ceiling(mass * losses.Length);
-        if (rank >= losses.Length) return double.NegativeInfinity;
-        losses.CopyTo(_scratch, 0);
-        return OrderStatistic.Largest(_scratch, rank);
+        return rank >= losses.Length ? double.NegativeInfinity : OrderStatistic.Largest(losses, rank);
     }
 }

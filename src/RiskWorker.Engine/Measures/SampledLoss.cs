@@ -11,7 +11,6 @@ namespace RiskWorker.Engine.Measures;
 /// </summary>
 public sealed class SampledLoss
 {
-    private readonly TailEntry[] _tail;
     private readonly double[] _losses;
     private readonly double _cutoff;
     private readonly long _equal;
@@ -21,24 +20,24 @@ public sealed class SampledLoss
     /// <param name="tail">Those beyond the cutoff, worst first.</param>
     /// <param name="cutoff">The cutoff.</param>
     /// <param name="equal">Losses equal to the cutoff.</param>
-    public SampledLoss(int count, TailEntry[] tail, double cutoff, long equal)
+    public SampledLoss(int count, ReadOnlySpan<TailEntry> tail, double cutoff, long equal)
     {
-        (Count, _tail, _cutoff, _equal) = (count, tail, Unsigned(cutoff), equal);
-        _losses = [.. tail.Select(t => Unsigned(t.Loss))];
+        (Count, _losses, _cutoff, _equal) = (count, new double[tail.Length], Unsigned(cutoff), equal);
+        for (var i = 0; i < tail.Length; i++) _losses[i] = Unsigned(tail[i].Loss);
     }
 
     /// <summary>Number of losses, N.</summary>
     public int Count { get; }
 
     /// <summary>Worst ranks that are known.</summary>
-    public long Known => _tail.Length + _equal;
+    public long Known => _losses.Length + _equal;
 
     /// <summary>The loss of <paramref name="rank"/>, 1 being the worst.</summary>
     /// <exception cref="ArgumentOutOfRangeException">The rank lies below the cutoff.</exception>
     public double AtRank(long rank)
     {
         if (rank < 1 || rank > Known) throw new ArgumentOutOfRangeException(nameof(rank), rank, $"Ranks 1 to {Known} are known.");
-        return rank <= _tail.Length ? _losses[rank - 1] : _cutoff;
+        return rank <= _losses.Length ? _losses[rank - 1] : _cutoff;
     }
 
     /// <summary>The rank from the worst that VaR at <paramref name="confidence"/> stands on: N - ceil(N alpha) + 1.</summary>

@@ -9,6 +9,12 @@ namespace RiskWorker.Engine.Reductions;
 /// <typeparam name="TRecord">The record kept.</typeparam>
 public abstract class Reduction<TRecord>
 {
+    /// <summary>
+    /// For each series the loss from which on losses must be those of full revaluation, to the last bit; below it a value by surface will do.
+    /// Null where every loss must be.
+    /// </summary>
+    public virtual double[]? ExactFrom => null;
+
     /// <summary>A record of no blocks, with room for about <paramref name="blocks"/> of them, so that adding them allocates nothing.</summary>
     public abstract TRecord Empty(int blocks = 0);
 

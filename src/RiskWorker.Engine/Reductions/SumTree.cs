@@ -9,14 +9,21 @@ public sealed class SumTree
 {
     private readonly Dictionary<(int Level, int Index), int> _subtrees;
     private readonly Stack<int> _free;
+    private readonly int _room;
     private double[] _slab = [];
     private int _width;
     private int _used;
 
     /// <summary>A tree with room for <paramref name="blocks"/> blocks that do not merge; more are taken, at the cost of an allocation.</summary>
-    public SumTree(int blocks = 0) => (_subtrees, _free, Room) = (new(blocks), new(blocks), blocks);
+    public SumTree(int blocks = 0) => (_subtrees, _free, _room) = (new(blocks), new(blocks), blocks);
 
-    private int Room { get; }
+    /// <summary>Forgets every block; the memory stays, and the next block may have another number of sums.</summary>
+    internal void Clear()
+    {
+        _subtrees.Clear();
+        _free.Clear();
+        (_width, _used) = (0, 0);
+    }
 
     /// <summary>Adds the sums of one block; all blocks have the same number of sums.</summary>
     /// <exception cref="InvalidOperationException">The block, or a subtree that holds it, is there already.</exception>
@@ -57,7 +64,12 @@ public sealed class SumTree
 
     private int Rent(ReadOnlySpan<double> sums)
     {
-        if (_width == 0) (_width, _slab) = (sums.Length, new double[sums.Length * Math.Max(Room, 8)]);
+        if (_width == 0)
+        {
+            _width = sums.Length;
+            var room = _width * Math.Max(_room, 8);
+            if (_slab.Length < room) _slab = new double[room];
+        }
         if (!_free.TryPop(out var place))
         {
             place = _used++;

@@ -1,3 +1,6 @@
+using System.Runtime.InteropServices;
+using RiskWorker.Engine.Simulation;
+
 namespace RiskWorker.Engine.Reductions;
 
 /// <summary>A scenario whose loss lies beyond the cutoff.</summary>
@@ -9,31 +12,55 @@ public readonly record struct TailEntry(double Loss, long Scenario);
 /// </summary>
 public sealed class TailRecord
 {
-    private readonly List<TailEntry>[] _tails;
-    private readonly long[][] _histograms;
+    private List<TailEntry>[] _tails = [];
+    private long[][] _histograms = [];
 
-    internal TailRecord(int rows, int bins, int blocks, int tail)
-    {
-        _tails = [.. Enumerable.Range(0, rows).Select(_ => new List<TailEntry>(tail))];
-        _histograms = [.. Enumerable.Range(0, rows).Select(_ => new long[bins + 2])];
-        Equal = new long[rows];
-        Sums = new(blocks);
-        BlockSums = new double[2 * rows];
-    }
+    internal TailRecord(int blocks = 0) => Sums = new(blocks);
 
     /// <summary>Scenarios seen.</summary>
     public long Count { get; internal set; }
+
+    /// <summary>Scenarios that were revalued fully where surfaces are in use, each counted once for every node and horizon.</summary>
+    public long Revalued { get; internal set; }
 
     /// <summary>Sums of losses, then of their squares, series by series.</summary>
     public SumTree Sums { get; }
 
     /// <summary>Where the sums of the block at hand are formed.</summary>
-    internal double[] BlockSums { get; }
+    internal double[] BlockSums { get; private set; } = [];
 
     /// <summary>Losses equal to the cutoff, by series: counted, not kept.</summary>
-    internal long[] Equal { get; }
+    internal long[] Equal { get; private set; } = [];
+
+    /// <summary>Forgets every block and turns to <paramref name="rows"/> series; the memory stays.</summary>
+    internal void Reset(int rows)
+    {
+        if (_tails.Length != rows)
+        {
+            (_tails, _histograms) = (_tails[..Math.Min(rows, _tails.Length)], _histograms[..Math.Min(rows, _histograms.Length)]);
+            _tails = [.. _tails, .. Enumerable.Range(0, rows - _tails.Length).Select(_ => new List<TailEntry>())];
+            _histograms = [.. _histograms, .. Enumerable.Range(0, rows - _histograms.Length).Select(_ => new long[HistogramEdges.Bins + 2])];
+            (Equal, BlockSums) = (new long[rows], new double[2 * rows]);
+        }
+        foreach (var tail in _tails) tail.Clear();
+        foreach (var histogram in _histograms) Array.Clear(histogram);
+        Array.Clear(Equal);
+        Sums.Clear();
+        (Count, Revalued) = (0, 0);
+    }
 
     internal List<TailEntry> TailOf(int row) => _tails[row];
+
+    /// <summary>Makes room for a tail of <paramref name="count"/> entries.</summary>
+    internal void EnsureTail(int row, int count) => _tails[row].EnsureCapacity(count);
+
+    /// <summary>Puts the tail of series <paramref name="row"/> into its order where it stands, which changes no answer of the record.</summary>
+    internal ReadOnlySpan<TailEntry> SortTail(int row, WorkerBuffers buffers)
+    {
+        var tail = CollectionsMarshal.AsSpan(_tails[row]);
+        TailOrder.Sort(tail, buffers.Keys(tail.Length));
+        return tail;
+    }
 
     internal long[] HistogramOf(int row) => _histograms[row];
 
@@ -41,7 +68,7 @@ public sealed class TailRecord
     public TailEntry[] SortedTail(int row)
     {
         var tail = _tails[row].ToArray();
-        Array.Sort(tail, static (a, b) => a.Loss != b.Loss ? b.Loss.CompareTo(a.Loss) : a.Scenario.CompareTo(b.Scenario));
+        TailOrder.Sort(tail, new ulong[tail.Length]);
         return tail;
     }
 

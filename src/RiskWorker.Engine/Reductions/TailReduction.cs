@@ -30,15 +30,37 @@ public sealed class TailReduction : Reduction<TailRecord>
     private readonly double[] _cutoffs;
     private readonly HistogramEdges[] _edges;
     private readonly double _mass;
+    private readonly double[] _exactFrom;
 
     /// <summary>Takes a cutoff and the histogram's edges for each series of the plan.</summary>
     /// <param name="cutoffs">Cutoffs.</param>
     /// <param name="edges">Edges.</param>
     /// <param name="mass">Share of losses expected beyond a cutoff: room is made for that many.</param>
-    public TailReduction(double[] cutoffs, HistogramEdges[] edges, double mass = 0) => (_cutoffs, _edges, _mass) = (cutoffs, edges, mass);
+    /// <param name="isTailExact">Whether losses from the cutoff on must be those of full revaluation.</param>
+    public TailReduction(double[] cutoffs, HistogramEdges[] edges, double mass = 0, bool isTailExact = true)
+    {
+        (_cutoffs, _edges, _mass) = (cutoffs, edges, mass);
+        _exactFrom = isTailExact ? cutoffs : [.. cutoffs.Select(_ => double.PositiveInfinity)];
+    }
 
     /// <inheritdoc/>
-    public override TailRecord Empty(int blocks = 0) => new(_cutoffs.Length, HistogramEdges.Bins, blocks, (int)Math.Ceiling(Math.Min(1, 1.2 * _mass) * blocks * Blocks.Size));
+    public override double[] ExactFrom => _exactFrom;
+
+    /// <inheritdoc/>
+    public override TailRecord Empty(int blocks = 0)
+    {
+        var record = new TailRecord(blocks);
+        record.Reset(_cutoffs.Length);
+        MakeRoom(record, blocks);
+        return record;
+    }
+
+    /// <summary>Makes room in <paramref name="record"/> for the tails of about <paramref name="blocks"/> more blocks.</summary>
+    internal void MakeRoom(TailRecord record, int blocks)
+    {
+        var more = (int)Math.Ceiling(Math.Min(1, 1.2 * _mass) * blocks * Blocks.Size);
+        for (var row = 0; row < _cutoffs.Length; row++) record.TailOf(row).EnsureCapacity(record.TailOf(row).Count + more);
+    }
 
     /// <inheritdoc/>
     public override void Accumulate(TailRecord record, in LossBlock block)
@@ -60,22 +82,33 @@ public sealed class TailReduction : Reduction<TailRecord>
         }
         record.Sums.Add(block.Index, sums);
         record.Count += block.Width;
+        record.Revalued += block.Revalued;
     }
 
     /// <inheritdoc/>
     public override void Merge(TailRecord record, TailRecord from)
     {
-        for (var row = 0; row < _cutoffs.Length; row++)
-        {
-            record.TailOf(row).AddRange(from.TailOf(row));
-            record.Equal[row] += from.Equal[row];
-            Elementwise(record.HistogramOf(row), from.HistogramOf(row));
-        }
-        record.Sums.Merge(from.Sums);
-        record.Count += from.Count;
+        for (var row = 0; row < _cutoffs.Length; row++) MergeRow(record, from, row);
+        MergeSums(record, from);
     }
 
-    private static void Elementwise(long[] counts, long[] more)
+    /// <summary>The part of <see cref="Merge"/> that concerns one series alone; several threads may merge a series each.</summary>
+    internal static void MergeRow(TailRecord record, TailRecord from, int row)
+    {
+        record.TailOf(row).AddRange(from.TailOf(row));
+        record.Equal[row] += from.Equal[row];
+        AddTo(record.HistogramOf(row), from.HistogramOf(row));
+    }
+
+    /// <summary>The part of <see cref="Merge"/> that concerns all series together.</summary>
+    internal static void MergeSums(TailRecord record, TailRecord from)
+    {
+        record.Sums.Merge(from.Sums);
+        record.Count += from.Count;
+        record.Revalued += from.Revalued;
+    }
+
+    private static void AddTo(long[] counts, long[] more)
     {
         for (var i = 0; i < counts.Length; i++) counts[i] += more[i];
     }

@@ -51,7 +51,7 @@ public sealed class LookedRun
         var levels = new List<decimal> { _looks.Level };
         if (_limits.Any(l => l.Basis == LimitBasis.Book)) levels.Add(LimitEvaluator.LevelOfEachOfTwo(_looks.Level));
         var planned = _looks.Scenarios[0];
-        var sampler = new LossSampler(_plan, threads, new(_measures, levels), planned,
+        var sampler = new LossSampler(_plan, new(threads), new(_measures, levels), _settings with { Scenarios = planned },
             progress is null ? null : drawn => progress.Report(new("simulate", drawn, planned)), cancellation);
         for (var look = 0; ; look++)
         {

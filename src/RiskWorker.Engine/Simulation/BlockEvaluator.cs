@@ -1,6 +1,6 @@
-using System.Runtime.ExceptionServices;
 using RiskWorker.Engine.Plans;
 using RiskWorker.Engine.Reductions;
+using RiskWorker.Engine.Surfaces;
 
 namespace RiskWorker.Engine.Simulation;
 
@@ -11,14 +11,27 @@ namespace RiskWorker.Engine.Simulation;
 public sealed class BlockEvaluator
 {
     private readonly RevaluationPlan _plan;
-    private readonly int _threads;
+    private readonly SimulationWorkspace _workspace;
+    private readonly SurfaceSet? _surfaces;
+    private long _boundFaults;
 
     /// <summary>Takes the plan and the number of threads, at least 1.</summary>
     public BlockEvaluator(RevaluationPlan plan, int threads)
+        : this(plan, new SimulationWorkspace(threads))
     {
-        ArgumentOutOfRangeException.ThrowIfLessThan(threads, 1);
-        (_plan, _threads) = (plan, threads);
     }
+
+    /// <summary>Takes the plan, and the threads and buffers to use.</summary>
+    /// <param name="plan">The plan.</param>
+    /// <param name="workspace">Threads and buffers.</param>
+    /// <param name="surfaces">
+    /// Surfaces of the plan, or null to revalue everything fully. With them a reduction that names thresholds gets losses by surface below
+    /// them; any other gets full revaluation, against which the surfaces are checked in passing.
+    /// </param>
+    public BlockEvaluator(RevaluationPlan plan, SimulationWorkspace workspace, SurfaceSet? surfaces = null) => (_plan, _workspace, _surfaces) = (plan, workspace, surfaces);
+
+    /// <summary>Losses by surface that lay further from full revaluation than their bound, so far.</summary>
+    public long BoundFaults => Volatile.Read(ref _boundFaults);
 
     /// <summary>Evaluates <paramref name="range"/>.</summary>
     /// <param name="range">The blocks.</param>
@@ -28,52 +41,56 @@ public sealed class BlockEvaluator
     public TRecord Evaluate<TRecord>(BlockRange range, Reduction<TRecord> reduction, Action<int>? blockDone, CancellationToken cancellation)
     {
         var total = reduction.Empty(range.Count);
-        var workers = Math.Min(_threads, range.Count);
-        if (workers == 0) return total;
-        using var stop = CancellationTokenSource.CreateLinkedTokenSource(cancellation);
-        var (next, gate) = (range.First - 1, new Lock());
-        var tasks = Enumerable.Range(0, workers).Select(_ => Task.Factory.StartNew(Work, CancellationToken.None, TaskCreationOptions.LongRunning, TaskScheduler.Default)).ToArray();
-        try
-        {
-            Task.WaitAll(tasks, CancellationToken.None);
-        }
-        catch (AggregateException e)
-        {
-            // Of several failures the one that is not a mere stop says what happened.
-            ExceptionDispatchInfo.Throw(e.InnerExceptions.FirstOrDefault(f => f is not OperationCanceledException) ?? e.InnerExceptions[0]);
-        }
+        if (range.Count == 0) return total;
+        var workers = Math.Min(_workspace.Threads, range.Count);
+        var records = Enumerable.Range(0, workers).Select(_ => reduction.Empty((range.Count / workers) + 1)).ToArray();
+        EvaluateInto(range, reduction, (worker, _) => records[worker], null, blockDone, cancellation);
+        foreach (var record in records) reduction.Merge(total, record);
         return total;
-
-        void Work()
-        {
-            var tile = new ScenarioTile(_plan);
-            var losses = new double[_plan.Rows.Count * Blocks.Size];
-            var record = reduction.Empty((range.Count / workers) + 1);
-            try
-            {
-                for (var block = Interlocked.Increment(ref next); block < range.End; block = Interlocked.Increment(ref next))
-                {
-                    var width = range.WidthOf(block);
-                    Fill(tile, losses, block, width, stop.Token);
-                    reduction.Accumulate(record, new(block, width, losses));
-                    blockDone?.Invoke(width);
-                }
-            }
-            catch
-            {
-                stop.Cancel();
-                throw;
-            }
-            lock (gate) reduction.Merge(total, record);
-        }
     }
 
-    private static void Fill(ScenarioTile tile, double[] losses, int block, int width, CancellationToken cancellation)
+    /// <summary>Adds the blocks of <paramref name="range"/> to records that the caller keeps.</summary>
+    /// <param name="range">The blocks.</param>
+    /// <param name="reduction">What to keep of them.</param>
+    /// <param name="recordOf">The record for a thread and a block; two threads never write to one record at once, unless it can bear that.</param>
+    /// <param name="known">Blocks drawn before, which are taken from it instead of being drawn again; or null.</param>
+    /// <param name="blockDrawn">Told the width of each block that was drawn; called from many threads.</param>
+    /// <param name="cancellation">Stops between tiles; the records then hold a part of the range.</param>
+    internal void EvaluateInto<TRecord>(
+        BlockRange range, Reduction<TRecord> reduction, Func<int, int, TRecord> recordOf, LossSample? known, Action<int>? blockDrawn, CancellationToken cancellation) =>
+        _workspace.ForEach(range.Count, (worker, buffers, item, stop) =>
+        {
+            var block = range.First + item;
+            var width = range.WidthOf(block);
+            if (known is not null && known.Holds(block, width))
+            {
+                reduction.Accumulate(recordOf(worker, block), known.Block(block, width));
+                return;
+            }
+            var losses = buffers.BlockOf(_plan.Rows.Count);
+            var revalued = Fill(buffers, losses, block, width, reduction.ExactFrom, stop);
+            reduction.Accumulate(recordOf(worker, block), new(block, width, losses, revalued));
+            blockDrawn?.Invoke(width);
+        }, cancellation);
+
+    private long Fill(WorkerBuffers buffers, double[] losses, int block, int width, double[]? exactFrom, CancellationToken cancellation)
     {
+        var (tile, surfaceTile, before) = (buffers.TileOf(_plan), _surfaces is null ? null : buffers.SurfaceTileOf(_plan, _surfaces), 0L);
+        if (surfaceTile is not null)
+        {
+            before = surfaceTile.Revalued;
+            surfaceTile.Begin();
+        }
         for (var offset = 0; offset < width; offset += ScenarioTile.Width)
         {
             cancellation.ThrowIfCancellationRequested();
-            tile.Evaluate(((long)block * Blocks.Size) + offset, Math.Min(ScenarioTile.Width, width - offset), losses, offset, Blocks.Size);
+            var (first, lanes) = (((long)block * Blocks.Size) + offset, Math.Min(ScenarioTile.Width, width - offset));
+            if (surfaceTile is null) tile.Evaluate(first, lanes, losses, offset, Blocks.Size);
+            else if (exactFrom is not null) surfaceTile.Evaluate(first, lanes, losses, offset, exactFrom);
+            else if (surfaceTile.Check(first, lanes, losses, offset) is var faults and > 0) Interlocked.Add(ref _boundFaults, faults);
         }
+        if (surfaceTile is null || exactFrom is null) return 0;
+        surfaceTile.Finish(losses);
+        return surfaceTile.Revalued - before;
     }
 }

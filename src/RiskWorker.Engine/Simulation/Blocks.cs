@@ -30,7 +30,8 @@ public readonly record struct BlockRange(int First, int End, int Scenarios)
 /// <param name="Index">Number of the block.</param>
 /// <param name="Width">Scenarios in it.</param>
 /// <param name="Values">Losses, row by row; positive is a loss.</param>
-public readonly record struct LossBlock(int Index, int Width, double[] Values)
+/// <param name="Revalued">Scenarios that were revalued fully after a value by surface, each counted once for every node and horizon.</param>
+public readonly record struct LossBlock(int Index, int Width, double[] Values, long Revalued = 0)
 {
     /// <summary>Number of the block's first scenario.</summary>
     public long FirstScenario => (long)Index * Blocks.Size;

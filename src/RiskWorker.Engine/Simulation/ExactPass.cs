@@ -14,16 +14,18 @@ internal sealed class ExactPass
     private readonly PlanSlice[] _slices;
     private readonly int[][][] _rows;
     private readonly Queue[][] _queues;
-    private readonly MarketLanes _market;
-    private readonly LaneTable _cells;
-    private readonly NodeProfits _nodes;
+    private readonly MarketLanes _market = new(Capacity);
+    private readonly LaneTable _cells = new();
+    private readonly NodeProfits _nodes = new();
     private readonly double[] _losses = new double[Capacity];
 
     /// <summary>Makes room for the nodes of <paramref name="plan"/>, whose slices are <paramref name="slices"/>.</summary>
     public ExactPass(RevaluationPlan plan, PlanSlice[] slices)
     {
         (_plan, _slices) = (plan, slices);
-        (_market, _cells, _nodes) = (new(plan, Capacity), new(plan.Cells.Count, Capacity), new(plan, Capacity));
+        _market.Serve(plan);
+        _cells.Shape(plan.Cells.Count, Capacity);
+        _nodes.Serve(plan, Capacity);
         _queues = [.. plan.Horizons.Select(_ => slices.Select(slice => new Queue(slice.Factors.Length)).ToArray())];
         _rows = [.. plan.Horizons.Select((_, h) => slices.Select(s => RowsOf(plan, s.Node, h)).ToArray())];
     }
@@ -33,6 +35,15 @@ internal sealed class ExactPass
 
     /// <summary>The series of <paramref name="node"/> at <paramref name="horizon"/>.</summary>
     public int[] RowsOf(int node, int horizon) => _rows[horizon][node];
+
+    /// <summary>Forgets what an evaluation that was stopped half-way has left.</summary>
+    public void Begin()
+    {
+        foreach (var queues in _queues)
+        {
+            foreach (var queue in queues) queue.Count = 0;
+        }
+    }
 
     /// <summary>Puts a scenario of a node aside.</summary>
     /// <param name="node">The node.</param>

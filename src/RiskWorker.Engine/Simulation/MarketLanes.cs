@@ -9,26 +9,24 @@ namespace RiskWorker.Engine.Simulation;
 /// </summary>
 internal sealed class MarketLanes
 {
-    private readonly RevaluationPlan _plan;
-    private readonly int _capacity;
-    private readonly double[] _roots;
     private readonly double[] _still;
-    private readonly double[] _rates;
     private readonly double[] _returns;
     private readonly double[] _spots;
     private readonly double[] _volatilityReturns;
     private readonly double[] _volatilities;
+    private readonly LaneTable _rates = new();
+    private readonly int _capacity;
+    private RevaluationPlan _plan = null!;
+    private double[] _roots = [];
     private double[] _normals = [];
     private int[] _rowOf = [];
     private int _stride;
     private int _horizon;
 
     /// <summary>Makes room for <paramref name="capacity"/> lanes.</summary>
-    public MarketLanes(RevaluationPlan plan, int capacity)
+    public MarketLanes(int capacity)
     {
-        (_plan, _capacity) = (plan, capacity);
-        _roots = [.. plan.Horizons.Select(h => Math.Sqrt(h.Days))];
-        _rates = new double[plan.Currencies.Count * capacity];
+        _capacity = capacity;
         (_still, _returns, _spots) = (new double[capacity], new double[capacity], new double[capacity]);
         (_volatilityReturns, _volatilities) = (new double[capacity], new double[capacity]);
     }
@@ -48,24 +46,32 @@ internal sealed class MarketLanes
     /// <summary>Its levels.</summary>
     public ReadOnlySpan<double> Volatilities => _volatilities.AsSpan(0, Width);
 
+    /// <summary>Turns to <paramref name="plan"/>.</summary>
+    public void Serve(RevaluationPlan plan)
+    {
+        _plan = plan;
+        _roots = [.. plan.Horizons.Select(h => Math.Sqrt(h.Days))];
+        _rates.Shape(plan.Currencies.Count, _capacity);
+    }
+
     /// <summary>Takes the normals of the lanes.</summary>
     /// <param name="normals">A row a moving factor, <paramref name="stride"/> apart.</param>
     /// <param name="rowOf">For each factor its row, or -1 where it does not move.</param>
     /// <param name="stride">Distance of rows.</param>
     /// <param name="width">Lanes.</param>
-    public void Take(double[] normals, int[] rowOf, int stride, int width) => (_normals, _rowOf, _stride, Width) = (normals, rowOf, stride, width);
+    public void Take(double[] normals, int[] rowOf, int stride, int width) => (_normals, _rowOf, _stride, Width, _rates.Width) = (normals, rowOf, stride, width, width);
 
     /// <summary>Goes to a horizon and converts the currencies of <paramref name="slice"/>.</summary>
     public void MoveTo(int horizon, PlanSlice slice)
     {
         _horizon = horizon;
-        Rate(0).Fill(1);
+        _rates[0].Fill(1);
         // The returns are scratch here: an underlying is moved only afterwards.
-        foreach (var currency in slice.Currencies) Move(_plan.Currencies[currency].Factor, _returns.AsSpan(0, Width), Rate(currency));
+        foreach (var currency in slice.Currencies) Move(_plan.Currencies[currency].Factor, _returns.AsSpan(0, Width), _rates[currency]);
     }
 
     /// <summary>Price of currency <paramref name="currency"/> in each lane.</summary>
-    public ReadOnlySpan<double> RatesOf(int currency) => Rate(currency);
+    public ReadOnlySpan<double> RatesOf(int currency) => _rates[currency];
 
     /// <summary>Moves an underlying: <see cref="Returns"/> and <see cref="Spots"/> are then its own.</summary>
     public void Underlying(in Pricing.UnderlyingKey key)
@@ -90,8 +96,6 @@ internal sealed class MarketLanes
 
     /// <summary>Moves a volatility: <see cref="VolatilityReturns"/> and <see cref="Volatilities"/> are then its own.</summary>
     public void Volatility(int factor) => Move(factor, _volatilityReturns.AsSpan(0, Width), _volatilities.AsSpan(0, Width));
-
-    private Span<double> Rate(int currency) => _rates.AsSpan(currency * _capacity, Width);
 
     private void Move(int factor, Span<double> returns, Span<double> levels)
     {

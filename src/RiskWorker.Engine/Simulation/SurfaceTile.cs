@@ -17,6 +17,7 @@ internal sealed class SurfaceTile
     private readonly ExactPass _exact;
     private readonly double[] _highestRate;
     private readonly double[] _lowestRate;
+    private double[] _bySurface = [];
     private readonly bool[] _isNear = new bool[ScenarioTile.Width];
 
     /// <summary>Allocates the buffers.</summary>
@@ -26,6 +27,9 @@ internal sealed class SurfaceTile
         (_profits, _exact) = (new(plan, surfaces, ScenarioTile.Width), new(plan, PlanSlice.OfNodes(plan)));
         (_highestRate, _lowestRate) = (new double[plan.Currencies.Count], new double[plan.Currencies.Count]);
     }
+
+    /// <summary>Whether it was made for <paramref name="surfaces"/>.</summary>
+    public bool Serves(SurfaceSet surfaces) => ReferenceEquals(surfaces, _surfaces);
 
     /// <summary>Scenarios revalued fully so far, each counted once for every node and horizon.</summary>
     public long Revalued => _exact.Revalued;
@@ -47,8 +51,43 @@ internal sealed class SurfaceTile
         }
     }
 
+    /// <summary>Begins a block.</summary>
+    public void Begin() => _exact.Begin();
+
     /// <summary>Completes the losses of the block.</summary>
     public void Finish(double[] losses) => _exact.Finish(losses);
+
+    /// <summary>
+    /// Writes the losses of scenarios <paramref name="first"/> to first + width - 1 by full revaluation, and counts those that a surface
+    /// places further from them than its bound allows, each once for every series.
+    /// </summary>
+    public int Check(long first, int width, double[] losses, int offset)
+    {
+        _tile.Draw(first, width);
+        Room.For(ref _bySurface, _plan.Rows.Count * ScenarioTile.Width);
+        var faults = 0;
+        for (var horizon = 0; horizon < _plan.Horizons.Count; horizon++)
+        {
+            _tile.Evaluate(horizon, losses, offset, Blocks.Size, null);
+            _tile.Evaluate(horizon, _bySurface, 0, ScenarioTile.Width, _profits);
+            FindRates();
+            for (var row = 0; row < _plan.Rows.Count; row++)
+            {
+                if (_plan.Rows[row].Horizon != horizon) continue;
+                var bound = BoundOf(_plan.Rows[row]);
+                for (var s = 0; s < width; s++) faults += Math.Abs(_bySurface[(row * ScenarioTile.Width) + s] - losses[(row * Blocks.Size) + offset + s]) <= bound ? 0 : 1;
+            }
+        }
+        return faults;
+    }
+
+    // At the tile's most expensive rates.
+    private double BoundOf(PlanRow row)
+    {
+        var bound = 0.0;
+        for (var c = 0; c < _highestRate.Length; c++) bound = Math.FusedMultiplyAdd(_surfaces.BoundOf(row.Horizon, row.Node, c), _highestRate[c], bound);
+        return row.InOwnCurrency ? bound / _lowestRate[_plan.Nodes[row.Node].Currency] : bound;
+    }
 
     private void FindRates()
     {
@@ -65,13 +104,10 @@ internal sealed class SurfaceTile
     {
         Span<int> near = stackalloc int[ScenarioTile.Width];
         var rows = _exact.RowsOf(node, horizon);
-        var bound = 0.0;
-        for (var c = 0; c < _highestRate.Length; c++) bound = Math.FusedMultiplyAdd(_surfaces.BoundOf(horizon, node, c), _highestRate[c], bound);
         foreach (var row in rows)
         {
             if (double.IsPositiveInfinity(exactFrom[row])) continue;
-            var room = _plan.Rows[row].InOwnCurrency ? bound / _lowestRate[_plan.Nodes[node].Currency] : bound;
-            var found = Selection.Greater(losses.AsSpan((row * Blocks.Size) + offset, width), Math.BitDecrement(exactFrom[row] - room), near, out _);
+            var found = Selection.Greater(losses.AsSpan((row * Blocks.Size) + offset, width), Math.BitDecrement(exactFrom[row] - BoundOf(_plan.Rows[row])), near, out _);
             if (rows.Length == 1)
             {
                 for (var i = 0; i < found; i++) _exact.Add(node, horizon, _tile.Normals, width, near[i], losses, offset + near[i]);

@@ -1,5 +1,6 @@
 using RiskWorker.Engine.Plans;
 using RiskWorker.Engine.Pricing;
+using RiskWorker.Engine.Simulation;
 
 namespace RiskWorker.Engine.Surfaces;
 
@@ -12,8 +13,8 @@ public sealed class SurfaceBuilder
     /// <summary>Takes the plan and the largest error wanted, as a fraction of a cell's gross value.</summary>
     public SurfaceBuilder(RevaluationPlan plan, double error) => (_plan, _error) = (plan, error);
 
-    /// <summary>Builds them.</summary>
-    public SurfaceSet Build(int threads, CancellationToken cancellation)
+    /// <summary>Builds them over the threads of <paramref name="workspace"/>.</summary>
+    public SurfaceSet Build(SimulationWorkspace workspace, CancellationToken cancellation)
     {
         var jobs = new List<Job>();
         var groups = new GroupSurfaces[_plan.Horizons.Count][];
@@ -23,14 +24,12 @@ public sealed class SurfaceBuilder
             for (var g = 0; g < _plan.Groups.Count; g++) jobs.AddRange(JobsOf(horizon, g));
         }
         var fitted = new PriceSurface?[jobs.Count];
-        Parallel.For(0, jobs.Count, new ParallelOptions { MaxDegreeOfParallelism = threads, CancellationToken = cancellation },
-            () => new SurfaceFit(_error), (j, _, fit) =>
-            {
-                var job = jobs[j];
-                fitted[j] = fit.Of(_plan.Groups[job.Group], job.Batch, job.Horizon, job.Items, job.Underlying, job.Volatility, LawOf(_plan.Groups[job.Group].Options[job.Batch].VolatilityFactor).Level);
-                return fit;
-            },
-            _ => { });
+        workspace.ForEach(jobs.Count, (_, buffers, j, _) =>
+        {
+            var job = jobs[j];
+            fitted[j] = buffers.Fit.Of(_plan.Groups[job.Group], job.Batch, job.Horizon, job.Items, job.Underlying, job.Volatility,
+                LawOf(_plan.Groups[job.Group].Options[job.Batch].VolatilityFactor).Level, _error);
+        }, cancellation);
         var found = jobs.Zip(fitted).ToLookup(j => (j.First.Horizon, j.First.Group, j.First.Batch));
         for (var horizon = 0; horizon < groups.Length; horizon++)
         {

@@ -5,7 +5,7 @@ using RiskWorker.Numerics.Kernels;
 namespace RiskWorker.Engine.Surfaces;
 
 /// <summary>Fits one price surface at a time: raises the degree until the error is small enough, or gives up. The buffers of one thread.</summary>
-internal sealed class SurfaceFit(double error)
+internal sealed class SurfaceFit
 {
     private const int FirstDegree = 6;
     private const int Step = 2;
@@ -31,7 +31,8 @@ internal sealed class SurfaceFit(double error)
     /// <param name="underlying">Axis of the underlying.</param>
     /// <param name="volatility">Axis of the volatility; unused where that is flat.</param>
     /// <param name="level">Volatility today; unused where that is flat.</param>
-    public PriceSurface? Of(UnderlyingGroup group, int batch, int horizon, ItemRange items, AxisScale underlying, AxisScale volatility, double level)
+    /// <param name="error">Largest error wanted, as a fraction of the gross value.</param>
+    public PriceSurface? Of(UnderlyingGroup group, int batch, int horizon, ItemRange items, AxisScale underlying, AxisScale volatility, double level, double error)
     {
         var options = group.Options[batch];
         var isFlat = options.VolatilityFactor < 0;

@@ -4,6 +4,7 @@ using RiskWorker.Engine.Calibration;
 using RiskWorker.Engine.Measures;
 using RiskWorker.Engine.Plans;
 using RiskWorker.Engine.Pricing;
+using RiskWorker.Engine.Simulation;
 using RiskWorker.Storage.Feed;
 using RiskWorker.Storage.Sqlite;
 
@@ -20,6 +21,7 @@ internal sealed class FixedPositions
     private static readonly MeasureSpec s_var = new(MeasureKind.Var, new(0.99m), new(1));
     private static readonly MeasureSpec s_es = new(MeasureKind.Es, new(0.975m), new(1));
 
+    private readonly SimulationWorkspace _workspace = new(Environment.ProcessorCount);
     private readonly Snapshot _today;
     private readonly BookTree _tree;
     private readonly int _scenarios;
@@ -43,7 +45,7 @@ internal sealed class FixedPositions
         var binder = new InstrumentBinder(_tree.ReportingCurrency, model.Factors);
         var lines = LineValuation.Of(known.Positions, known.Instruments, binder, model.Levels, day);
         var plan = new PlanCompiler(_tree, model, binder.Currencies, day, [s_var.Horizon]).Compile(_seed, lines);
-        var sampler = new LossSampler(plan, Environment.ProcessorCount, new TailDemand([s_var, s_es], [Level]), _scenarios, null, CancellationToken.None);
+        var sampler = new LossSampler(plan, _workspace, new TailDemand([s_var, s_es], [Level]), new() { Scenarios = _scenarios }, null, CancellationToken.None);
         var measures = new NodeMeasures(plan, sampler.Look(_scenarios).Series);
         var all = Enumerable.Range(0, plan.Nodes.Count).Select(node => new DayMeasures(day, measures.Of(node, s_var, Level), measures.Of(node, s_es, Level))).ToList();
         return all[0];

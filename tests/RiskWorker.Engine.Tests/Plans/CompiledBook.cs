@@ -23,8 +23,11 @@ internal sealed record CompiledBook(Snapshot Snapshot, BookTree Tree, Calibrated
     }
 
     /// <summary>Every loss of the first scenarios, a row a series of the plan.</summary>
-    public double[][] Losses(int scenarios) =>
-        new BlockEvaluator(Plan, 2).Evaluate(BlockRange.From(0, scenarios), new LossSampleReduction(Plan.Rows.Count, scenarios), null, CancellationToken.None);
+    public double[][] Losses(int scenarios)
+    {
+        var sample = new BlockEvaluator(Plan, 2).Evaluate(BlockRange.From(0, scenarios), new LossSampleReduction(Plan.Rows.Count, scenarios), null, CancellationToken.None);
+        return [.. Enumerable.Range(0, sample.Rows).Select(sample.Row)];
+    }
 
     /// <summary>Place of the series of <paramref name="book"/>.</summary>
     public int RowOf(string book, int horizon = 1, bool own = false) =>
