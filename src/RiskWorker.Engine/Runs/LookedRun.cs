@@ -5,6 +5,7 @@ using RiskWorker.Engine.Limits;
 using RiskWorker.Engine.Measures;
 using RiskWorker.Engine.Plans;
 using RiskWorker.Engine.Reductions;
+using RiskWorker.Engine.Simulation;
 
 namespace RiskWorker.Engine.Runs;
 
@@ -69,8 +70,15 @@ public sealed class LookedRun
         var (record, series) = sampler.Look(scenarios);
         var measures = new NodeMeasures(_plan, series);
         var evaluator = new LimitEvaluator(_tree, _plan, measures, _looks.Level);
-        var summary = new SimulationSummary(scenarios, _settings.Seed, look + 1, _looks.Scenarios.Count, (double)_looks.Level, PrecisionReached(measures));
+        var summary = new SimulationSummary(scenarios, _settings.Seed, look + 1, _looks.Scenarios.Count, (double)_looks.Level, PrecisionReached(measures), SummaryOf(sampler, record));
         return new(summary, _looks.Level, measures, [.. _limits.Select(evaluator.Of)], evaluator, record, series, sampler.Edges);
+    }
+
+    private SurfaceSummary? SummaryOf(LossSampler sampler, TailRecord record)
+    {
+        if (sampler.Surfaces is not { } surfaces) return null;
+        var beyondPilot = record.Count - (Math.Min(LossSampler.PilotScenarios, record.Count) / Blocks.Size * Blocks.Size);
+        return new(surfaces.Count, surfaces.Options, beyondPilot * _plan.Nodes.Count * _plan.Horizons.Count, record.Revalued);
     }
 
     private bool? PrecisionReached(NodeMeasures measures)

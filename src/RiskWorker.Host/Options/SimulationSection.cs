@@ -13,7 +13,7 @@ public static class SimulationSection
 
     private const int MostLooks = 20;
 
-    private static readonly Dictionary<string, int> s_revaluations = new(StringComparer.Ordinal) { ["surface"] = 0, ["full"] = 1 };
+    private static readonly Dictionary<string, RevaluationKind> s_revaluations = new(StringComparer.Ordinal) { ["surface"] = RevaluationKind.Surface, ["full"] = RevaluationKind.Full };
 
     /// <summary>Reads the section; absent means the defaults. A cap that is not given is never below the scenarios.</summary>
     public static SimulationSettings Read(SettingsValue? value)
@@ -21,22 +21,16 @@ public static class SimulationSection
         var defaults = new SimulationSettings();
         if (value?.Section("scenarios", "seed", "looks", "cap", "precision", "revaluation", "surfaceError", "exactTail") is not { } section) return defaults;
         var scenarios = section["scenarios"]?.Whole(FewestScenarios, MostScenarios) ?? defaults.Scenarios;
-        CheckRevaluation(section);
         return defaults with
         {
             Scenarios = scenarios,
             Seed = section["seed"]?.Unsigned() ?? defaults.Seed,
             Looks = section["looks"]?.Whole(1, MostLooks) ?? defaults.Looks,
             Cap = section["cap"]?.Whole(scenarios, MostScenarios) ?? Math.Max(defaults.Cap, scenarios),
+            Revaluation = section["revaluation"]?.Choice(s_revaluations) ?? defaults.Revaluation,
+            SurfaceError = section["surfaceError"]?.Number(e => e is > 0 and <= 0.01, "a number above 0, at most 0.01") ?? defaults.SurfaceError,
+            ExactTail = section["exactTail"]?.Flag() ?? defaults.ExactTail,
             Precision = section["precision"] is { IsNull: false } precision ? precision.Number(p => p is > 0 and < 1, "null or a number strictly between 0 and 1") : null,
         };
-    }
-
-    /// <summary>How values are found is no part of the run's settings: whichever way is taken, the figures are the same.</summary>
-    private static void CheckRevaluation(SettingsSection section)
-    {
-        section["revaluation"]?.Choice(s_revaluations);
-        section["surfaceError"]?.Number(e => e is > 0 and <= 0.01, "a number above 0, at most 0.01");
-        section["exactTail"]?.Flag();
     }
 }

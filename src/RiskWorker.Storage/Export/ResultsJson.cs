@@ -63,6 +63,17 @@ public static class ResultsJson
         json.Number("level", simulation?.Level);
         json.Boolean("precisionReached", simulation?.PrecisionReached);
         json.WriteString("previousRun", record.Previous?.Run);
+        if (simulation?.Surfaces is { } surfaces) Surfaces(json, surfaces);
+    }
+
+    private static void Surfaces(Utf8JsonWriter json, SurfaceSummary surfaces)
+    {
+        json.WriteStartObject("surfaces");
+        json.WriteNumber("count", surfaces.Count);
+        json.WriteNumber("options", surfaces.Options);
+        json.WriteNumber("scenarios", surfaces.Scenarios);
+        json.WriteNumber("revalued", surfaces.Revalued);
+        json.WriteEndObject();
     }
 
     private static void Node(Utf8JsonWriter json, NodeResult node)

@@ -14,6 +14,8 @@ internal static class SettingsText
         foreach (var (factor, drift) in model.Drifts) text.Text("drift").Text(factor).Number(drift).End();
         foreach (var spec in settings.Measures) text.Text("measure").Text(Spelling.Of(spec.Kind)).Value<decimal>(spec.Confidence.Level).Value<int>(spec.Horizon.Days).End();
         text.Text("simulation").Value<int>(simulation.Scenarios).Value<ulong>(simulation.Seed).Value<int>(simulation.Looks).Value<int>(simulation.Cap).Number(simulation.Precision).End();
+        if (simulation is not { Revaluation: RevaluationKind.Surface, SurfaceError: 1e-7, ExactTail: true })
+            text.Text("revaluation").Text(Spelling.Of(simulation.Revaluation)).Number(simulation.SurfaceError).Text(simulation.ExactTail ? "exact" : "surface").End();
         text.Text("checks").Value<int>(checks.StaleDays).Number(checks.JumpSigmas).Value<int>(checks.MinimumHistory).Number(checks.ValueTolerance).Number(checks.GrossChange).End();
         foreach (var (code, severity) in checks.Severity) text.Text("severity").Text(code).Text(Spelling.Of(severity)).End();
         text.Text("time-effects").Text(settings.TimeEffectsIncluded ? "included" : "excluded").End();
@@ -28,7 +30,7 @@ internal static class SettingsText
         {
             Model = Model(rows["model"].Single()) with { Drifts = Sorted(rows["drift"], row => row.Amount()) },
             Measures = [.. rows["measure"].Select(LeafText.Measure).Order()],
-            Simulation = Simulation(rows["simulation"].Single()),
+            Simulation = Simulation(rows["simulation"].Single(), rows["revaluation"].SingleOrDefault()),
             Checks = Checks(rows["checks"].Single()) with { Severity = Sorted(rows["severity"], row => row.Choice<FindingSeverity>()) },
             TimeEffectsIncluded = rows["time-effects"].Single().Name() == "included",
         };
@@ -44,14 +46,20 @@ internal static class SettingsText
         Drift = row.Choice<DriftKind>(),
     };
 
-    private static SimulationSettings Simulation(CanonicalRow row) => new()
+    // The row on revaluation stands only where it is not the usual one.
+    private static SimulationSettings Simulation(CanonicalRow row, CanonicalRow? revaluation)
     {
-        Scenarios = row.Whole<int>(),
-        Seed = row.Whole<ulong>(),
-        Looks = row.Whole<int>(),
-        Cap = row.Whole<int>(),
-        Precision = row.Number(),
-    };
+        var settings = new SimulationSettings
+        {
+            Scenarios = row.Whole<int>(),
+            Seed = row.Whole<ulong>(),
+            Looks = row.Whole<int>(),
+            Cap = row.Whole<int>(),
+            Precision = row.Number(),
+        };
+        if (revaluation is null) return settings;
+        return settings with { Revaluation = revaluation.Choice<RevaluationKind>(), SurfaceError = revaluation.Amount(), ExactTail = revaluation.Name() == "exact" };
+    }
 
     private static CheckSettings Checks(CanonicalRow row) => new()
     {

@@ -68,13 +68,24 @@ internal static class MethodSection
         new("VaR", "the smallest l with P(L ≤ l) ≥ α: the ceil(N α)-th smallest of N losses, ties by scenario number."),
         new("ES", "the mean of the worst N (1 − α) losses, the loss at the boundary weighted by the fraction needed (Acerbi and Tasche 2002)."),
         new("Intervals", "of VaR: distribution-free, from order statistics of the binomial; of ES: asymptotic variance (Manistre and Hancock 2005)."),
-        new("Revaluation", "every position valued anew in every scenario at the horizon; the measure is never scaled from another horizon."),
+        new("Revaluation", Revaluation(run)),
         new("Horizon", "h days have h times the daily covariance, days taken as independent. The shock is instantaneous: nothing expires or pays inside the horizon."),
         new("Shocks", "ln(S(t) / S(t−1)) for prices, differences for rates; only between consecutive observed business days of a factor's calendar."),
         new("Exceptions", "loss strictly greater than the VaR of the previous close; a missing VaR or P&L counts. Hypothetical P&L: yesterday's positions at today's prices"
             + (run.Record.Settings.TimeEffectsIncluded ? ", the valuation date moved too." : ", the valuation date held.")),
         new("Year", "252 business days; option time in calendar days / 365."),
     ]);
+
+    private static string Revaluation(RunReading run)
+    {
+        const string Unscaled = "the measure is never scaled from another horizon.";
+        if (run.Results.Simulation?.Surfaces is not { } surfaces) return $"every position valued anew in every scenario at the horizon; {Unscaled}";
+        var drawn = $"{Phrases.Plural(surfaces.Count, "price surface")} stand for {Numerals.Count(surfaces.Options)} options beyond the pilot (error checked on a grid and on the pilot)";
+        return run.Record.Settings.Simulation.ExactTail
+            ? $"{drawn}; {Numerals.Count(surfaces.Revalued)} of {Numerals.Count(surfaces.Scenarios)} scenarios by node might belong to a tail and were revalued fully: VaR, ES and their intervals "
+                + $"are those of full revaluation to the last bit. Mean, deviation and histogram come from the surfaces; {Unscaled}"
+            : $"{drawn}; the settings leave the tails to them, so all figures carry their error; {Unscaled}";
+    }
 
     private static IEnumerable<Block> Cautions() =>
     [
