@@ -52,6 +52,9 @@ internal sealed class LineSize
         Future f => PriceOf(f.Factor),
         Forward f => f.Strike,
         Option o => o.Strike,
+        Bond b => b.Notional,
+        Floater f => f.Notional,
+        Swap s => s.Notional,
         UnmodelledInstrument u => UnitOf(u),
         _ => 1,
     };
