@@ -34,20 +34,29 @@ public sealed class LinearForm : IEquatable<LinearForm>, IComparable<LinearForm>
     public static LinearForm Of(double constant) => new(constant, [], []);
 
     /// <summary><paramref name="coefficient"/> times the level of <paramref name="factor"/>.</summary>
-    public static LinearForm Of(int factor, double coefficient) => Of(factor, coefficient, factor, 0);
+    public static LinearForm Of(int factor, double coefficient)
+    {
+        ArgumentOutOfRangeException.ThrowIfNegative(factor);
+        return coefficient == 0 ? Zero : new(0, [factor], [coefficient]);
+    }
 
     /// <summary>The sum of two factors' levels, each times its coefficient.</summary>
     public static LinearForm Of(int factor, double coefficient, int other, double otherCoefficient) =>
-        Combined(0, [(factor, coefficient), (other, otherCoefficient)]);
+        Of(factor, coefficient).Plus(Of(other, otherCoefficient));
 
     /// <summary>This form and <paramref name="other"/> added, coefficient by coefficient.</summary>
-    public LinearForm Plus(LinearForm other) => Combined(Constant + other.Constant, [.. Terms(1), .. other.Terms(1)]);
+    public LinearForm Plus(LinearForm other) => Combined(other, 1);
 
     /// <summary>This form less <paramref name="other"/>; equal forms give <see cref="Zero"/>.</summary>
-    public LinearForm Minus(LinearForm other) => Combined(Constant - other.Constant, [.. Terms(1), .. other.Terms(-1)]);
+    public LinearForm Minus(LinearForm other) => Combined(other, -1);
 
     /// <summary>This form times <paramref name="multiple"/>.</summary>
-    public LinearForm Times(double multiple) => Combined(Constant * multiple, Terms(multiple));
+    public LinearForm Times(double multiple)
+    {
+        var (factors, coefficients) = (new List<int>(_factors.Length), new List<double>(_factors.Length));
+        for (var i = 0; i < _factors.Length; i++) Add(factors, coefficients, _factors[i], _coefficients[i] * multiple);
+        return new(Constant * multiple, [.. factors], [.. coefficients]);
+    }
 
     /// <summary>Its value: fused multiply-adds onto the constant, factors ascending. NaN where a level that it needs is NaN.</summary>
     public double At(ReadOnlySpan<double> levels)
@@ -90,29 +99,25 @@ public sealed class LinearForm : IEquatable<LinearForm>, IComparable<LinearForm>
     public override string ToString() =>
         string.Join(" + ", _factors.Select((f, i) => FormattableString.Invariant($"{_coefficients[i]} x[{f}]")).Prepend(FormattableString.Invariant($"{Constant}")));
 
-    private (int Factor, double Coefficient)[] Terms(double multiple) => [.. _factors.Select((f, i) => (f, _coefficients[i] * multiple))];
-
-    private static LinearForm Combined(double constant, (int Factor, double Coefficient)[] terms)
+    // Both lists ascend: one pass takes the smaller factor of the two, or both where they are equal.
+    private LinearForm Combined(LinearForm other, int sign)
     {
-        var factors = new List<int>(terms.Length);
-        var coefficients = new List<double>(terms.Length);
-        // Sorting is stable: coefficients of one factor are added in the order in which they came.
-        foreach (var (factor, coefficient) in terms.OrderBy(t => t.Factor))
+        if (other._factors.Length == 0 && other.Constant == 0) return this;
+        var (factors, coefficients) = (new List<int>(_factors.Length + other._factors.Length), new List<double>(_factors.Length + other._factors.Length));
+        for (int i = 0, j = 0; i < _factors.Length || j < other._factors.Length;)
         {
-            ArgumentOutOfRangeException.ThrowIfNegative(factor);
-            if (factors.Count > 0 && factors[^1] == factor) coefficients[^1] += coefficient;
-            else
-            {
-                factors.Add(factor);
-                coefficients.Add(coefficient);
-            }
+            var mine = i < _factors.Length ? _factors[i] : int.MaxValue;
+            var theirs = j < other._factors.Length ? other._factors[j] : int.MaxValue;
+            var coefficient = (mine <= theirs ? _coefficients[i++] : 0) + (theirs <= mine ? sign * other._coefficients[j++] : 0);
+            Add(factors, coefficients, Math.Min(mine, theirs), coefficient);
         }
-        for (var i = factors.Count - 1; i >= 0; i--)
-        {
-            if (coefficients[i] != 0) continue;
-            factors.RemoveAt(i);
-            coefficients.RemoveAt(i);
-        }
-        return new(constant, [.. factors], [.. coefficients]);
+        return new(Constant + (sign * other.Constant), [.. factors], [.. coefficients]);
+    }
+
+    private static void Add(List<int> factors, List<double> coefficients, int factor, double coefficient)
+    {
+        if (coefficient == 0) return;
+        factors.Add(factor);
+        coefficients.Add(coefficient);
     }
 }
