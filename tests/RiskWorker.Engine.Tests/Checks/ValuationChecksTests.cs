@@ -166,7 +166,7 @@ public sealed class ValuationChecksTests
     [Fact]
     public void HoldingsSummary_of_unpriced_lines_lists_those_of_unknown_size_and_then_the_largest()
     {
-        var holdings = FindingsOf.Holdings(TwoCurrencies().Instrument(Unmodelled("BOND", "lookback"))
+        var holdings = FindingsOf.Holdings(TwoCurrencies().Instrument(Bond("BOND", 100))
             .Position("DESK", "BOND", 1).Position("DESK", "BOND", 1, 99_000).Position("LOST", "A-UNIT", -5).Position("DESK", "X", 2));
 
         Assert.Equal((4, 0, 0.0), (holdings.Positions, holdings.Priced, holdings.GrossValue));
