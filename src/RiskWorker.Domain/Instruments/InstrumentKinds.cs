@@ -18,6 +18,15 @@ public static class InstrumentKinds
     /// <summary>The feed's spelling of <see cref="Instruments.Option"/>.</summary>
     public const string Option = "option";
 
+    /// <summary>The feed's spelling of <see cref="Instruments.Bond"/>.</summary>
+    public const string Bond = "bond";
+
+    /// <summary>The feed's spelling of <see cref="Instruments.Floater"/>.</summary>
+    public const string Floater = "floater";
+
+    /// <summary>The feed's spelling of <see cref="Instruments.Swap"/>.</summary>
+    public const string Swap = "swap";
+
     private static readonly string[] s_optionTerms = ["factor", "base_currency", "strike", "expiry", "right", "style", "vol", "vol_factor", "curve", "carry"];
     private static readonly string[] s_floatTerms = ["projection", "float_frequency", "float_day_count", "float_spread", "last_fixing", "issue", "maturity", "curve", "notional"];
 
@@ -28,9 +37,9 @@ public static class InstrumentKinds
         [Cash] = [],
         [Future] = ["factor"],
         [Forward] = ["factor", "base_currency", "strike", "expiry", "curve", "carry", "settlement_currency"],
-        ["bond"] = ["coupon", "frequency", "day_count", "issue", "maturity", "curve", "notional", "spread"],
-        ["floater"] = [.. s_floatTerms, "spread"],
-        ["swap"] = [.. s_floatTerms, "receive", "coupon", "frequency", "day_count"],
+        [Bond] = ["coupon", "frequency", "day_count", "issue", "maturity", "curve", "notional", "spread"],
+        [Floater] = [.. s_floatTerms, "spread"],
+        [Swap] = [.. s_floatTerms, "receive", "coupon", "frequency", "day_count"],
         [Option] = s_optionTerms,
         ["digital"] = [.. s_optionTerms, "payoff", "notional"],
         ["barrier"] = [.. s_optionTerms, "barrier", "barrier_kind", "rebate", "monitoring", "issue", "knocked"],

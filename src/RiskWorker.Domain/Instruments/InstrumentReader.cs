@@ -24,6 +24,9 @@ public static class InstrumentReader
             InstrumentKinds.Option => new Option(terms.Underlying(), terms.Positive("strike"), terms.Date("expiry"),
                 terms.Choice<OptionRight>("right"), terms.Choice<ExerciseStyle>("style"), terms.Volatility(), terms.Rate("curve"), terms.Rate("carry"))
             { Name = row.Name, Currency = row.Currency },
+            InstrumentKinds.Bond => RateProductReader.Bond(row, terms),
+            InstrumentKinds.Floater => RateProductReader.Floater(row, terms),
+            InstrumentKinds.Swap => RateProductReader.Swap(row, terms),
             _ when InstrumentKinds.TermsByKind.ContainsKey(row.Kind) => new UnmodelledInstrument(row.Kind, row.Terms) { Name = row.Name, Currency = row.Currency },
             _ => null,
         };

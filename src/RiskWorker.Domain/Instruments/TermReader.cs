@@ -63,7 +63,7 @@ internal sealed class TermReader(IReadOnlyDictionary<string, string> terms)
         return flat is not null && factor is null ? new(Positive("vol"), null) : new(null, factor);
     }
 
-    private static bool Number(string text, out double value) =>
+    public static bool Number(string text, out double value) =>
         double.TryParse(text, NumberStyles.Float, CultureInfo.InvariantCulture, out value) && double.IsFinite(value);
 
     private string Missing(string term, string expected)

@@ -10,8 +10,6 @@ namespace RiskWorker.Engine.Checks;
 /// <summary>Estimates how large a line is that no figure holds, in the reporting currency.</summary>
 internal sealed class LineSize
 {
-    private const double BondNotional = 100; // what a bond's or floater's row means when it names none
-
     private readonly Dictionary<string, double> _price = new(StringComparer.Ordinal);
     private readonly CurrencyTable _currencies;
     private readonly double[] _levels;
@@ -52,6 +50,9 @@ internal sealed class LineSize
         Future f => PriceOf(f.Factor),
         Forward f => f.Strike,
         Option o => o.Strike,
+        Bond b => b.Notional,
+        Floater f => f.Notional,
+        Swap s => s.Notional,
         UnmodelledInstrument u => UnitOf(u),
         _ => 1,
     };
@@ -60,8 +61,7 @@ internal sealed class LineSize
     {
         if (Term(instrument, "strike") is { } strike) return strike;
         if (Term(instrument, "notional") is { } notional) return notional;
-        return instrument.Terms.TryGetValue("factor", out var factor) ? PriceOf(factor)
-            : instrument.Kind is "bond" or "floater" ? BondNotional : double.NaN;
+        return instrument.Terms.TryGetValue("factor", out var factor) ? PriceOf(factor) : double.NaN;
     }
 
     private double PriceOf(string factor) => _price.GetValueOrDefault(factor, double.NaN);

@@ -45,8 +45,8 @@ public sealed class InstrumentReaderTests
     [Fact]
     public void Read_kind_of_a_later_version_keeps_its_terms_as_typed()
     {
-        var bond = Assert.IsType<UnmodelledInstrument>(Read("bond", ("coupon", "0.030"), ("multiplier", "2")).Instrument);
-        Assert.Equal(("bond", "0.030", 2.0), (bond.Kind, bond.Terms["coupon"], bond.Multiplier));
+        var option = Assert.IsType<UnmodelledInstrument>(Read("lookback", ("strike", "90.0"), ("multiplier", "2")).Instrument);
+        Assert.Equal(("lookback", "90.0", 2.0), (option.Kind, option.Terms["strike"], option.Multiplier));
     }
 
     [Theory]

@@ -70,14 +70,14 @@ public sealed class ValuationChecksTests
     [Fact]
     public void Run_with_kinds_without_pricing_sizes_them_by_strike_notional_or_price()
     {
-        var builder = TwoCurrencies().Position("DESK", "BOND", 3).Position("DESK", "NOTE", -2).Position("DESK", "DIGI", 1).Position("DESK", "LOOK", 4).Position("DESK", "SWAP", 1)
-            .Instrument(Unmodelled("BOND", "bond", ("coupon", "0.05")))
-            .Instrument(Unmodelled("NOTE", "bond", ("notional", "1000")))
+        var builder = TwoCurrencies().Position("DESK", "BOND", 3).Position("DESK", "NOTE", -2).Position("DESK", "DIGI", 1).Position("DESK", "LOOK", 4).Position("DESK", "OTHER", 1)
+            .Instrument(Bond("BOND", 100))
+            .Instrument(Bond("NOTE", 1000))
             .Instrument(Unmodelled("DIGI", "digital", ("strike", "90"), ("notional", "5000")))
             .Instrument(Unmodelled("LOOK", "lookback", ("factor", "A")))
-            .Instrument(Unmodelled("SWAP", "swap"));
+            .Instrument(Unmodelled("OTHER", "barrier"));
 
-        // 3 x 100 + |-2 x 1000| + 90 + 4 x 100; the swap names nothing.
+        // 3 x 100 + |-2 x 1000| + 90 + 4 x 100; the last names nothing.
         var finding = FindingsOf.Valuation(builder).One(FindingCodes.NotModelled);
         Assert.StartsWith("5 lines in 5 instruments", finding.Message, StringComparison.Ordinal);
         Assert.Contains("estimated size 2,790 EUR, and 1 line of unknown size", finding.Message, StringComparison.Ordinal);
@@ -166,7 +166,7 @@ public sealed class ValuationChecksTests
     [Fact]
     public void HoldingsSummary_of_unpriced_lines_lists_those_of_unknown_size_and_then_the_largest()
     {
-        var holdings = FindingsOf.Holdings(TwoCurrencies().Instrument(Unmodelled("BOND", "bond"))
+        var holdings = FindingsOf.Holdings(TwoCurrencies().Instrument(Bond("BOND", 100))
             .Position("DESK", "BOND", 1).Position("DESK", "BOND", 1, 99_000).Position("LOST", "A-UNIT", -5).Position("DESK", "X", 2));
 
         Assert.Equal((4, 0, 0.0), (holdings.Positions, holdings.Priced, holdings.GrossValue));
@@ -176,6 +176,10 @@ public sealed class ValuationChecksTests
         Assert.Equal("-", holdings.Unpriced[0].Kind);
         Assert.Null(holdings.PreviousGrossValue);
     }
+
+    // Its curve has no factors: it stays without a price.
+    private static Bond Bond(string name, double notional) =>
+        new(new(0.05, 1, DayCount.ActualActual), new(2025, 3, 15), new(2031, 3, 15), RateTerm.From("NONE"), notional, null) { Name = name, Currency = "EUR" };
 
     private static UnmodelledInstrument Unmodelled(string name, string kind, params (string Term, string Text)[] terms) =>
         new(kind, terms.ToDictionary(t => t.Term, t => t.Text)) { Name = name, Currency = "EUR" };

@@ -111,11 +111,11 @@ public sealed class MeasuredRuns : IAsyncLifetime
         _folder.Write("feed/books.csv", "book,parent,name,currency\nFIRM,,The firm,EUR\nDESK,FIRM,The desk,USD\n");
         _folder.Write("feed/factors.csv", "factor,class,shock,currency,calendar\nAAA,equity,lognormal,EUR,XX\nUSDEUR,fx,lognormal,USD,\n");
         _folder.Write("feed/instruments.csv", """
-            instrument,kind,currency,factor,strike,expiry,right,style,vol,coupon
-            AAA share,spot,EUR,AAA,,,,,,
-            AAA call,option,EUR,AAA,100,2027-03-19,call,european,0.3,
-            Dollars,fx,USD,,,,,,,
-            Loan,bond,EUR,,,,,,,0.03
+            instrument,kind,currency,factor,strike,expiry,right,style,vol,coupon,frequency,day_count,issue,maturity,curve
+            AAA share,spot,EUR,AAA,,,,,,,,,,,
+            AAA call,option,EUR,AAA,100,2027-03-19,call,european,0.3,,,,,,
+            Dollars,fx,USD,,,,,,,,,,,,
+            Loan,bond,EUR,,,,,,,0.03,1,ACT/ACT,2025-03-15,2031-03-15,A curve without factors
 
             """);
         var days = new[] { "2026-11-24", "2026-11-25", "2026-11-26", "2026-11-27" };

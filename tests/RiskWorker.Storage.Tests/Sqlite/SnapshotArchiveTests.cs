@@ -27,7 +27,7 @@ public sealed class SnapshotArchiveTests : IDisposable
         _fixture["books.csv"] = "book,parent,name,currency\nALL,,The firm,EUR\nEQ,ALL,Equities,EUR\nFX,ALL,,\nEQ\U0001F600,ALL,\"Tab\there, \\0\",EUR\nEQ\uFF21,ALL,,EUR\n";
         _fixture["factors.csv"] = "factor,class,shock,currency,curve,tenor_years,calendar,liquidity_days,proxy,beta\nALPHA,equity,lognormal,EUR,,,TARGET,10,ALPHA-B,1.5\nALPHA-B,equity,lognormal,EUR,,,,,,\nUSDEUR,fx,lognormal,USD,,,,,,\nEUR-1Y,rate,normal,EUR,EUR,1,,,,\n";
         _fixture["observations.csv"] += "2026-11-03,ALPHA-B,7\n2026-11-06,NOBODY,1\n";
-        _fixture["instruments.csv"] += "ALPHA,bond,EUR,,,,,,,EUR,,\n";
+        _fixture["instruments.csv"] += "ALPHA,forward,EUR,ALPHA,100,2027-03-19,,,,EUR,,\n";
         _fixture["positions.csv"] = "as_of,book,instrument,quantity,trade,market_value,note\n"
             + string.Concat(Enumerable.Range(2, 5).Select(d => $"2026-11-{d:00},EQ,ALPHA-S,{d},,,x\n2026-11-{d:00},EQ,ALPHA,-{d},T\\1,{d}.25,\n"));
         _fixture["limits.csv"] = "limit,book,measure,confidence,horizon_days,amount,basis,reference_book,warn_at,valid_from,valid_to,approver,reason\n"

@@ -1,0 +1,29 @@
+namespace RiskWorker.Engine.Pricing.Curves;
+
+/// <summary>
+/// Total variance to an expiry, sigma^2 T: a constant plus the sum of weight times the square of a volatility factor's level, factors ascending.
+/// </summary>
+public sealed class VarianceForm
+{
+    private readonly (int Factor, double Weight)[] _terms;
+
+    internal VarianceForm(double constant, params (int Factor, double Weight)[] terms)
+    {
+        Constant = constant;
+        _terms = [.. terms.Where(t => t.Weight != 0).OrderBy(t => t.Factor)];
+    }
+
+    /// <summary>The part that no factor moves: that of a flat volatility.</summary>
+    public double Constant { get; }
+
+    /// <summary>Places of the volatility factors, ascending, and their weights.</summary>
+    public IReadOnlyList<(int Factor, double Weight)> Terms => _terms;
+
+    /// <summary>Its value: fused multiply-adds onto the constant, factors ascending. NaN where a level that it needs is NaN.</summary>
+    public double At(ReadOnlySpan<double> levels)
+    {
+        var value = Constant;
+        foreach (var (factor, weight) in _terms) value = Math.FusedMultiplyAdd(weight, levels[factor] * levels[factor], value);
+        return value;
+    }
+}
