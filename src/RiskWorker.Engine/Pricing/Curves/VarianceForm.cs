@@ -3,7 +3,7 @@ namespace RiskWorker.Engine.Pricing.Curves;
 /// <summary>
 /// Total variance to an expiry, sigma^2 T: a constant plus the sum of weight times the square of a volatility factor's level, factors ascending.
 /// </summary>
-public sealed class VarianceForm
+public sealed class VarianceForm : IEquatable<VarianceForm>, IComparable<VarianceForm>
 {
     private readonly (int Factor, double Weight)[] _terms;
 
@@ -25,5 +25,23 @@ public sealed class VarianceForm
         var value = Constant;
         foreach (var (factor, weight) in _terms) value = Math.FusedMultiplyAdd(weight, levels[factor] * levels[factor], value);
         return value;
+    }
+
+    /// <inheritdoc/>
+    public bool Equals(VarianceForm? other) => other is not null && CompareTo(other) == 0;
+
+    /// <inheritdoc/>
+    public override bool Equals(object? obj) => Equals(obj as VarianceForm);
+
+    /// <inheritdoc/>
+    public override int GetHashCode() => HashCode.Combine(Constant, _terms.Length, _terms.Length > 0 ? _terms[0] : default);
+
+    /// <summary>By number of factors, then factor by factor with its weight, then by the constant.</summary>
+    public int CompareTo(VarianceForm? other)
+    {
+        if (other is null) return 1;
+        var order = _terms.Length.CompareTo(other._terms.Length);
+        for (var i = 0; order == 0 && i < _terms.Length; i++) order = _terms[i].CompareTo(other._terms[i]);
+        return order != 0 ? order : Constant.CompareTo(other.Constant);
     }
 }
