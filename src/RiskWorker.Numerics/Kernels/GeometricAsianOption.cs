@@ -1,0 +1,63 @@
+using System.Runtime.CompilerServices;
+using System.Runtime.Intrinsics;
+
+namespace RiskWorker.Numerics.Kernels;
+
+/// <summary>
+/// Full revaluation of an option on the geometric average G over scenarios: e^(-rT) (F Φ(d₁) - K Φ(d₂)) for a call, mirrored for a put, with
+/// F = E[G], d₂ = (E[ln G] - ln K)/s, d₁ = d₂ + s, s the deviation of ln G (Kemna and Vorst 1990); see <see cref="GeometricAsianTerms"/>.
+/// </summary>
+/// <remarks>
+/// The level of a scenario is not read: its log-return says all, and a past part of the average leaves only its share as a power of it. An
+/// average that is known, or no volatility, gives the discounted intrinsic value. ERRORNOTE A value is never below zero. A NaN in a scenario gives a
+/// NaN there; allocates nothing.
+/// </remarks>
+public static class GeometricAsianOption
+{
+    /// <summary>Value of one unit.</summary>
+    /// <param name="terms">The option.</param>
+    /// <param name="at">The scenario; X = 0 is today.</param>
+    public static double Value(in GeometricAsianTerms terms, in MarketPoint at) => Payoff.Value(terms, at);
+
+    /// <summary>A scenario's profit with one position added: profit + quantity·(value - baseValue) in one fused multiply-add.</summary>
+    public static double Profit(in GeometricAsianTerms terms, in MarketPoint at, double quantity, double baseValue, double profit) =>
+        Math.FusedMultiplyAdd(quantity, Payoff.Value(terms, at) - baseValue, profit);
+
+    /// <summary>Adds one position's profit in each scenario: profit[s] += quantity·(value(s) - baseValue).</summary>
+    /// <param name="terms">The option.</param>
+    /// <param name="market">The scenarios.</param>
+    /// <param name="quantity">Units held, the multiplier included.</param>
+    /// <param name="baseValue">Value of one unit today; <see cref="Value"/> of today makes a scenario without a move exactly 0.</param>
+    /// <param name="profit">As long as the market's spans and apart from them.</param>
+    [ScalarTwin(nameof(Profit))]
+    public static void AccumulateValue(in GeometricAsianTerms terms, in MarketSpans market, double quantity, double baseValue, Span<double> profit) =>
+        MarketPayoff.Accumulate<GeometricAsianTerms, Payoff>(terms, market, quantity, baseValue, profit);
+
+    private readonly struct Payoff : IMarketPayoff<GeometricAsianTerms>
+    {
+        public static double Value(in GeometricAsianTerms terms, in MarketPoint at)
+        {
+            double w = WeightedTail.Deviation(at.Deviation), s = WeightedTail.Deviation(terms.RootVariance * w);
+            double growth = Math.FusedMultiplyAdd(-0.5 * w, w, at.Discount - at.Carry);
+            double mean = Math.FusedMultiplyAdd(growth, terms.MeanTime, Math.FusedMultiplyAdd(terms.Exponent, at.X, terms.LogMoneyness));
+            double asset = terms.SignedStrike * Exponential.Of(Math.FusedMultiplyAdd(0.5 * s, s, mean - at.Discount));
+            double strike = terms.SignedStrike * Exponential.Of(-at.Discount);
+            double signed = terms.Sign * s, d2 = mean / signed;
+            return BlackFormula.Value(asset, strike, d2 + signed, d2);
+        }
+
+        [MethodImpl(MethodImplOptions.AggressiveInlining)]
+        public static Vector512<double> Value(in GeometricAsianTerms terms, in MarketLanes at)
+        {
+            Vector512<double> w = WeightedTail.Deviation(at.Deviation), s = WeightedTail.Deviation(Vector512.Create(terms.RootVariance) * w);
+            Vector512<double> signedStrike = Vector512.Create(terms.SignedStrike);
+            Vector512<double> growth = Vector512.FusedMultiplyAdd(Vector512.Create(-0.5) * w, w, at.Discount - at.Carry);
+            Vector512<double> mean = Vector512.FusedMultiplyAdd(Vector512.Create(terms.Exponent), at.X, Vector512.Create(terms.LogMoneyness));
+            mean = Vector512.FusedMultiplyAdd(growth, Vector512.Create(terms.MeanTime), mean);
+            Vector512<double> asset = signedStrike * Exponential.Of(Vector512.FusedMultiplyAdd(Vector512.Create(0.5) * s, s, mean - at.Discount));
+            Vector512<double> strike = signedStrike * Exponential.Of(-at.Discount);
+            Vector512<double> signed = Vector512.Create(terms.Sign) * s, d2 = mean / signed;
+            return BlackFormula.Value(asset, strike, d2 + signed, d2);
+        }
+    }
+}
