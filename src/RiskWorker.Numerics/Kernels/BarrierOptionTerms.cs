@@ -34,8 +34,8 @@ public readonly struct BarrierOptionTerms
         Side = isUp ? -1.0 : 1.0;
         Sign = isCall ? 1.0 : -1.0;
         IsIn = isIn;
-        StrikeGap = Side * Logarithm.Of(spot0 / strike);
-        BarrierGap = Side * Logarithm.Of(spot0 / barrier);
+        StrikeGap = Side * LogRatio.Of(spot0, strike);
+        BarrierGap = Side * LogRatio.Of(spot0, barrier);
         Shift = years > 0.0 ? ContinuityCorrection * Math.Sqrt(observationSpacing / years) : 0.0;
     }
 

@@ -1,4 +1,5 @@
 using System.Runtime.CompilerServices;
+using System.Runtime.InteropServices;
 using System.Runtime.Intrinsics;
 
 namespace RiskWorker.Numerics.Kernels;
@@ -34,6 +35,11 @@ public static class DigitalOption
 
     private readonly struct Payoff : IMarketPayoff<DigitalOptionTerms>
     {
+        private const int Level = 0;
+        private const int Probability = 1;
+
+        public static int Rows => 2;
+
         public static double Value(in DigitalOptionTerms terms, in MarketPoint at)
         {
             double deviation = terms.Sign * WeightedTail.Deviation(at.Deviation);
@@ -43,16 +49,50 @@ public static class DigitalOption
                 : terms.Cash * Exponential.Of(-at.Discount) * NormalCdf.Of(Math.FusedMultiplyAdd(deviation, -0.5, middle));
         }
 
-        [MethodImpl(MethodImplOptions.AggressiveInlining)]
-        public static Vector512<double> Value(in DigitalOptionTerms terms, in MarketLanes at)
+        public static void Values(in DigitalOptionTerms terms, in MarketSpans market, in Workbench bench)
         {
-            Vector512<double> deviation = Vector512.Create(terms.Sign) * WeightedTail.Deviation(at.Deviation);
-            Vector512<double> middle = (Vector512.Create(terms.LogMoneyness) + at.X + (at.Discount - at.Carry)) / deviation;
+            Prepare(terms, market, bench);
+            bench.Exponentials(Level, 1);
+            NormalCdf.Of(bench[Probability], bench[Probability]);
+            if (terms.PaysAsset)
+                Multiply(bench, market.Spot);
+            else
+                Multiply(bench, terms.Cash);
+        }
+
+        [MethodImpl(Workbench.Loop)]
+        private static void Prepare(in DigitalOptionTerms terms, in MarketSpans market, in Workbench bench)
+        {
+            ref double moves = ref MemoryMarshal.GetReference(market.X);
+            ref double discounts = ref MemoryMarshal.GetReference(market.Discount);
+            ref double carries = ref MemoryMarshal.GetReference(market.Carry);
+            ref double deviations = ref MemoryMarshal.GetReference(market.Deviation);
+            ref double paid = ref terms.PaysAsset ? ref carries : ref discounts;
+            Vector512<double> sign = Vector512.Create(terms.Sign), moneyness = Vector512.Create(terms.LogMoneyness);
             Vector512<double> half = Vector512.Create(terms.PaysAsset ? 0.5 : -0.5);
-            Vector512<double> level = terms.PaysAsset
-                ? Exponential.Of(-at.Carry) * at.Spot
-                : Vector512.Create(terms.Cash) * Exponential.Of(-at.Discount);
-            return level * NormalCdf.Of(Vector512.FusedMultiplyAdd(deviation, half, middle));
+            for (nuint s = 0; s < (nuint)bench.Length; s += 8)
+            {
+                Vector512<double> deviation = sign * WeightedTail.Deviation(Vector512.LoadUnsafe(ref deviations, s));
+                Vector512<double> growth = Vector512.LoadUnsafe(ref discounts, s) - Vector512.LoadUnsafe(ref carries, s);
+                Vector512<double> middle = (moneyness + Vector512.LoadUnsafe(ref moves, s) + growth) / deviation;
+                bench.Store(Probability, s, Vector512.FusedMultiplyAdd(deviation, half, middle));
+                bench.Store(Level, s, -Vector512.LoadUnsafe(ref paid, s));
+            }
+        }
+
+        [MethodImpl(Workbench.Loop)]
+        private static void Multiply(in Workbench bench, ReadOnlySpan<double> spot)
+        {
+            ref double levels = ref MemoryMarshal.GetReference(spot);
+            for (nuint s = 0; s < (nuint)bench.Length; s += 8)
+                bench.Store(Workbench.Result, s, bench.Load(Level, s) * Vector512.LoadUnsafe(ref levels, s) * bench.Load(Probability, s));
+        }
+
+        [MethodImpl(Workbench.Loop)]
+        private static void Multiply(in Workbench bench, double cash)
+        {
+            for (nuint s = 0; s < (nuint)bench.Length; s += 8)
+                bench.Store(Workbench.Result, s, Vector512.Create(cash) * bench.Load(Level, s) * bench.Load(Probability, s));
         }
     }
 }

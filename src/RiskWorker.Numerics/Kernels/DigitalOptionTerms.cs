@@ -9,7 +9,7 @@ public readonly struct DigitalOptionTerms
     private DigitalOptionTerms(double spot0, double strike, double cash, bool isCall, bool paysAsset)
     {
         Sign = isCall ? 1.0 : -1.0;
-        LogMoneyness = Logarithm.Of(TermRange.Positive(spot0, nameof(spot0)) / TermRange.Positive(strike, nameof(strike)));
+        LogMoneyness = LogRatio.Of(TermRange.Positive(spot0, nameof(spot0)), TermRange.Positive(strike, nameof(strike)));
         Cash = cash;
         PaysAsset = paysAsset;
     }

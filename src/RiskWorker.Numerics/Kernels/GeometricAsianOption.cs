@@ -1,4 +1,5 @@
 using System.Runtime.CompilerServices;
+using System.Runtime.InteropServices;
 using System.Runtime.Intrinsics;
 
 namespace RiskWorker.Numerics.Kernels;
@@ -35,6 +36,8 @@ public static class GeometricAsianOption
 
     private readonly struct Payoff : IMarketPayoff<GeometricAsianTerms>
     {
+        public static int Rows => BlackFormula.Rows;
+
         public static double Value(in GeometricAsianTerms terms, in MarketPoint at)
         {
             double w = WeightedTail.Deviation(at.Deviation), s = WeightedTail.Deviation(terms.RootVariance * w);
@@ -46,18 +49,35 @@ public static class GeometricAsianOption
             return BlackFormula.Value(asset, strike, d2 + signed, d2);
         }
 
-        [MethodImpl(MethodImplOptions.AggressiveInlining)]
-        public static Vector512<double> Value(in GeometricAsianTerms terms, in MarketLanes at)
+        public static void Values(in GeometricAsianTerms terms, in MarketSpans market, in Workbench bench)
         {
-            Vector512<double> w = WeightedTail.Deviation(at.Deviation), s = WeightedTail.Deviation(Vector512.Create(terms.RootVariance) * w);
-            Vector512<double> signedStrike = Vector512.Create(terms.SignedStrike);
-            Vector512<double> growth = Vector512.FusedMultiplyAdd(Vector512.Create(-0.5) * w, w, at.Discount - at.Carry);
-            Vector512<double> mean = Vector512.FusedMultiplyAdd(Vector512.Create(terms.Exponent), at.X, Vector512.Create(terms.LogMoneyness));
-            mean = Vector512.FusedMultiplyAdd(growth, Vector512.Create(terms.MeanTime), mean);
-            Vector512<double> asset = signedStrike * Exponential.Of(Vector512.FusedMultiplyAdd(Vector512.Create(0.5) * s, s, mean - at.Discount));
-            Vector512<double> strike = signedStrike * Exponential.Of(-at.Discount);
-            Vector512<double> signed = Vector512.Create(terms.Sign) * s, d2 = mean / signed;
-            return BlackFormula.Value(asset, strike, d2 + signed, d2);
+            Prepare(terms, market, bench);
+            BlackFormula.Values(bench, terms.SignedStrike, [], terms.SignedStrike);
+        }
+
+        [MethodImpl(Workbench.Loop)]
+        private static void Prepare(in GeometricAsianTerms terms, in MarketSpans market, in Workbench bench)
+        {
+            ref double moves = ref MemoryMarshal.GetReference(market.X);
+            ref double discounts = ref MemoryMarshal.GetReference(market.Discount);
+            ref double carries = ref MemoryMarshal.GetReference(market.Carry);
+            ref double deviations = ref MemoryMarshal.GetReference(market.Deviation);
+            Vector512<double> sign = Vector512.Create(terms.Sign), root = Vector512.Create(terms.RootVariance), time = Vector512.Create(terms.MeanTime);
+            Vector512<double> exponent = Vector512.Create(terms.Exponent), moneyness = Vector512.Create(terms.LogMoneyness);
+            for (nuint s = 0; s < (nuint)bench.Length; s += 8)
+            {
+                Vector512<double> discount = Vector512.LoadUnsafe(ref discounts, s);
+                Vector512<double> w = WeightedTail.Deviation(Vector512.LoadUnsafe(ref deviations, s)), deviation = WeightedTail.Deviation(root * w);
+                Vector512<double> growth = Vector512.FusedMultiplyAdd(Vector512.Create(-0.5) * w, w, discount - Vector512.LoadUnsafe(ref carries, s));
+                Vector512<double> mean = Vector512.FusedMultiplyAdd(exponent, Vector512.LoadUnsafe(ref moves, s), moneyness);
+                mean = Vector512.FusedMultiplyAdd(growth, time, mean);
+                Vector512<double> signed = sign * deviation, d2 = mean / signed, d1 = d2 + signed;
+                bench.Store(BlackFormula.Asset, s, Vector512.FusedMultiplyAdd(Vector512.Create(0.5) * deviation, deviation, mean - discount));
+                bench.Store(BlackFormula.Strike, s, -discount);
+                bench.Store(BlackFormula.Gaussian, s, BlackFormula.Exponent(d1));
+                bench.Store(BlackFormula.D1, s, d1);
+                bench.Store(BlackFormula.D2, s, d2);
+            }
         }
     }
 }

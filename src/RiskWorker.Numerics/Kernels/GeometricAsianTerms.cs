@@ -14,7 +14,7 @@ public readonly struct GeometricAsianTerms
     {
         Sign = isCall ? 1.0 : -1.0;
         SignedStrike = Sign * TermRange.Positive(strike, nameof(strike));
-        double logSpot = Logarithm.Of(TermRange.Positive(spot0, nameof(spot0)) / strike);
+        double logSpot = LogRatio.Of(TermRange.Positive(spot0, nameof(spot0)), strike);
         // Logarithms are taken to the strike, so that an average that sits at it leaves nothing to cancel.
         LogMoneyness = Math.FusedMultiplyAdd(open, logSpot, known);
         Exponent = open;
@@ -59,7 +59,7 @@ public readonly struct GeometricAsianTerms
             throw new ArgumentException("There is no fixing; an average needs one at least.", nameof(fixingYears));
         double known = 0.0, total = 0.0, square = 0.0, last = 0.0;
         foreach (double level in pastFixings)
-            known += Logarithm.Of(TermRange.Positive(level, nameof(pastFixings)) / strike);
+            known += LogRatio.Of(TermRange.Positive(level, nameof(pastFixings)), strike);
         for (int i = 0; i < fixingYears.Length; i++)
         {
             double time = fixingYears[i];
@@ -96,7 +96,7 @@ public readonly struct GeometricAsianTerms
         }
 
         double open = years / (years - startYears);
-        double known = (1.0 - open) * Logarithm.Of(TermRange.Positive(pastAverage, nameof(pastAverage)) / strike);
+        double known = (1.0 - open) * LogRatio.Of(TermRange.Positive(pastAverage, nameof(pastAverage)), strike);
         return new(spot0, strike, isCall, open, known, 0.5 * open, open * open / 3.0);
     }
 

@@ -43,7 +43,7 @@ internal static class HitRebate
     /// <param name="weight">e^(-rT) e^(-(a+m)²/2).</param>
     public static double Value(double gap, double drift, double discount, double weight)
     {
-        double square = Math.FusedMultiplyAdd(drift, drift, 2.0 * discount);
+        double square = Square(drift, discount);
         if (square < 0.0)
             return weight * Oscillating(gap, -square);
         double root = Math.Sqrt(square);
@@ -53,19 +53,28 @@ internal static class HitRebate
         return WeightedTail.Add(WeightedTail.Add(value, weight, near), weight, -root - gap);
     }
 
+    /// <summary>l² = m² + 2rT.</summary>
+    public static double Square(double drift, double discount) => Math.FusedMultiplyAdd(drift, drift, 2.0 * discount);
+
+    /// <summary>l and the exponent of the first term; where l² is negative what they give is not the value.</summary>
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
-    public static Vector512<double> Value(Vector512<double> gap, Vector512<double> drift, Vector512<double> discount, Vector512<double> weight)
+    public static (Vector512<double> Root, Vector512<double> Exponent) Parts(Vector512<double> gap, Vector512<double> drift, Vector512<double> discount)
     {
-        Vector512<double> zero = Vector512<double>.Zero;
-        Vector512<double> square = Vector512.FusedMultiplyAdd(drift, drift, Vector512.Create(2.0) * discount);
-        Vector512<double> oscillates = Vector512.LessThan(square, zero);
-        Vector512<double> root = Vector512.Sqrt(Vector512.ConditionalSelect(oscillates, zero, square));
-        Vector512<double> exponent = Vector512.ConditionalSelect(
-            Vector512.LessThan(drift, zero), Vector512.Create(-2.0) * discount / (root - drift) * gap, -(drift + root) * gap);
-        Vector512<double> near = root - gap;
-        Vector512<double> value = WeightedTail.Level(Exponential.Of(exponent), near);
-        value = WeightedTail.Add(WeightedTail.Add(value, weight, near), weight, -root - gap);
-        return oscillates == zero ? value : Vector512.ConditionalSelect(oscillates, weight * Oscillating(gap, -square), value);
+        Vector512<double> zero = Vector512<double>.Zero, square = Vector512.FusedMultiplyAdd(drift, drift, Vector512.Create(2.0) * discount);
+        Vector512<double> root = Vector512.Sqrt(Vector512.ConditionalSelect(Vector512.LessThan(square, zero), zero, square));
+        Vector512<double> toward = Vector512.Create(-2.0) * discount / (root - drift) * gap;
+        return (root, Vector512.ConditionalSelect(Vector512.LessThan(drift, zero), toward, -(drift + root) * gap));
+    }
+
+    /// <summary>Puts the value where l² is negative, scenario by scenario.</summary>
+    public static void Mend(ReadOnlySpan<double> gap, ReadOnlySpan<double> drift, ReadOnlySpan<double> discount, ReadOnlySpan<double> weight, Span<double> value)
+    {
+        for (int s = 0; s < value.Length; s++)
+        {
+            double square = Square(drift[s], discount[s]);
+            if (square < 0.0)
+                value[s] = weight[s] * Oscillating(gap[s], -square);
+        }
     }
 
     private static double Oscillating(double gap, double square)
@@ -83,17 +92,8 @@ internal static class HitRebate
         return TwoOverRootTwoPi * half * sum;
     }
 
-    [MethodImpl(MethodImplOptions.NoInlining)]
-    private static Vector512<double> Oscillating(Vector512<double> gap, Vector512<double> square)
-    {
-        Vector512<double> value = Vector512<double>.Zero;
-        for (int lane = 0; lane < Vector512<double>.Count; lane++)
-            value = value.WithElement(lane, Oscillating(gap[lane], square[lane]));
-        return value;
-    }
-
     private static double Integrand(double s, double gap, double square) =>
-        WeightedTail.Gaussian(-Math.FusedMultiplyAdd(0.5, s, gap) * s) * CosineOfRoot(square * s * s);
+        Exponential.Of(-Math.FusedMultiplyAdd(0.5, s, gap) * s) * CosineOfRoot(square * s * s);
 
     // cos √q by its series in q; the integrand's exponential outweighs what it cancels.
     private static double CosineOfRoot(double q)

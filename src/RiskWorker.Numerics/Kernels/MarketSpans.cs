@@ -1,7 +1,3 @@
-using System.Runtime.CompilerServices;
-using System.Runtime.InteropServices;
-using System.Runtime.Intrinsics;
-
 namespace RiskWorker.Numerics.Kernels;
 
 /// <summary>A <see cref="MarketPoint"/> for each scenario of a block, as five spans of one length.</summary>
@@ -48,14 +44,9 @@ public readonly ref struct MarketSpans
     /// <summary>One scenario.</summary>
     public MarketPoint this[int scenario] => new(X[scenario], Spot[scenario], Discount[scenario], Carry[scenario], Deviation[scenario]);
 
-    /// <summary>Eight scenarios from <paramref name="first"/> on.</summary>
-    [MethodImpl(MethodImplOptions.AggressiveInlining)]
-    internal MarketLanes Eight(nuint first) => new(
-        Vector512.LoadUnsafe(ref MemoryMarshal.GetReference(X), first),
-        Vector512.LoadUnsafe(ref MemoryMarshal.GetReference(Spot), first),
-        Vector512.LoadUnsafe(ref MemoryMarshal.GetReference(Discount), first),
-        Vector512.LoadUnsafe(ref MemoryMarshal.GetReference(Carry), first),
-        Vector512.LoadUnsafe(ref MemoryMarshal.GetReference(Deviation), first));
+    /// <summary>Some of the scenarios.</summary>
+    internal MarketSpans Slice(int first, int length) => new(
+        X.Slice(first, length), Spot.Slice(first, length), Discount.Slice(first, length), Carry.Slice(first, length), Deviation.Slice(first, length));
 
     /// <summary>Guards what a kernel writes to.</summary>
     internal void RequireProfit(ReadOnlySpan<double> profit)
@@ -64,15 +55,4 @@ public readonly ref struct MarketSpans
         if (profit.Overlaps(X) || profit.Overlaps(Spot) || profit.Overlaps(Discount) || profit.Overlaps(Carry) || profit.Overlaps(Deviation))
             throw new ArgumentException("The profit overlaps an argument; it must be apart.", nameof(profit));
     }
-}
-
-/// <summary>Eight <see cref="MarketPoint"/>s in lanes.</summary>
-internal readonly struct MarketLanes(
-    Vector512<double> x, Vector512<double> spot, Vector512<double> discount, Vector512<double> carry, Vector512<double> deviation)
-{
-    public readonly Vector512<double> X = x;
-    public readonly Vector512<double> Spot = spot;
-    public readonly Vector512<double> Discount = discount;
-    public readonly Vector512<double> Carry = carry;
-    public readonly Vector512<double> Deviation = deviation;
 }

@@ -1,4 +1,5 @@
 using System.Runtime.CompilerServices;
+using System.Runtime.InteropServices;
 using System.Runtime.Intrinsics;
 
 namespace RiskWorker.Numerics.Kernels;
@@ -34,6 +35,8 @@ public static class MovedOption
 
     private readonly struct Payoff : IMarketPayoff<MovedOptionTerms>
     {
+        public static int Rows => BlackFormula.Rows;
+
         public static double Value(in MovedOptionTerms terms, in MarketPoint at)
         {
             double asset = terms.Sign * Exponential.Of(-at.Carry) * at.Spot;
@@ -43,16 +46,32 @@ public static class MovedOption
             return BlackFormula.Value(asset, strike, d1, d1 - deviation);
         }
 
-        [MethodImpl(MethodImplOptions.AggressiveInlining)]
-        public static Vector512<double> Value(in MovedOptionTerms terms, in MarketLanes at)
+        public static void Values(in MovedOptionTerms terms, in MarketSpans market, in Workbench bench)
         {
-            Vector512<double> sign = Vector512.Create(terms.Sign);
-            Vector512<double> asset = sign * Exponential.Of(-at.Carry) * at.Spot;
-            Vector512<double> strike = Vector512.Create(terms.SignedStrike) * Exponential.Of(-at.Discount);
-            Vector512<double> deviation = sign * WeightedTail.Deviation(at.Deviation);
-            Vector512<double> moneyness = Vector512.Create(terms.LogMoneyness) + at.X + (at.Discount - at.Carry);
-            Vector512<double> d1 = Vector512.FusedMultiplyAdd(deviation, Vector512.Create(0.5), moneyness / deviation);
-            return BlackFormula.Value(asset, strike, d1, d1 - deviation);
+            Prepare(terms, market, bench);
+            BlackFormula.Values(bench, terms.Sign, market.Spot, terms.SignedStrike);
+        }
+
+        [MethodImpl(Workbench.Loop)]
+        private static void Prepare(in MovedOptionTerms terms, in MarketSpans market, in Workbench bench)
+        {
+            ref double moves = ref MemoryMarshal.GetReference(market.X);
+            ref double discounts = ref MemoryMarshal.GetReference(market.Discount);
+            ref double carries = ref MemoryMarshal.GetReference(market.Carry);
+            ref double deviations = ref MemoryMarshal.GetReference(market.Deviation);
+            Vector512<double> sign = Vector512.Create(terms.Sign), moneyness = Vector512.Create(terms.LogMoneyness);
+            for (nuint s = 0; s < (nuint)bench.Length; s += 8)
+            {
+                Vector512<double> discount = Vector512.LoadUnsafe(ref discounts, s), carry = Vector512.LoadUnsafe(ref carries, s);
+                Vector512<double> deviation = sign * WeightedTail.Deviation(Vector512.LoadUnsafe(ref deviations, s));
+                Vector512<double> middle = (moneyness + Vector512.LoadUnsafe(ref moves, s) + (discount - carry)) / deviation;
+                Vector512<double> d1 = Vector512.FusedMultiplyAdd(deviation, Vector512.Create(0.5), middle);
+                bench.Store(BlackFormula.Asset, s, -carry);
+                bench.Store(BlackFormula.Strike, s, -discount);
+                bench.Store(BlackFormula.Gaussian, s, BlackFormula.Exponent(d1));
+                bench.Store(BlackFormula.D1, s, d1);
+                bench.Store(BlackFormula.D2, s, d1 - deviation);
+            }
         }
     }
 }

@@ -13,7 +13,7 @@ public readonly struct MovedOptionTerms
     public MovedOptionTerms(double spot0, double strike, bool isCall)
     {
         Sign = isCall ? 1.0 : -1.0;
-        LogMoneyness = Logarithm.Of(TermRange.Positive(spot0, nameof(spot0)) / TermRange.Positive(strike, nameof(strike)));
+        LogMoneyness = LogRatio.Of(TermRange.Positive(spot0, nameof(spot0)), TermRange.Positive(strike, nameof(strike)));
         SignedStrike = Sign * strike;
     }
 
