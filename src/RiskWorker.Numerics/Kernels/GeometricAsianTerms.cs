@@ -50,29 +50,29 @@ public readonly struct GeometricAsianTerms
     /// <exception cref="ArgumentOutOfRangeException">A term is not finite or outside its range.</exception>
     /// <exception cref="ArgumentException">There is no fixing, or the open ones are not ascending within [0, T]; the message names the place.</exception>
     public static GeometricAsianTerms Discrete(
-        double spot0, double strike, double years, ReadOnlySpan<double> fixingYears, ReadOnlySpan<double> pastFixings, bool isCall)
+        double spot0, double strike, double years, IReadOnlyList<double> fixingYears, IReadOnlyList<double> pastFixings, bool isCall)
     {
         TermRange.NotNegative(years, nameof(years));
         TermRange.Positive(strike, nameof(strike));
-        int count = fixingYears.Length + pastFixings.Length;
+        int count = fixingYears.Count + pastFixings.Count;
         if (count == 0)
             throw new ArgumentException("There is no fixing; an average needs one at least.", nameof(fixingYears));
         double known = 0.0, total = 0.0, square = 0.0, last = 0.0;
         foreach (double level in pastFixings)
             known += LogRatio.Of(TermRange.Positive(level, nameof(pastFixings)), strike);
-        for (int i = 0; i < fixingYears.Length; i++)
+        for (int i = 0; i < fixingYears.Count; i++)
         {
             double time = fixingYears[i];
             if (!(time >= last && time <= years))
                 throw new ArgumentException($"Fixing {i} is at {time} years; it must lie between {last} and {years}.", nameof(fixingYears));
             total += time;
             // Among the pairs with the later ones and itself this time is the lesser: 2(n - i) - 1 of them in both orders.
-            square = Math.FusedMultiplyAdd(time, (2.0 * (fixingYears.Length - i)) - 1.0, square);
+            square = Math.FusedMultiplyAdd(time, (2.0 * (fixingYears.Count - i)) - 1.0, square);
             last = time;
         }
 
         double perYear = years > 0.0 ? 1.0 / years : 0.0;
-        return new(spot0, strike, isCall, (double)fixingYears.Length / count, known / count, total / count * perYear, square / count / count * perYear);
+        return new(spot0, strike, isCall, (double)fixingYears.Count / count, known / count, total / count * perYear, square / count / count * perYear);
     }
 
     /// <summary>A continuous average from <paramref name="startYears"/> to the expiry (Kemna and Vorst 1990).</summary>

@@ -46,8 +46,7 @@ internal static class HitRebate
         double square = Square(drift, discount);
         if (square < 0.0)
             return weight * Oscillating(gap, -square);
-        double root = Math.Sqrt(square);
-        double exponent = drift < 0.0 ? -2.0 * discount / (root - drift) * gap : -(drift + root) * gap;
+        (double root, double exponent) = Parts(gap, drift, discount);
         double near = root - gap;
         double value = WeightedTail.Level(Exponential.Of(exponent), near);
         return WeightedTail.Add(WeightedTail.Add(value, weight, near), weight, -root - gap);
@@ -57,6 +56,12 @@ internal static class HitRebate
     public static double Square(double drift, double discount) => Math.FusedMultiplyAdd(drift, drift, 2.0 * discount);
 
     /// <summary>l and the exponent of the first term; where l² is negative what they give is not the value.</summary>
+    public static (double Root, double Exponent) Parts(double gap, double drift, double discount)
+    {
+        double square = Square(drift, discount), root = Math.Sqrt(square < 0.0 ? 0.0 : square);
+        return (root, drift < 0.0 ? -2.0 * discount / (root - drift) * gap : -(drift + root) * gap);
+    }
+
     [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static (Vector512<double> Root, Vector512<double> Exponent) Parts(Vector512<double> gap, Vector512<double> drift, Vector512<double> discount)
     {

@@ -29,10 +29,24 @@ public sealed class KernelBitsTests
         [nameof(LogNormalMoves.Levels)] = (n, y) => LogNormalMoves.Levels(n.Between(-6, 6, Count), 0.0007, 1e-5, 0.031, y),
         [nameof(EuropeanOption)] = OptionProfits,
         ["EuropeanOption at own volatility"] = OptionProfitsAtOwnVolatility,
+        [nameof(MovedOption)] = (n, y) => ClosedForms(n, (in MarketSpans market) =>
+            MovedOption.AccumulateValue(new(Spot0, n.Between(60, 160), n.Unit() < 0.5), market, n.Between(-100, 100), 5, y)),
+        [nameof(DigitalOption)] = (n, y) => ClosedForms(n, (in MarketSpans market) => DigitalOption.AccumulateValue(
+            n.Unit() < 0.5
+                ? DigitalOptionTerms.CashOrNothing(Spot0, n.Between(60, 160), 10, n.Unit() < 0.5)
+                : DigitalOptionTerms.AssetOrNothing(Spot0, n.Between(60, 160), n.Unit() < 0.5),
+            market, n.Between(-100, 100), 5, y)),
+        [nameof(BarrierOption)] = (n, y) => ClosedForms(n, (in MarketSpans market) => BarrierOption.AccumulateValue(
+            new(Spot0, n.Between(60, 160), n.Between(70, 140), n.Unit() < 0.5, n.Unit() < 0.5, n.Unit() < 0.5, n.Unit() < 0.5 ? 0 : 4, 1, n.Unit() < 0.5 ? 0 : 0.004),
+            market, n.Between(-100, 100), 5, y)),
+        [nameof(GeometricAsianOption)] = (n, y) => ClosedForms(n, (in MarketSpans market) => GeometricAsianOption.AccumulateValue(
+            GeometricAsianTerms.Continuous(Spot0, n.Between(60, 160), 1, n.Between(-2, 1), n.Between(80, 120), n.Unit() < 0.5), market, n.Between(-100, 100), 5, y)),
         [nameof(BookProfit)] = BookLosses,
         [nameof(Elementwise)] = CrossRates,
         [nameof(LaneSum)] = (n, y) => Sums(n.Between(-1e6, 1e6, 600), y),
     };
+
+    private delegate void Held(in MarketSpans market);
 
     public static IEnumerable<string> Names => Outputs.Keys;
 
@@ -51,6 +65,10 @@ public sealed class KernelBitsTests
     [InlineData("Levels", "d6aefabddabeab3dd7d9ff6cfc07c044")]
     [InlineData("EuropeanOption", "b45aa79c3634d5bd7569d0648bf31b98")]
     [InlineData("EuropeanOption at own volatility", "64dfd4692444283dc1e9bcd9fe212fe4")]
+    [InlineData("MovedOption", "344a6895be439ad6a80b06e34852d4b9")]
+    [InlineData("DigitalOption", "8328514f0e9f4726275fa2c06405b06b")]
+    [InlineData("BarrierOption", "3725e11670401b731c4e82488a9f2c6f")]
+    [InlineData("GeometricAsianOption", "eb7ba1300e98c6b2ede442f06844b2f5")]
     [InlineData("BookProfit", "b588542cd2b8a658be2db308b372280d")]
     [InlineData("Elementwise", "e83c48058ffce0ed22fe7337fccb311e")]
     [InlineData("LaneSum", "092d79c6bd865de46f059ec3ddc79409")]
@@ -106,6 +124,15 @@ public sealed class KernelBitsTests
             var terms = new EuropeanOptionTerms(Spot0, n.Between(60, 160), n.Between(0.002, 3), 0.2, 0.03, 0.01, i % 2 == 0);
             EuropeanOption.AccumulateValue(terms, x, spot, volatility, n.Between(-100, 100), 1.5, y);
         }
+    }
+
+    private static void ClosedForms(SeededNumbers n, Held one)
+    {
+        double[] x = Returns(n), spot = new double[Count], discount = n.Between(-0.03, 0.1, Count), carry = n.Between(-0.03, 0.08, Count), deviation = n.Between(0, 0.6, Count);
+        LogNormalMoves.Spots(x, Spot0, spot);
+        var market = new MarketSpans(x, spot, discount, carry, deviation);
+        for (int i = 0; i < 24; i++)
+            one(market);
     }
 
     private static void BookLosses(SeededNumbers n, double[] y)
