@@ -14,8 +14,10 @@ namespace RiskWorker.Numerics.Kernels;
 /// A negative rate may leave the formula of the rebate at the hit without a real exponent; <see cref="HitRebate"/> says what then stands
 /// in its place, and that it ends in NaN where -rT is above 2 or more.
 /// </para>
-/// <para>Absolute error below 3e-16 times (S e^(-qT) + K e^(-rT) + R) and 1 + (|ln(S₀/K)| + |ln(S₀/H)| + |x| + |rT| + |qT|)/w, and with w of 0.05 or more below
-/// 6e-16 times the former alone (measured at 6,000 options). A NaN in a scenario that did not touch gives a NaN there; allocates nothing.</para>
+/// <para>
+/// Absolute error below 3e-16 times (S e^(-qT) + K e^(-rT) + R) and 1 + (|ln(S₀/K)| + |ln(S₀/H)| + |x| + |rT| + |qT|)/w, and with w of 0.05 or
+/// more below 6e-16 times the former alone (measured at 6,000 options). A NaN in a scenario that did not touch gives a NaN there; allocates nothing.
+/// </para>
 /// </remarks>
 public static class BarrierOption
 {
