@@ -24,6 +24,10 @@ public static class InstrumentReader
             InstrumentKinds.Option => new Option(terms.Underlying(), terms.Positive("strike"), terms.Date("expiry"),
                 terms.Choice<OptionRight>("right"), terms.Choice<ExerciseStyle>("style"), terms.Volatility(), terms.Rate("curve"), terms.Rate("carry"))
             { Name = row.Name, Currency = row.Currency },
+            InstrumentKinds.Digital => ExoticReader.Digital(terms, row),
+            InstrumentKinds.Barrier => ExoticReader.Barrier(terms, row),
+            InstrumentKinds.Asian => ExoticReader.Asian(terms, row),
+            InstrumentKinds.Lookback => ExoticReader.Lookback(terms, row),
             _ when InstrumentKinds.TermsByKind.ContainsKey(row.Kind) => new UnmodelledInstrument(row.Kind, row.Terms) { Name = row.Name, Currency = row.Currency },
             _ => null,
         };
