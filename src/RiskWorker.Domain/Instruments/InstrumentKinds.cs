@@ -27,6 +27,18 @@ public static class InstrumentKinds
     /// <summary>The feed's spelling of <see cref="Instruments.Swap"/>.</summary>
     public const string Swap = "swap";
 
+    /// <summary>The feed's spelling of <see cref="Instruments.Digital"/>.</summary>
+    public const string Digital = "digital";
+
+    /// <summary>The feed's spelling of <see cref="SingleBarrier"/>.</summary>
+    public const string Barrier = "barrier";
+
+    /// <summary>The feed's spelling of <see cref="Instruments.Asian"/>.</summary>
+    public const string Asian = "asian";
+
+    /// <summary>The feed's spelling of <see cref="Instruments.Lookback"/>.</summary>
+    public const string Lookback = "lookback";
+
     private static readonly string[] s_optionTerms = ["factor", "base_currency", "strike", "expiry", "right", "style", "vol", "vol_factor", "curve", "carry"];
     private static readonly string[] s_floatTerms = ["projection", "float_frequency", "float_day_count", "float_spread", "last_fixing", "issue", "maturity", "curve", "notional"];
 
@@ -41,10 +53,10 @@ public static class InstrumentKinds
         [Floater] = [.. s_floatTerms, "spread"],
         [Swap] = [.. s_floatTerms, "receive", "coupon", "frequency", "day_count"],
         [Option] = s_optionTerms,
-        ["digital"] = [.. s_optionTerms, "payoff", "notional"],
-        ["barrier"] = [.. s_optionTerms, "barrier", "barrier_kind", "rebate", "monitoring", "issue", "knocked"],
-        ["asian"] = [.. s_optionTerms, "average", "fixings", "issue"],
-        ["lookback"] = [.. s_optionTerms, "monitoring", "issue"],
+        [Digital] = [.. s_optionTerms, "payoff", "notional"],
+        [Barrier] = [.. s_optionTerms, "barrier", "barrier_kind", "rebate", "monitoring", "issue", "knocked"],
+        [Asian] = [.. s_optionTerms, "average", "fixings", "issue"],
+        [Lookback] = [.. s_optionTerms, "monitoring", "issue"],
     };
 
     /// <summary>Every term that some kind uses, ordinal order.</summary>

@@ -27,6 +27,10 @@ public static class InstrumentReader
             InstrumentKinds.Bond => RateProductReader.Bond(row, terms),
             InstrumentKinds.Floater => RateProductReader.Floater(row, terms),
             InstrumentKinds.Swap => RateProductReader.Swap(row, terms),
+            InstrumentKinds.Digital => ExoticReader.Digital(terms, row),
+            InstrumentKinds.Barrier => ExoticReader.Barrier(terms, row),
+            InstrumentKinds.Asian => ExoticReader.Asian(terms, row),
+            InstrumentKinds.Lookback => ExoticReader.Lookback(terms, row),
             _ when InstrumentKinds.TermsByKind.ContainsKey(row.Kind) => new UnmodelledInstrument(row.Kind, row.Terms) { Name = row.Name, Currency = row.Currency },
             _ => null,
         };

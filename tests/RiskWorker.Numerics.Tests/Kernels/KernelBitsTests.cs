@@ -29,12 +29,26 @@ public sealed class KernelBitsTests
         [nameof(LogNormalMoves.Levels)] = (n, y) => LogNormalMoves.Levels(n.Between(-6, 6, Count), 0.0007, 1e-5, 0.031, y),
         [nameof(EuropeanOption)] = OptionProfits,
         ["EuropeanOption at own volatility"] = OptionProfitsAtOwnVolatility,
+        [nameof(MovedOption)] = (n, y) => ClosedForms(n, y, (in MarketSpans market, Span<double> profit) =>
+            MovedOption.AccumulateValue(new(Spot0, n.Between(60, 160), n.Unit() < 0.5), market, n.Between(-100, 100), 5, profit)),
+        [nameof(DigitalOption)] = (n, y) => ClosedForms(n, y, (in MarketSpans market, Span<double> profit) => DigitalOption.AccumulateValue(
+            n.Unit() < 0.5
+                ? DigitalOptionTerms.CashOrNothing(Spot0, n.Between(60, 160), 10, n.Unit() < 0.5)
+                : DigitalOptionTerms.AssetOrNothing(Spot0, n.Between(60, 160), n.Unit() < 0.5),
+            market, n.Between(-100, 100), 5, profit)),
+        [nameof(BarrierOption)] = (n, y) => ClosedForms(n, y, (in MarketSpans market, Span<double> profit) => BarrierOption.AccumulateValue(
+            new(Spot0, n.Between(60, 160), n.Between(70, 140), n.Unit() < 0.5, n.Unit() < 0.5, n.Unit() < 0.5, n.Unit() < 0.5 ? 0 : 4, 1, n.Unit() < 0.5 ? 0 : 0.004),
+            market, n.Between(-100, 100), 5, profit)),
+        [nameof(GeometricAsianOption)] = (n, y) => ClosedForms(n, y, (in MarketSpans market, Span<double> profit) => GeometricAsianOption.AccumulateValue(
+            GeometricAsianTerms.Continuous(Spot0, n.Between(60, 160), 1, n.Between(-2, 1), n.Between(80, 120), n.Unit() < 0.5), market, n.Between(-100, 100), 5, profit)),
         [nameof(BookProfit)] = BookLosses,
         [nameof(Elementwise)] = CrossRates,
         [nameof(UnitScale)] = (n, y) => UnitScale.Apply(n.Between(-0.3, 0.3, Count), 3.7, 0.01, y),
         [nameof(PolynomialSum)] = Polynomials,
         [nameof(LaneSum)] = (n, y) => Sums(n.Between(-1e6, 1e6, 600), y),
     };
+
+    private delegate void Held(in MarketSpans market, Span<double> profit);
 
     public static IEnumerable<string> Names => Outputs.Keys;
 
@@ -53,6 +67,10 @@ public sealed class KernelBitsTests
     [InlineData("Levels", "d6aefabddabeab3dd7d9ff6cfc07c044")]
     [InlineData("EuropeanOption", "b45aa79c3634d5bd7569d0648bf31b98")]
     [InlineData("EuropeanOption at own volatility", "64dfd4692444283dc1e9bcd9fe212fe4")]
+    [InlineData("MovedOption", "1a793dc61222a370e236b13ebc36c46d")]
+    [InlineData("DigitalOption", "a59dce82d9737a4b709f8554b6fdd115")]
+    [InlineData("BarrierOption", "308619beeed94c48bbdb504f3ac1efdf")]
+    [InlineData("GeometricAsianOption", "e373c228d445b289cebc7bb3071622d0")]
     [InlineData("BookProfit", "b588542cd2b8a658be2db308b372280d")]
     [InlineData("Elementwise", "e83c48058ffce0ed22fe7337fccb311e")]
     [InlineData("UnitScale", "849222ae93c6890bb75d188cf11d23d0")]
@@ -110,6 +128,15 @@ public sealed class KernelBitsTests
             var terms = new EuropeanOptionTerms(Spot0, n.Between(60, 160), n.Between(0.002, 3), 0.2, 0.03, 0.01, i % 2 == 0);
             EuropeanOption.AccumulateValue(terms, x, spot, volatility, n.Between(-100, 100), 1.5, y);
         }
+    }
+
+    private static void ClosedForms(SeededNumbers n, double[] y, Held one)
+    {
+        double[] x = Returns(n), spot = new double[Count], discount = n.Between(-0.03, 0.1, Count), carry = n.Between(-0.03, 0.08, Count), deviation = n.Between(0, 0.6, Count);
+        LogNormalMoves.Spots(x, Spot0, spot);
+        var market = new MarketSpans(x, spot, discount, carry, deviation);
+        for (int i = 0; i < 40; i++)
+            one(market.Slice(i * Count / 40, Count / 40), y.AsSpan(i * Count / 40, Count / 40));
     }
 
     private static void BookLosses(SeededNumbers n, double[] y)
