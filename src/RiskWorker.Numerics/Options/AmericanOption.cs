@@ -11,7 +11,7 @@ namespace RiskWorker.Numerics.Options;
 /// Schroder 1998). The put's cases:
 /// one boundary (r &gt; 0, or r = 0 with q &lt; 0): Kim's equation, <see cref="ExerciseBoundary"/>;
 /// never exercised early (r ≤ 0 and q ≥ r, r = q = 0 included): the European value;
-/// two boundaries (q &lt; r &lt; 0): a binomial lattice;
+/// two boundaries (q &lt; r &lt; 0), or a volatility lost beside the drift: a binomial lattice;
 /// v√T below 1e-9: the best time of a deterministic path; no time left: the intrinsic value.</para>
 /// <para>A value is never below the European one nor below exercise. Arithmetic, roots and the kernels alone: the same bits on
 /// every machine. Instances are immutable and may be shared between threads.</para>
@@ -34,12 +34,14 @@ public sealed class AmericanOption
     /// <param name="carryYield">q, continuously compounded: dividends, the foreign rate, or r on a futures price.</param>
     /// <param name="isCall">Call, else put.</param>
     /// <exception cref="ArgumentOutOfRangeException">A term is not finite or outside its range.</exception>
-    /// <exception cref="ArithmeticException">The boundary does not settle: rates beyond any market.</exception>
     public AmericanOption(double strike, double years, double volatility, double rate, double carryYield, bool isCall)
     {
         if (!double.IsFinite(carryYield))
             throw new ArgumentOutOfRangeException(nameof(carryYield), carryYield, $"carryYield is {carryYield}; it must be finite.");
-        _ = new EuropeanOptionTerms(strike, strike, years, volatility, rate, rate - carryYield, isCall);
+        if (!(strike > 0.0) || double.IsInfinity(strike))
+            throw new ArgumentOutOfRangeException(nameof(strike), strike, $"strike is {strike}; it must be positive and finite.");
+        if (!double.IsFinite(rate))
+            throw new ArgumentOutOfRangeException(nameof(rate), rate, $"rate is {rate}; it must be finite.");
         (this.isCall, this.strike) = (isCall, strike);
         put = isCall ? (years, carryYield, rate) : (years, rate, carryYield);
         european = new EuropeanOptionTerms(1.0, 1.0, years, volatility, put.Rate, put.Rate - put.Yield, false);
@@ -47,8 +49,8 @@ public sealed class AmericanOption
         if (isCertain)
             return;
         if (put.Rate > 0.0 || (put.Rate == 0.0 && put.Yield < 0.0))
-            boundary = new ExerciseBoundary(years, volatility, put.Rate, put.Yield);
-        else if (put.Yield < put.Rate)
+            boundary = ExerciseBoundary.Find(years, volatility, put.Rate, put.Yield);
+        if (boundary is null && (put.Rate > 0.0 || put.Yield < put.Rate))
             lattice = new ExerciseLattice(years, volatility, put.Rate, put.Yield);
     }
 

@@ -11,16 +11,25 @@ internal sealed class ExerciseBoundary
     private readonly ExerciseTerms terms;
     private readonly double[] logBoundary = new double[ExerciseGrid.OfValue.Points];
 
-    /// <remarks>One boundary must exist: a positive rate, or none with a negative carry yield.</remarks>
-    public ExerciseBoundary(double years, double volatility, double rate, double carryYield)
+    private ExerciseBoundary(
+        ExerciseEquation equation, double logStart, double years, double volatility, double rate, double carryYield)
     {
-        double logStart = carryYield > rate ? Logarithm.Of(rate / carryYield) : 0.0;
-        var equation = new ExerciseEquation(years, volatility, rate, carryYield, logStart);
         Lowest = Exponential.Of(logStart + equation.Logarithms[0]);
         terms = new ExerciseTerms(ExerciseGrid.OfValue, years, volatility, rate, carryYield);
         equation.Interpolate(ExerciseGrid.OfValue, logBoundary);
         for (int j = 0; j < logBoundary.Length; j++)
             logBoundary[j] += logStart;
+    }
+
+    /// <summary>
+    /// The boundary of a put of which there is one: a positive rate, or none with a negative carry yield. Null where the
+    /// equation cannot be solved.
+    /// </summary>
+    public static ExerciseBoundary? Find(double years, double volatility, double rate, double carryYield)
+    {
+        double logStart = carryYield > rate ? Logarithm.Of(rate / carryYield) : 0.0;
+        var equation = new ExerciseEquation(years, volatility, rate, carryYield, logStart);
+        return equation.IsSolved ? new ExerciseBoundary(equation, logStart, years, volatility, rate, carryYield) : null;
     }
 
     /// <summary>The boundary today: at or below it the put is exercised.</summary>

@@ -38,12 +38,11 @@ internal sealed class ExerciseEquation
         rootYears = Math.Sqrt(years);
         terms = new ExerciseTerms(grid, years, volatility, rate, carryYield);
         bool isGentle = (rate - carryYield) * rootYears < MostDriftInDensities * volatility;
-        if (!(isGentle && Settles(inDensities: true, MostStepsInDensities)) && !Settles(inDensities: false, MostSteps))
-        {
-            throw new ArithmeticException(
-                $"The exercise boundary did not settle in {MostSteps} steps for {years} years, volatility {volatility}, rate {rate} and carry yield {carryYield}.");
-        }
+        IsSolved = (isGentle && Settles(inDensities: true, MostStepsInDensities)) || Settles(inDensities: false, MostSteps);
     }
+
+    /// <summary>Whether the iteration settled; it does wherever the volatility is not lost beside the drift, 1 in 10^5.</summary>
+    public bool IsSolved { get; }
 
     /// <summary>ln(B/B(0)) at the nodes, the whole life first.</summary>
     public ReadOnlySpan<double> Logarithms => y;

@@ -9,12 +9,12 @@ namespace RiskWorker.Numerics.Quadrature;
 /// </remarks>
 public sealed class GaussLegendre
 {
-    private const int MostPoints = 512;
+    private const int MostPoints = 128;
     private const int Steps = 12;
     private readonly double[] points;
     private readonly double[] weights;
 
-    /// <param name="count">Points, 1 to 512.</param>
+    /// <param name="count">Points, 1 to 128.</param>
     /// <exception cref="ArgumentOutOfRangeException">The count lies outside.</exception>
     public GaussLegendre(int count)
     {
