@@ -12,6 +12,9 @@ internal sealed class ControlledMean(int controls)
     // A control of which less than this share of the variance is its own says nothing that the others have not said.
     private const double SmallestShare = 1e-10;
 
+    // Of a control that varies less than this about another mean than 0 only rounding is left.
+    private const double SmallestSpread = 1e-2;
+
     private readonly double[] controlSums = new double[controls];
     private readonly double[] crossSums = new double[controls];
     private readonly double[] squareSums = new double[controls * controls];
@@ -39,41 +42,54 @@ internal sealed class ControlledMean(int controls)
     /// <summary>The mean and its standard error.</summary>
     public (double Mean, double StandardError) Result()
     {
-        // The factor of the controls' covariance, one row a control; its last row is the variable's own.
-        double[] factor = new double[(controls + 1) * controls];
+        double[] factor = Factor();
         double mean = sum / count, unexplained = squares - (sum * mean);
-        for (int i = 0; i <= controls; i++)
-        {
-            for (int j = 0; j < Math.Min(i + 1, controls); j++)
-            {
-                double rest = i == controls ? Covariance(crossSums[j], j, sum) : Covariance(squareSums[(i * controls) + j], j, controlSums[i]);
-                for (int k = 0; k < j; k++)
-                    rest = Math.FusedMultiplyAdd(-factor[(i * controls) + k], factor[(j * controls) + k], rest);
-                double pivot = factor[(j * controls) + j];
-                if (i == j)
-                    factor[(i * controls) + i] = rest > SmallestShare * Covariance(squareSums[(i * controls) + i], i, controlSums[i]) ? Math.Sqrt(rest) : 0.0;
-                else
-                    factor[(i * controls) + j] = pivot > 0.0 ? rest / pivot : 0.0;
-            }
-        }
-
-        // Forward: each control's own part of its mean, and of the variable.
         Span<double> own = stackalloc double[controls];
-        int last = controls * controls, used = 0;
+        int used = 0;
         for (int i = 0; i < controls; i++)
         {
-            double pivot = factor[(i * controls) + i], rest = controlSums[i] / count;
+            double pivot = factor[(i * controls) + i], loading = factor[(controls * controls) + i];
             if (pivot == 0.0)
                 continue;
-            for (int k = 0; k < i; k++)
-                rest = Math.FusedMultiplyAdd(-factor[(i * controls) + k], own[k], rest);
-            own[i] = rest / pivot;
-            mean = Math.FusedMultiplyAdd(-factor[last + i], own[i], mean);
-            unexplained = Math.FusedMultiplyAdd(-factor[last + i], factor[last + i], unexplained);
+            own[i] = Rest(controlSums[i] / count, factor.AsSpan(i * controls, i), own) / pivot;
+            mean = Math.FusedMultiplyAdd(-loading, own[i], mean);
+            unexplained = Math.FusedMultiplyAdd(-loading, loading, unexplained);
             used++;
         }
 
         return (mean, Math.Sqrt(Math.Max(unexplained, 0.0) / ((count - used - 1.0) * count)));
+    }
+
+    /// <summary>
+    /// The lower factor of the controls' covariance, times the count, and below it the variable's covariance with each control's
+    /// own part. The pivot of a control that says nothing of its own is 0.
+    /// </summary>
+    private double[] Factor()
+    {
+        double[] factor = new double[(controls + 1) * controls];
+        for (int i = 0; i <= controls; i++)
+        {
+            Span<double> row = factor.AsSpan(i * controls, controls);
+            for (int j = 0; j < controls && j <= i; j++)
+            {
+                double whole = i == controls ? Covariance(crossSums[j], j, sum) : Covariance(squareSums[(i * controls) + j], j, controlSums[i]);
+                double rest = Rest(whole, row[..j], factor.AsSpan(j * controls, j)), pivot = factor[(j * controls) + j];
+                if (i == j)
+                    row[j] = rest > SmallestShare * Math.Max(whole, SmallestSpread * squareSums[(i * controls) + i]) ? Math.Sqrt(rest) : 0.0;
+                else
+                    row[j] = pivot > 0.0 ? rest / pivot : 0.0;
+            }
+        }
+
+        return factor;
+    }
+
+    /// <summary>whole - a·b over the length of <paramref name="a"/>.</summary>
+    private static double Rest(double whole, ReadOnlySpan<double> a, ReadOnlySpan<double> b)
+    {
+        for (int k = 0; k < a.Length; k++)
+            whole = Math.FusedMultiplyAdd(-a[k], b[k], whole);
+        return whole;
     }
 
     private double Covariance(double products, int control, double otherSum) =>

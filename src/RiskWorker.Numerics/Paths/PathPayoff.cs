@@ -18,7 +18,7 @@ public abstract class PathPayoff
     /// <summary>Numbers that a path is reduced to.</summary>
     internal abstract int Statistics { get; }
 
-    /// <summary>Variables whose expectation is known.</summary>
+    /// <summary>Variables whose expectation is known, at least one; the last is the closest to the payoff, of the same scale.</summary>
     internal abstract int Controls { get; }
 
     /// <summary>Reduces a block of paths, or of their mirrors, at one volatility.</summary>

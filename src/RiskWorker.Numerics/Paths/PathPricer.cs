@@ -105,7 +105,7 @@ public sealed class PathPricer
 
         public double[] Controls { get; } = new double[payoff.Controls * PathBlock.Pairs];
 
-        /// <summary>Payoff and centred controls of the pairs' means.</summary>
+        /// <summary>The pairs' means: centred controls, and the payoff less the last of them, which leaves its expectation.</summary>
         public void Evaluate(double spot, ReadOnlySpan<double> means)
         {
             payoff.Evaluate(spot, Statistics, Payoff, Controls);
@@ -116,6 +116,9 @@ public sealed class PathPricer
                 int from = c * PathBlock.Pairs;
                 LaneLoop.Apply(new PairMean(means[c]), mirroredControls.AsSpan(from, PathBlock.Pairs), Controls.AsSpan(from, PathBlock.Pairs));
             }
+
+            // What no path tells about a payoff that none of them reaches, its closest control knows.
+            LaneLoop.Apply(new WeightedSum(-1.0), Controls.AsSpan((means.Length - 1) * PathBlock.Pairs), Payoff);
         }
     }
 }

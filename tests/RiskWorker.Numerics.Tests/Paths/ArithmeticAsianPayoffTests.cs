@@ -12,7 +12,7 @@ public sealed class ArithmeticAsianPayoffTests
     public void Price_discrete_average_is_within_its_error_of_the_reference(int fixings, double expected, double referenceError)
     {
         var payoff = ArithmeticAsianPayoff.OfFixings(Dates.Flat(fixings, 1, 0.05, 0), 0, 0, 100, true);
-        (double value, double error) = Dates.Price(payoff, 0.2, 100);
+        (double value, double error) = Dates.Price(payoff, 0.2, 100, pairs: 4096);
         Assert.InRange(error, 1e-5, 1e-3);
         Assert.InRange(Math.Abs(value - expected), 0, 4 * (error + referenceError));
     }
@@ -44,8 +44,8 @@ public sealed class ArithmeticAsianPayoffTests
         string id, double spot, double strike, double years, double rate, double volatility, double expected)
     {
         var payoff = ArithmeticAsianPayoff.Continuous(rate, 0, years, 0, 0, strike, true);
-        (double value, double error) = Dates.Price(payoff, volatility, spot);
-        Assert.InRange(error / value, 1e-7, 5e-4);
+        (double value, double error) = Dates.Price(payoff, volatility, spot, pairs: 2048);
+        Assert.InRange(error / value, 1e-6, 1e-3);
         Assert.True(Math.Abs(value - expected) <= (4 * error) + (1e-5 * expected), $"{id}: {value:R} with error {error:E1}, expected {expected:R}.");
     }
 
@@ -86,7 +86,18 @@ public sealed class ArithmeticAsianPayoffTests
         double average = (1100 + Dates.Equal(3, 0.25).Sum(t => 90 * Math.Exp(0.03 * t))) / 10;
         Assert.Equal(Math.Exp(-0.0075) * (average - 100), call, 1e-11);
         Assert.InRange(error, 0, 1e-7);
-        Assert.Equal((0.0, 0.0), Dates.Price(ArithmeticAsianPayoff.OfFixings(schedule, 7, 1100, 100, false), 0.4, 90, pairs: 1024));
+        Assert.Equal(0, Dates.Price(ArithmeticAsianPayoff.OfFixings(schedule, 7, 1100, 100, false), 0.4, 90, pairs: 1024).Value, 1e-11);
+    }
+
+    [Fact]
+    public void Price_beyond_the_reach_of_any_path_is_that_of_the_geometric_average()
+    {
+        var payoff = ArithmeticAsianPayoff.OfFixings(Dates.Flat(12, 1, 0.05, 0), 0, 0, 100, true);
+        double[] means = new double[3];
+        payoff.ControlMeans(63, 0.2, means);
+        (double value, _) = Dates.Price(payoff, 0.2, 63, pairs: 512);
+        Assert.InRange(value, 1e-12, 1e-3);
+        Assert.Equal(1, value / (Math.Exp(-0.05) * means[2]), 1e-12);
     }
 
     [Fact]
@@ -103,11 +114,11 @@ public sealed class ArithmeticAsianPayoffTests
     public void Price_fixing_of_today_is_the_spot()
     {
         double[] later = [0.25, 0.5];
-        var withToday = Dates.Price(ArithmeticAsianPayoff.OfFixings(PathSchedule.Flat([0, .. later], 0.03, 0, 0.5), 2, 190, 100, true), 0.3, 104);
-        var asPast = Dates.Price(ArithmeticAsianPayoff.OfFixings(PathSchedule.Flat(later, 0.03, 0, 0.5), 3, 294, 100, true), 0.3, 104);
+        var withToday = Dates.Price(ArithmeticAsianPayoff.OfFixings(PathSchedule.Flat([0, .. later], 0.03, 0, 0.5), 2, 190, 100, true), 0.3, 104, pairs: 2048);
+        var asPast = Dates.Price(ArithmeticAsianPayoff.OfFixings(PathSchedule.Flat(later, 0.03, 0, 0.5), 3, 294, 100, true), 0.3, 104, pairs: 2048);
         // The draws are the same; the geometric averages that help are not.
         Assert.InRange(Math.Abs(withToday.Value - asPast.Value), 0, 4 * Math.Max(withToday.Error, asPast.Error));
-        Assert.InRange(withToday.Error, 1e-6, 1e-3);
+        Assert.InRange(withToday.Error, 1e-6, 5e-3);
     }
 
     [Fact]
@@ -124,8 +135,8 @@ public sealed class ArithmeticAsianPayoffTests
     public void Price_past_average_of_a_continuous_one_shifts_the_strike()
     {
         // A third of the life is past at 110: (110/3 + 2/3 A - 100)⁺ = 2/3 (A - 95)⁺.
-        (double whole, _) = Dates.Price(ArithmeticAsianPayoff.Continuous(0.03, 0, 1, 0.5, 110, 100, true), 0.3, 97);
-        (double alone, _) = Dates.Price(ArithmeticAsianPayoff.Continuous(0.03, 0, 1, 0, 0, 95, true), 0.3, 97);
+        (double whole, _) = Dates.Price(ArithmeticAsianPayoff.Continuous(0.03, 0, 1, 0.5, 110, 100, true), 0.3, 97, pairs: 512);
+        (double alone, _) = Dates.Price(ArithmeticAsianPayoff.Continuous(0.03, 0, 1, 0, 0, 95, true), 0.3, 97, pairs: 512);
         Assert.Equal(alone * 2 / 3, whole, 1e-9);
     }
 
@@ -134,7 +145,7 @@ public sealed class ArithmeticAsianPayoffTests
     {
         var payoff = ArithmeticAsianPayoff.OfFixings(Dates.Flat(12, 1, 0.03, 0.01), 0, 0, 100, true);
         double[] volatilities = [0, 0.05, 0.1, 0.2, 0.4], spots = [80, 90, 100, 110, 120], values = new double[25], errors = new double[25];
-        new PathPricer(3, 2048).Price(payoff, volatilities, spots, values, errors);
+        new PathPricer(3, 1024).Price(payoff, volatilities, spots, values, errors);
         for (int v = 0; v < 5; v++)
         {
             for (int s = 0; s < 5; s++)

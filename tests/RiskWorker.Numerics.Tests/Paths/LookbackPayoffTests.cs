@@ -23,8 +23,8 @@ public sealed class LookbackPayoffTests
     public void Price_continuous_extreme_by_simulation_is_within_its_error_of_the_closed_form(int steps)
     {
         var payoff = new LookbackPayoff(Dates.Flat(steps, 0.5, 0.10, 0.06), true, null, 100, true, withExtremeControl: false);
-        (double value, double error) = Dates.Price(payoff, 0.3, 120);
-        Assert.InRange(error, 1e-3, 5e-2);
+        (double value, double error) = Dates.Price(payoff, 0.3, 120, pairs: 4096);
+        Assert.InRange(error, 1e-3, 1e-1);
         Assert.InRange(Math.Abs(value - 25.353355271810198), 0, 4 * error);
     }
 
@@ -57,8 +57,8 @@ public sealed class LookbackPayoffTests
         PathSchedule schedule = Dates.Flat(1, 0.5, 0.04, 0.01);
         (double exact, _) = Dates.Price(new LookbackPayoff(schedule, true, strike, extreme, isCall), 0.3, 104, pairs: 512);
         var payoff = new LookbackPayoff(schedule, true, strike, extreme, isCall, withExtremeControl: false);
-        (double value, double error) = Dates.Price(payoff, 0.3, 104, seed: 5);
-        Assert.InRange(error, 1e-4, 5e-2);
+        (double value, double error) = Dates.Price(payoff, 0.3, 104, seed: 5, pairs: 4096);
+        Assert.InRange(error, 1e-4, 1e-1);
         Assert.InRange(Math.Abs(value - exact), 0, 4 * error);
     }
 
@@ -71,10 +71,10 @@ public sealed class LookbackPayoffTests
         var daily = new LookbackPayoff(PathSchedule.Flat([0, .. Dates.Equal(Days, 1)], 0.05, 0, 1), false, null, null, false);
         double shift = Math.Exp(0.5826 * 0.3 / Math.Sqrt(Days));
         var continuous = new LookbackPayoff(Dates.Flat(1, 1, 0.05, 0), true, null, 100 * shift, false);
-        (double value, double error) = Dates.Price(daily, 0.3, 100);
+        (double value, double error) = Dates.Price(daily, 0.3, 100, pairs: 1024);
         double maximum = Dates.Price(continuous, 0.3, 100, pairs: 512).Value + 100;
         double corrected = (maximum / shift) - 100;
-        Assert.InRange(error / value, 1e-6, 5e-4);
+        Assert.InRange(error / value, 1e-6, 1e-3);
         Assert.InRange(Math.Abs(value - corrected), 0, (4 * error) + 0.01);
     }
 
@@ -85,8 +85,8 @@ public sealed class LookbackPayoffTests
         for (int i = 0; i < 12; i++)
         {
             (double strike, double volatility, bool isCall) = (numbers.Between(80, 120), numbers.Between(0.1, 0.5), i % 2 == 0);
-            PathSchedule schedule = Dates.Flat(20, 0.4, 0.04, 0.02);
-            (double daily, double error) = Dates.Price(new LookbackPayoff(schedule, false, strike, null, isCall), volatility, 100, pairs: 2048);
+            PathSchedule schedule = Dates.Flat(10, 0.4, 0.04, 0.02);
+            (double daily, double error) = Dates.Price(new LookbackPayoff(schedule, false, strike, null, isCall), volatility, 100, pairs: 1024);
             (double continuous, _) = Dates.Price(new LookbackPayoff(schedule, true, strike, null, isCall), volatility, 100, pairs: 512);
             double vanilla = EuropeanOption.Value(new EuropeanOptionTerms(100, strike, 0.4, volatility, 0.04, 0.02, isCall), 0, 100);
             Assert.InRange(daily, vanilla, continuous + (4 * error));
@@ -99,11 +99,11 @@ public sealed class LookbackPayoffTests
     {
         // The forward rises by 10% and comes back: the maximum sees it, the flat control does not.
         var schedule = new PathSchedule([0.5, 1.0], [Math.Log(1.1), 0], 1);
-        (double value, double error) = Dates.Price(new LookbackPayoff(schedule, true, null, null, false), 0.01, 100);
+        (double value, double error) = Dates.Price(new LookbackPayoff(schedule, true, null, null, false), 0.01, 100, pairs: 1024);
         (double certain, _) = Dates.Price(new LookbackPayoff(schedule, true, null, null, false), 0, 100, pairs: 512);
         Assert.Equal(10, certain, 1e-9);
         Assert.InRange(value, 10, 11);
-        Assert.InRange(error, 1e-6, 0.02);
+        Assert.InRange(error, 1e-6, 0.05);
     }
 
     [Fact]

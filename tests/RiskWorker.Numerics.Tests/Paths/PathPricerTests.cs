@@ -44,7 +44,7 @@ public sealed class PathPricerTests
         (double value, _) = Dates.Price(ArithmeticAsianPayoff.OfFixings(schedule, 0, 0, 100, true), 0.3, 100, pairs: 2048);
         var numbers = new SeededNumbers(131);
         double sum = 0, squares = 0;
-        const int Paths = 100_000;
+        const int Paths = 40_000;
         for (int i = 0; i < Paths; i++)
         {
             double spot = 100, total = 0;
@@ -72,11 +72,11 @@ public sealed class PathPricerTests
         double[] nodes = [.. Enumerable.Range(0, Degree + 1).Select(i => 105 + (35 * Math.Cos(i * Math.PI / Degree)))];
         double[] between = [.. Enumerable.Range(0, 40).Select(i => 70.7 + (1.7 * i))];
         double[] atNodes = new double[Degree + 1], direct = new double[40], errors = new double[40];
-        new PathPricer(1).Price(payoff, [0.2], nodes, atNodes, new double[Degree + 1]);
-        new PathPricer(1).Price(payoff, [0.2], between, direct, errors);
+        new PathPricer(1, 1024).Price(payoff, [0.2], nodes, atNodes, new double[Degree + 1]);
+        new PathPricer(1, 1024).Price(payoff, [0.2], between, direct, errors);
         for (int i = 0; i < between.Length; i++)
-            Assert.InRange(Math.Abs(Interpolated(nodes, atNodes, between[i]) - direct[i]), 0, 1.5e-3);
-        Assert.InRange(errors.Max(), 1e-5, 1e-3);
+            Assert.InRange(Math.Abs(Interpolated(nodes, atNodes, between[i]) - direct[i]), 0, 5e-3);
+        Assert.InRange(errors.Max(), 1e-5, 3e-3);
     }
 
     [Fact]
