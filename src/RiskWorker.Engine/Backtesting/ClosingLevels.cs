@@ -1,5 +1,6 @@
 using RiskWorker.Domain.Market;
 using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Pricing;
 
 namespace RiskWorker.Engine.Backtesting;
 
@@ -7,7 +8,7 @@ namespace RiskWorker.Engine.Backtesting;
 /// The factors' levels at the close of any date of a snapshot: of each factor the newest observation up to then on an open day of its
 /// calendar. Those of the as-of date are the calibrated model's to the last bit.
 /// </summary>
-public sealed class ClosingLevels
+public sealed class ClosingLevels : IPastLevels
 {
     private readonly ObservationHistory _history;
     private readonly int[] _columns;
@@ -40,6 +41,23 @@ public sealed class ClosingLevels
         for (var j = 0; j < levels.Length; j++) levels[j] = _columns[j] < 0 ? double.NaN : Level(j, row, basis);
         return levels;
     }
+
+    /// <inheritdoc/>
+    public double On(UnderlyingKey underlying, DateOnly date, DateOnly basis)
+    {
+        if (_history.IndexOf(date) is var row && row < 0) return double.NaN;
+        if (!underlying.IsCross) return ObservedOn(underlying.Factor, row, basis);
+        return (underlying.Factor < 0 ? 1 : ObservedOn(underlying.Factor, row, basis)) / (underlying.Quote < 0 ? 1 : ObservedOn(underlying.Quote, row, basis));
+    }
+
+    /// <inheritdoc/>
+    public IEnumerable<DateOnly> Dates(DateOnly from, DateOnly to)
+    {
+        for (var row = _history.IndexOf(from) is var found && found < 0 ? ~found : found; row < _history.Count && _history.Dates[row] <= to; row++) yield return _history.Dates[row];
+    }
+
+    private double ObservedOn(int factor, int row, DateOnly basis) =>
+        _columns[factor] < 0 || double.IsNaN(_history.Column(_columns[factor])[row]) ? double.NaN : Level(factor, row, basis);
 
     private double Level(int factor, int row, DateOnly basis)
     {

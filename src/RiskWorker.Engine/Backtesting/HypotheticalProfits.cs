@@ -19,8 +19,8 @@ public sealed class HypotheticalProfits
     public HypotheticalProfits(Snapshot snapshot, BookTree tree)
     {
         (_snapshot, _tree) = (snapshot, tree);
-        _binder = new(tree.ReportingCurrency, snapshot.Factors);
         _levels = new(snapshot);
+        _binder = new(tree.ReportingCurrency, snapshot.Factors, _levels, snapshot.Settings.Simulation.Seed);
     }
 
     /// <summary>The profit from the newest earlier positions to the as-of date; null where there are none.</summary>
@@ -68,12 +68,13 @@ public sealed class HypotheticalProfits
     /// <summary>Values of one unit held in the reporting currency; null where it cannot be valued at both closes.</summary>
     private UnitValue? ValueOf(string name, DateOnly from, double[] before, DateOnly to, double[] after)
     {
-        if (!_snapshot.Instruments.TryGetValue(name, out var instrument) || _binder.Bind(instrument, out var bound) is not null || bound.Expiry < from) return null;
-        var date = _snapshot.Settings.TimeEffectsIncluded ? Earlier(to, bound.Expiry) : from;
-        var (rateBefore, rateAfter) = (_binder.Currencies.RateOf(bound.Currency, before), _binder.Currencies.RateOf(bound.Currency, after));
-        var value = Valuer.ValueOf(bound, before, from) * rateBefore;
+        if (!_snapshot.Instruments.TryGetValue(name, out var instrument) || _binder.Bind(instrument, from, out var bound) is not null) return null;
+        var then = bound!;
+        if (_snapshot.Settings.TimeEffectsIncluded && _binder.Bind(instrument, Earlier(to, bound!.LastDay), out then) is not null) return null;
+        var (rateBefore, rateAfter) = (_binder.Currencies.RateOf(bound!.Currency, before), _binder.Currencies.RateOf(bound.Currency, after));
+        var value = bound.Value(before) * rateBefore;
         // A future is worth nothing at either close: the change of its price is paid at the later one.
-        var later = rateAfter * (bound.Shape == PayoffShape.Future ? Valuer.ProfitOf(bound, before, from, after, date) : Valuer.ValueOf(bound, after, date));
+        var later = rateAfter * (then!.Value(after) + bound.Settled(before, after));
         return double.IsFinite(value) && double.IsFinite(later) ? new(value, later) : null;
     }
 

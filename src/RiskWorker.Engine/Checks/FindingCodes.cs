@@ -182,6 +182,16 @@ public static class FindingCodes
         "An instrument held is of a kind, or has a term, that has no pricing, so no figure holds it",
         "keep its risk in view by other means until it is priced");
 
+    /// <summary>An average that cannot be formed.</summary>
+    public static readonly FindingCode FixingMissing = new("fixing-missing", Warning,
+        "A past fixing of an average is known neither from its terms nor from the observations, so no figure holds the instrument",
+        "give it as DATE=VALUE among the fixings, or load an observation of that date");
+
+    /// <summary>A barrier that has been touched.</summary>
+    public static readonly FindingCode BarrierCrossed = new("barrier-crossed", Warning,
+        "A barrier was crossed on an earlier date, so the option held is another thing now",
+        "book what it has become, or correct issue, barrier or knocked");
+
     /// <summary>Something whose factor has no price.</summary>
     public static readonly FindingCode LevelMissing = new("level-missing", Warning,
         "An instrument held needs a factor that has no usable price, so no figure holds it",
@@ -227,7 +237,7 @@ public static class FindingCodes
     [
         BookTree, BookCurrency, PositionsNone, FactorUnobserved, FactorMissing, PriceNotPositive, HistoryShort, DaysNone, DaysFew,
         CovarianceUnusable, DriftUnknown, PricedNone,
-        BookUnknown, InstrumentUnknown, FactorUnknown, CurrencyUnpriced, CurrencyMismatch, InstrumentExpired, NotModelled, LevelMissing,
+        BookUnknown, InstrumentUnknown, FactorUnknown, CurrencyUnpriced, CurrencyMismatch, InstrumentExpired, NotModelled, FixingMissing, LevelMissing, BarrierCrossed,
         ValueDifference, HoldingsChange, LimitUndecidable,
         FactorClosed, PriceStale, PriceJump, DayMissing, DayClosed, DaysDropped, HistoryProxied, HistoryPartial,
         CalendarUnknown, ProxyUnusable, FxFactorUnused, CovarianceUnknown, AdjustmentUnknown, LimitBookUnknown, ProfitBookUnknown,

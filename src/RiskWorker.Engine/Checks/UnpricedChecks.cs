@@ -37,6 +37,7 @@ internal static class UnpricedChecks
         UnpricedReason.CurrencyMismatch => (FindingCodes.CurrencyMismatch, Instruments),
         UnpricedReason.Expired => (FindingCodes.InstrumentExpired, Positions),
         UnpricedReason.NotModelled => (FindingCodes.NotModelled, Instruments),
+        UnpricedReason.MissingFixing => (FindingCodes.FixingMissing, Instruments),
         UnpricedReason.NoLevel => (FindingCodes.LevelMissing, "observations.csv"),
         _ => throw new ArgumentOutOfRangeException(nameof(reason), reason, "Every reason has a code."),
     };

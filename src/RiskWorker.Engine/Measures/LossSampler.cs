@@ -130,12 +130,12 @@ public sealed class LossSampler
 
     private (TailRecord Record, SampledLoss[] Series) Tails(int scenarios)
     {
-        var (record, series) = (_reduction.Empty(), new SampledLoss[_plan.Rows.Count]);
+        var (record, series, ranks) = (_reduction.Empty(), new SampledLoss[_plan.Rows.Count], _demand.RanksOf(scenarios));
         _workspace.ForEach(series.Length, (_, buffers, row, _) =>
         {
             record.EnsureTail(row, _records.Sum(part => part.TailOf(row).Count));
             foreach (var part in _records) TailReduction.MergeRow(record, part, row);
-            series[row] = new(scenarios, record.SortTail(row, buffers), _cutoffs[row], record.EqualTo(row));
+            series[row] = new(ranks, record.SortTail(row, buffers.Order), _cutoffs[row], record.EqualTo(row));
         }, _cancellation);
         foreach (var part in _records) TailReduction.MergeSums(record, part);
         return (record, series);

@@ -11,6 +11,7 @@ namespace RiskWorker.Engine.Measures;
 /// </summary>
 public sealed class SampledLoss
 {
+    private readonly IntervalRanks _ranks;
     private readonly double[] _losses;
     private readonly double _cutoff;
     private readonly long _equal;
@@ -21,13 +22,18 @@ public sealed class SampledLoss
     /// <param name="cutoff">The cutoff.</param>
     /// <param name="equal">Losses equal to the cutoff.</param>
     public SampledLoss(int count, ReadOnlySpan<TailEntry> tail, double cutoff, long equal)
+        : this(new IntervalRanks(count), tail, cutoff, equal)
     {
-        (Count, _losses, _cutoff, _equal) = (count, new double[tail.Length], Unsigned(cutoff), equal);
+    }
+
+    internal SampledLoss(IntervalRanks ranks, ReadOnlySpan<TailEntry> tail, double cutoff, long equal)
+    {
+        (_ranks, _losses, _cutoff, _equal) = (ranks, GC.AllocateUninitializedArray<double>(tail.Length), Unsigned(cutoff), equal);
         for (var i = 0; i < tail.Length; i++) _losses[i] = Unsigned(tail[i].Loss);
     }
 
     /// <summary>Number of losses, N.</summary>
-    public int Count { get; }
+    public int Count => _ranks.Count;
 
     /// <summary>Worst ranks that are known.</summary>
     public long Known => _losses.Length + _equal;
@@ -49,7 +55,7 @@ public sealed class SampledLoss
     /// <summary>The distribution-free interval of VaR from order statistics; an end whose rank lies outside the sample is null.</summary>
     public (double? Low, double? High) VarInterval(Confidence confidence, decimal level)
     {
-        var ranks = BinomialRanks.Interval(Count, confidence.Level, level);
+        var ranks = _ranks.Interval(confidence.Level, level);
         return (ranks.Low is { } low ? AtRank(Count - low + 1) : null, ranks.High is { } high ? AtRank(Count - high + 1) : null);
     }
 
@@ -57,7 +63,7 @@ public sealed class SampledLoss
     public double ExpectedShortfall(Confidence confidence)
     {
         var (whole, fraction, weight) = TailOf(confidence);
-        return Weighted(whole, fraction, static losses => LaneSum.Of(losses), static loss => loss) / weight;
+        return Weighted(whole, fraction, LaneSum.Of(Kept(whole)), static loss => loss) / weight;
     }
 
     /// <summary>
@@ -69,8 +75,7 @@ public sealed class SampledLoss
         var (whole, fraction, weight) = TailOf(confidence);
         var es = ExpectedShortfall(confidence);
         var excess = es - Var(confidence);
-        var squares = Deviations(whole, es);
-        var variance = Weighted(whole, fraction, _ => LaneSum.OfSquares(squares), loss => (loss - es) * (loss - es)) / weight;
+        var variance = Weighted(whole, fraction, LaneSum.OfSquares(Deviations(whole, es)), loss => (loss - es) * (loss - es)) / weight;
         var error = Math.Sqrt((variance + ((double)confidence.Level * excess * excess)) / weight);
         var half = InverseNormal.Of((double)((1 + level) / 2)) * error;
         return (es - half, es + half);
@@ -86,19 +91,23 @@ public sealed class SampledLoss
         return ((long)whole, (double)(weight - whole), (double)weight);
     }
 
-    // Sums a function over the worst `whole` losses and a fraction of the next one; losses below the kept tail equal the cutoff.
-    private double Weighted(long whole, double fraction, Func<double[], double> sumKept, Func<double, double> of)
+    // The worst `whole` losses as far as they are kept.
+    private ReadOnlySpan<double> Kept(long whole) => _losses.AsSpan(0, (int)Math.Min(whole, _losses.Length));
+
+    // Adds to the sum of a function over the kept ones of the worst `whole` losses those that are not kept, which equal the
+    // cutoff, and a fraction of the next one.
+    private double Weighted(long whole, double fraction, double sum, Func<double, double> of)
     {
-        var kept = Math.Min(whole, _losses.Length);
-        var sum = kept == _losses.Length ? sumKept(_losses) : sumKept(_losses[..(int)kept]);
+        var kept = Kept(whole).Length;
         if (whole > kept) sum = Math.FusedMultiplyAdd(whole - kept, of(AtRank(whole)), sum);
         return fraction > 0 ? Math.FusedMultiplyAdd(fraction, of(AtRank(whole + 1)), sum) : sum;
     }
 
     private double[] Deviations(long whole, double center)
     {
-        var deviations = _losses[..(int)Math.Min(whole, _losses.Length)];
-        for (var i = 0; i < deviations.Length; i++) deviations[i] -= center;
+        var kept = Kept(whole);
+        var deviations = GC.AllocateUninitializedArray<double>(kept.Length);
+        for (var i = 0; i < deviations.Length; i++) deviations[i] = kept[i] - center;
         return deviations;
     }
 }

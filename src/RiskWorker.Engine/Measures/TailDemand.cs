@@ -9,6 +9,7 @@ public sealed class TailDemand
     private readonly Confidence[] _var;
     private readonly Confidence[] _es;
     private readonly decimal[] _levels;
+    private volatile IntervalRanks? _ranks;
 
     /// <summary>Takes the measures, and every level at which an interval of them is asked for.</summary>
     public TailDemand(IEnumerable<MeasureSpec> measures, IEnumerable<decimal> levels)
@@ -22,7 +23,7 @@ public sealed class TailDemand
     /// <summary>The deepest rank from the worst that <paramref name="scenarios"/> scenarios need.</summary>
     public int DeepestRank(int scenarios)
     {
-        var deepest = 1;
+        var (deepest, ranks) = (1, RanksOf(scenarios));
         foreach (var confidence in _var.Concat(_es))
         {
             deepest = Math.Max(deepest, scenarios - BinomialRanks.VarRank(scenarios, confidence.Level) + 1);
@@ -32,9 +33,12 @@ public sealed class TailDemand
         {
             foreach (var level in _levels)
             {
-                if (BinomialRanks.Interval(scenarios, confidence.Level, level).Low is { } low) deepest = Math.Max(deepest, scenarios - low + 1);
+                if (ranks.Interval(confidence.Level, level).Low is { } low) deepest = Math.Max(deepest, scenarios - low + 1);
             }
         }
         return deepest;
     }
+
+    /// <summary>The ranks of intervals in <paramref name="scenarios"/> scenarios; those of the size asked for last are remembered.</summary>
+    internal IntervalRanks RanksOf(int scenarios) => _ranks is { } last && last.Count == scenarios ? last : _ranks = new(scenarios);
 }

@@ -2,6 +2,8 @@ using RiskWorker.Domain.Books;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Engine.Calibration;
 using RiskWorker.Engine.Pricing;
+using RiskWorker.Engine.Pricing.Curves;
+using RiskWorker.Engine.Pricing.Options;
 using RiskWorker.Numerics.Kernels;
 
 namespace RiskWorker.Engine.Plans;
@@ -12,22 +14,20 @@ public sealed class PlanCompiler
     private readonly BookTree _tree;
     private readonly CalibratedModel _model;
     private readonly CurrencyTable _currencies;
-    private readonly DateOnly _asOf;
     private readonly IReadOnlyList<Horizon> _horizons;
 
     // Without ageing the valuation date stays; with it, an option's remaining life shrinks by horizon.
-    private readonly Func<BoundInstrument, int, double>? _remainingYears;
+    private readonly Func<BoundEuropean, int, double>? _remainingYears;
 
     /// <summary>Takes what the plan rests on.</summary>
     /// <param name="tree">The books.</param>
     /// <param name="model">How the factors move.</param>
     /// <param name="currencies">The currencies known.</param>
-    /// <param name="asOf">Valuation date.</param>
     /// <param name="horizons">Horizons, in any order.</param>
-    /// <param name="remainingYears">Life in years that is left to an instrument after so many business days, 0 being today; null leaves the valuation date where it is.</param>
-    public PlanCompiler(BookTree tree, CalibratedModel model, CurrencyTable currencies, DateOnly asOf, IEnumerable<Horizon> horizons, Func<BoundInstrument, int, double>? remainingYears = null)
+    /// <param name="remainingYears">Life in years that is left to a plain option after so many business days, 0 being today; null leaves the valuation date where it is.</param>
+    public PlanCompiler(BookTree tree, CalibratedModel model, CurrencyTable currencies, IEnumerable<Horizon> horizons, Func<BoundEuropean, int, double>? remainingYears = null)
     {
-        (_tree, _model, _currencies, _asOf) = (tree, model, currencies, asOf);
+        (_tree, _model, _currencies) = (tree, model, currencies);
         _horizons = [.. horizons.Distinct().Order()];
         _remainingYears = remainingYears;
     }
@@ -46,6 +46,7 @@ public sealed class PlanCompiler
             Horizons = _horizons,
             Currencies = currencies,
             Groups = Groups(holdings, cells, currencies),
+            Flows = Flows(holdings, cells, currencies),
             Cells = cells,
             Nodes = nodes,
             Rows = Rows(nodes),
@@ -63,7 +64,7 @@ public sealed class PlanCompiler
         {
             if (line.Unpriced is not null) continue;
             var node = _tree.IndexOf(line.Position.Book);
-            if (node >= 0) holdings.Add(new(node, line.Position.Instrument, line.Bound, line.Position.Quantity, line.Value));
+            if (node >= 0) holdings.Add(new(node, line.Position.Instrument, line.Bound!, line.Position.Quantity, line.Value));
         }
         holdings.Sort((a, b) =>
         {
@@ -129,49 +130,75 @@ public sealed class PlanCompiler
 
     private List<UnderlyingGroup> Groups(List<Holding> holdings, List<PlanCell> cells, List<PlanCurrency> currencies)
     {
-        var cellOf = cells.Select((cell, place) => ((cell.Node, cell.Currency), place)).ToDictionary(c => c.Item1, c => c.place);
+        var cellOf = PlacesOf(cells);
         var groups = new SortedDictionary<UnderlyingKey, GroupBuilder>();
+        var formulas = new Dictionary<string, OptionFormula>(StringComparer.Ordinal);
         foreach (var holding in holdings)
         {
-            if (holding.Bound.Shape == PayoffShape.Cash) continue;
-            if (!groups.TryGetValue(holding.Bound.Underlying, out var group)) groups[holding.Bound.Underlying] = group = new();
-            var cell = cellOf[(holding.Node, PlaceOf(holding.Bound.Currency, currencies))];
-            Add(group, cell, holding);
+            if (KeyOf(holding.Bound) is not { } key) continue;
+            if (!groups.TryGetValue(key, out var group)) groups[key] = group = new();
+            Add(group, cellOf[(holding.Node, PlaceOf(holding.Bound.Currency, currencies))], holding, formulas);
         }
         return [.. groups.Select(g => g.Value.Build(g.Key, g.Key.LevelOf(_model.Levels), TermsByHorizon))];
     }
 
-    private void Add(GroupBuilder group, int cell, in Holding holding)
+    private static Dictionary<(int Node, int Currency), int> PlacesOf(List<PlanCell> cells) => cells.Index().ToDictionary(c => (c.Item.Node, c.Item.Currency), c => c.Index);
+
+    private static UnderlyingKey? KeyOf(BoundInstrument bound) => bound switch
     {
-        var (bound, units) = (holding.Bound, holding.Quantity * holding.Bound.Multiplier);
-        switch (bound.Shape)
+        BoundSpot s => s.Underlying,
+        BoundFuture f => f.Underlying,
+        BoundForward f => f.Underlying,
+        BoundEuropean o => o.Underlying,
+        BoundOption o => o.Underlying,
+        _ => null,
+    };
+
+    private void Add(GroupBuilder group, int cell, in Holding holding, Dictionary<string, OptionFormula> formulas)
+    {
+        var units = holding.Quantity * holding.Bound.Multiplier;
+        switch (holding.Bound)
         {
-            case PayoffShape.Spot or PayoffShape.Future:
-                group.AddLinear(cell, units);
-                break;
-            case PayoffShape.Forward:
+            case BoundForward forward:
                 // At a flat rate the strike leg is a constant, so only the discounted underlying moves.
-                group.AddLinear(cell, units * Valuer.ForwardUnits(bound, Years(bound, 0)));
+                group.AddLinear(cell, units * forward.Units);
+                break;
+            case BoundEuropean option:
+                group.AddOption(option, new(cell, units, option.ValueWith(_model.Levels, Years(option, 0))));
+                break;
+            case BoundOption option:
+                // Positions in one instrument share its formula, which may be a table.
+                if (!formulas.TryGetValue(holding.Instrument, out var formula)) formulas[holding.Instrument] = formula = option.FormulaAt(option.Underlying.LevelOf(_model.Levels));
+                group.AddFormula(option.Market, new(cell, units, formula.Value(option.Market.At(_model.Levels, 0, option.Underlying.LevelOf(_model.Levels))), formula));
                 break;
             default:
-                group.AddOption(bound, Option(cell, units, bound));
+                group.AddLinear(cell, units);
                 break;
         }
     }
 
-    private OptionItem Option(int cell, double units, in BoundInstrument bound) =>
-        new(cell, units, Valuer.OptionValue(bound, bound.Underlying.LevelOf(_model.Levels), Years(bound, 0), VolatilityOf(bound)));
-
-    private EuropeanOptionTerms Terms(in BoundInstrument bound, double years) =>
-        Valuer.OptionTerms(bound, bound.Underlying.LevelOf(_model.Levels), years, VolatilityOf(bound));
-
-    private double VolatilityOf(in BoundInstrument bound) => bound.VolatilityFactor < 0 ? bound.Volatility : _model.Levels[bound.VolatilityFactor];
-
-    private double Years(in BoundInstrument bound, int days) => _remainingYears is null ? bound.YearsFrom(_asOf) : _remainingYears(bound, days);
-
-    private EuropeanOptionTerms[][] TermsByHorizon(List<BoundInstrument> options)
+    private List<FlowBatch> Flows(List<Holding> holdings, List<PlanCell> cells, List<PlanCurrency> currencies)
     {
-        EuropeanOptionTerms[] After(int days) => [.. options.Select(o => Terms(o, Years(o, days)))];
+        var cellOf = PlacesOf(cells);
+        var amounts = new SortedDictionary<LinearForm, SortedDictionary<int, double>>();
+        foreach (var holding in holdings)
+        {
+            if (holding.Bound is not BoundFlows bound) continue;
+            var (cell, units) = (cellOf[(holding.Node, PlaceOf(bound.Currency, currencies))], holding.Quantity * bound.Multiplier);
+            foreach (var flow in bound.Flows)
+            {
+                if (!amounts.TryGetValue(flow.Exponent, out var byCell)) amounts[flow.Exponent] = byCell = [];
+                byCell[cell] = Math.FusedMultiplyAdd(units, flow.Amount, byCell.GetValueOrDefault(cell));
+            }
+        }
+        return [.. amounts.Select(a => new FlowBatch(a.Key, Exponential.Of(-a.Key.At(_model.Levels)), [.. a.Value.Select(v => new LinearHolding(v.Key, v.Value))]))];
+    }
+
+    private double Years(BoundEuropean bound, int days) => _remainingYears is null ? bound.Years : _remainingYears(bound, days);
+
+    private EuropeanOptionTerms[][] TermsByHorizon(List<BoundEuropean> options)
+    {
+        EuropeanOptionTerms[] After(int days) => [.. options.Select(o => o.Terms(_model.Levels, Years(o, days)))];
         return _remainingYears is null ? [.. Enumerable.Repeat(After(0), _horizons.Count)] : [.. _horizons.Select(h => After(h.Days))];
     }
 
@@ -184,24 +211,5 @@ public sealed class PlanCompiler
         for (var j = 0; j < laws.Length; j++)
             laws[j] = new(_model.Levels[j], _model.Deviations[j], _model.DailyDrift[j], _model.Factors[j].Shock == Domain.Market.ShockKind.Lognormal);
         return new(_model.Rank, _model.Lower, rowOf, _model.Moving.Length, laws);
-    }
-
-    private sealed class GroupBuilder
-    {
-        private readonly SortedDictionary<int, double> _units = [];
-        private readonly SortedDictionary<int, (List<BoundInstrument> Bound, List<OptionItem> Items)> _options = [];
-
-        public void AddLinear(int cell, double units) => _units[cell] = _units.GetValueOrDefault(cell) + units;
-
-        public void AddOption(in BoundInstrument bound, OptionItem item)
-        {
-            if (!_options.TryGetValue(bound.VolatilityFactor, out var batch)) _options[bound.VolatilityFactor] = batch = ([], []);
-            batch.Bound.Add(bound);
-            batch.Items.Add(item);
-        }
-
-        public UnderlyingGroup Build(UnderlyingKey key, double spot, Func<List<BoundInstrument>, EuropeanOptionTerms[][]> terms) => new(key, spot,
-            [.. _units.Select(u => new LinearHolding(u.Key, u.Value))],
-            [.. _options.Select(o => new OptionBatch(o.Key, [.. o.Value.Items], terms(o.Value.Bound)))]);
     }
 }

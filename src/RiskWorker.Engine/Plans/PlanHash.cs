@@ -19,6 +19,7 @@ internal sealed class PlanHash : IDisposable
         foreach (var horizon in plan.Horizons) hash.Add(horizon.Days);
         foreach (var currency in plan.Currencies) hash.Text(currency.Code).Add(currency.Factor).Add(currency.Rate);
         foreach (var group in plan.Groups) hash.Add(group);
+        foreach (var flow in plan.Flows) hash.Add(flow);
         foreach (var cell in plan.Cells) hash.Add(cell.Node).Add(cell.Currency).Add(cell.Value);
         foreach (var node in plan.Nodes) hash.Text(node.Book).Add(node.Parent).Add(node.Currency).Add(node.ValueRoot);
         foreach (var row in plan.Rows) hash.Add(row.Node).Add(row.Horizon).Add(row.InOwnCurrency ? 1 : 0);
@@ -48,6 +49,32 @@ internal sealed class PlanHash : IDisposable
             }
             foreach (var terms in batch.Terms.SelectMany(t => t)) Add(terms);
         }
+        foreach (var batch in group.Formulas) Add(batch);
+    }
+
+    private void Add(FormulaBatch batch)
+    {
+        Form(batch.Market.Discount).Form(batch.Market.Carry).Add(batch.Market.Variance.Constant).Add(batch.Market.Variance.Terms.Count);
+        foreach (var (factor, weight) in batch.Market.Variance.Terms) Add(factor).Add(weight);
+        Add(batch.Items.Length);
+        foreach (var item in batch.Items)
+        {
+            Add(item.Cell).Add(item.Quantity).Add(item.BaseValue);
+            foreach (var number in item.Formula.Numbers()) Add(number);
+        }
+    }
+
+    private void Add(FlowBatch flow)
+    {
+        Form(flow.Exponent).Add(flow.Factor).Add(flow.Amounts.Count);
+        foreach (var amount in flow.Amounts) Add(amount.Cell).Add(amount.Units);
+    }
+
+    private PlanHash Form(Pricing.Curves.LinearForm form)
+    {
+        Add(form.Constant).Add(form.Factors.Length);
+        for (var i = 0; i < form.Factors.Length; i++) Add(form.Factors[i]).Add(form.Coefficients[i]);
+        return this;
     }
 
     private void Add(in EuropeanOptionTerms terms)

@@ -11,7 +11,11 @@ public readonly record struct ItemRange(int From, int To)
 /// <param name="Group">Place of the underlying's group in the plan.</param>
 /// <param name="Linear">Its linear holdings.</param>
 /// <param name="Options">For each option batch of the group, the options.</param>
-public sealed record GroupSlice(int Group, ItemRange Linear, ItemRange[] Options);
+/// <param name="Formulas">For each formula batch of the group, the options.</param>
+public sealed record GroupSlice(int Group, ItemRange Linear, ItemRange[] Options, ItemRange[] Formulas);
+
+/// <summary>What a slice holds of one flow batch.</summary>
+public readonly record struct FlowSlice(int Batch, ItemRange Amounts);
 
 /// <summary>
 /// One node with everything below it, as ranges of a plan's lists: valued alone it gives what it gives within the whole,
@@ -26,6 +30,8 @@ public sealed class PlanSlice
         Currencies = [.. Enumerable.Range(Cells.From, Cells.To - Cells.From).Select(c => plan.Cells[c].Currency)
             .Concat(Enumerable.Range(Node, EndNode - Node).Select(n => plan.Nodes[n].Currency)).Where(c => c != 0).Distinct().Order()];
         Groups = [.. Enumerable.Range(0, plan.Groups.Count).Select(g => SliceOf(plan.Groups[g], g)).OfType<GroupSlice>()];
+        Flows = [.. Enumerable.Range(0, plan.Flows.Count).Select(b => new FlowSlice(b, RangeOf(plan.Flows[b].Amounts.Count, i => plan.Flows[b].Amounts[i].Cell))).Where(f => !f.Amounts.IsEmpty)];
+        FormFactors = [.. FormFactorsOf(plan).Distinct().Order()];
         (Factors, RowOf) = NeededFactors(plan);
     }
 
@@ -43,6 +49,12 @@ public sealed class PlanSlice
 
     /// <summary>Its holdings, by group.</summary>
     public GroupSlice[] Groups { get; }
+
+    /// <summary>Its discounted amounts, by batch.</summary>
+    public FlowSlice[] Flows { get; }
+
+    /// <summary>The factors whose levels its flows and formulas read, ascending.</summary>
+    public int[] FormFactors { get; }
 
     /// <summary>The moving factors that it needs, ascending.</summary>
     public int[] Factors { get; }
@@ -69,7 +81,8 @@ public sealed class PlanSlice
     {
         var linear = RangeOf(group.Linear.Count, i => group.Linear[i].Cell);
         var options = group.Options.Select(batch => RangeOf(batch.Items.Length, i => batch.Items[i].Cell)).ToArray();
-        return linear.IsEmpty && options.All(o => o.IsEmpty) ? null : new(place, linear, options);
+        var formulas = group.Formulas.Select(batch => RangeOf(batch.Items.Length, i => batch.Items[i].Cell)).ToArray();
+        return linear.IsEmpty && options.All(o => o.IsEmpty) && formulas.All(f => f.IsEmpty) ? null : new(place, linear, options, formulas);
     }
 
     private ItemRange RangeOf(int count, Func<int, int> cellOf) => new(FirstAtLeast(count, cellOf, Cells.From), FirstAtLeast(count, cellOf, Cells.To));
@@ -86,6 +99,22 @@ public sealed class PlanSlice
         return low;
     }
 
+    private IEnumerable<int> FormFactorsOf(RevaluationPlan plan)
+    {
+        foreach (var flow in Flows)
+        {
+            foreach (var factor in plan.Flows[flow.Batch].Exponent.Factors.ToArray()) yield return factor;
+        }
+        foreach (var slice in Groups)
+        {
+            for (var b = 0; b < slice.Formulas.Length; b++)
+            {
+                if (slice.Formulas[b].IsEmpty) continue;
+                foreach (var factor in plan.Groups[slice.Group].Formulas[b].Market.Factors()) yield return factor;
+            }
+        }
+    }
+
     private (int[] Factors, int[] RowOf) NeededFactors(RevaluationPlan plan)
     {
         var needed = new SortedSet<int>();
@@ -99,6 +128,7 @@ public sealed class PlanSlice
                 if (!slice.Options[b].IsEmpty) needed.Add(group.Options[b].VolatilityFactor);
             }
         }
+        needed.UnionWith(FormFactors);
         foreach (var currency in Currencies) needed.Add(plan.Currencies[currency].Factor);
         int[] factors = [.. needed.Where(f => f >= 0 && plan.Moves.RowOf[f] >= 0)];
         var rowOf = new int[plan.Moves.RowOf.Length];

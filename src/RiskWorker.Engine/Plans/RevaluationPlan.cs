@@ -24,6 +24,9 @@ public sealed record RevaluationPlan
     /// <summary>What is held, grouped by underlying in the order of <see cref="Pricing.UnderlyingKey"/>.</summary>
     public required IReadOnlyList<UnderlyingGroup> Groups { get; init; }
 
+    /// <summary>Amounts discounted by the same form of the rates, summed by cell; forms ascending.</summary>
+    public IReadOnlyList<FlowBatch> Flows { get; init; } = [];
+
     /// <summary>Sums of positions by node and currency, in that order.</summary>
     public required IReadOnlyList<PlanCell> Cells { get; init; }
 
@@ -35,6 +38,12 @@ public sealed record RevaluationPlan
 
     /// <summary>SHA-256 of all of the above.</summary>
     public required string Hash { get; init; }
+
+    /// <summary>The factors whose levels flows and formulas read, ascending.</summary>
+    public int[] FormFactors => field ??= [.. Flows.SelectMany(f => f.Exponent.Factors.ToArray()).Concat(Groups.SelectMany(g => g.Formulas).SelectMany(f => f.Market.Factors())).Distinct().Order()];
+
+    /// <summary>For each factor its place in <see cref="FormFactors"/>, or -1.</summary>
+    public int[] FormRowOf => field ??= [.. Moves.RowOf.Select((_, factor) => Array.IndexOf(FormFactors, factor))];
 }
 
 /// <summary>How factors move over one business day: scale times a correlated normal, plus a drift.</summary>
@@ -63,7 +72,26 @@ public readonly record struct PlanCurrency(string Code, int Factor, double Rate)
 /// <param name="Spot">Its price today.</param>
 /// <param name="Linear">Units held by cell.</param>
 /// <param name="Options">Options with a flat volatility, and those on each volatility factor, batch by batch.</param>
-public sealed record UnderlyingGroup(Pricing.UnderlyingKey Key, double Spot, IReadOnlyList<LinearHolding> Linear, IReadOnlyList<OptionBatch> Options);
+/// <param name="Formulas">All other options, a batch for each reading of the market.</param>
+public sealed record UnderlyingGroup(Pricing.UnderlyingKey Key, double Spot, IReadOnlyList<LinearHolding> Linear, IReadOnlyList<OptionBatch> Options, IReadOnlyList<FormulaBatch> Formulas);
+
+/// <summary>Options of any formula that see the same rates and variance up to their expiry.</summary>
+/// <param name="Market">How these follow from the levels.</param>
+/// <param name="Items">The options, by cell, then instrument.</param>
+public sealed record FormulaBatch(Pricing.MarketTerms Market, FormulaItem[] Items);
+
+/// <summary>One such option held in one cell.</summary>
+/// <param name="Cell">Where its profit goes.</param>
+/// <param name="Quantity">Units times multiplier.</param>
+/// <param name="BaseValue">Its value today, as the formula has it.</param>
+/// <param name="Formula">The formula.</param>
+public readonly record struct FormulaItem(int Cell, double Quantity, double BaseValue, Pricing.Options.OptionFormula Formula);
+
+/// <summary>Amounts discounted alike.</summary>
+/// <param name="Exponent">Minus the logarithm of the discount factor.</param>
+/// <param name="Factor">The discount factor today.</param>
+/// <param name="Amounts">Amounts by cell.</param>
+public sealed record FlowBatch(Pricing.Curves.LinearForm Exponent, double Factor, IReadOnlyList<LinearHolding> Amounts);
 
 /// <summary>Units of an underlying in a cell: its profit is units times the change of price.</summary>
 public readonly record struct LinearHolding(int Cell, double Units);

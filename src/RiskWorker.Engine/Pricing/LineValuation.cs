@@ -6,12 +6,12 @@ namespace RiskWorker.Engine.Pricing;
 /// <summary>A position row with its value, or why it has none.</summary>
 /// <param name="Position">The row.</param>
 /// <param name="Instrument">What it holds; null where the name is unknown.</param>
-/// <param name="Bound">The instrument with its names resolved; meaningless where <paramref name="Unpriced"/> is set.</param>
+/// <param name="Bound">The instrument with its names resolved; null where <paramref name="Unpriced"/> is set.</param>
 /// <param name="Value">Value of the whole row in the instrument's currency; 0 where unpriced.</param>
 /// <param name="ValueRoot">The same in the reporting currency.</param>
 /// <param name="Exposure">Quantity times unit exposure in the reporting currency (a future's price counts, its value is 0).</param>
 /// <param name="Unpriced">Why it is outside the figures; null where it is priced.</param>
-public readonly record struct LineValue(Position Position, Instrument? Instrument, BoundInstrument Bound, double Value, double ValueRoot, double Exposure, Unpriced? Unpriced);
+public readonly record struct LineValue(Position Position, Instrument? Instrument, BoundInstrument? Bound, double Value, double ValueRoot, double Exposure, Unpriced? Unpriced);
 
 /// <summary>Values a list of positions at one date.</summary>
 public static class LineValuation
@@ -25,21 +25,27 @@ public static class LineValuation
     public static LineValue[] Of(IReadOnlyList<Position> positions, IReadOnlyDictionary<string, Instrument> instruments, InstrumentBinder binder, ReadOnlySpan<double> levels, DateOnly date)
     {
         var lines = new LineValue[positions.Count];
-        for (var i = 0; i < lines.Length; i++) lines[i] = Value(positions[i], instruments, binder, levels, date);
+        var units = new Dictionary<string, UnitValue>(StringComparer.Ordinal);
+        for (var i = 0; i < lines.Length; i++)
+        {
+            var position = positions[i];
+            if (!units.TryGetValue(position.Instrument, out var unit)) units[position.Instrument] = unit = UnitOf(position.Instrument, instruments, binder, levels, date);
+            lines[i] = unit.Unpriced is { } reason
+                ? new(position, unit.Instrument, null, 0, 0, 0, reason)
+                : new(position, unit.Instrument, unit.Bound, position.Quantity * unit.Value, position.Quantity * unit.Value * unit.Rate, position.Quantity * unit.Exposure * unit.Rate, null);
+        }
         return lines;
     }
 
-    private static LineValue Value(in Position position, IReadOnlyDictionary<string, Instrument> instruments, InstrumentBinder binder, ReadOnlySpan<double> levels, DateOnly date)
+    private sealed record UnitValue(Instrument? Instrument, BoundInstrument? Bound, double Value, double Exposure, double Rate, Unpriced? Unpriced);
+
+    private static UnitValue UnitOf(string name, IReadOnlyDictionary<string, Instrument> instruments, InstrumentBinder binder, ReadOnlySpan<double> levels, DateOnly date)
     {
-        if (!instruments.TryGetValue(position.Instrument, out var instrument))
-            return new(position, null, default, 0, 0, 0, new(UnpricedReason.UnknownInstrument, "it is not in instruments.csv"));
-        if (binder.Bind(instrument, out var bound) is { } fault) return new(position, instrument, default, 0, 0, 0, fault);
-        if (bound.Expiry < date) return new(position, instrument, default, 0, 0, 0, new(UnpricedReason.Expired, $"it expired on {bound.Expiry:yyyy-MM-dd}"));
-        var rate = binder.Currencies.RateOf(bound.Currency, levels);
-        var value = position.Quantity * Valuer.ValueOf(bound, levels, date);
-        var exposure = position.Quantity * Valuer.ExposureOf(bound, levels, date) * rate;
-        if (!double.IsFinite(exposure) || !double.IsFinite(value * rate))
-            return new(position, instrument, default, 0, 0, 0, new(UnpricedReason.NoLevel, "a factor that it needs has no price"));
-        return new(position, instrument, bound, value, value * rate, exposure, null);
+        if (!instruments.TryGetValue(name, out var instrument)) return new(null, null, 0, 0, 0, new(UnpricedReason.UnknownInstrument, "it is not in instruments.csv"));
+        if (binder.Bind(instrument, date, out var bound) is { } fault) return new(instrument, null, 0, 0, 0, fault);
+        var (value, exposure, rate) = (bound!.Value(levels), bound.Exposure(levels), binder.Currencies.RateOf(bound.Currency, levels));
+        return double.IsFinite(exposure * rate) && double.IsFinite(value * rate)
+            ? new(instrument, bound, value, exposure, rate, null)
+            : new(instrument, null, 0, 0, 0, new(UnpricedReason.NoLevel, "a factor that it needs has no price"));
     }
 }

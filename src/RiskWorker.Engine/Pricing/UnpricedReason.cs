@@ -21,6 +21,9 @@ public enum UnpricedReason
     /// <summary>Its kind, or a term of it, has no pricing.</summary>
     NotModelled,
 
+    /// <summary>A fixing of the past is known neither from its terms nor from the observations.</summary>
+    MissingFixing,
+
     /// <summary>A factor that it needs has no level.</summary>
     NoLevel,
 }

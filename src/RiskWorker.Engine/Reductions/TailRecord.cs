@@ -1,5 +1,4 @@
 using System.Runtime.InteropServices;
-using RiskWorker.Engine.Simulation;
 
 namespace RiskWorker.Engine.Reductions;
 
@@ -55,10 +54,10 @@ public sealed class TailRecord
     internal void EnsureTail(int row, int count) => _tails[row].EnsureCapacity(count);
 
     /// <summary>Puts the tail of series <paramref name="row"/> into its order where it stands, which changes no answer of the record.</summary>
-    internal ReadOnlySpan<TailEntry> SortTail(int row, WorkerBuffers buffers)
+    internal ReadOnlySpan<TailEntry> SortTail(int row, TailOrder order)
     {
         var tail = CollectionsMarshal.AsSpan(_tails[row]);
-        TailOrder.Sort(tail, buffers.Keys(tail.Length));
+        order.Sort(tail);
         return tail;
     }
 
@@ -68,7 +67,7 @@ public sealed class TailRecord
     public TailEntry[] SortedTail(int row)
     {
         var tail = _tails[row].ToArray();
-        TailOrder.Sort(tail, new ulong[tail.Length]);
+        new TailOrder().Sort(tail);
         return tail;
     }
 

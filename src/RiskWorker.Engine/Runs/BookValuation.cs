@@ -13,10 +13,11 @@ public sealed class BookValuation
     /// <summary>Values them.</summary>
     public BookValuation(Snapshot snapshot, BookTree tree, CalibratedModel model)
     {
-        Binder = new(tree.ReportingCurrency, model.Factors);
+        var closes = new ClosingLevels(snapshot);
+        Binder = new(tree.ReportingCurrency, model.Factors, closes, snapshot.Settings.Simulation.Seed);
         Today = LineValuation.Of(snapshot.Positions, snapshot.Instruments, Binder, model.Levels, snapshot.AsOf);
         if (snapshot.Previous is { } previous)
-            Previous = LineValuation.Of(previous.Positions, snapshot.Instruments, Binder, new ClosingLevels(snapshot).At(previous.Date), previous.Date);
+            Previous = LineValuation.Of(previous.Positions, snapshot.Instruments, Binder, closes.At(previous.Date), previous.Date);
         Holdings = HoldingsSummary.Of(snapshot, Binder.Currencies, model.Levels, Today, Previous);
     }
 

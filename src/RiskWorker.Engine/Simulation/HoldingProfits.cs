@@ -21,6 +21,31 @@ internal static class HoldingProfits
             market.Underlying(group.Key);
             AddLinear(group, held.Linear, market, cells);
             for (var b = 0; b < held.Options.Length; b++) AddOptions(group.Options[b], held.Options[b], market, horizon, cells);
+            for (var b = 0; b < held.Formulas.Length; b++) AddFormulas(group.Formulas[b], held.Formulas[b], market, cells);
+        }
+        AddFlows(plan, slice, market, cells);
+    }
+
+    /// <summary>Adds the discounted amounts of a slice.</summary>
+    public static void AddFlows(RevaluationPlan plan, PlanSlice slice, MarketLanes market, LaneTable cells)
+    {
+        foreach (var held in slice.Flows)
+        {
+            var batch = plan.Flows[held.Batch];
+            var factors = market.DiscountFactors(batch.Exponent);
+            for (var i = held.Amounts.From; i < held.Amounts.To; i++) BookProfit.AddLinear(factors, batch.Factor, batch.Amounts[i].Units, cells[batch.Amounts[i].Cell]);
+        }
+    }
+
+    /// <summary>Adds options of any formula on an underlying that the market has been moved to.</summary>
+    public static void AddFormulas(FormulaBatch batch, ItemRange range, MarketLanes market, LaneTable cells)
+    {
+        if (range.IsEmpty) return;
+        var seen = market.Terms(batch.Market);
+        for (var i = range.From; i < range.To; i++)
+        {
+            ref readonly var item = ref batch.Items[i];
+            item.Formula.Accumulate(seen, item.Quantity, item.BaseValue, cells[item.Cell]);
         }
     }
 

@@ -1,4 +1,5 @@
 using RiskWorker.Engine.Plans;
+using RiskWorker.Engine.Pricing.Curves;
 using RiskWorker.Numerics.Kernels;
 
 namespace RiskWorker.Engine.Simulation;
@@ -14,7 +15,11 @@ internal sealed class MarketLanes
     private readonly double[] _spots;
     private readonly double[] _volatilityReturns;
     private readonly double[] _volatilities;
+    private readonly double[] _discounts;
+    private readonly double[] _carries;
+    private readonly double[] _deviations;
     private readonly LaneTable _rates = new();
+    private readonly LaneTable _levels = new();
     private readonly int _capacity;
     private RevaluationPlan _plan = null!;
     private double[] _roots = [];
@@ -29,6 +34,7 @@ internal sealed class MarketLanes
         _capacity = capacity;
         (_still, _returns, _spots) = (new double[capacity], new double[capacity], new double[capacity]);
         (_volatilityReturns, _volatilities) = (new double[capacity], new double[capacity]);
+        (_discounts, _carries, _deviations) = (new double[capacity], new double[capacity], new double[capacity]);
     }
 
     /// <summary>Lanes in use.</summary>
@@ -52,6 +58,7 @@ internal sealed class MarketLanes
         _plan = plan;
         _roots = [.. plan.Horizons.Select(h => Math.Sqrt(h.Days))];
         _rates.Shape(plan.Currencies.Count, _capacity);
+        _levels.Shape(plan.FormFactors.Length, _capacity);
     }
 
     /// <summary>Takes the normals of the lanes.</summary>
@@ -59,15 +66,16 @@ internal sealed class MarketLanes
     /// <param name="rowOf">For each factor its row, or -1 where it does not move.</param>
     /// <param name="stride">Distance of rows.</param>
     /// <param name="width">Lanes.</param>
-    public void Take(double[] normals, int[] rowOf, int stride, int width) => (_normals, _rowOf, _stride, Width, _rates.Width) = (normals, rowOf, stride, width, width);
+    public void Take(double[] normals, int[] rowOf, int stride, int width) => (_normals, _rowOf, _stride, Width, _rates.Width, _levels.Width) = (normals, rowOf, stride, width, width, width);
 
-    /// <summary>Goes to a horizon and converts the currencies of <paramref name="slice"/>.</summary>
+    /// <summary>Goes to a horizon, converts the currencies of <paramref name="slice"/> and moves the factors of its curves.</summary>
     public void MoveTo(int horizon, PlanSlice slice)
     {
         _horizon = horizon;
         _rates[0].Fill(1);
         // The returns are scratch here: an underlying is moved only afterwards.
         foreach (var currency in slice.Currencies) Move(_plan.Currencies[currency].Factor, _returns.AsSpan(0, Width), _rates[currency]);
+        foreach (var factor in slice.FormFactors) Move(factor, _returns.AsSpan(0, Width), _levels[_plan.FormRowOf[factor]]);
     }
 
     /// <summary>Price of currency <paramref name="currency"/> in each lane.</summary>
@@ -96,6 +104,35 @@ internal sealed class MarketLanes
 
     /// <summary>Moves a volatility: <see cref="VolatilityReturns"/> and <see cref="Volatilities"/> are then its own.</summary>
     public void Volatility(int factor) => Move(factor, _volatilityReturns.AsSpan(0, Width), _volatilities.AsSpan(0, Width));
+
+    /// <summary>The discount factor of a form of the rates in each lane, written over by the next.</summary>
+    public ReadOnlySpan<double> DiscountFactors(LinearForm exponent)
+    {
+        var factors = _discounts.AsSpan(0, Width);
+        Evaluate(exponent, factors);
+        Elementwise.Negate(factors, factors);
+        Exponential.Of(factors, factors);
+        return factors;
+    }
+
+    /// <summary>What options on the underlying last moved to see of the market up to their expiry; written over by the next.</summary>
+    public MarketSpans Terms(Pricing.MarketTerms terms)
+    {
+        Span<double> discounts = _discounts.AsSpan(0, Width), carries = _carries.AsSpan(0, Width), deviations = _deviations.AsSpan(0, Width);
+        Evaluate(terms.Discount, discounts);
+        Evaluate(terms.Carry, carries);
+        deviations.Fill(terms.Variance.Constant);
+        foreach (var (factor, weight) in terms.Variance.Span) Elementwise.AddSquare(_levels[_plan.FormRowOf[factor]], weight, deviations);
+        Elementwise.SquareRoot(deviations, deviations);
+        return new(Returns, Spots, discounts, carries, deviations);
+    }
+
+    // As LinearForm.At, lane by lane.
+    private void Evaluate(LinearForm form, Span<double> values)
+    {
+        values.Fill(form.Constant);
+        for (var i = 0; i < form.Factors.Length; i++) BookProfit.AddLinear(_levels[_plan.FormRowOf[form.Factors[i]]], 0, form.Coefficients[i], values);
+    }
 
     private void Move(int factor, Span<double> returns, Span<double> levels)
     {

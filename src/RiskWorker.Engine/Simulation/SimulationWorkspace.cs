@@ -72,16 +72,42 @@ public sealed class SimulationWorkspace
     {
         using var stop = CancellationTokenSource.CreateLinkedTokenSource(cancellation);
         var (next, faults) = (-1, new Exception?[Math.Min(Threads, count)]);
-        var helpers = new Task[faults.Length - 1];
-        for (var i = 0; i < helpers.Length; i++)
+        var (gate, inside, closed) = (new object(), 0, false);
+        for (var i = 1; i < faults.Length; i++)
         {
-            var worker = i + 1;
-            helpers[i] = Task.Factory.StartNew(() => Work(worker), CancellationToken.None, TaskCreationOptions.LongRunning, TaskScheduler.Default);
+            var worker = i;
+            _ = Task.Factory.StartNew(() => Join(worker), CancellationToken.None, TaskCreationOptions.LongRunning, TaskScheduler.Default);
         }
         Work(0);
-        Task.WaitAll(helpers, CancellationToken.None);
+        lock (gate)
+        {
+            closed = true;
+            while (inside > 0) Monitor.Wait(gate);
+        }
         // Of several failures the one that is not a mere stop says what happened.
         if ((Array.Find(faults, f => f is not null and not OperationCanceledException) ?? Array.Find(faults, f => f is not null)) is { } fault) ExceptionDispatchInfo.Throw(fault);
+
+        // A busy machine may start a thread only when there is nothing left to do: nobody waits for that one.
+        void Join(int worker)
+        {
+            lock (gate)
+            {
+                if (closed) return;
+                inside++;
+            }
+            try
+            {
+                Work(worker);
+            }
+            finally
+            {
+                lock (gate)
+                {
+                    inside--;
+                    Monitor.Pulse(gate);
+                }
+            }
+        }
 
         void Work(int worker)
         {

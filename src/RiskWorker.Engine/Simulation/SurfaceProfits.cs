@@ -27,7 +27,9 @@ internal sealed class SurfaceProfits(RevaluationPlan plan, SurfaceSet surfaces, 
             var z = _z.AsSpan(0, market.Width);
             var isInside = !fitted.HasAny || UnitScale.Apply(market.Returns, fitted.Underlying.Scale, fitted.Underlying.Offset, z);
             for (var b = 0; b < fitted.Batches.Length; b++) AddBatch(group.Options[b], fitted.Batches[b], market, horizon, z, isInside, cells);
+            for (var b = 0; b < held.Formulas.Length; b++) HoldingProfits.AddFormulas(group.Formulas[b], held.Formulas[b], market, cells);
         }
+        HoldingProfits.AddFlows(plan, _whole, market, cells);
     }
 
     private void AddBatch(OptionBatch batch, BatchSurfaces fitted, MarketLanes market, int horizon, ReadOnlySpan<double> z, bool isInside, LaneTable cells)

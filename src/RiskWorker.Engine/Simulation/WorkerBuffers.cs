@@ -1,4 +1,5 @@
 using RiskWorker.Engine.Plans;
+using RiskWorker.Engine.Reductions;
 using RiskWorker.Engine.Surfaces;
 
 namespace RiskWorker.Engine.Simulation;
@@ -11,7 +12,6 @@ internal sealed class WorkerBuffers
     private SurfaceFit? _fit;
     private double[] _losses = [];
     private double[] _values = [];
-    private ulong[] _keys = [];
 
     /// <summary>The tile, turned to <paramref name="plan"/>.</summary>
     public ScenarioTile TileOf(RevaluationPlan plan)
@@ -45,10 +45,6 @@ internal sealed class WorkerBuffers
         return _values.AsSpan(0, count);
     }
 
-    /// <summary>Room for <paramref name="count"/> keys to sort by, with some to spare, since the next series may need a few more.</summary>
-    public Span<ulong> Keys(int count)
-    {
-        if (_keys.Length < count) _keys = new ulong[count + (count / 4)];
-        return _keys.AsSpan(0, count);
-    }
+    /// <summary>What sorting tails needs.</summary>
+    public TailOrder Order { get; } = new();
 }

@@ -16,7 +16,8 @@ namespace RiskWorker.Numerics.Kernels;
 /// </para>
 /// <para>
 /// Absolute error below 3e-16 times (S e^(-qT) + K e^(-rT) + R) and 1 + (|ln(S₀/K)| + |ln(S₀/H)| + |x| + |rT| + |qT|)/w, and with w of 0.05 or
-/// more below 6e-16 times the former alone (measured at 6,000 options). A NaN in a scenario that did not touch gives a NaN there; allocates nothing.
+/// more below 6e-16 times the former alone (measured at 6,000 options). A NaN in the log-return, exponents or deviation of a scenario
+/// that did not touch gives a NaN there, and so may a log-return of -infinity; allocates nothing.
 /// </para>
 /// </remarks>
 public static class BarrierOption

@@ -11,7 +11,7 @@ namespace RiskWorker.Numerics.Kernels;
 /// <remarks>
 /// With w = 0 it pays all or nothing, and half where the forward is the strike to the last bit, so that call and put add up to the payment always.
 /// Absolute error below 3e-16 times what it would pay for certain and 1 + (|ln(S₀/K)| + |x| + |rT| + |qT|)/w (measured at 4,000 options): the
-/// rounding of the logarithms comes as often into d as w goes into them. A NaN in a scenario gives a NaN there; allocates nothing.
+/// rounding of the logarithms comes as often into d as w goes into them. A NaN in a scenario's log-return, exponents or deviation gives a NaN there; allocates nothing.
 /// </remarks>
 public static class DigitalOption
 {

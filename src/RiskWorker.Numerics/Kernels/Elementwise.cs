@@ -41,6 +41,35 @@ public static class Elementwise
     [ScalarTwin(nameof(Negate))]
     public static void Negate(ReadOnlySpan<double> values, Span<double> negated) => Apply<Negative>(values, negated);
 
+    /// <summary>A square root, correctly rounded everywhere.</summary>
+    public static double SquareRoot(double value) => Math.Sqrt(value);
+
+    /// <summary>total + weight·value².</summary>
+    public static double AddSquare(double value, double weight, double total) => Math.FusedMultiplyAdd(weight, value * value, total);
+
+    /// <summary>roots[s] = √values[s].</summary>
+    [ScalarTwin(nameof(SquareRoot))]
+    public static void SquareRoot(ReadOnlySpan<double> values, Span<double> roots) => Apply<Root>(values, roots);
+
+    /// <summary>total[s] += weight·values[s]².</summary>
+    [ScalarTwin(nameof(AddSquare))]
+    public static void AddSquare(ReadOnlySpan<double> values, double weight, Span<double> total)
+    {
+        Spans.RequireLength(values.Length, total.Length, nameof(total));
+        ref double from = ref MemoryMarshal.GetReference(values);
+        ref double to = ref MemoryMarshal.GetReference(total);
+        Vector512<double> weights = Vector512.Create(weight);
+        nuint s = 0, length = (nuint)values.Length;
+        for (; s + 8 <= length; s += 8)
+        {
+            Vector512<double> value = Vector512.LoadUnsafe(ref from, s);
+            Vector512.FusedMultiplyAdd(weights, value * value, Vector512.LoadUnsafe(ref to, s)).StoreUnsafe(ref to, s);
+        }
+
+        for (int i = (int)s; i < values.Length; i++)
+            total[i] = AddSquare(values[i], weight, total[i]);
+    }
+
     private static void Apply<TOperation>(ReadOnlySpan<double> values, Span<double> total)
         where TOperation : struct, IOperation
     {
@@ -80,5 +109,12 @@ public static class Elementwise
         public static double Of(double value, double total) => Negate(value);
 
         public static Vector512<double> Of(Vector512<double> value, Vector512<double> total) => -value;
+    }
+
+    private readonly struct Root : IOperation
+    {
+        public static double Of(double value, double total) => SquareRoot(value);
+
+        public static Vector512<double> Of(Vector512<double> value, Vector512<double> total) => Vector512.Sqrt(value);
     }
 }

@@ -11,7 +11,7 @@ namespace RiskWorker.Numerics.Kernels;
 /// <remarks>
 /// The level of a scenario is not read: its log-return says all, and a past part of the average leaves only its share as a power of it. An
 /// average that is known, or no volatility, gives the discounted intrinsic value. Absolute error below 6e-16 times (S e^(-qT) + K e^(-rT))
-/// (measured at 6,000 options), and a value is never below zero. A NaN in a scenario gives a NaN there; allocates nothing.
+/// (measured at 6,000 options), and a value is never below zero. A NaN in a scenario's log-return, exponents or deviation gives a NaN there; allocates nothing.
 /// </remarks>
 public static class GeometricAsianOption
 {

@@ -11,7 +11,7 @@ namespace RiskWorker.Numerics.Kernels;
 /// <remarks>
 /// <see cref="EuropeanOption"/> is the faster form where only the underlying moves; the two differ by rounding. No time or no volatility
 /// (w = 0) gives the discounted intrinsic value of the forward. Absolute error below 4e-16 times (S e^(-qT) + K e^(-rT)) (measured at 2,000
-/// options), and a value is never below zero. A NaN in a scenario gives a NaN there; allocates nothing.
+/// options), and a value is never below zero. A NaN in a scenario's log-return, exponents or deviation gives a NaN there; allocates nothing.
 /// </remarks>
 public static class MovedOption
 {

@@ -54,7 +54,10 @@ public sealed class AmericanOption
             lattice = new ExerciseLattice(years, volatility, put.Rate, put.Yield);
     }
 
-    /// <summary>The spot at which it is best exercised today: at or below it for a put, at or above it for a call; null where there is no one such spot.</summary>
+    /// <summary>
+    /// The spot at which it is best exercised today: at or below it for a put, at or above it for a call; null where there is no one such spot.
+    /// A table of values should begin here: on the other side of it the value is exercise, on this side it is analytic.
+    /// </summary>
     public double? ExerciseSpot => boundary is null ? null : isCall ? strike / boundary.Lowest : strike * boundary.Lowest;
 
     /// <summary>Value of one unit.</summary>

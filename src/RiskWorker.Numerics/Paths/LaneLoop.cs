@@ -33,6 +33,7 @@ internal static class LaneLoop
 
     /// <summary>Σ a[i]·b[i], in the order of <see cref="LaneSum"/>, each product added by one fused multiply-add; lengths a multiple of eight.</summary>
     [MethodImpl(MethodImplOptions.AggressiveOptimization)]
+    [ScalarTwin(nameof(DotInTurn))]
     public static double Dot(ReadOnlySpan<double> a, ReadOnlySpan<double> b)
     {
         Spans.RequireLength(a.Length, b.Length, nameof(b));

@@ -13,7 +13,8 @@ namespace RiskWorker.Numerics.Paths;
 /// <para>Between dates the extreme is drawn exactly (<see cref="BridgeExtreme"/>), so continuous monitoring needs one date alone.
 /// Controls: the last growth, the same option on it, and the option on the continuous extreme of the path with constant drift,
 /// whose expectations are known (<see cref="ExtremeHinge"/>). Under flat rates and continuous monitoring the last control is the
-/// payoff itself: the value is then exact and its error 0.</para>
+/// payoff itself: the value is then exact and its error that of rounding.</para>
+/// <para>The value bends where the spot passes the past extreme: a table of values should end there.</para>
 /// </remarks>
 public sealed class LookbackPayoff : PathPayoff
 {

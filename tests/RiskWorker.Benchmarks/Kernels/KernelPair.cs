@@ -20,6 +20,13 @@ internal sealed record KernelPair(Action Lanes, Action Twin)
     private static readonly double[] s_returns = [.. s_normals.Select(z => 0.014 * z)];
     private static readonly double[] s_spots = [.. s_returns.Select(x => Spot0 * Exponential.Of(x))];
     private static readonly double[] s_volatilities = [.. s_normals.Select(z => 0.22 * Exponential.Of(-0.05 * z))];
+    private static readonly double[] s_discounts = [.. s_normals.Select(z => 0.02 + (0.001 * z))];
+    private static readonly double[] s_carries = [.. s_normals.Select(z => 0.01 - (0.0005 * z))];
+    private static readonly MovedOptionTerms s_moved = new(Spot0, 104, isCall: true);
+    private static readonly DigitalOptionTerms s_digital = DigitalOptionTerms.CashOrNothing(Spot0, 104, 10, isCall: true);
+    private static readonly GeometricAsianTerms s_geometric = GeometricAsianTerms.Continuous(Spot0, 104, 1, 0, Spot0, isCall: true);
+    private static readonly BarrierOptionTerms s_downOut = new(Spot0, 104, 85, isCall: true, isUp: false, isIn: false);
+    private static readonly BarrierOptionTerms s_upIn = new(Spot0, 104, 125, isCall: true, isUp: true, isIn: true, 3, 1, 1 / 252.0);
     private static readonly double[] s_out = new double[Count];
     private static readonly int[] s_places = new int[Count];
     private static readonly long[] s_counts = new long[Bins + 2];
@@ -44,12 +51,25 @@ internal sealed record KernelPair(Action Lanes, Action Twin)
         ["option, own volatility"] = new(
             () => EuropeanOption.AccumulateValue(s_terms, s_returns, s_spots, s_volatilities, 3, 5, s_out),
             () => { for (var i = 0; i < Count; i++) s_out[i] = EuropeanOption.Profit(s_terms, s_returns[i], s_spots[i], s_volatilities[i], 3, 5, s_out[i]); }),
+        ["option, everything moves"] = new(
+            () => MovedOption.AccumulateValue(s_moved, Market, 3, 5, s_out), () => { for (var i = 0; i < Count; i++) s_out[i] = MovedOption.Profit(s_moved, Market[i], 3, 5, s_out[i]); }),
+        ["digital"] = new(
+            () => DigitalOption.AccumulateValue(s_digital, Market, 3, 5, s_out), () => { for (var i = 0; i < Count; i++) s_out[i] = DigitalOption.Profit(s_digital, Market[i], 3, 5, s_out[i]); }),
+        ["geometric average"] = new(
+            () => GeometricAsianOption.AccumulateValue(s_geometric, Market, 3, 5, s_out),
+            () => { for (var i = 0; i < Count; i++) s_out[i] = GeometricAsianOption.Profit(s_geometric, Market[i], 3, 5, s_out[i]); }),
+        ["down-and-out call"] = new(
+            () => BarrierOption.AccumulateValue(s_downOut, Market, 3, 5, s_out), () => { for (var i = 0; i < Count; i++) s_out[i] = BarrierOption.Profit(s_downOut, Market[i], 3, 5, s_out[i]); }),
+        ["up-and-in call, daily, rebate"] = new(
+            () => BarrierOption.AccumulateValue(s_upIn, Market, 3, 5, s_out), () => { for (var i = 0; i < Count; i++) s_out[i] = BarrierOption.Profit(s_upIn, Market[i], 3, 5, s_out[i]); }),
         ["lane sum"] = new(() => s_sum += LaneSum.Of(s_normals), () => s_sum += LaneSum.OfInTurn(s_normals)),
         ["selection of the worst 2.5%"] = new(
             () => s_sum += Selection.Greater(s_normals, 1.96, s_places, out _), () => s_sum += Selection.GreaterInTurn(s_normals, 1.96, s_places, out _)),
         ["histogram"] = new(
             () => Histogram.Accumulate(s_normals, -5, Bins / 10.0, s_counts), () => { for (var i = 0; i < Count; i++) s_counts[Histogram.BinOf(s_normals[i], -5, Bins / 10.0, Bins)]++; }),
     };
+
+    private static MarketSpans Market => new(s_returns, s_spots, s_discounts, s_carries, s_volatilities);
 
     private delegate void PairFill(Span<double> first, Span<double> second);
 

@@ -21,7 +21,7 @@ internal sealed class FixedPositions
     private static readonly MeasureSpec s_var = new(MeasureKind.Var, new(0.99m), new(1));
     private static readonly MeasureSpec s_es = new(MeasureKind.Es, new(0.975m), new(1));
 
-    private readonly SimulationWorkspace _workspace = new(Environment.ProcessorCount);
+    private readonly TailDemand _demand = new([s_var, s_es], [Level]);
     private readonly Snapshot _today;
     private readonly BookTree _tree;
     private readonly int _scenarios;
@@ -37,15 +37,34 @@ internal sealed class FixedPositions
     /// <summary>The last <paramref name="days"/> dates with observations.</summary>
     public DateOnly[] Dates(int days) => _today.Observations.Dates[Math.Max(0, _today.Observations.Count - days)..].ToArray();
 
+    /// <summary>Day after day, the scenarios of each over all cores.</summary>
+    public DayMeasures[] DayByDay(DateOnly[] dates)
+    {
+        var workspace = new SimulationWorkspace(Environment.ProcessorCount);
+        return Array.ConvertAll(dates, day => Measure(day, workspace));
+    }
+
+    /// <summary>As many days at a time as there are cores, each on one of them: for many days, where no single one is waited for.</summary>
+    public DayMeasures[] SideBySide(DateOnly[] dates)
+    {
+        var (measures, next) = (new DayMeasures[dates.Length], -1);
+        Parallel.For(0, Environment.ProcessorCount, _ =>
+        {
+            var workspace = new SimulationWorkspace(1);
+            for (var i = Interlocked.Increment(ref next); i < dates.Length; i = Interlocked.Increment(ref next)) measures[i] = Measure(dates[i], workspace);
+        });
+        return measures;
+    }
+
     /// <summary>One day, every book included; returns the firm's.</summary>
-    public DayMeasures Measure(DateOnly day)
+    private DayMeasures Measure(DateOnly day, SimulationWorkspace workspace)
     {
         var known = _today with { AsOf = day, Observations = _today.Observations.UpTo(day), Adjustments = [.. _today.Adjustments.Where(a => a.Date <= day)] };
         var model = Calibrator.Calibrate(known);
         var binder = new InstrumentBinder(_tree.ReportingCurrency, model.Factors);
         var lines = LineValuation.Of(known.Positions, known.Instruments, binder, model.Levels, day);
-        var plan = new PlanCompiler(_tree, model, binder.Currencies, day, [s_var.Horizon]).Compile(_seed, lines);
-        var sampler = new LossSampler(plan, _workspace, new TailDemand([s_var, s_es], [Level]), new() { Scenarios = _scenarios }, null, CancellationToken.None);
+        var plan = new PlanCompiler(_tree, model, binder.Currencies, [s_var.Horizon]).Compile(_seed, lines);
+        var sampler = new LossSampler(plan, workspace, _demand, new() { Scenarios = _scenarios }, null, CancellationToken.None);
         var measures = new NodeMeasures(plan, sampler.Look(_scenarios).Series);
         var all = Enumerable.Range(0, plan.Nodes.Count).Select(node => new DayMeasures(day, measures.Of(node, s_var, Level), measures.Of(node, s_es, Level))).ToList();
         return all[0];

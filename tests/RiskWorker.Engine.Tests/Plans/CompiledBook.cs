@@ -18,7 +18,7 @@ internal sealed record CompiledBook(Snapshot Snapshot, BookTree Tree, Calibrated
         var binder = new InstrumentBinder(tree.ReportingCurrency, model.Factors);
         var lines = LineValuation.Of(snapshot.Positions, snapshot.Instruments, binder, model.Levels, snapshot.AsOf);
         Assert.All(lines, line => Assert.Null(line.Unpriced));
-        var plan = new PlanCompiler(tree, model, binder.Currencies, snapshot.AsOf, horizons.Select(h => new Horizon(h))).Compile(snapshot.Settings.Simulation.Seed, lines);
+        var plan = new PlanCompiler(tree, model, binder.Currencies, horizons.Select(h => new Horizon(h))).Compile(snapshot.Settings.Simulation.Seed, lines);
         return new(snapshot, tree, model, plan);
     }
 

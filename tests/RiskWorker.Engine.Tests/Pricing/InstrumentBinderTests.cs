@@ -15,16 +15,16 @@ public sealed class InstrumentBinderTests
     {
         ["factor"] = (new Spot("X") { Name = "n", Currency = "EUR" }, UnpricedReason.UnknownFactor, "its factor 'X' is not in factors.csv"),
         ["case"] = (new Spot("eq") { Name = "n", Currency = "EUR" }, UnpricedReason.UnknownFactor, "its factor 'eq' is not in factors.csv"),
-        ["volatility factor"] = (s_call with { Volatility = new(null, "W") }, UnpricedReason.UnknownFactor, "its factor 'W' is not in factors.csv"),
+        ["volatility factor"] = (s_call with { Volatility = new(null, "W") }, UnpricedReason.UnknownFactor, "its volatility 'W' is not in factors.csv"),
         ["currency"] = (new Cash { Name = "n", Currency = "JPY" }, UnpricedReason.UnknownCurrency, "no fx factor prices JPY"),
         ["base currency"] = (s_call with { Underlying = new(null, "JPY") }, UnpricedReason.UnknownCurrency, "no fx factor prices JPY"),
         ["mismatch"] = (new Spot("EQU") { Name = "n", Currency = "EUR" }, UnpricedReason.CurrencyMismatch, "its currency is EUR but its factor 'EQU' is quoted in USD"),
         ["fx in its own currency"] = (new Spot("USD") { Name = "n", Currency = "USD" }, UnpricedReason.CurrencyMismatch, "its currency is USD but its factor 'USD' is quoted in EUR"),
         ["base is own"] = (s_call with { Underlying = new(null, "EUR") }, UnpricedReason.CurrencyMismatch, "its base currency 'EUR' is its own currency"),
-        ["american"] = (s_call with { Style = ExerciseStyle.American }, UnpricedReason.NotModelled, "American exercise is not priced in this version"),
-        ["kind"] = (new UnmodelledInstrument("bond", new Dictionary<string, string>()) { Name = "n", Currency = "EUR" }, UnpricedReason.NotModelled, "the kind 'bond' is not priced in this version"),
-        ["curve"] = (s_call with { Curve = RateTerm.From("EUR-OIS") }, UnpricedReason.NotModelled, "its curve names the curve 'EUR-OIS', and curves are not priced in this version"),
-        ["carry"] = (s_forward with { Carry = RateTerm.From("DIV") }, UnpricedReason.NotModelled, "its carry names the curve 'DIV', and curves are not priced in this version"),
+        ["kind"] = (new UnmodelledInstrument("plot", new Dictionary<string, string>()) { Name = "n", Currency = "EUR" }, UnpricedReason.NotModelled, "the kind 'plot' is not priced in this version"),
+        ["curve"] = (s_call with { Curve = RateTerm.From("EUR-OIS") }, UnpricedReason.UnknownFactor, "its curve 'EUR-OIS' is not in factors.csv"),
+        ["carry"] = (s_forward with { Carry = RateTerm.From("DIV") }, UnpricedReason.UnknownFactor, "its carry 'DIV' is not in factors.csv"),
+        ["expired"] = (s_call with { Expiry = MixedBook.AsOf.AddDays(-1) }, UnpricedReason.Expired, "it expired on 2026-11-26"),
         ["normal underlying"] = (s_call with { Underlying = new("RATE", null) }, UnpricedReason.NotModelled, "its underlying 'RATE' has normal shocks and may turn negative, where the log-normal formula has no value"),
         ["normal volatility"] = (s_call with { Volatility = new(null, "RATE") }, UnpricedReason.NotModelled, "its volatility factor 'RATE' has normal shocks and may turn negative"),
     };
@@ -34,24 +34,26 @@ public sealed class InstrumentBinderTests
     [Theory]
     [MemberData(nameof(Faults))]
     public void Bind_says_why_an_instrument_cannot_be_priced(string name) =>
-        Assert.Equal(new Unpriced(s_faults[name].Reason, s_faults[name].Clause), s_binder.Bind(s_faults[name].Instrument, out _));
+        Assert.Equal(new Unpriced(s_faults[name].Reason, s_faults[name].Clause), s_binder.Bind(s_faults[name].Instrument, MixedBook.AsOf, out _));
 
     [Fact]
     public void Bind_cross_knows_both_fx_factors_and_the_reporting_currency_as_neither()
     {
-        Assert.Null(s_binder.Bind(s_call with { Underlying = new(null, "GBP"), Currency = "USD" }, out var cross));
-        Assert.Equal(new UnderlyingKey(true, 2, 6), cross.Underlying); // EQ, EQU, GBP, OIL, RATE, STILL, USD, VOL
-        Assert.Null(s_binder.Bind(s_call with { Underlying = new(null, "EUR"), Currency = "USD" }, out var inverse));
-        Assert.Equal(1 / 0.9, inverse.Underlying.LevelOf([100, 50, 1.15, 70, 0.03, 20, 0.9, 0.2]));
-        Assert.Equal(1.15 / 0.9, cross.Underlying.LevelOf([100, 50, 1.15, 70, 0.03, 20, 0.9, 0.2]));
+        Assert.Null(s_binder.Bind(s_call with { Underlying = new(null, "GBP"), Currency = "USD" }, MixedBook.AsOf, out var cross));
+        Assert.Equal(new UnderlyingKey(true, 2, 6), Of(cross)); // EQ, EQU, GBP, OIL, RATE, STILL, USD, VOL
+        Assert.Null(s_binder.Bind(s_call with { Underlying = new(null, "EUR"), Currency = "USD" }, MixedBook.AsOf, out var inverse));
+        Assert.Equal(1 / 0.9, Of(inverse).LevelOf([100, 50, 1.15, 70, 0.03, 20, 0.9, 0.2]));
+        Assert.Equal(1.15 / 0.9, Of(cross).LevelOf([100, 50, 1.15, 70, 0.03, 20, 0.9, 0.2]));
     }
+
+    private static UnderlyingKey Of(BoundInstrument? bound) => Assert.IsType<BoundEuropean>(bound).Underlying;
 
     // An fx factor is quoted in the reporting currency: an instrument on it is in that currency.
     [Fact]
     public void Bind_spot_on_an_fx_factor_is_in_the_reporting_currency()
     {
-        Assert.Null(s_binder.Bind(new Spot("USD") { Name = "n", Currency = "EUR" }, out var bound));
-        Assert.Equal((0, UnderlyingKey.Of(6)), (bound.Currency, bound.Underlying));
+        Assert.Null(s_binder.Bind(new Spot("USD") { Name = "n", Currency = "EUR" }, MixedBook.AsOf, out var bound));
+        Assert.Equal((0, UnderlyingKey.Of(6)), (bound!.Currency, Assert.IsType<BoundSpot>(bound).Underlying));
     }
 
     [Fact]

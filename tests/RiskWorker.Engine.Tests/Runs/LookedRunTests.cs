@@ -162,6 +162,6 @@ public sealed class LookedRunTests
         var model = Calibrator.Calibrate(snapshot);
         var binder = new InstrumentBinder("EUR", model.Factors);
         var lines = LineValuation.Of(snapshot.Positions, snapshot.Instruments, binder, model.Levels, snapshot.AsOf);
-        return (tree!, new PlanCompiler(tree!, model, binder.Currencies, snapshot.AsOf, [new(1)]).Compile(1, lines));
+        return (tree!, new PlanCompiler(tree!, model, binder.Currencies, [new(1)]).Compile(1, lines));
     }
 }

@@ -40,7 +40,7 @@ public sealed class AgeingOptionCasesTests
         var model = Calibrator.Calibrate(snapshot);
         var binder = new InstrumentBinder("EUR", model.Factors);
         var lines = LineValuation.Of(snapshot.Positions, snapshot.Instruments, binder, model.Levels, s_asOf);
-        var plan = new PlanCompiler(tree!, model, binder.Currencies, s_asOf, [new(10)], (_, days) => 0.5 - (days / 252.0)).Compile(1, lines);
+        var plan = new PlanCompiler(tree!, model, binder.Currencies, [new(10)], (_, days) => 0.5 - (days / 252.0)).Compile(1, lines);
         var demand = new TailDemand([new(MeasureKind.Var, confidence, new(10)), new(MeasureKind.Es, confidence, new(10))], [0.95m]);
         return new LossSampler(plan, Environment.ProcessorCount, demand, Scenarios, null, CancellationToken.None).Look(Scenarios).Series[0];
     }

@@ -1,4 +1,4 @@
-"""Writes moved-reference.csv, barrier-reference.csv and geometric-reference.csv: option values by mpmath at 120 digits.
+"""Writes moved-, barrier-, geometric- and hit-reference.csv: option values by mpmath at 120 digits.
 
 Usage: python3 make_closed_forms.py [rows a file] [folder]
 Needs mpmath (BSD licence). Seeded: the same arguments give the same files. A value stands as the sum of two doubles.
@@ -176,7 +176,17 @@ def geometric_rows():
                ";".join(map(str, fixings)), ";".join(map(str, past)), start, average), value
 
 
+def hit_rows():
+    """2 Re g(a + ib), g(z) = e^(z²/2) Φ(-z), at m = 0: -2rT = b²."""
+    for _ in range(rows):
+        gap = rng.choice([0.0, math.exp(rng.uniform(-8, 0)), rng.uniform(0, 5), rng.uniform(5, 60)])
+        discount = -rng.choice([math.exp(rng.uniform(-12, 0)), rng.uniform(0, 2), 2.0])
+        z = mp.mpc(gap, mp.sqrt(-2 * mp.mpf(discount)))
+        yield (gap, discount), 2 * mp.re(mp.exp(z * z / 2) * mp.erfc(z / mp.sqrt(2)) / 2)
+
+
 terms = "x,spot0,discount,carry,deviation,strike"
 write("moved-reference.csv", "payoff," + terms, moved_rows())
 write("barrier-reference.csv", "kind," + terms + ",barrier,rebate,years,spacing", barrier_rows())
 write("geometric-reference.csv", "right," + terms + ",years,fixings,past,start,average", geometric_rows())
+write("hit-reference.csv", "gap,discount", hit_rows())

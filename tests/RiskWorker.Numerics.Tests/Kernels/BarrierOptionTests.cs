@@ -263,6 +263,17 @@ public sealed class BarrierOptionTests
         }
     }
 
+    [Theory]
+    [MemberData(nameof(Kinds))]
+    public void Value_not_a_number_stays_one(bool isCall, bool isUp, bool isIn)
+    {
+        foreach (double rebate in new[] { 0.0, 3 })
+        {
+            var terms = new BarrierOptionTerms(100, 103, isUp ? 120 : 80, isCall, isUp, isIn, rebate, 1, 0.004);
+            MarketBlock.AssertNaNStays((in MarketPoint at, double quantity, double baseValue, double profit) => BarrierOption.Profit(terms, at, quantity, baseValue, profit));
+        }
+    }
+
     [Fact]
     public void AccumulateValue_faulty_spans_are_refused() => MarketBlock.AssertFaultySpansAreRefused(
         (in MarketSpans market, double quantity, double baseValue, Span<double> profit) =>

@@ -116,6 +116,13 @@ public sealed class DigitalOptionTests
     }
 
     [Fact]
+    public void Value_not_a_number_stays_one()
+    {
+        foreach (bool paysAsset in new[] { true, false })
+            MarketBlock.AssertNaNStays((in MarketPoint at, double quantity, double baseValue, double profit) => DigitalOption.Profit(Terms(100, 103, 1, true, paysAsset), at, quantity, baseValue, profit));
+    }
+
+    [Fact]
     public void AccumulateValue_faulty_spans_are_refused() => MarketBlock.AssertFaultySpansAreRefused(
         (in MarketSpans market, double quantity, double baseValue, Span<double> profit) =>
             DigitalOption.AccumulateValue(Terms(100, 100, 1, true, false), market, quantity, baseValue, profit));

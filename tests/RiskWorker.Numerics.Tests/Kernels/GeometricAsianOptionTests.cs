@@ -111,6 +111,13 @@ public sealed class GeometricAsianOptionTests
     }
 
     [Fact]
+    public void Value_not_a_number_stays_one()
+    {
+        foreach (double start in new[] { -0.5, 0, 0.5 })
+            MarketBlock.AssertNaNStays((in MarketPoint at, double quantity, double baseValue, double profit) => GeometricAsianOption.Profit(GeometricAsianTerms.Continuous(100, 103, 1, start, 99, true), at, quantity, baseValue, profit));
+    }
+
+    [Fact]
     public void AccumulateValue_faulty_spans_are_refused() => MarketBlock.AssertFaultySpansAreRefused(
         (in MarketSpans market, double quantity, double baseValue, Span<double> profit) =>
             GeometricAsianOption.AccumulateValue(GeometricAsianTerms.Continuous(100, 100, 1, 0, 0, true), market, quantity, baseValue, profit));

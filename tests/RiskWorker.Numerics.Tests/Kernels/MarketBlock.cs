@@ -41,6 +41,14 @@ internal sealed class MarketBlock(double[] x, double[] spot, double[] discount, 
         AssertEqual(Odd(spot0).Spans, lanes, twin);
     }
 
+    public static void AssertNaNStays(Twin twin)
+    {
+        MarketPoint at = Point(0.01, 100, 0.02, 0.01, 0.2);
+        Assert.False(double.IsNaN(twin(at, 1, 0, 0)));
+        foreach (MarketPoint faulty in new[] { at with { X = double.NaN }, at with { Discount = double.NaN }, at with { Carry = double.NaN }, at with { Deviation = double.NaN } })
+            Assert.True(double.IsNaN(twin(faulty, 1, 0, 0)), $"{faulty}");
+    }
+
     public static void AssertFaultySpansAreRefused(Accumulation lanes)
     {
         double[] memory = new double[64];

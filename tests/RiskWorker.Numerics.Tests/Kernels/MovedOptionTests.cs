@@ -102,6 +102,13 @@ public sealed class MovedOptionTests
     }
 
     [Fact]
+    public void Value_not_a_number_stays_one()
+    {
+        foreach (bool isCall in new[] { true, false })
+            MarketBlock.AssertNaNStays((in MarketPoint at, double quantity, double baseValue, double profit) => MovedOption.Profit(new(100, 103, isCall), at, quantity, baseValue, profit));
+    }
+
+    [Fact]
     public void AccumulateValue_faulty_spans_are_refused() => MarketBlock.AssertFaultySpansAreRefused(
         (in MarketSpans market, double quantity, double baseValue, Span<double> profit) =>
             MovedOption.AccumulateValue(new(100, 100, true), market, quantity, baseValue, profit));

@@ -1,3 +1,5 @@
+using RiskWorker.Numerics.Kernels;
+
 namespace RiskWorker.Engine.Pricing.Curves;
 
 /// <summary>
@@ -19,11 +21,14 @@ public sealed class VarianceForm : IEquatable<VarianceForm>, IComparable<Varianc
     /// <summary>Places of the volatility factors, ascending, and their weights.</summary>
     public IReadOnlyList<(int Factor, double Weight)> Terms => _terms;
 
+    /// <summary>The same as a span, for loops over scenarios.</summary>
+    internal ReadOnlySpan<(int Factor, double Weight)> Span => _terms;
+
     /// <summary>Its value: fused multiply-adds onto the constant, factors ascending. NaN where a level that it needs is NaN.</summary>
     public double At(ReadOnlySpan<double> levels)
     {
         var value = Constant;
-        foreach (var (factor, weight) in _terms) value = Math.FusedMultiplyAdd(weight, levels[factor] * levels[factor], value);
+        foreach (var (factor, weight) in _terms) value = Elementwise.AddSquare(levels[factor], weight, value);
         return value;
     }
 

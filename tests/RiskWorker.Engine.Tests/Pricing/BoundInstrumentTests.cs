@@ -4,19 +4,19 @@ using RiskWorker.Engine.Tests.Plans;
 
 namespace RiskWorker.Engine.Tests.Pricing;
 
-public sealed class ValuerTests
+public sealed class BoundInstrumentTests
 {
     private static readonly CompiledBook s_book = CompiledBook.Of(MixedBook.Whole().Build(), 1);
     private static readonly InstrumentBinder s_binder = new("EUR", s_book.Model.Factors);
     private static double[] Levels => [.. s_book.Model.Levels];
 
-    private static BoundInstrument Bound(Instrument instrument)
+    private static BoundInstrument Bound(Instrument instrument, int days = 0)
     {
-        Assert.Null(s_binder.Bind(instrument, out var bound));
-        return bound;
+        Assert.Null(s_binder.Bind(instrument, MixedBook.AsOf.AddDays(days), out var bound));
+        return bound!;
     }
 
-    private static double ValueOf(Instrument instrument) => Valuer.ValueOf(Bound(instrument), Levels, MixedBook.AsOf);
+    private static double ValueOf(Instrument instrument) => Bound(instrument).Value(Levels);
 
     public static TheoryData<string> OptionNames => [.. MixedBook.Instruments.OfType<Option>().Select(o => o.Name)];
 
@@ -28,7 +28,7 @@ public sealed class ValuerTests
     {
         var option = (Option)s_book.Snapshot.Instruments[name];
         var forward = new Forward(option.Underlying, option.Strike, option.Expiry, option.Curve, option.Carry, null) { Name = "F", Currency = option.Currency };
-        var spot = Bound(option).Underlying.LevelOf(Levels);
+        var spot = ((BoundEuropean)Bound(option)).Underlying.LevelOf(Levels);
         Assert.Equal(ValueOf(forward), ValueOf(option with { Right = OptionRight.Call }) - ValueOf(option with { Right = OptionRight.Put }), 12e-16 * (spot + option.Strike));
     }
 
@@ -47,19 +47,17 @@ public sealed class ValuerTests
         var future = Bound(s_book.Snapshot.Instruments["OIL-FUTURE"]);
         var after = Levels;
         after[3] = 71.5; // EQ, EQU, GBP, OIL: ordinal order
-        Assert.Equal(0, Valuer.ValueOf(future, Levels, MixedBook.AsOf));
-        Assert.Equal(700, Valuer.ExposureOf(future, Levels, MixedBook.AsOf));
-        Assert.Equal(15, Valuer.ProfitOf(future, Levels, MixedBook.AsOf, after, MixedBook.AsOf.AddDays(1)));
+        Assert.Equal(0, future.Value(Levels));
+        Assert.Equal(700, future.Exposure(Levels));
+        Assert.Equal(15, future.Settled(Levels, after));
     }
 
     [Fact]
-    public void Profit_of_an_option_counts_the_day_that_passed()
+    public void Option_bound_a_day_later_has_lost_that_day()
     {
         var option = s_book.Snapshot.Instruments["EQ-CALL"];
-        var (today, tomorrow) = (MixedBook.AsOf, MixedBook.AsOf.AddDays(1));
-        var decay = Valuer.ProfitOf(Bound(option), Levels, today, Levels, tomorrow);
+        var decay = Bound(option, days: 1).Value(Levels) - Bound(option).Value(Levels);
         Assert.InRange(decay, -0.05, -0.01); // some 26 volatility points of a year's 365 days on 100
-        Assert.Equal(0, Valuer.ProfitOf(Bound(option), Levels, today, Levels, today));
     }
 
     public static TheoryData<string> Priced => [.. MixedBook.Instruments.Where(i => i is not Cash and not Future).Select(i => i.Name)];
@@ -67,5 +65,5 @@ public sealed class ValuerTests
     [Theory]
     [MemberData(nameof(Priced))]
     public void Missing_level_makes_the_value_NaN(string name) =>
-        Assert.Equal(double.NaN, Valuer.ValueOf(Bound(s_book.Snapshot.Instruments[name]), [.. Levels.Select(_ => double.NaN)], MixedBook.AsOf));
+        Assert.Equal(double.NaN, Bound(s_book.Snapshot.Instruments[name]).Value([.. Levels.Select(_ => double.NaN)]));
 }
