@@ -19,7 +19,7 @@ public sealed class TensorPolynomial
     /// <summary>How many variables there are.</summary>
     public int Variables => _counts.Length;
 
-    /// <summary>Coefficients by power, the last variable's powers side by side.</summary>
+    /// <summary>Coefficients by power of the first variable and Chebyshev polynomial of the others, the last variable's side by side.</summary>
     public ReadOnlySpan<double> Coefficients => _coefficients;
 
     /// <summary>The polynomial through <paramref name="values"/>.</summary>
@@ -46,7 +46,8 @@ public sealed class TensorPolynomial
                 for (int i = 0; i < stride; i++)
                 {
                     var line = coefficients.AsSpan((o * block) + i, block - i);
-                    grid.Interpolate(line, stride, line);
+                    if (d == 0) grid.Interpolate(line, stride, line);
+                    else grid.Expand(line, stride, line);
                 }
             }
             outer *= counts[d];
@@ -60,7 +61,7 @@ public sealed class TensorPolynomial
     {
         0 => _coefficients[0],
         1 => PolynomialSum.AddInTurn(_coefficients, at[0], 0),
-        2 => PolynomialSum.AddInTurn(_coefficients, _counts[1], at[0], at[1], 0),
+        2 => FourVariableSum.AddInTurn(_coefficients, 1, 1, _counts[1], at[0], at[0], at[0], at[1], 0),
         3 => FourVariableSum.AddInTurn(_coefficients, 1, _counts[1], _counts[2], at[0], at[0], at[1], at[2], 0),
         _ => FourVariableSum.AddInTurn(_coefficients, _counts[1], _counts[2], _counts[3], at[0], at[1], at[2], at[3], 0),
     };
@@ -86,11 +87,11 @@ public sealed class TensorPolynomial
         var second = others[..length];
         if (_counts.Length == 2)
         {
-            PolynomialSum.Add(_coefficients, _counts[1], first, second, values);
+            FourVariableSum.Add(_coefficients, 1, 1, _counts[1], first, first, first, second, values);
             return;
         }
         var third = others.Slice(length, length);
-        // A variable that is not there is one of a single power: the innermost loops stay the long ones.
+        // A variable that is not there is one of a single term: the innermost loops stay the long ones.
         if (_counts.Length == 3) FourVariableSum.Add(_coefficients, 1, _counts[1], _counts[2], first, first, second, third, values);
         else FourVariableSum.Add(_coefficients, _counts[1], _counts[2], _counts[3], first, second, third, others.Slice(2 * length, length), values);
     }

@@ -2,8 +2,8 @@ using RiskWorker.Numerics.Interpolation;
 
 namespace RiskWorker.Engine.Pricing.Options;
 
-/// <summary>Cuts a range of spots into pieces and gives each the lowest degree that holds the error: degrees 6, 8, 12 and 16 are tried, then halves.</summary>
-/// <remarks>49 points serve all four degrees and show the error of each between its own points: what is dear about a price is found once for all spots.</remarks>
+/// <summary>Cuts a range of spots into pieces and gives each the lowest degree that holds the error: degrees 4, 8 and 16 are tried, then halves.</summary>
+/// <remarks>33 points serve all three degrees and show the error of each between its own points: what is dear about a price is found once for all spots.</remarks>
 internal sealed class PieceLayout
 {
     /// <summary>Most pieces of a range.</summary>
@@ -12,9 +12,10 @@ internal sealed class PieceLayout
     /// <summary>The degree above which a piece is halved.</summary>
     public const int MostDegree = 16;
 
-    private const int Finest = 48;
+    private const double LeastGain = 0.7;
+    private const int Finest = 32;
 
-    private static readonly int[] s_degrees = [6, 8, 12, MostDegree];
+    private static readonly int[] s_degrees = [4, 8, MostDegree];
     private static readonly double[] s_points = ChebyshevGrid.PointsOf(Finest);
 
     private readonly TableSampler _sampler;
@@ -30,9 +31,15 @@ internal sealed class PieceLayout
         Add(kink is { } cut ? [new(-1, cut, 0), new(cut, 1, 0)] : [new(-1, 1, 0)]);
         while (_found.Count < MostPieces && _found.MaxBy(f => f.Error) is var worst && worst.Error > _sampler.Tolerance)
         {
-            _found.Remove(worst);
-            var (from, to, middle) = (worst.Piece.Shape.From, worst.Piece.Shape.To, worst.Piece.Shape.At(0));
+            var (from, to, middle, count) = (worst.Piece.Shape.From, worst.Piece.Shape.To, worst.Piece.Shape.At(0), _found.Count);
             Add([new(from, middle, 0), new(middle, to, 0)]);
+            // What halves do not mend is the noise of simulated prices: the piece stays whole, and the layout ends.
+            if (_sampler.StandardError > 0 && _found.Skip(count).Max(f => f.Error) > LeastGain * worst.Error)
+            {
+                _found.RemoveRange(count, 2);
+                break;
+            }
+            _found.Remove(worst);
         }
         _found.Sort((a, b) => a.Piece.Shape.From.CompareTo(b.Piece.Shape.From));
     }

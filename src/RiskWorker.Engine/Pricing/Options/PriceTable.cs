@@ -8,7 +8,7 @@ namespace RiskWorker.Engine.Pricing.Options;
 /// </summary>
 /// <remarks>
 /// <para>The spot is cut into at most 8 pieces of degree 16 or less. The degree in the deviation is 3, 6 or 12, in rates 2, 4 or 8: the
-/// lowest that brings the error between the points below 1e-7 of the spot or a tenth of the largest standard error, along each input
+/// lowest that brings the error between the points below 1e-7 of the spot or half the largest standard error, along each input
 /// alone and then, where several move, at 16 points of all. The cap on work is <see cref="MostNodes"/> sets of rates and volatility
 /// for the table and as many for its checks. A table that does not reach the tolerance is taken as it is, and says its error.</para>
 /// <para>Where rates move through zero an American option has an exercise boundary in some scenarios and none in others; the table
@@ -17,7 +17,7 @@ namespace RiskWorker.Engine.Pricing.Options;
 public static class PriceTable
 {
     /// <summary>Most sets of rates and volatility under which a table's prices are found.</summary>
-    public const int MostNodes = 400;
+    public const int MostNodes = 640;
 
     private const int CheckPoints = 16;
 
@@ -40,7 +40,14 @@ public static class PriceTable
         // The lowest deviation is the hardest: least smoothed.
         var hardest = new double[inputs.Count];
         if (inputs.Count > 0 && inputs.IsDeviation(0)) hardest[0] = -1;
-        TableSection SectionOf(int[] moved, int[] degrees) => new(sampler, range.X, formula.Exercise, hardest, moved, degrees);
+        var exercise = formula.Exercise;
+        TableSection SectionOf(int[] moved, int[] degrees) => new(sampler, range.X, exercise, hardest, moved, degrees);
+        // A table that cannot begin at the boundary everywhere begins at it nowhere; its pieces must suit where the boundary lies deepest.
+        if (exercise is not null && SectionOf(AllOf(inputs), [.. AllOf(inputs).Select(d => DegreesOf(inputs, d)[0])]) is { Coordinate.Exercise: null } whole)
+        {
+            exercise = null;
+            hardest = whole.Nodes.MinBy(node => sampler.Boundary(node) is { } boundary ? Math.Abs(boundary - range.X.Centre) : double.PositiveInfinity) ?? hardest;
+        }
 
         var spine = SectionOf([], []);
         var layout = new PieceLayout(sampler, spine, KinkOf(formula, spot0, range.X, spine.Coordinate));
@@ -74,7 +81,7 @@ public static class PriceTable
     private static (TableSection Section, double Error) Together(
         MovingInputs inputs, TableSampler sampler, int[] steps, PieceShape[] shapes, Func<int[], int[], TableSection> sectionOf)
     {
-        int[] all = [.. Enumerable.Range(0, inputs.Count)];
+        var all = AllOf(inputs);
         int[] Degrees() => [.. all.Select(d => DegreesOf(inputs, d)[steps[d]])];
         while (NodesOf(Degrees()) > MostNodes) steps[Array.IndexOf(steps, steps.Max())]--;
         for (; ; )
@@ -90,6 +97,8 @@ public static class PriceTable
             shapes = [.. shapes.Select(shape => shape with { Degree = PieceLayout.MostDegree })];
         }
     }
+
+    private static int[] AllOf(MovingInputs inputs) => [.. Enumerable.Range(0, inputs.Count)];
 
     private static int NodesOf(int[] degrees) => degrees.Aggregate(1, (product, degree) => product * (degree + 1));
 

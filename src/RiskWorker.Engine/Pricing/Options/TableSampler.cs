@@ -6,7 +6,8 @@ namespace RiskWorker.Engine.Pricing.Options;
 internal sealed class TableSampler(NumericFormula formula, double spot0, MovingInputs inputs)
 {
     // The table's error is to stay below this part of the spot, and of a simulated price's standard error; rounding sets the last.
-    private const double PartOfSpot = 1e-7, PartOfStandardError = 0.1, PartOfValue = 1e-9;
+    // A simulated price is rough in the spot by up to about half its standard error, which no polynomial follows or should.
+    private const double PartOfSpot = 1e-7, PartOfStandardError = 0.5, PartOfValue = 1e-9;
 
     private readonly Dictionary<(double, double, double), SpotPrices> _markets = [];
     private double _largest;
