@@ -33,19 +33,26 @@ public sealed class PlanCompiler
     }
 
     /// <summary>The plan of the priced ones among <paramref name="lines"/>.</summary>
-    public RevaluationPlan Compile(ulong seed, IReadOnlyList<LineValue> lines)
+    /// <param name="seed">Seed of the draws.</param>
+    /// <param name="lines">The lines.</param>
+    /// <param name="threads">Threads for tables of prices; the plan does not depend on how many.</param>
+    /// <param name="cancellation">Stops between tables.</param>
+    public RevaluationPlan Compile(ulong seed, IReadOnlyList<LineValue> lines, int threads = 1, CancellationToken cancellation = default)
     {
         var holdings = Holdings(lines);
+        var moves = Moves();
+        var options = holdings.Where(h => h.Bound is BoundOption).DistinctBy(h => h.Instrument).Select(h => (h.Instrument, (BoundOption)h.Bound)).ToList();
+        var formulas = PriceTables.Build(options, moves, _model.Levels, _horizons, threads, cancellation);
         var currencies = Currencies(holdings);
         var cells = Cells(holdings, currencies);
         var nodes = Nodes(cells, currencies);
         var plan = new RevaluationPlan
         {
             Seed = seed,
-            Moves = Moves(),
+            Moves = moves,
             Horizons = _horizons,
             Currencies = currencies,
-            Groups = Groups(holdings, cells, currencies),
+            Groups = Groups(holdings, cells, currencies, formulas),
             Flows = Flows(holdings, cells, currencies),
             Cells = cells,
             Nodes = nodes,
@@ -128,11 +135,10 @@ public sealed class PlanCompiler
         return rows;
     }
 
-    private List<UnderlyingGroup> Groups(List<Holding> holdings, List<PlanCell> cells, List<PlanCurrency> currencies)
+    private List<UnderlyingGroup> Groups(List<Holding> holdings, List<PlanCell> cells, List<PlanCurrency> currencies, Dictionary<string, OptionFormula> formulas)
     {
         var cellOf = PlacesOf(cells);
         var groups = new SortedDictionary<UnderlyingKey, GroupBuilder>();
-        var formulas = new Dictionary<string, OptionFormula>(StringComparer.Ordinal);
         foreach (var holding in holdings)
         {
             if (KeyOf(holding.Bound) is not { } key) continue;
@@ -167,8 +173,7 @@ public sealed class PlanCompiler
                 group.AddOption(option, new(cell, units, option.ValueWith(_model.Levels, Years(option, 0))));
                 break;
             case BoundOption option:
-                // Positions in one instrument share its formula, which may be a table.
-                if (!formulas.TryGetValue(holding.Instrument, out var formula)) formulas[holding.Instrument] = formula = option.FormulaAt(option.Underlying.LevelOf(_model.Levels));
+                var formula = formulas[holding.Instrument];
                 group.AddFormula(option.Market, new(cell, units, formula.Value(option.Market.At(_model.Levels, 0, option.Underlying.LevelOf(_model.Levels))), formula));
                 break;
             default:

@@ -52,7 +52,24 @@ public sealed record RevaluationPlan
 /// <param name="RowOf">For each factor its row in <paramref name="Lower"/>, or -1 where its variance is zero.</param>
 /// <param name="Rows">Moving factors.</param>
 /// <param name="Factors">Each factor's law.</param>
-public sealed record FactorMoves(int Rank, double[] Lower, int[] RowOf, int Rows, FactorLaw[] Factors);
+public sealed record FactorMoves(int Rank, double[] Lower, int[] RowOf, int Rows, FactorLaw[] Factors)
+{
+    /// <summary>Standard deviation of a day's shocks of several factors, each times its weight, added.</summary>
+    public double DeviationOf(ReadOnlySpan<(int Factor, double Weight)> terms)
+    {
+        var variance = 0.0;
+        for (var k = 0; k < Rank; k++)
+        {
+            var loading = 0.0;
+            foreach (var (factor, weight) in terms)
+            {
+                if (RowOf[factor] >= 0) loading = Math.FusedMultiplyAdd(weight * Factors[factor].Deviation, Lower[(RowOf[factor] * Rank) + k], loading);
+            }
+            variance = Math.FusedMultiplyAdd(loading, loading, variance);
+        }
+        return Math.Sqrt(variance);
+    }
+}
 
 /// <summary>The law of one factor over h days: x = Deviation sqrt(h) Z + Drift h, then S = Level e^x or Level + x.</summary>
 /// <param name="Level">Level today.</param>

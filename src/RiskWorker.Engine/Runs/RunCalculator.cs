@@ -63,7 +63,7 @@ public sealed class RunCalculator
         var limits = valid[true].ToList();
         var measures = _snapshot.Settings.Measures.Concat(limits.Select(l => l.Measure)).Distinct().Order().ToList();
         var clock = Stopwatch.StartNew();
-        var plan = new PlanCompiler(tree, model, valued.Binder.Currencies, measures.Select(m => m.Horizon)).Compile(_snapshot.Settings.Simulation.Seed, valued.Today);
+        var plan = new PlanCompiler(tree, model, valued.Binder.Currencies, measures.Select(m => m.Horizon)).Compile(_snapshot.Settings.Simulation.Seed, valued.Today, _threads, _cancellation);
         var outcome = new LookedRun(tree, plan, limits, measures, _snapshot.Settings.Simulation).Run(_threads, _progress, _cancellation);
         Timings = Timings with { Simulate = clock.Elapsed.TotalSeconds };
         _findings.AddRange(UndecidableLimits.Of(outcome, limits, _snapshot.Settings.Checks));

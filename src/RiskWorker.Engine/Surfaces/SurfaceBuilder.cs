@@ -83,16 +83,11 @@ public sealed class SurfaceBuilder
     private AxisScale? UnderlyingAxis(int horizon, in UnderlyingKey key)
     {
         if (!key.IsCross) return AxisOf(horizon, key.Factor);
-        var moves = _plan.Moves;
-        var (from, to) = (LawOf(key.Factor), LawOf(key.Quote));
-        var variance = 0.0;
-        for (var k = 0; k < moves.Rank; k++)
-        {
-            var loading = Math.FusedMultiplyAdd(from.Deviation, LoadingOf(key.Factor, k), -(to.Deviation * LoadingOf(key.Quote, k)));
-            variance = Math.FusedMultiplyAdd(loading, loading, variance);
-        }
-        var days = _plan.Horizons[horizon].Days;
-        return variance > 0 ? AxisScale.Around((from.Drift - to.Drift) * days, Math.Sqrt(variance * days)) : null;
+        List<(int Factor, double Weight)> terms = [];
+        if (key.Factor >= 0) terms.Add((key.Factor, 1));
+        if (key.Quote >= 0) terms.Add((key.Quote, -1));
+        var (days, deviation) = (_plan.Horizons[horizon].Days, _plan.Moves.DeviationOf([.. terms]));
+        return deviation > 0 ? AxisScale.Around((LawOf(key.Factor).Drift - LawOf(key.Quote).Drift) * days, deviation * Math.Sqrt(days)) : null;
     }
 
     private AxisScale? AxisOf(int horizon, int factor)
@@ -103,6 +98,4 @@ public sealed class SurfaceBuilder
     }
 
     private FactorLaw LawOf(int factor) => factor < 0 ? default : _plan.Moves.Factors[factor];
-
-    private double LoadingOf(int factor, int draw) => factor < 0 || _plan.Moves.RowOf[factor] < 0 ? 0 : _plan.Moves.Lower[(_plan.Moves.RowOf[factor] * _plan.Moves.Rank) + draw];
 }
