@@ -36,6 +36,25 @@ internal static class JsonWriting
         json.WriteEndArray();
     }
 
+    /// <summary>Writes an array of small objects, each on a line of its own.</summary>
+    public static void Lines<T>(this Utf8JsonWriter json, string name, IReadOnlyList<T> items, Action<Utf8JsonWriter, T> write)
+    {
+        json.WriteStartArray(name);
+        var buffer = new ArrayBufferWriter<byte>();
+        using var compact = new Utf8JsonWriter(buffer);
+        foreach (var item in items)
+        {
+            compact.WriteStartObject();
+            write(compact, item);
+            compact.WriteEndObject();
+            compact.Flush();
+            json.WriteRawValue(buffer.WrittenSpan, skipInputValidation: true);
+            buffer.ResetWrittenCount();
+            compact.Reset();
+        }
+        json.WriteEndArray();
+    }
+
     /// <summary>Writes a long value on one line: hundreds of numbers are not made readable by a line each.</summary>
     public static void Compact(this Utf8JsonWriter json, string name, Action<Utf8JsonWriter> write)
     {
