@@ -1,4 +1,5 @@
 using RiskWorker.Domain.Limits;
+using RiskWorker.Domain.Market;
 using RiskWorker.Domain.Runs;
 
 namespace RiskWorker.Storage.Tests;
@@ -71,6 +72,13 @@ internal static class RunRecords
                 Book = "ALL", Confidence = new(0.99m), Currency = "EUR", Actual = 1, Hypothetical = 2, MissingVar = 1, Backfilled = 1, Zone = null,
                 Series = [new(asOf.AddDays(-1), 100.1, -101, null, EvidenceKind.Backfilled), new(asOf, null, 3, 4, null)],
             },
+        ],
+        Sensitivities =
+        [
+            new("ALL", "ALPHA", FactorClass.Equity, null, null, SensitivityMeasure.Delta, 1.0 / 3, -0.0),
+            new("ALL", "=EUR.3M", FactorClass.Rate, "-EUR", 0.25, SensitivityMeasure.Dv01, -1e-300, null),
+            new("FX", "ALPHA-VOL", FactorClass.Vol, null, null, SensitivityMeasure.Vega, double.NaN, null),
+            new("FX", "BANK", FactorClass.Credit, "BANKS, all", 5, SensitivityMeasure.Cs01, 12, null),
         ],
         Hypothetical = profitFrom is { } from ? new(from, asOf, [new("ALL", -1.1), new("FX", 2.2)]) : null,
         Holdings = new()

@@ -21,6 +21,9 @@ public sealed record RunResults
     /// <summary>Limits valid on the date, by name.</summary>
     public IReadOnlyList<LimitResult> Limits { get; init; } = [];
 
+    /// <summary>Sensitivities by node and factor: nodes depth first, then by measure, curve, tenor and factor; empty in a run that is evidence only.</summary>
+    public IReadOnlyList<Sensitivity> Sensitivities { get; init; } = [];
+
     /// <summary>Exception counts by book and confidence.</summary>
     public IReadOnlyList<BacktestResult> Backtest { get; init; } = [];
 

@@ -32,7 +32,8 @@ public sealed class PlanSlice
         Groups = [.. Enumerable.Range(0, plan.Groups.Count).Select(g => SliceOf(plan.Groups[g], g)).OfType<GroupSlice>()];
         Flows = [.. Enumerable.Range(0, plan.Flows.Count).Select(b => new FlowSlice(b, RangeOf(plan.Flows[b].Amounts.Count, i => plan.Flows[b].Amounts[i].Cell))).Where(f => !f.Amounts.IsEmpty)];
         FormFactors = [.. FormFactorsOf(plan).Distinct().Order()];
-        (Factors, RowOf) = NeededFactors(plan);
+        ReadFactors = FactorsRead(plan);
+        (Factors, RowOf) = MovingFactors(plan);
     }
 
     /// <summary>The node.</summary>
@@ -56,7 +57,10 @@ public sealed class PlanSlice
     /// <summary>The factors whose levels its flows and formulas read, ascending.</summary>
     public int[] FormFactors { get; }
 
-    /// <summary>The moving factors that it needs, ascending.</summary>
+    /// <summary>The factors whose levels its value depends on, still ones among them, ascending.</summary>
+    public int[] ReadFactors { get; }
+
+    /// <summary>The moving ones among them, ascending.</summary>
     public int[] Factors { get; }
 
     /// <summary>For each factor of the plan its place in <see cref="Factors"/>, or -1.</summary>
@@ -115,7 +119,7 @@ public sealed class PlanSlice
         }
     }
 
-    private (int[] Factors, int[] RowOf) NeededFactors(RevaluationPlan plan)
+    private int[] FactorsRead(RevaluationPlan plan)
     {
         var needed = new SortedSet<int>();
         foreach (var slice in Groups)
@@ -130,7 +134,12 @@ public sealed class PlanSlice
         }
         needed.UnionWith(FormFactors);
         foreach (var currency in Currencies) needed.Add(plan.Currencies[currency].Factor);
-        int[] factors = [.. needed.Where(f => f >= 0 && plan.Moves.RowOf[f] >= 0)];
+        return [.. needed.Where(f => f >= 0)];
+    }
+
+    private (int[] Factors, int[] RowOf) MovingFactors(RevaluationPlan plan)
+    {
+        int[] factors = [.. ReadFactors.Where(f => plan.Moves.RowOf[f] >= 0)];
         var rowOf = new int[plan.Moves.RowOf.Length];
         Array.Fill(rowOf, -1);
         for (var row = 0; row < factors.Length; row++) rowOf[factors[row]] = row;

@@ -6,11 +6,12 @@ using RiskWorker.Engine.Calibration;
 using RiskWorker.Engine.Checks;
 using RiskWorker.Engine.Limits;
 using RiskWorker.Engine.Plans;
+using RiskWorker.Engine.Sensitivities;
 
 namespace RiskWorker.Engine.Runs;
 
 /// <summary>
-/// One run from snapshot to results: checks, calibration, plan, simulation by looks, measures, limits, exception counts.
+/// One run from snapshot to results: checks, calibration, plan, simulation by looks, measures, limits, sensitivities, exception counts.
 /// A pure function of the snapshot; threads and progress change no bit.
 /// </summary>
 public sealed class RunCalculator
@@ -65,6 +66,7 @@ public sealed class RunCalculator
         var clock = Stopwatch.StartNew();
         var plan = new PlanCompiler(tree, model, valued.Binder.Currencies, measures.Select(m => m.Horizon)).Compile(_snapshot.Settings.Simulation.Seed, valued.Today, _threads, _cancellation);
         var outcome = new LookedRun(tree, plan, limits, measures, _snapshot.Settings.Simulation).Run(_threads, _progress, _cancellation);
+        var sensitivities = BookSensitivities.Of(plan, model.Factors);
         Timings = Timings with { Simulate = clock.Elapsed.TotalSeconds };
         _findings.AddRange(UndecidableLimits.Of(outcome, limits, _snapshot.Settings.Checks));
         if (Blocked) return Failed(tree) with { Holdings = valued.Holdings }; // where the settings make that finding block
@@ -77,6 +79,7 @@ public sealed class RunCalculator
             Simulation = outcome.Simulation,
             Nodes = NodeResults.Of(tree, plan, outcome, measures, _snapshot.Positions),
             Limits = [.. outcome.Limits.Concat(valid[false].Select(l => LimitEvaluator.WithoutBook(l, tree.ReportingCurrency, (double)outcome.Level))).OrderBy(l => l.Limit.Name, StringComparer.Ordinal)],
+            Sensitivities = sensitivities,
             Hypothetical = hypothetical,
             Backtest = ExceptionCount.Of(_snapshot, tree, measures, hypothetical),
             Holdings = valued.Holdings,

@@ -5,8 +5,8 @@ using RiskWorker.Numerics.Kernels;
 namespace RiskWorker.Engine.Simulation;
 
 /// <summary>
-/// The market in some scenarios at one horizon, as moved by their correlated normals: returns and levels of an underlying, volatilities,
-/// exchange rates. A lane a scenario; every lane is computed on its own, so which lanes stand side by side changes no bit.
+/// The market in some scenarios at one horizon, as moved by their correlated normals or by shocks given outright: returns and levels of an
+/// underlying, volatilities, exchange rates. A lane a scenario; every lane is computed on its own, so which lanes stand side by side changes no bit.
 /// </summary>
 internal sealed class MarketLanes
 {
@@ -23,10 +23,11 @@ internal sealed class MarketLanes
     private readonly int _capacity;
     private RevaluationPlan _plan = null!;
     private double[] _roots = [];
-    private double[] _normals = [];
+    private double[] _moves = [];
     private int[] _rowOf = [];
     private int _stride;
     private int _horizon;
+    private bool _areShocks;
 
     /// <summary>Makes room for <paramref name="capacity"/> lanes.</summary>
     public MarketLanes(int capacity)
@@ -66,7 +67,17 @@ internal sealed class MarketLanes
     /// <param name="rowOf">For each factor its row, or -1 where it does not move.</param>
     /// <param name="stride">Distance of rows.</param>
     /// <param name="width">Lanes.</param>
-    public void Take(double[] normals, int[] rowOf, int stride, int width) => (_normals, _rowOf, _stride, Width, _rates.Width, _levels.Width) = (normals, rowOf, stride, width, width, width);
+    public void Take(double[] normals, int[] rowOf, int stride, int width) => Take(normals, rowOf, stride, width, areShocks: false);
+
+    /// <summary>Takes the very moves of the lanes: no deviation, no drift and no number of days is applied to them.</summary>
+    /// <param name="shocks">A row a factor, <paramref name="stride"/> apart: log-returns of a log-normal factor, differences of a normal one.</param>
+    /// <param name="rowOf">For each factor its row, or -1 where it stays at its level of today.</param>
+    /// <param name="stride">Distance of rows.</param>
+    /// <param name="width">Lanes.</param>
+    public void TakeShocks(double[] shocks, int[] rowOf, int stride, int width) => Take(shocks, rowOf, stride, width, areShocks: true);
+
+    private void Take(double[] moves, int[] rowOf, int stride, int width, bool areShocks) =>
+        (_moves, _rowOf, _stride, Width, _rates.Width, _levels.Width, _areShocks) = (moves, rowOf, stride, width, width, width, areShocks);
 
     /// <summary>Goes to a horizon, converts the currencies of <paramref name="slice"/> and moves the factors of its curves.</summary>
     public void MoveTo(int horizon, PlanSlice slice)
@@ -137,16 +148,17 @@ internal sealed class MarketLanes
     private void Move(int factor, Span<double> returns, Span<double> levels)
     {
         var law = _plan.Moves.Factors[factor];
-        var (scale, drift) = (law.Deviation * _roots[_horizon], law.Drift * _plan.Horizons[_horizon].Days);
-        var normals = _rowOf[factor] is var row && row < 0 ? _still.AsSpan(0, Width) : _normals.AsSpan(row * _stride, Width);
+        // A shock is a normal of scale 1: 1 x + 0 is x to the bit.
+        var (scale, drift) = _areShocks ? (1, 0) : (law.Deviation * _roots[_horizon], law.Drift * _plan.Horizons[_horizon].Days);
+        var moves = _rowOf[factor] is var row && row < 0 ? _still.AsSpan(0, Width) : _moves.AsSpan(row * _stride, Width);
         if (law.IsLognormal)
         {
-            LogNormalMoves.LogReturns(normals, scale, drift, returns);
+            LogNormalMoves.LogReturns(moves, scale, drift, returns);
             LogNormalMoves.Spots(returns, law.Level, levels);
         }
         else
         {
-            LogNormalMoves.Levels(normals, scale, drift, law.Level, levels);
+            LogNormalMoves.Levels(moves, scale, drift, law.Level, levels);
         }
     }
 }

@@ -107,9 +107,7 @@ public sealed class MeasureRun(FeedRefresh refresh, Rehearsal rehearsal, TimePro
     private (RunRecord Record, FrozenSnapshot Inputs) Past(Work work, DateOnly asOf, RunSettings settings)
     {
         var (record, inputs) = Calculate(work with { Progress = s_quiet }, asOf, settings, clock.GetUtcNow(), 0);
-        // The days behind each count stand in the runs that are counted; a copy in each of 250 records would be most of the store.
-        var counts = record.Results.Backtest.Select(RunRecords.CountsAlone);
-        return (record with { Evidence = EvidenceKind.Backfilled, Results = record.Results with { Backtest = [.. counts] } }, inputs);
+        return (record with { Evidence = EvidenceKind.Backfilled, Results = RunRecords.EvidenceAlone(record.Results) }, inputs);
     }
 
     private (RunRecord Record, FrozenSnapshot Inputs) Calculate(Work work, DateOnly asOf, RunSettings settings, DateTimeOffset started, double load)

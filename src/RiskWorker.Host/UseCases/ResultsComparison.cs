@@ -15,7 +15,7 @@ public sealed class ResultsComparison
     private static readonly string[][] s_names =
     [
         ["limit"], ["code", "subject"], ["measure", "confidence", "horizonDays"], ["factor", "date"], ["file"], ["date"],
-        ["book", "instrument"], ["book", "confidence"], ["book"], ["horizonDays"], ["probability"],
+        ["book", "instrument"], ["book", "factor", "measure"], ["book", "confidence"], ["book"], ["horizonDays"], ["probability"],
     ];
 
     private readonly List<ValueDifference> _differences = [];

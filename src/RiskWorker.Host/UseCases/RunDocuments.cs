@@ -35,16 +35,23 @@ public static class RunDocuments
     /// <summary>Where the files of a run lie: OUT/AS-OF/RUN-ID.</summary>
     public static string FolderOf(RunRecord record, string outFolder) => Path.Combine(outFolder, $"{record.AsOf:yyyy-MM-dd}", record.Run);
 
-    /// <summary>Writes OUT/AS-OF/RUN-ID with the report, results.json and results.csv.</summary>
+    /// <summary>Writes OUT/AS-OF/RUN-ID with the report, results.json, results.csv and sensitivities.csv.</summary>
     public static WrittenDocuments Write(StoredRun run, string outFolder)
     {
         var watch = Stopwatch.StartNew();
         var report = LimitReportOf(run);
         var record = run.Record with { Timings = run.Record.Timings with { Report = watch.Elapsed.TotalSeconds } };
         var json = JsonOf(record);
-        using var table = new MemoryStream();
+        using MemoryStream table = new(), sensitivities = new();
         ResultsCsv.Write(record, table);
-        (string Name, byte[] Content)[] files = [(LimitReportName, report), ("results.json", Encoding.UTF8.GetBytes(json)), ("results.csv", table.ToArray())];
+        SensitivitiesCsv.Write(record, sensitivities);
+        (string Name, byte[] Content)[] files =
+        [
+            (LimitReportName, report),
+            ("results.json", Encoding.UTF8.GetBytes(json)),
+            ("results.csv", table.ToArray()),
+            ("sensitivities.csv", sensitivities.ToArray()),
+        ];
 
         var folder = FolderOf(record, outFolder);
         var beside = folder + ".partial";

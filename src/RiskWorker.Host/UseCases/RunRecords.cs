@@ -38,6 +38,9 @@ public static class RunRecords
     /// <summary>An exception count without the days behind it.</summary>
     public static BacktestResult CountsAlone(BacktestResult count) => count with { Days = count.Days, Series = [] };
 
+    /// <summary>Results as a run without documents keeps them: the days behind each exception count stand in the runs that are counted, and nobody reads its sensitivities; copies in each of 250 records would be most of the store.</summary>
+    public static RunResults EvidenceAlone(RunResults results) => results with { Backtest = [.. results.Backtest.Select(CountsAlone)], Sensitivities = [] };
+
     private static RunStatus StatusOf(RunResults results)
     {
         if (results.Findings.Any(f => f.Severity == FindingSeverity.Blocking)) return RunStatus.Failed;

@@ -96,9 +96,13 @@ public sealed class VerifyRun
     /// <summary>The record as the same run would have left it today; identity, times and what else no snapshot decides are the record's own.</summary>
     private static RunRecord Repeated(RunRecord record, Snapshot snapshot, RunResults results)
     {
-        // The record of a backfilled run keeps counts without the days behind them.
+        // The record of a backfilled run keeps counts without the days behind them, and no sensitivities; nor does one of a version that had none.
         var kept = record.Results.Backtest.Where(b => b.Days > 0 && b.Series.Count == 0).Select(b => (b.Book, b.Confidence)).ToHashSet();
-        var repeated = RunRecords.Of(snapshot, results with { Backtest = [.. results.Backtest.Select(b => kept.Contains((b.Book, b.Confidence)) ? RunRecords.CountsAlone(b) : b)] }, record.Previous);
+        var repeated = RunRecords.Of(snapshot, results with
+        {
+            Backtest = [.. results.Backtest.Select(b => kept.Contains((b.Book, b.Confidence)) ? RunRecords.CountsAlone(b) : b)],
+            Sensitivities = record.Results.Sensitivities.Count > 0 ? results.Sensitivities : [],
+        }, record.Previous);
         return repeated with
         {
             Run = record.Run,

@@ -28,6 +28,7 @@ public static class LimitReport
         new(LimitsSection.Blocks(reading), StartsPage: true),
         new(BooksSection.Blocks(reading)),
         new(DistributionSection.Blocks(reading)),
+        new(SensitivitiesSection.Blocks(reading), StartsPage: true),
         new(BacktestSection.Blocks(reading)),
         new(FindingsSection.Blocks(reading)),
         new(HoldingsSection.Blocks(reading)),

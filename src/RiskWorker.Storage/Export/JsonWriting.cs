@@ -36,6 +36,26 @@ internal static class JsonWriting
         json.WriteEndArray();
     }
 
+    /// <summary>Writes an array of small objects, each on a line of its own, as a member of the outermost object.</summary>
+    public static void Lines<T>(this Utf8JsonWriter json, string name, IReadOnlyList<T> items, Action<Utf8JsonWriter, T> write)
+    {
+        var buffer = new ArrayBufferWriter<byte>();
+        using var line = new Utf8JsonWriter(buffer);
+        buffer.Write("["u8);
+        for (var i = 0; i < items.Count; i++)
+        {
+            buffer.Write(i == 0 ? "\n    "u8 : ",\n    "u8);
+            line.Reset();
+            line.WriteStartObject();
+            write(line, items[i]);
+            line.WriteEndObject();
+            line.Flush();
+        }
+        buffer.Write(items.Count == 0 ? "]"u8 : "\n  ]"u8);
+        json.WritePropertyName(name);
+        json.WriteRawValue(buffer.WrittenSpan, skipInputValidation: true);
+    }
+
     /// <summary>Writes a long value on one line: hundreds of numbers are not made readable by a line each.</summary>
     public static void Compact(this Utf8JsonWriter json, string name, Action<Utf8JsonWriter> write)
     {

@@ -1,6 +1,6 @@
 using System.Globalization;
-using System.Text;
 using RiskWorker.Domain.Runs;
+using static RiskWorker.Storage.Export.CsvCells;
 
 namespace RiskWorker.Storage.Export;
 
@@ -18,7 +18,7 @@ public static class ResultsCsv
     {
         ArgumentNullException.ThrowIfNull(record);
         ArgumentNullException.ThrowIfNull(stream);
-        using var text = new StreamWriter(stream, new UTF8Encoding(false), leaveOpen: true) { NewLine = "\r\n" };
+        using var text = TextOn(stream);
         text.WriteLine(Header);
         var root = record.Results.Firm?.ReportingCurrency ?? "";
         foreach (var node in record.Results.Nodes)
@@ -41,14 +41,4 @@ public static class ResultsCsv
 
     private static string Spec(MeasureSpec spec) =>
         string.Create(CultureInfo.InvariantCulture, $"{Words.Of(spec.Kind)},{spec.Confidence.Level},{spec.Horizon.Days}");
-
-    private static string Number(double? value) => value is { } number && double.IsFinite(number) ? number.ToString("R", CultureInfo.InvariantCulture) : "";
-
-    /// <summary>A cell that a spreadsheet will not take for a formula, quoted where RFC 4180 asks for it.</summary>
-    private static string Text(string? text)
-    {
-        if (string.IsNullOrEmpty(text)) return "";
-        if (text[0] is '=' or '+' or '-' or '@' or '\t' or '\r' or '\n') text = "'" + text;
-        return text.AsSpan().IndexOfAny(",\"\r\n") < 0 ? text : $"\"{text.Replace("\"", "\"\"", StringComparison.Ordinal)}\"";
-    }
 }

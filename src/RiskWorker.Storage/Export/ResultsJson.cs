@@ -28,6 +28,7 @@ public static class ResultsJson
         json.Array("findings", record.Results.Findings, Finding);
         json.Array("backtest", record.Results.Backtest, Backtest);
         Hypothetical(json, record.Results.Hypothetical);
+        json.Lines("sensitivities", record.Results.Sensitivities, Sensitivity);
         Calibration(json, record.Results.Calibration);
         Holdings(json, record.Results.Holdings);
         json.Array("adjustments", record.Results.Adjustments, Adjustment);
@@ -216,6 +217,18 @@ public static class ResultsJson
             book.Number("amount", amount.Amount);
         });
         json.WriteEndObject();
+    }
+
+    private static void Sensitivity(Utf8JsonWriter json, Sensitivity sensitivity)
+    {
+        json.WriteString("book", sensitivity.Book);
+        json.WriteString("factor", sensitivity.Factor);
+        json.WriteString("class", Words.Of(sensitivity.Class));
+        json.WriteString("curve", sensitivity.Curve);
+        json.Number("tenorYears", sensitivity.TenorYears);
+        json.WriteString("measure", Words.Of(sensitivity.Measure));
+        json.Number("value", sensitivity.Value);
+        json.Number("gamma", sensitivity.Gamma);
     }
 
     private static void Calibration(Utf8JsonWriter json, CalibrationSummary? calibration)

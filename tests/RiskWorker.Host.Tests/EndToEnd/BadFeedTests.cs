@@ -105,7 +105,7 @@ public sealed class BadFeedTests : IDisposable
         foreach (var list in new[] { "nodes", "limits", "backtest" }) Assert.Empty(results.GetProperty(list).EnumerateArray());
 
         var folder = Path.Combine(_folder.Out, results.GetProperty("asOf").GetString()!, results.GetProperty("run").GetString()!);
-        Assert.Equal(["limit-report.pdf", "results.csv", "results.json"], Directory.GetFiles(folder).Select(Path.GetFileName).Order(StringComparer.Ordinal));
+        Assert.Equal(["limit-report.pdf", "results.csv", "results.json", "sensitivities.csv"], Directory.GetFiles(folder).Select(Path.GetFileName).Order(StringComparer.Ordinal));
         Assert.Single(await File.ReadAllLinesAsync(Path.Combine(folder, "results.csv"), TestContext.Current.CancellationToken));
         using var pdf = PdfDocument.Open(Path.Combine(folder, "limit-report.pdf"));
         var words = string.Join(' ', pdf.GetPages().SelectMany(p => p.GetWords()).Select(w => w.Text));

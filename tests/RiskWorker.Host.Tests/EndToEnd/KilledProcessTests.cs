@@ -50,7 +50,7 @@ public sealed class KilledProcessTests : IDisposable
         Assert.Empty(_folder.Runs);
         Assert.Equal("ok", await IntegrityAsync());
         await _folder.MeasureAsync(0, "--scenarios", "1000");
-        Assert.Equal(["limit-report.pdf", "results.csv", "results.json"], Directory.GetFiles(_folder.Runs.Single()).Select(Path.GetFileName).Order(StringComparer.Ordinal));
+        Assert.Equal(["limit-report.pdf", "results.csv", "results.json", "sensitivities.csv"], Directory.GetFiles(_folder.Runs.Single()).Select(Path.GetFileName).Order(StringComparer.Ordinal));
         Assert.Equal("ok", await IntegrityAsync());
     }
 

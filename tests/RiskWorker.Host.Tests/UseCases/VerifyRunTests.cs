@@ -26,6 +26,7 @@ public sealed class VerifyRunTests(MeasuredRuns runs) : IClassFixture<MeasuredRu
         Assert.Empty(report.Differences);
         Assert.Equal(RunStatus.Degraded, report.Record!.Status);
         Assert.Equal(3, report.Record.Results.Backtest[0].Series.Count);
+        Assert.NotEmpty(report.Record.Results.Sensitivities);
     }
 
     [Fact]
@@ -35,6 +36,7 @@ public sealed class VerifyRunTests(MeasuredRuns runs) : IClassFixture<MeasuredRu
 
         Assert.Equal(ExitCode.Done, report.ExitCode);
         Assert.Equal((EvidenceKind.Backfilled, 2, 0), (report.Record!.Evidence, report.Record.Results.Backtest[0].Days, report.Record.Results.Backtest[0].Series.Count));
+        Assert.Empty(report.Record.Results.Sensitivities);
         Assert.Equal(["None were written."], Check(report, VerifiedThing.Documents).Findings);
         Assert.Equal(VerifyOutcome.Equal, Check(report, VerifiedThing.Figures).Outcome);
     }
@@ -142,6 +144,7 @@ public sealed class VerifyRunTests(MeasuredRuns runs) : IClassFixture<MeasuredRu
     [InlineData("limit-report.pdf")]
     [InlineData("results.json")]
     [InlineData("results.csv")]
+    [InlineData("sensitivities.csv")]
     public async Task RunAsync_altered_file_is_named(string name)
     {
         var bytes = await File.ReadAllBytesAsync(Path.Combine(Documents, name), TestContext.Current.CancellationToken);
@@ -162,7 +165,7 @@ public sealed class VerifyRunTests(MeasuredRuns runs) : IClassFixture<MeasuredRu
         var report = await VerifyAsync(runs.Recorded);
 
         AssertDifferent(report, VerifiedThing.Documents, "limit-report.pdf is missing");
-        Assert.Equal(3, Check(report, VerifiedThing.Documents).Findings.Count);
+        Assert.Equal(4, Check(report, VerifiedThing.Documents).Findings.Count);
     }
 
     [Fact]

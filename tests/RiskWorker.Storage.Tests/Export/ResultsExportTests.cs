@@ -72,16 +72,18 @@ public sealed class ResultsExportTests
     }
 
     [Fact]
-    public void Both_exports_are_the_same_bytes_every_time_in_any_culture()
+    public void All_exports_are_the_same_bytes_every_time_in_any_culture()
     {
         var json = Bytes(s => ResultsJson.Write(s_record, s));
         var csv = Bytes(s => ResultsCsv.Write(s_record, s));
+        var sensitivities = Bytes(s => SensitivitiesCsv.Write(s_record, s));
         var culture = CultureInfo.CurrentCulture;
         try
         {
             CultureInfo.CurrentCulture = new CultureInfo("") { NumberFormat = { NumberDecimalSeparator = ",", NegativeSign = "~" } };
             Assert.Equal(json, Bytes(s => ResultsJson.Write(s_record, s)));
             Assert.Equal(csv, Bytes(s => ResultsCsv.Write(s_record, s)));
+            Assert.Equal(sensitivities, Bytes(s => SensitivitiesCsv.Write(s_record, s)));
         }
         finally
         {
@@ -116,6 +118,48 @@ public sealed class ResultsExportTests
         var record = s_record with { Results = s_record.Results with { Nodes = [s_record.Results.Nodes[0] with { Book = book }], Limits = [] } };
 
         Assert.Contains($",node,{cell},,EUR,-0,var,", Encoding.UTF8.GetString(Bytes(s => ResultsCsv.Write(record, s))), StringComparison.Ordinal);
+    }
+
+    [Fact]
+    public void Json_has_a_line_for_each_sensitivity()
+    {
+        var text = Encoding.UTF8.GetString(Bytes(s => ResultsJson.Write(s_record, s)));
+
+        string[] lines =
+        [
+            "  \"sensitivities\": [",
+            """    {"book":"ALL","factor":"ALPHA","class":"equity","curve":null,"tenorYears":null,"measure":"delta","value":0.3333333333333333,"gamma":-0},""",
+            """    {"book":"ALL","factor":"=EUR.3M","class":"rate","curve":"-EUR","tenorYears":0.25,"measure":"dv01","value":-1E-300,"gamma":null},""",
+            """    {"book":"FX","factor":"ALPHA-VOL","class":"vol","curve":null,"tenorYears":null,"measure":"vega","value":null,"gamma":null},""",
+            """    {"book":"FX","factor":"BANK","class":"credit","curve":"BANKS, all","tenorYears":5,"measure":"cs01","value":12,"gamma":null}""",
+            "  ],",
+        ];
+        Assert.Contains($"\n{string.Join('\n', lines)}\n", text, StringComparison.Ordinal);
+    }
+
+    [Fact]
+    public void Json_of_a_run_without_sensitivities_has_an_empty_list()
+    {
+        using var json = JsonDocument.Parse(Bytes(s => ResultsJson.Write(s_record with { Results = s_record.Results with { Sensitivities = [] } }, s)));
+
+        Assert.Equal("[]", json.RootElement.GetProperty("sensitivities").GetRawText());
+    }
+
+    [Fact]
+    public void Sensitivities_csv_has_a_row_for_each_in_the_currency_of_its_book_and_no_formula()
+    {
+        var run = $"{s_record.Run},2026-11-27,";
+
+        Assert.Equal(
+            [
+                "run,as_of,book,currency,factor,class,curve,tenor_years,measure,value,gamma",
+                run + "ALL,EUR,ALPHA,equity,,,delta,0.3333333333333333,-0",
+                run + "ALL,EUR,'=EUR.3M,rate,'-EUR,0.25,dv01,-1E-300,",
+                run + "FX,USD,ALPHA-VOL,vol,,,vega,,",
+                run + "FX,USD,BANK,credit,\"BANKS, all\",5,cs01,12,",
+                "",
+            ],
+            Encoding.UTF8.GetString(Bytes(s => SensitivitiesCsv.Write(s_record, s))).Split("\r\n"));
     }
 
     private static string[] Lines(RunRecord record) => Encoding.UTF8.GetString(Bytes(s => ResultsCsv.Write(record, s))).TrimEnd().Split("\r\n");

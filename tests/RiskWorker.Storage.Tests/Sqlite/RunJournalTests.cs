@@ -52,12 +52,14 @@ public sealed class RunJournalTests : IDisposable
         var json = JsonNode.Parse(RecordJson.Write(record))!;
         json["results"]!.AsObject().Remove("adjustments");
         json["results"]!.AsObject().Remove("holdings");
+        json["results"]!.AsObject().Remove("sensitivities");
         json["settings"]!["checks"]!.AsObject().Remove("staleDays");
 
         var read = RecordJson.Read(System.Text.Encoding.UTF8.GetBytes(json.ToJsonString()));
 
         Assert.Empty(read.Results.Adjustments);
         Assert.Empty(read.Results.Holdings.Unpriced);
+        Assert.Empty(read.Results.Sensitivities);
         Assert.Equal(3, read.Settings.Checks.StaleDays);
     }
 
