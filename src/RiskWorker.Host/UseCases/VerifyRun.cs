@@ -101,6 +101,7 @@ public sealed class VerifyRun
         var repeated = RunRecords.Of(snapshot, results with { Backtest = [.. results.Backtest.Select(b => kept.Contains((b.Book, b.Confidence)) ? RunRecords.CountsAlone(b) : b)] }, record.Previous);
         return repeated with
         {
+            Results = repeated.Results with { Methods = record.Results.Methods }, // words of the version that wrote them
             Run = record.Run,
             Attempt = record.Attempt,
             Evidence = record.Evidence,

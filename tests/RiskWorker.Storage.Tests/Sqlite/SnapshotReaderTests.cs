@@ -63,7 +63,7 @@ public sealed class SnapshotReaderTests(ITestOutputHelper output)
         var hashes = new List<string> { SettingsText.Leaf(new()).Part.Hash };
         foreach (var changed in OneChangeEach(new RunSettings()).Cast<RunSettings>()) hashes.Add(SettingsText.Leaf(changed).Part.Hash);
 
-        Assert.Equal(1 + 7 + 8 + 6 + 2, hashes.Count);
+        Assert.Equal(1 + 7 + 8 + 6 + 3, hashes.Count);
         Assert.Equal(hashes.Count, hashes.Distinct().Count());
     }
 
