@@ -1,5 +1,7 @@
+using RiskWorker.Domain.Books;
 using RiskWorker.Domain.Instruments;
 using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Calibration;
 using RiskWorker.Engine.Pricing;
 using RiskWorker.Engine.Runs;
 using RiskWorker.Engine.Tests.Checks;
@@ -46,13 +48,15 @@ public sealed class PricingMethodsTests
     }
 
     [Fact]
-    public void Run_of_every_kind_records_each_method_with_the_lines_that_the_figures_hold()
+    public void Held_of_every_kind_gives_each_method_with_the_lines_that_the_figures_hold()
     {
-        var builder = FridaySnapshot.Sound().Settings(s => s with { Simulation = s.Simulation with { Scenarios = 1000, Cap = 1000 } });
+        var builder = FridaySnapshot.Sound();
         foreach (var instrument in s_each) builder.Instrument(instrument).Position("FIRM", instrument.Name, 1);
         builder.Position("FIRM", "digital", 2).Position("LOST", "bond", 2).Position("FIRM", "GONE", 1).Instrument(Barrier("GONE", Monitoring.Daily) with { Expiry = FridaySnapshot.Friday.AddDays(-1) });
 
-        var methods = new RunCalculator(builder.Build(), 1, null, CancellationToken.None).Calculate().Methods;
+        var snapshot = builder.Build();
+        var tree = BookTree.Build(snapshot.Books).Tree!;
+        var methods = PricingMethods.Held(new BookValuation(snapshot, tree, Calibrator.Calibrate(snapshot)).Today, tree);
 
         Assert.Equal(PricingMethods.All.Select(m => m.Kind), methods.Select(m => m.Kind));
         // 'A-UNIT' of the sound book beside 'spot'; the second line of the digital; the families hold the sum of theirs.
@@ -62,8 +66,10 @@ public sealed class PricingMethodsTests
     }
 
     [Fact]
-    public void Run_without_options_says_nothing_of_them() =>
-        Assert.Equal("spot", Assert.Single(new RunCalculator(FridaySnapshot.Sound().Build(), 1, null, CancellationToken.None).Calculate().Methods).Kind);
+    public void Run_records_the_methods_of_what_it_holds_and_nothing_of_other_kinds() =>
+        Assert.Equal([("spot", 1), ("bond, floater, swap", 1), ("bond", 1)], new RunCalculator(
+            FridaySnapshot.Sound().Instrument(s_each[4]).Position("FIRM", "bond", 1).Settings(s => s with { Simulation = s.Simulation with { Scenarios = 1000, Cap = 1000 } }).Build(),
+            1, null, CancellationToken.None).Calculate().Methods.Select(m => (m.Kind, m.Lines)));
 
     private static SingleBarrier Barrier(string name, Monitoring monitoring) =>
         new(s_underlying, 100, s_expiry, OptionRight.Call, s_volatility, null, null, 80, BarrierKind.DownOut, 0, monitoring, FridaySnapshot.Friday, null) { Name = name, Currency = "EUR" };
