@@ -1,4 +1,5 @@
 using System.Text;
+using RiskWorker.Domain.Market;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Host.Options;
 
@@ -62,6 +63,22 @@ public sealed class ConfigurationReaderTests
         Assert.True(read.Run.TimeEffectsIncluded);
         Assert.Equal(("data/risk.db", 250), (read.StorePath, read.BackfillDays));
         Assert.Equal([new ScheduleOptions("daily", "0 30 6 ? * MON-FRI", TimeZoneInfo.FindSystemTimeZoneById("Europe/Oslo"), "OSLO", "measure", new TimeOnly(7, 30))], read.Schedules);
+    }
+
+    [Theory]
+    [InlineData("{}", CurveInterpolation.LinearZero)]
+    [InlineData("""{ "curves": {} }""", CurveInterpolation.LinearZero)]
+    [InlineData("""{ "curves": { "interpolation": "linear-zero" } }""", CurveInterpolation.LinearZero)]
+    [InlineData("""{ "curves": { "interpolation": "log-linear-discount" } }""", CurveInterpolation.LogLinearDiscount)]
+    public void Read_curves_sets_their_interpolation(string json, CurveInterpolation expected) => Assert.Equal(expected, Read(json).Run.CurveInterpolation);
+
+    [Theory]
+    [InlineData("""{ "curves": { "interpolation": "cubic", "extrapolation": "flat" } }""", "curves.extrapolation", "curves.interpolation", "one of linear-zero, log-linear-discount")]
+    [InlineData("""{ "curves": "linear-zero" }""", "curves", "an object")]
+    public void Read_curves_with_faults_says_all_of_them(string json, params string[] parts)
+    {
+        var message = Assert.Throws<SettingsException>(() => Read(json)).Message;
+        Assert.All(parts, part => Assert.Contains(part, message, StringComparison.Ordinal));
     }
 
     [Fact]

@@ -67,6 +67,16 @@ public sealed class SnapshotReaderTests(ITestOutputHelper output)
         Assert.Equal(hashes.Count, hashes.Distinct().Count());
     }
 
+    // A run of before there was a choice keeps the hash of its settings.
+    [Fact]
+    public void Text_of_settings_says_how_curves_run_only_where_that_is_not_the_usual_way()
+    {
+        static string Text(RunSettings settings) => System.Text.Encoding.UTF8.GetString(SettingsText.Leaf(settings).Text);
+
+        Assert.DoesNotContain("curves", Text(new()), StringComparison.Ordinal);
+        Assert.Contains("curves\tloglineardiscount\t", Text(new() { CurveInterpolation = Domain.Market.CurveInterpolation.LogLinearDiscount }), StringComparison.Ordinal);
+    }
+
     [Fact]
     public void Text_of_settings_is_read_back_to_the_bit() =>
         Assert.All(OneChangeEach(new RunSettings()).Cast<RunSettings>().Prepend(new()), settings =>
