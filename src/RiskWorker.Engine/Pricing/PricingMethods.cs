@@ -39,7 +39,7 @@ public static class PricingMethods
             "what is said of a floater's fixings holds here; no counterparty fails and no collateral earns interest; its value says nothing of its size, its notional does",
             i => i is Swap),
 
-        new("option, digital, barrier, asian, lookback", "log-normal underlying; rate, yield and volatility known to the expiry (Black and Scholes 1973, Merton 1973)", "revalued in every scenario", "see each kind",
+        new("option, digital, barrier, asian, lookback", "log-normal underlying; rate, yield and volatility known to the expiry (Black and Scholes 1973, Merton 1973)", "by kind, as the market of each scenario has it", "see each kind",
             "one volatility whatever the strike: no smile, so far strikes are wrong, and digitals and barriers most; no jumps; dividends on dates count as a yield; volatility moves only where a factor carries it; a curve counts by its rate at the expiry alone",
             IsOption),
         new("option, european", "as above", "closed form; error below 4e-16 of S e^(−qT) + K e^(−rT)", "Black and Scholes 1973, Merton 1973, Black 1976, Garman and Kohlhagen 1983",
