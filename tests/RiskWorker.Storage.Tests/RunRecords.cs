@@ -92,6 +92,7 @@ internal static class RunRecords
             BreakTotal = 0.1,
             Unpriced = [new("EQ", "BOND-1", "bond", 100, null, "no pricing yet")],
         },
+        Methods = [new("spot", "the closing price", "S", "the price itself", "no cost of leaving", 8), new("option, european", "log-normal", "closed form", "Black and Scholes 1973", "no smile", 2)],
         Adjustments = [new("ALPHA", asOf.AddDays(-100), 0.5, "2 for 1")],
     };
 

@@ -68,9 +68,12 @@ public sealed record Option(
     public override string Kind => InstrumentKinds.Option;
 }
 
-/// <summary>An instrument of a kind that is recognised but has no pricing yet; its terms are kept as typed.</summary>
+/// <summary>An instrument that has no pricing: of a kind without one, or stored by an earlier version with a term that this one cannot read. Its terms are kept as typed.</summary>
 public sealed record UnmodelledInstrument(string KindName, IReadOnlyDictionary<string, string> Terms) : Instrument
 {
+    /// <summary>The term that cannot be read, as a clause to follow its name; null where it is the kind that has no pricing.</summary>
+    public string? Fault { get; init; }
+
     /// <inheritdoc/>
     public override string Kind => KindName;
 }

@@ -59,6 +59,9 @@ public static class InstrumentKinds
         [Lookback] = [.. s_optionTerms, "monitoring", "issue"],
     };
 
+    /// <summary>The kinds of options: they discount on <c>curve</c> and yield by <c>carry</c>, each 0 where it is left out.</summary>
+    public static IReadOnlyList<string> Options { get; } = [Option, Digital, Barrier, Asian, Lookback];
+
     /// <summary>Every term that some kind uses, ordinal order.</summary>
     public static IReadOnlyList<string> AllTerms { get; } =
         [.. TermsByKind.Values.SelectMany(t => t).Append("multiplier").Distinct(StringComparer.Ordinal).Order(StringComparer.Ordinal)];

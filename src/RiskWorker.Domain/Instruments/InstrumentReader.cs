@@ -39,4 +39,32 @@ public static class InstrumentReader
         if (terms.Faults.Count > 0) return (null, terms.Faults);
         return (read with { Multiplier = multiplier, Issuer = row.Issuer, Lot = row.Lot, DailyVolume = row.DailyVolume }, terms.Faults);
     }
+
+    /// <summary>
+    /// Reads a row that an earlier version accepted. Where this one finds a term wrong the instrument is kept unmodelled, so that a run
+    /// names it instead of failing over all the others.
+    /// </summary>
+    public static Instrument ReadAccepted(InstrumentRow row)
+    {
+        var (instrument, faults) = Read(row);
+        if (instrument is not null) return instrument;
+        var multiplier = new TermReader(row.Terms).Multiplier();
+        return new UnmodelledInstrument(row.Kind, row.Terms)
+        {
+            Name = row.Name,
+            Currency = row.Currency,
+            Multiplier = multiplier == 0 ? 1 : multiplier,
+            Issuer = row.Issuer,
+            Lot = row.Lot,
+            DailyVolume = row.DailyVolume,
+            Fault = Clause(faults),
+        };
+    }
+
+    private static string Clause(IReadOnlyList<TermFault> faults)
+    {
+        var (term, found, expected) = faults[0];
+        var others = faults.Count == 1 ? "" : $" ({faults.Count - 1} more of its terms at fault)";
+        return $"its {term} {(found.Length == 0 ? "is missing" : $"is '{found}'")}, expected {expected}{others}";
+    }
 }

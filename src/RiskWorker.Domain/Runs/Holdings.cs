@@ -9,7 +9,7 @@ public sealed record Holdings
     /// <summary>Position rows that are in the figures.</summary>
     public int Priced { get; init; }
 
-    /// <summary>Sum of absolute values of the priced lines, in the reporting currency.</summary>
+    /// <summary>Sum of absolute values of the priced lines, in the reporting currency; a future counts at its price, a swap at its notional.</summary>
     public double GrossValue { get; init; }
 
     /// <summary>The same for the previous date with positions; null where there is none.</summary>
@@ -26,6 +26,12 @@ public sealed record Holdings
 
     /// <summary>Lines outside the figures, largest first.</summary>
     public IReadOnlyList<UnpricedLine> Unpriced { get; init; } = [];
+
+    /// <summary>Gross notional of the lines outside the figures as far as it is known, in the reporting currency.</summary>
+    public double UnpricedNotional => Unpriced.Sum(line => line.Size ?? 0);
+
+    /// <summary>Lines outside the figures whose notional nothing gives.</summary>
+    public int UnpricedOfUnknownSize => Unpriced.Count(line => line.Size is null);
 }
 
 /// <summary>A line whose model value differs from the book of record's, both in the instrument's currency.</summary>
@@ -36,6 +42,6 @@ public sealed record ReconciliationBreak(string Book, string Instrument, string 
 /// <param name="Instrument">What it is.</param>
 /// <param name="Kind">Its kind, or '-' where the instrument is unknown.</param>
 /// <param name="Quantity">Units held.</param>
-/// <param name="Size">Estimated size in the reporting currency: the market value given, else quantity times strike, notional or price; null where nothing gives one.</param>
+/// <param name="Size">Its notional in the reporting currency: the larger of quantity times notional, strike or price and of the market value given; null where nothing gives one.</param>
 /// <param name="Reason">Why it is left out.</param>
 public sealed record UnpricedLine(string Book, string Instrument, string Kind, double Quantity, double? Size, string Reason);

@@ -33,6 +33,9 @@ public sealed record RunResults
     /// <summary>What was held, what was priced, and how it ties to the book of record.</summary>
     public Holdings Holdings { get; init; } = new();
 
+    /// <summary>How the kinds held were valued, in the order of the table in the code; empty in a failed run and in records of versions without it.</summary>
+    public IReadOnlyList<ValuationMethod> Methods { get; init; } = [];
+
     /// <summary>Splits and rolls that were applied to the history used.</summary>
     public IReadOnlyList<AppliedAdjustment> Adjustments { get; init; } = [];
 }

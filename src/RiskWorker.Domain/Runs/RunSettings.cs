@@ -1,3 +1,5 @@
+using RiskWorker.Domain.Market;
+
 namespace RiskWorker.Domain.Runs;
 
 /// <summary>Everything in the settings that a run's figures may depend on; part of the snapshot and of its hash.</summary>
@@ -18,4 +20,7 @@ public sealed record RunSettings
 
     /// <summary>Whether hypothetical profit moves the valuation date too.</summary>
     public bool TimeEffectsIncluded { get; init; }
+
+    /// <summary>What curves are between two tenors.</summary>
+    public CurveInterpolation CurveInterpolation { get; init; }
 }

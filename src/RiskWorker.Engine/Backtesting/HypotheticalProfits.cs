@@ -20,7 +20,7 @@ public sealed class HypotheticalProfits
     {
         (_snapshot, _tree) = (snapshot, tree);
         _levels = new(snapshot);
-        _binder = new(tree.ReportingCurrency, snapshot.Factors, _levels, snapshot.Settings.Simulation.Seed);
+        _binder = new(tree.ReportingCurrency, snapshot.Factors, _levels, snapshot.Settings.Simulation.Seed, snapshot.Settings.CurveInterpolation);
     }
 
     /// <summary>The profit from the newest earlier positions to the as-of date; null where there are none.</summary>

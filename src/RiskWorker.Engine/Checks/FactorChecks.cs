@@ -2,6 +2,7 @@ using RiskWorker.Domain.Books;
 using RiskWorker.Domain.Market;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Engine.Calibration;
+using RiskWorker.Engine.Pricing.Curves;
 
 namespace RiskWorker.Engine.Checks;
 
@@ -13,6 +14,7 @@ internal static class FactorChecks
         var names = snapshot.Factors.Select(f => f.Name).ToHashSet(StringComparer.Ordinal);
         Calendars(snapshot, findings);
         Proxies(snapshot, findings);
+        Curves(snapshot, findings);
         Currencies(snapshot, findings);
         Unknown(snapshot.Adjustments.Select(a => a.Factor), names, FindingCodes.AdjustmentUnknown, "adjustments.csv", findings);
         if (snapshot.Settings.Model.Drift == DriftKind.Explicit)
@@ -35,6 +37,14 @@ internal static class FactorChecks
         if (unusable.Length == 0) return;
         findings.Add(FindingCodes.ProxyUnusable, "factors.csv",
             $"{FindingList.Count(unusable.Length, "factor has a proxy that is", "factors have proxies that are")} unknown, the factor itself, or without a beta ({FindingList.Names(unusable)}), so nothing stands in for missing history");
+    }
+
+    private static void Curves(Snapshot snapshot, FindingList findings)
+    {
+        string[] unusable = [.. new CurveSet(snapshot.Factors).Faults.Select(f => $"{f.Curve}: {f.Clause}")];
+        if (unusable.Length == 0) return;
+        findings.Add(FindingCodes.CurveUnusable, "factors.csv",
+            $"{FindingList.Count(unusable.Length, "curve cannot", "curves cannot")} be used ({FindingList.Names(unusable)}), so no instrument that names {(unusable.Length == 1 ? "it" : "them")} is in a figure");
     }
 
     private static void Currencies(Snapshot snapshot, FindingList findings)

@@ -105,6 +105,11 @@ public static class FindingCodes
         "A factor's proxy is unknown, is the factor itself, or has no beta",
         "correct proxy and beta in factors.csv");
 
+    /// <summary>Factors of one curve name that make no curve.</summary>
+    public static readonly FindingCode CurveUnusable = new("curve-unusable", Warning,
+        "Factors of one curve name make no curve: one without a tenor, two of one tenor, or several classes or currencies; no instrument that names it is in a figure",
+        "correct curve, tenor_years, class or currency of its factors in factors.csv");
+
     /// <summary>An fx factor that is never read.</summary>
     public static readonly FindingCode FxFactorUnused = new("fx-factor-unused", Warning,
         "An fx factor names no currency, the reporting currency, or one that another fx factor prices",
@@ -229,7 +234,7 @@ public static class FindingCodes
 
     /// <summary>A rate that was left out; found when the feed is loaded.</summary>
     public static readonly FindingCode AssumedZeroRate = new("assumed-zero-rate", Warning,
-        "A forward or an option has no curve or no carry, which counts as 0",
+        "An option of any kind has no curve or no carry, which counts as 0",
         "write the rate, 0 where it is meant");
 
     /// <summary>Every code, in the order of reports.</summary>
@@ -240,7 +245,7 @@ public static class FindingCodes
         BookUnknown, InstrumentUnknown, FactorUnknown, CurrencyUnpriced, CurrencyMismatch, InstrumentExpired, NotModelled, FixingMissing, LevelMissing, BarrierCrossed,
         ValueDifference, HoldingsChange, LimitUndecidable,
         FactorClosed, PriceStale, PriceJump, DayMissing, DayClosed, DaysDropped, HistoryProxied, HistoryPartial,
-        CalendarUnknown, ProxyUnusable, FxFactorUnused, CovarianceUnknown, AdjustmentUnknown, LimitBookUnknown, ProfitBookUnknown,
+        CalendarUnknown, ProxyUnusable, CurveUnusable, FxFactorUnused, CovarianceUnknown, AdjustmentUnknown, LimitBookUnknown, ProfitBookUnknown,
         AssumedZeroRate, UnusedTerm, UnknownColumn, UnknownFile,
     ];
 

@@ -7,7 +7,7 @@ using RiskWorker.Engine.Pricing;
 
 namespace RiskWorker.Engine.Checks;
 
-/// <summary>Estimates how large a line is that no figure holds, in the reporting currency.</summary>
+/// <summary>The notional of a line that no figure holds, in the reporting currency.</summary>
 internal sealed class LineSize
 {
     private readonly Dictionary<string, double> _price = new(StringComparer.Ordinal);
@@ -32,15 +32,16 @@ internal sealed class LineSize
     }
 
     /// <summary>
-    /// The size of the market value where one is given, else quantity times multiplier times strike, notional or price, whichever the
-    /// instrument has first; null where nothing gives one.
+    /// The larger of two sizes, so that neither a swap worth nothing nor a price above par is made small: quantity times multiplier times
+    /// notional, strike or price, and the market value where one is given. Null where nothing gives either.
     /// </summary>
     public double? Of(in LineValue line)
     {
         if (line.Instrument is not { } instrument) return null;
         if (line.Unpriced is null) return Math.Abs(line.Exposure);
-        var amount = line.Position.MarketValue ?? (line.Position.Quantity * instrument.Multiplier * UnitOf(instrument));
-        var size = Math.Abs(amount) * RateOf(instrument.Currency);
+        var notional = Math.Abs(line.Position.Quantity * instrument.Multiplier * UnitOf(instrument));
+        var market = Math.Abs(line.Position.MarketValue ?? double.NaN);
+        var size = (double.IsNaN(notional) ? market : double.IsNaN(market) ? notional : Math.Max(notional, market)) * RateOf(instrument.Currency);
         return double.IsFinite(size) ? size : null;
     }
 
@@ -53,16 +54,23 @@ internal sealed class LineSize
         Bond b => b.Notional,
         Floater f => f.Notional,
         Swap s => s.Notional,
+        Digital d => d.Notional ?? d.Strike,
+        SingleBarrier b => b.Strike,
+        Asian a => a.Strike,
+        Lookback l => l.Strike ?? LevelOf(l.Underlying, l.Currency),
         UnmodelledInstrument u => UnitOf(u),
         _ => 1,
     };
 
     private double UnitOf(UnmodelledInstrument instrument)
     {
-        if (Term(instrument, "strike") is { } strike) return strike;
         if (Term(instrument, "notional") is { } notional) return notional;
+        if (Term(instrument, "strike") is { } strike) return strike;
         return instrument.Terms.TryGetValue("factor", out var factor) ? PriceOf(factor) : double.NaN;
     }
+
+    private double LevelOf(Underlying underlying, string currency) =>
+        underlying.Factor is { } factor ? PriceOf(factor) : RateOf(underlying.BaseCurrency!) / RateOf(currency);
 
     private double PriceOf(string factor) => _price.GetValueOrDefault(factor, double.NaN);
 

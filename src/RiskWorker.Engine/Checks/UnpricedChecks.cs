@@ -44,14 +44,15 @@ internal static class UnpricedChecks
 
     private sealed class Group
     {
-        private readonly SortedDictionary<string, string> _clauses = new(StringComparer.Ordinal);
+        private readonly Dictionary<string, (string Clause, double? Size)> _instruments = new(StringComparer.Ordinal);
         private int _lines;
         private int _unsized;
         private double _size;
 
         public void Add(in LineValue line, string clause, double? size)
         {
-            _clauses.TryAdd(line.Position.Instrument, clause);
+            var name = line.Position.Instrument;
+            _instruments[name] = (clause, _instruments.TryGetValue(name, out var before) ? before.Size + size : size);
             _lines++;
             if (size is { } known) _size += known;
             else _unsized++;
@@ -59,16 +60,18 @@ internal static class UnpricedChecks
 
         public string Statement(string currency)
         {
-            string[] names = [.. _clauses.Select(c => $"{c.Key}: {c.Value}")];
-            return $"{FindingList.Count(_lines, "line", "lines")} in {FindingList.Count(_clauses.Count, "instrument", "instruments")} cannot be priced ({FindingList.Names(names)}), "
+            // One of unknown size may be the largest.
+            var ordered = _instruments.OrderByDescending(i => i.Value.Size ?? double.MaxValue).ThenBy(i => i.Key, StringComparer.Ordinal);
+            string[] names = [.. ordered.Select(i => $"{i.Key}{(i.Value.Size is { } size ? $", {FindingList.Number(size)} {currency}" : "")}: {i.Value.Clause}")];
+            return $"{FindingList.Count(_lines, "line", "lines")} in {FindingList.Count(names.Length, "instrument", "instruments")} cannot be priced ({FindingList.Names(names)}), "
                 + $"so {(_lines == 1 ? "it is" : "they are")} in no figure: {Size(currency)}";
         }
 
         private string Size(string currency)
         {
-            if (_unsized == _lines) return "nothing gives an estimate of the size";
-            var known = $"estimated size {FindingList.Number(_size)} {currency}";
-            return _unsized == 0 ? known : $"{known}, and {FindingList.Count(_unsized, "line", "lines")} of unknown size";
+            if (_unsized == _lines) return $"nothing gives {(_lines == 1 ? "its" : "their")} notional";
+            var known = $"gross notional {FindingList.Number(_size)} {currency}";
+            return _unsized == 0 ? known : $"{known}, and {FindingList.Count(_unsized, "line", "lines")} of unknown notional";
         }
     }
 }

@@ -7,7 +7,7 @@ namespace RiskWorker.Engine.Checks;
 /// <summary>What can be found once the positions are valued.</summary>
 public static class ValuationChecks
 {
-    /// <summary>All findings; lines that no figure holds come with their estimated size.</summary>
+    /// <summary>All findings; lines that no figure holds come with their notional.</summary>
     /// <param name="snapshot">Where the positions are from.</param>
     /// <param name="tree">Its books.</param>
     /// <param name="today">Its positions, valued.</param>

@@ -135,8 +135,11 @@ public sealed class BoundFlows(int currency, double multiplier, ExponentialFlow[
     /// <summary>The flows, one an exponent.</summary>
     public IReadOnlyList<ExponentialFlow> Flows { get; } = flows;
 
-    /// <summary>Notional that stands behind one unit: a swap's value says nothing of its size.</summary>
-    public double Notional { get; init; } = double.NaN;
+    /// <summary>Notional that stands behind one unit of a swap, whose value says nothing of its size; null where the value does.</summary>
+    public double? Notional { get; init; }
+
+    /// <inheritdoc/>
+    public override double Exposure(ReadOnlySpan<double> levels) => Notional ?? Value(levels);
 
     /// <inheritdoc/>
     protected override double UnitValue(ReadOnlySpan<double> levels) => ExponentialFlow.Sum(flows, levels);

@@ -43,8 +43,8 @@ public sealed class InstrumentBinder
             Cash => new BoundCash(currency, instrument.Multiplier),
             Spot s => new BoundSpot(currency, s.Multiplier, UnderlyingOf(new(s.Factor, null), s, currency, ref fault)),
             Future f => new BoundFuture(currency, f.Multiplier, UnderlyingOf(new(f.Factor, null), f, currency, ref fault)),
-            Bond b => Flows(b, b.Notional, b.Maturity, date, currency, ref fault),
-            Floater f => Flows(f, f.Notional, f.Maturity, date, currency, ref fault),
+            Bond b => Flows(b, null, b.Maturity, date, currency, ref fault),
+            Floater f => Flows(f, null, f.Maturity, date, currency, ref fault),
             Swap s => Flows(s, s.Notional, s.Maturity, date, currency, ref fault),
             _ => _options.Bind(instrument, currency, date, ref fault),
         };
@@ -83,7 +83,7 @@ public sealed class InstrumentBinder
     /// <summary>Name of a factor.</summary>
     internal string NameOf(int factor) => _factors[factor].Name;
 
-    private BoundFlows? Flows(Instrument instrument, double notional, DateOnly maturity, DateOnly date, int currency, ref Unpriced? fault)
+    private BoundFlows? Flows(Instrument instrument, double? notional, DateOnly maturity, DateOnly date, int currency, ref Unpriced? fault)
     {
         if (fault is not null) return null;
         fault = RateFlows.Of(instrument, date, Curves, out var flows);

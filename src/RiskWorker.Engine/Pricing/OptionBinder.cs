@@ -23,6 +23,7 @@ internal sealed class OptionBinder(InstrumentBinder binder, IPastLevels? past, u
         SingleBarrier b => Barrier(b, currency, date, ref fault),
         Asian a => Asian(a, currency, date, ref fault),
         Lookback l => Lookback(l, currency, date, ref fault),
+        UnmodelledInstrument { Fault: { } clause } => Unbound(new(UnpricedReason.NotModelled, clause), ref fault),
         _ => Unbound(new(UnpricedReason.NotModelled, $"the kind '{instrument.Kind}' is not priced in this version"), ref fault),
     };
 

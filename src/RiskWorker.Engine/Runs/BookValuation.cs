@@ -14,7 +14,7 @@ public sealed class BookValuation
     public BookValuation(Snapshot snapshot, BookTree tree, CalibratedModel model)
     {
         var closes = new ClosingLevels(snapshot);
-        Binder = new(tree.ReportingCurrency, model.Factors, closes, snapshot.Settings.Simulation.Seed);
+        Binder = new(tree.ReportingCurrency, model.Factors, closes, snapshot.Settings.Simulation.Seed, snapshot.Settings.CurveInterpolation);
         Today = LineValuation.Of(snapshot.Positions, snapshot.Instruments, Binder, model.Levels, snapshot.AsOf);
         if (snapshot.Previous is { } previous)
             Previous = LineValuation.Of(previous.Positions, snapshot.Instruments, Binder, closes.At(previous.Date), previous.Date);

@@ -6,6 +6,7 @@ using RiskWorker.Engine.Calibration;
 using RiskWorker.Engine.Checks;
 using RiskWorker.Engine.Limits;
 using RiskWorker.Engine.Plans;
+using RiskWorker.Engine.Pricing;
 using RiskWorker.Engine.Sensitivities;
 
 namespace RiskWorker.Engine.Runs;
@@ -83,6 +84,7 @@ public sealed class RunCalculator
             Hypothetical = hypothetical,
             Backtest = ExceptionCount.Of(_snapshot, tree, measures, hypothetical),
             Holdings = valued.Holdings,
+            Methods = PricingMethods.Held(valued.Today, tree),
             Adjustments = model.Adjustments,
         };
     }

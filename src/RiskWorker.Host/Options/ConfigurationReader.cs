@@ -9,7 +9,7 @@ public static class ConfigurationReader
     public const string FileName = "riskworker.json";
 
     private static readonly string[] s_keys =
-        ["store", "timeEffects", "models", "record", "challengers", "measures", "simulation", "backfill", "checks", "schedules", "delivery", "page"];
+        ["store", "timeEffects", "models", "record", "challengers", "measures", "simulation", "curves", "backfill", "checks", "schedules", "delivery", "page"];
 
     private const int LongestBackfill = 5_000;
     private static readonly Dictionary<string, bool> s_timeEffects = new(StringComparer.Ordinal) { ["excluded"] = false, ["included"] = true };
@@ -69,6 +69,7 @@ public static class ConfigurationReader
                 Measures = MeasuresSection.Read(root["measures"]),
                 Simulation = SimulationSection.Read(root["simulation"]),
                 Checks = ChecksSection.Read(root["checks"]),
+                CurveInterpolation = CurvesSection.Read(root["curves"]),
                 TimeEffectsIncluded = root["timeEffects"]?.Choice(s_timeEffects) ?? false,
             },
         };

@@ -105,6 +105,7 @@ public sealed class VerifyRun
         }, record.Previous);
         return repeated with
         {
+            Results = repeated.Results with { Methods = record.Results.Methods }, // words of the version that wrote them
             Run = record.Run,
             Attempt = record.Attempt,
             Evidence = record.Evidence,

@@ -31,6 +31,7 @@ public static class ResultsJson
         json.Lines("sensitivities", record.Results.Sensitivities, Sensitivity);
         Calibration(json, record.Results.Calibration);
         Holdings(json, record.Results.Holdings);
+        json.Array("methods", record.Results.Methods, Method);
         json.Array("adjustments", record.Results.Adjustments, Adjustment);
         json.Array("parts", record.Parts, Part);
         Timings(json, record.Timings);
@@ -278,6 +279,16 @@ public static class ResultsJson
             line.WriteString("reason", unpriced.Reason);
         });
         json.WriteEndObject();
+    }
+
+    private static void Method(Utf8JsonWriter json, ValuationMethod method)
+    {
+        json.WriteString("kind", method.Kind);
+        json.WriteString("model", method.Model);
+        json.WriteString("method", method.Method);
+        json.WriteString("source", method.Source);
+        json.WriteString("caution", method.Caution);
+        json.WriteNumber("lines", method.Lines);
     }
 
     private static void Adjustment(Utf8JsonWriter json, AppliedAdjustment adjustment)

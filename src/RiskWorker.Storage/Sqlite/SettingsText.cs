@@ -1,3 +1,4 @@
+using RiskWorker.Domain.Market;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Storage.Feed.Rows;
 
@@ -18,6 +19,7 @@ internal static class SettingsText
             text.Text("revaluation").Text(Spelling.Of(simulation.Revaluation)).Number(simulation.SurfaceError).Text(simulation.ExactTail ? "exact" : "surface").End();
         text.Text("checks").Value<int>(checks.StaleDays).Number(checks.JumpSigmas).Value<int>(checks.MinimumHistory).Number(checks.ValueTolerance).Number(checks.GrossChange).End();
         foreach (var (code, severity) in checks.Severity) text.Text("severity").Text(code).Text(Spelling.Of(severity)).End();
+        if (settings.CurveInterpolation != CurveInterpolation.LinearZero) text.Text("curves").Text(Spelling.Of(settings.CurveInterpolation)).End();
         text.Text("time-effects").Text(settings.TimeEffectsIncluded ? "included" : "excluded").End();
         return text.Leaf("settings");
     }
@@ -33,6 +35,7 @@ internal static class SettingsText
             Simulation = Simulation(rows["simulation"].Single(), rows["revaluation"].SingleOrDefault()),
             Checks = Checks(rows["checks"].Single()) with { Severity = Sorted(rows["severity"], row => row.Choice<FindingSeverity>()) },
             TimeEffectsIncluded = rows["time-effects"].Single().Name() == "included",
+            CurveInterpolation = rows["curves"].SingleOrDefault()?.Choice<CurveInterpolation>() ?? CurveInterpolation.LinearZero, // stands only where it is not the usual one
         };
     }
 

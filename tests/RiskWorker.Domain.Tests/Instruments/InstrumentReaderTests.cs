@@ -42,12 +42,28 @@ public sealed class InstrumentReaderTests
         Assert.Equal((100.0, "USD", null, null), (forward.Strike, forward.SettlementCurrency, forward.Curve, forward.Carry));
     }
 
-    [Fact]
-    public void Read_kind_of_a_later_version_keeps_its_terms_as_typed()
+    [Theory]
+    [InlineData("bond", "coupon", "", "its coupon is missing, expected a decimal between -2 and 2 (0.05 is 5%) (5 more of its terms at fault)")]
+    [InlineData("forward", "strike", "-1", "its strike is '-1', expected a number above 0")]
+    [InlineData("forward", "multiplier", "x", "its multiplier is 'x', expected a number other than 0")]
+    [InlineData("plot", "strike", "90", "its kind is 'plot', expected one of spot, fx, future, forward, bond, floater, swap, option, digital, barrier, asian, lookback")]
+    public void ReadAccepted_row_that_an_earlier_version_took_keeps_its_terms_and_names_the_fault(string kind, string term, string text, string clause)
     {
-        var option = Assert.IsType<UnmodelledInstrument>(Read("lookback", ("strike", "90.0"), ("multiplier", "2")).Instrument);
-        Assert.Equal(("lookback", "90.0", 2.0), (option.Kind, option.Terms["strike"], option.Multiplier));
+        var terms = new Dictionary<string, string> { ["multiplier"] = "2" };
+        if (kind == "forward") (terms["factor"], terms["strike"], terms["expiry"]) = ("X", "90", "2027-01-01");
+        terms[term] = text;
+        if (text.Length == 0) terms.Remove(term);
+
+        var kept = Assert.IsType<UnmodelledInstrument>(InstrumentReader.ReadAccepted(new("NAME", kind, "EUR", terms, "issuer", 5, 1e6)));
+
+        Assert.Equal((kind, clause, text == "x" ? 1.0 : 2.0), (kept.Kind, kept.Fault, kept.Multiplier));
+        Assert.Equal(("NAME", "EUR", "issuer", 5.0, 1e6), (kept.Name, kept.Currency, kept.Issuer, kept.Lot, kept.DailyVolume));
+        Assert.Same(terms, kept.Terms);
     }
+
+    [Fact]
+    public void ReadAccepted_sound_row_is_read_as_ever() =>
+        Assert.Equal(Read("spot", ("factor", "X")).Instrument, InstrumentReader.ReadAccepted(new("NAME", "spot", "EUR", new Dictionary<string, string> { ["factor"] = "X" }, "issuer", 5, 1e6)));
 
     [Theory]
     [InlineData("strike", "0", "a number above 0")]

@@ -29,6 +29,26 @@ public sealed class FactorChecksTests
     public void Run_with_a_usable_proxy_says_nothing() => Assert.Empty(FindingsOf.Feed(With("B", b => b.Factor("B", proxy: "A", beta: 0.5))));
 
     [Fact]
+    public void Run_with_factors_that_make_no_curve_warns_of_each_curve()
+    {
+        var builder = FridaySnapshot.Sound();
+        Factor[] points =
+        [
+            new("N1", FactorClass.Rate, ShockKind.Normal, "EUR", "NOWHEN", 1), new("N2", FactorClass.Rate, ShockKind.Normal, "EUR", "NOWHEN"),
+            new("T1", FactorClass.Rate, ShockKind.Normal, "EUR", "TWICE", 2), new("T2", FactorClass.Rate, ShockKind.Normal, "EUR", "TWICE", 2),
+            new("M1", FactorClass.Rate, ShockKind.Normal, "EUR", "MIXED", 1), new("M2", FactorClass.Credit, ShockKind.Normal, "EUR", "MIXED", 2),
+            new("S1", FactorClass.Rate, ShockKind.Normal, "EUR", "SOUND", 1), new("S2", FactorClass.Rate, ShockKind.Normal, "EUR", "SOUND", 2),
+        ];
+        foreach (var point in points) builder.Factor(point).Prices(point.Name, FridaySnapshot.Wave(61));
+
+        var finding = FindingsOf.Feed(builder).One(FindingCodes.CurveUnusable);
+        Assert.Equal((FindingSeverity.Warning, "factors.csv"), (finding.Severity, finding.Subject));
+        Assert.StartsWith("3 curves cannot be used (MIXED: its factor 'M1' is of class rate and 'M2' of class credit, NOWHEN: its factor 'N2' has no tenor_years, "
+            + "TWICE: its factors 'T1' and 'T2' have the same tenor of 2 years), so no instrument that names them is in a figure; ", finding.Message, StringComparison.Ordinal);
+        FindingsOf.Feed(FridaySnapshot.Sound().Factor(points[6]).Prices("S1", FridaySnapshot.Wave(61))).None(FindingCodes.CurveUnusable);
+    }
+
+    [Fact]
     public void Run_with_fx_factors_that_nothing_reads_warns()
     {
         var builder = FridaySnapshot.Sound();

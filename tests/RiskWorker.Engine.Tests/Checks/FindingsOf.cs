@@ -32,8 +32,8 @@ internal static class FindingsOf
     private static (BookTree Tree, LineValue[] Today, LineValue[]? Previous) Valued(Snapshot snapshot)
     {
         var tree = BookTree.Build(snapshot.Books).Tree!;
-        var binder = new InstrumentBinder(tree.ReportingCurrency, snapshot.Factors);
         var levels = new ClosingLevels(snapshot);
+        var binder = new InstrumentBinder(tree.ReportingCurrency, snapshot.Factors, levels, snapshot.Settings.Simulation.Seed, snapshot.Settings.CurveInterpolation);
         var today = LineValuation.Of(snapshot.Positions, snapshot.Instruments, binder, levels.At(snapshot.AsOf), snapshot.AsOf);
         var previous = snapshot.Previous is { } p ? LineValuation.Of(p.Positions, snapshot.Instruments, binder, levels.At(p.Date), p.Date) : null;
         return (tree, today, previous);

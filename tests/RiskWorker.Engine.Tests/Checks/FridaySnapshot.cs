@@ -54,6 +54,8 @@ internal sealed class FridaySnapshot
     public FridaySnapshot Factor(string name, FactorClass @class = FactorClass.Equity, ShockKind shock = ShockKind.Lognormal, string? currency = null, string? calendar = null, string? proxy = null, double? beta = null) =>
         With(() => _factors.Add(new(name, @class, shock, currency, Calendar: calendar, Proxy: proxy, Beta: beta)));
 
+    public FridaySnapshot Factor(Factor factor) => With(() => _factors.Add(factor));
+
     /// <summary>Prices on the Mondays to Fridays up to the as-of date, oldest first; NaN leaves the day out.</summary>
     public FridaySnapshot Prices(string factor, params double[] prices)
     {

@@ -28,7 +28,7 @@ public sealed class ValuationChecksTests
         Assert.Equal(FindingSeverity.Warning, finding.Severity);
         Assert.Equal("positions.csv", finding.Subject);
         Assert.Equal(
-            "3 lines in 2 instruments cannot be priced (X: it is not in instruments.csv, Y: it is not in instruments.csv), so they are in no figure: nothing gives an estimate of the size; "
+            "3 lines in 2 instruments cannot be priced (X: it is not in instruments.csv, Y: it is not in instruments.csv), so they are in no figure: nothing gives their notional; "
             + "add the instrument, or correct its name in positions.csv.", finding.Message);
     }
 
@@ -38,7 +38,7 @@ public sealed class ValuationChecksTests
         var builder = TwoCurrencies().Spot("Z-UNIT", "Z", "USD").Position("DESK", "Z-UNIT", 7, -1000).Position("FIRM", "Z-UNIT", 7);
 
         // 1,000 USD short is 800 EUR; the other line has neither market value nor price.
-        Assert.Contains("estimated size 800 EUR, and 1 line of unknown size", FindingsOf.Valuation(builder).One(FindingCodes.FactorUnknown).Message, StringComparison.Ordinal);
+        Assert.Contains("gross notional 800 EUR, and 1 line of unknown notional", FindingsOf.Valuation(builder).One(FindingCodes.FactorUnknown).Message, StringComparison.Ordinal);
     }
 
     [Fact]
@@ -48,8 +48,8 @@ public sealed class ValuationChecksTests
 
         // |-3 x 10 x 100| USD at 0.80.
         var finding = FindingsOf.Valuation(builder).One(FindingCodes.CurrencyMismatch);
-        Assert.Contains("(BAD: its currency is USD but its factor 'A' is quoted in EUR)", finding.Message, StringComparison.Ordinal);
-        Assert.Contains("estimated size 2,400 EUR;", finding.Message, StringComparison.Ordinal);
+        Assert.Contains("(BAD, 2,400 EUR: its currency is USD but its factor 'A' is quoted in EUR)", finding.Message, StringComparison.Ordinal);
+        Assert.Contains("gross notional 2,400 EUR;", finding.Message, StringComparison.Ordinal);
     }
 
     [Fact]
@@ -64,7 +64,7 @@ public sealed class ValuationChecksTests
             .Instrument(new Forward(new("A", null), 90, Friday, null, null, null) { Name = "LAST", Currency = "EUR" });
 
         var finding = FindingsOf.Valuation(builder).One(FindingCodes.InstrumentExpired);
-        Assert.StartsWith("1 line in 1 instrument cannot be priced (OLD: it expired on 2026-11-26), so it is in no figure: estimated size 180 EUR;", finding.Message, StringComparison.Ordinal);
+        Assert.StartsWith("1 line in 1 instrument cannot be priced (OLD, 180 EUR: it expired on 2026-11-26), so it is in no figure: gross notional 180 EUR;", finding.Message, StringComparison.Ordinal);
     }
 
     [Fact]
@@ -77,13 +77,68 @@ public sealed class ValuationChecksTests
             .Instrument(Unmodelled("LOOK", "lookback", ("factor", "A")))
             .Instrument(Unmodelled("OTHER", "barrier"));
 
-        // 90 + 4 x 100; the last names nothing. The bonds lack their curve: 3 x 100 + |-2 x 1000|.
+        // 5,000 + 4 x 100; the last names nothing. The bonds lack their curve: 3 x 100 + |-2 x 1000|.
         var findings = FindingsOf.Valuation(builder).ToArray();
         var finding = findings.One(FindingCodes.NotModelled);
         Assert.StartsWith("3 lines in 3 instruments", finding.Message, StringComparison.Ordinal);
-        Assert.Contains("estimated size 490 EUR, and 1 line of unknown size", finding.Message, StringComparison.Ordinal);
-        Assert.Contains("estimated size 2,300 EUR", findings.One(FindingCodes.FactorUnknown).Message, StringComparison.Ordinal);
+        Assert.Contains("gross notional 5,400 EUR, and 1 line of unknown notional", finding.Message, StringComparison.Ordinal);
+        Assert.Contains("gross notional 2,300 EUR", findings.One(FindingCodes.FactorUnknown).Message, StringComparison.Ordinal);
     }
+
+    // What each kind is large by, for 2 units of 10 dollars at 0.80 EUR: 16 times the number given.
+    [Fact]
+    public void Run_with_derivatives_that_cannot_be_priced_names_each_with_its_notional()
+    {
+        var (expired, flat, underlying) = (s_thursday, new VolatilityTerm(0.2, null), new Underlying("U", null));
+        Instrument[] held =
+        [
+            new Option(underlying, 91, expired, OptionRight.Put, ExerciseStyle.American, flat, null, null) { Name = "AMER", Currency = "USD" },
+            new Digital(underlying, 92, expired, OptionRight.Call, flat, null, null, DigitalPayoff.Cash, 1000) { Name = "CASH", Currency = "USD" },
+            new Digital(underlying, 93, expired, OptionRight.Call, flat, null, null, DigitalPayoff.Asset, null) { Name = "UNIT", Currency = "USD" },
+            new SingleBarrier(underlying, 94, expired, OptionRight.Call, flat, null, null, 80, BarrierKind.DownIn, 0, Monitoring.Daily, s_thursday, null) { Name = "KNOCK", Currency = "USD" },
+            new Asian(underlying, 95, expired, OptionRight.Call, flat, null, null, AverageKind.Geometric, FixingSchedule.Of(new Fixing(s_thursday, null)), null) { Name = "MEAN", Currency = "USD" },
+            new Lookback(underlying, 96, expired, OptionRight.Call, flat, null, null, Monitoring.Daily, s_thursday) { Name = "FIXED", Currency = "USD" },
+            new Lookback(underlying, null, expired, OptionRight.Call, flat, null, null, Monitoring.Daily, s_thursday) { Name = "FLOAT", Currency = "USD" },
+            new Lookback(new(null, "EUR"), null, expired, OptionRight.Call, flat, null, null, Monitoring.Daily, s_thursday) { Name = "CROSS", Currency = "USD" },
+        ];
+        var builder = TwoCurrencies();
+        foreach (var instrument in held) builder = builder.Instrument(instrument with { Multiplier = 10 }).Position("DESK", instrument.Name, -2);
+
+        // The floating ones by the level: a unit of U at 50, a euro at 1.25 dollars.
+        var message = FindingsOf.Valuation(builder).One(FindingCodes.InstrumentExpired).Message;
+        string[] named = ["CASH, 16,000 EUR:", "FIXED, 1,536 EUR:", "MEAN, 1,520 EUR:", "KNOCK, 1,504 EUR:", "UNIT, 1,488 EUR:", "AMER, 1,456 EUR:", "FLOAT, 800 EUR:", "CROSS, 20 EUR:"];
+        Assert.Equal(named.Select(n => message.IndexOf(n, StringComparison.Ordinal)).Order(), named.Select(n => message.IndexOf(n, StringComparison.Ordinal)));
+        Assert.All(named, n => Assert.Contains(n, message, StringComparison.Ordinal));
+        Assert.Contains("gross notional 24,324 EUR;", message, StringComparison.Ordinal);
+    }
+
+    [Theory]
+    [InlineData(3.0, 1_000_000)]
+    [InlineData(-2_000_000.0, 2_000_000)]
+    [InlineData(null, 1_000_000)]
+    public void Run_with_a_swap_that_cannot_be_priced_sizes_it_by_the_larger_of_notional_and_market_value(double? market, double size)
+    {
+        var swap = new Swap(ReceivedLeg.Fixed, new(0.02, 1, DayCount.Thirty360), new(RateTerm.From("NONE"), 2, DayCount.Actual360, 0, 0.02), new(2026, 3, 1), new(2030, 3, 1), RateTerm.Of(0.02), 1_000_000)
+        { Name = "SWAP", Currency = "EUR" };
+
+        Assert.Equal(size, Assert.Single(FindingsOf.Holdings(TwoCurrencies().Instrument(swap).Position("DESK", "SWAP", -1, market)).Unpriced).Size);
+    }
+
+    [Fact]
+    public void Run_with_unpriced_lines_that_the_settings_let_block_blocks()
+    {
+        var builder = TwoCurrencies().Checks(c => c with { Severity = new SortedDictionary<string, FindingSeverity> { ["not-modelled"] = FindingSeverity.Blocking } })
+            .Position("DESK", "A-UNIT", 1).Position("DESK", "LOOK", 1).Instrument(Unmodelled("LOOK", "lookback", ("strike", "90")));
+
+        var finding = Assert.Single(FindingsOf.Valuation(builder));
+        Assert.Equal((FindingSeverity.Blocking, "not-modelled"), (finding.Severity, finding.Code));
+        Assert.Contains("LOOK, 90 EUR:", finding.Message, StringComparison.Ordinal);
+    }
+
+    [Fact]
+    public void Run_with_an_instrument_of_an_earlier_version_names_the_faulty_term() =>
+        Assert.Contains("(OLD, 5,000 EUR: its coupon is missing, expected a rate)", FindingsOf.Valuation(TwoCurrencies().Position("DESK", "OLD", 5)
+            .Instrument(Unmodelled("OLD", "bond", ("notional", "1000")) with { Fault = "its coupon is missing, expected a rate" })).One(FindingCodes.NotModelled).Message, StringComparison.Ordinal);
 
     [Fact]
     public void Run_with_a_factor_without_a_price_finds_it_with_the_observations() =>
@@ -149,6 +204,18 @@ public sealed class ValuationChecksTests
     public void Run_counts_a_future_at_its_price() =>
         Assert.StartsWith("1 positions with a gross value of 300 EUR stand against 1 with 100", FindingsOf.Valuation(TwoCurrencies().Instrument(new Future("A") { Name = "FUT", Currency = "EUR" })
             .Position("DESK", "FUT", -3).Previous(s_thursday, new Position("DESK", "FUT", 1))).One(FindingCodes.HoldingsChange).Message, StringComparison.Ordinal);
+
+    // Worth little at the first fixing, a million by contract.
+    [Fact]
+    public void HoldingsSummary_counts_a_swap_at_its_notional_and_a_bond_at_its_value()
+    {
+        var (issue, maturity, flat) = (Friday, Friday.AddYears(3), RateTerm.Of(0.03));
+        var swap = new Swap(ReceivedLeg.Float, new(0.03, 1, DayCount.Actual365Fixed), new(flat, 1, DayCount.Actual365Fixed, 0, 0.03), issue, maturity, flat, 500_000) { Name = "SWAP", Currency = "EUR", Multiplier = 2 };
+        var bond = new Bond(new(0, 0, DayCount.ActualActual), issue, maturity, RateTerm.Of(0), 100, null) { Name = "ZERO", Currency = "EUR" };
+
+        var holdings = FindingsOf.Holdings(TwoCurrencies().Instrument(swap).Instrument(bond).Position("DESK", "SWAP", -1).Position("DESK", "ZERO", 3));
+        Assert.Equal((2, 1_000_300.0), (holdings.Priced, holdings.GrossValue));
+    }
 
     [Fact]
     public void HoldingsSummary_of_lines_counts_values_and_ties_them_to_the_book_of_record()

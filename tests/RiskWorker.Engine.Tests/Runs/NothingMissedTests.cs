@@ -2,6 +2,7 @@ using RiskWorker.Domain.Instruments;
 using RiskWorker.Domain.Limits;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Engine.Runs;
+using RiskWorker.Engine.Tests.Checks;
 
 namespace RiskWorker.Engine.Tests.Runs;
 
@@ -27,6 +28,21 @@ public sealed class NothingMissedTests
         var results = Calculate(snapshot);
         Assert.Contains(results.Findings, f => f is { Code: "priced-none", Severity: FindingSeverity.Blocking });
         Assert.Empty(results.Nodes);
+    }
+
+    [Fact]
+    public void Run_with_an_unpriced_position_that_the_settings_let_block_fails_and_names_it_with_its_notional()
+    {
+        var sound = FridaySnapshot.Sound().Position("FIRM", "LOOK", -3)
+            .Instrument(new UnmodelledInstrument("lookback", new Dictionary<string, string> { ["strike"] = "90" }) { Name = "LOOK", Currency = "EUR" });
+        var warned = Calculate(sound.Build());
+        Assert.NotEmpty(warned.Nodes);
+        Assert.Equal((2, 1, 270.0, 0), (warned.Holdings.Positions, warned.Holdings.Priced, warned.Holdings.UnpricedNotional, warned.Holdings.UnpricedOfUnknownSize));
+
+        var blocked = Calculate(sound.Checks(c => c with { Severity = new SortedDictionary<string, FindingSeverity> { ["not-modelled"] = FindingSeverity.Blocking } }).Build());
+        Assert.Contains(blocked.Findings, f => f is { Code: "not-modelled", Severity: FindingSeverity.Blocking } && f.Message.Contains("LOOK, 270 EUR:", StringComparison.Ordinal));
+        Assert.Empty(blocked.Nodes);
+        Assert.Equal("LOOK", Assert.Single(blocked.Holdings.Unpriced).Instrument);
     }
 
     private static RunResults Calculate(Snapshot snapshot) => new RunCalculator(snapshot, 1, null, CancellationToken.None).Calculate();

@@ -1,4 +1,5 @@
 using System.Text;
+using RiskWorker.Domain.Market;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Host.Options;
 
@@ -64,6 +65,22 @@ public sealed class ConfigurationReaderTests
         Assert.Equal([new ScheduleOptions("daily", "0 30 6 ? * MON-FRI", TimeZoneInfo.FindSystemTimeZoneById("Europe/Oslo"), "OSLO", "measure", new TimeOnly(7, 30))], read.Schedules);
     }
 
+    [Theory]
+    [InlineData("{}", CurveInterpolation.LinearZero)]
+    [InlineData("""{ "curves": {} }""", CurveInterpolation.LinearZero)]
+    [InlineData("""{ "curves": { "interpolation": "linear-zero" } }""", CurveInterpolation.LinearZero)]
+    [InlineData("""{ "curves": { "interpolation": "log-linear-discount" } }""", CurveInterpolation.LogLinearDiscount)]
+    public void Read_curves_sets_their_interpolation(string json, CurveInterpolation expected) => Assert.Equal(expected, Read(json).Run.CurveInterpolation);
+
+    [Theory]
+    [InlineData("""{ "curves": { "interpolation": "cubic", "extrapolation": "flat" } }""", "curves.extrapolation", "curves.interpolation", "one of linear-zero, log-linear-discount")]
+    [InlineData("""{ "curves": "linear-zero" }""", "curves", "an object")]
+    public void Read_curves_with_faults_says_all_of_them(string json, params string[] parts)
+    {
+        var message = Assert.Throws<SettingsException>(() => Read(json)).Message;
+        Assert.All(parts, part => Assert.Contains(part, message, StringComparison.Ordinal));
+    }
+
     [Fact]
     public void Read_faults_of_every_section_come_in_one_message()
     {
@@ -80,7 +97,7 @@ public sealed class ConfigurationReaderTests
             """));
         Assert.Equal("""
             riskworker.json: 13 faults
-              simulaton: found an unknown key, expected one of store, timeEffects, models, record, challengers, measures, simulation, backfill, checks, schedules, delivery, page; did you mean 'simulation'?
+              simulaton: found an unknown key, expected one of store, timeEffects, models, record, challengers, measures, simulation, curves, backfill, checks, schedules, delivery, page; did you mean 'simulation'?
               models["a b"].lambda: found 1, expected a number strictly between 0 and 1
               models["a b"].window: found 1, expected a whole number from 2 to 100,000
               page.port: found an unknown key, expected no key here
@@ -116,7 +133,7 @@ public sealed class ConfigurationReaderTests
     [InlineData("""{ "checks": { "jumpSigma": 3 } }""", "checks.jumpSigma: found an unknown key, expected one of staleDays, jumpSigmas, minimumHistory, valueTolerance, grossChange, severity; did you mean 'jumpSigmas'?")]
     [InlineData("""{ "schedules": { "d": { "cron": "0 0 6 * * ?", "timeZone": "UTC", "verb": "tail", "deadline": "7:30" } } }""",
         "schedules.d.verb: found \"tail\", expected one of measure; 'tail' is not available in this version", "schedules.d.deadline: found \"7:30\", expected a time of day as HH:mm")]
-    [InlineData("""{ "\u001b[31m": 1 }""", "[\"?[31m\"]: found an unknown key, expected one of store, timeEffects, models, record, challengers, measures, simulation, backfill, checks, schedules, delivery, page")]
+    [InlineData("""{ "\u001b[31m": 1 }""", "[\"?[31m\"]: found an unknown key, expected one of store, timeEffects, models, record, challengers, measures, simulation, curves, backfill, checks, schedules, delivery, page")]
     [InlineData("[]", "$: found an empty array, expected an object")]
     [InlineData("null", "$: found null, expected an object")]
     public void Read_fault_names_path_found_and_expected(string json, params string[] faults) =>

@@ -1,4 +1,5 @@
 using RiskWorker.Domain.Limits;
+using RiskWorker.Domain.Market;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Reporting.Document;
 using RiskWorker.Reporting.Pdf;
@@ -23,6 +24,38 @@ public sealed class LimitReportTests
         Assert.Contains("riskworker measure --config config-demo --out out --as-of 2026-11-27", page);
         Assert.Contains("degraded", page);
         Assert.Contains("Tied to the book of record: 140 of 152 lines", page);
+    }
+
+    [Fact]
+    public void Build_page_one_says_how_many_lines_and_how_much_notional_no_figure_holds()
+    {
+        var run = new SampleRun().Build();
+        Assert.Contains("2 of 152 position lines are in no figure: gross notional 1,250.0 thousand EUR, and 1 line of unknown notional, beside a gross value of 48,250.0 in the figures.", Page(run, 0));
+
+        RunRecord With(params UnpricedLine[] lines) => run with { Results = run.Results with { Holdings = run.Results.Holdings with { Unpriced = lines } } };
+        var swap = run.Results.Holdings.Unpriced[0];
+        Assert.Contains("1 of 152 position lines is in no figure: gross notional 1,250.0 thousand EUR, beside", Page(With(swap), 0));
+        Assert.Contains("2 of 152 position lines are in no figure: gross notional 3,750.0 thousand EUR, beside", Page(With(swap, swap with { Size = 2_500_000 }), 0));
+        Assert.Contains("1 of 152 position lines is in no figure; nothing gives its notional.", Page(With(swap with { Size = null }), 0));
+        Assert.DoesNotContain("in no figure", Page(With(), 0));
+        // Also where more lines are left out than page 1 has room for.
+        Assert.Contains("40 of 152 position lines are in no figure: gross notional 50,000.0 thousand EUR, beside", Page(With([.. Enumerable.Repeat(swap, 40)]), 0));
+    }
+
+    [Fact]
+    public void Build_method_page_says_how_each_kind_held_is_valued_and_what_not_to_trust()
+    {
+        var run = new SampleRun().Build();
+        var text = string.Join(' ', PdfText.Pages(PdfRenderer.Render(LimitReport.Build(run)))[^1]);
+        Assert.Contains("How positions are valued", text);
+        Assert.Contains("138 lines", text);
+        Assert.Contains("Log-normal underlying: closed form.", text);
+        Assert.Contains("Black and Scholes 1973", text);
+        Assert.Contains("One volatility whatever the strike: no smile.", text);
+        Assert.Contains("zero rates linear in time between two tenors", text);
+
+        Assert.DoesNotContain("How positions are valued", Flat(run with { Results = run.Results with { Methods = [] } }));
+        Assert.Contains("discount factors log-linear in time", Flat(run with { Settings = run.Settings with { CurveInterpolation = CurveInterpolation.LogLinearDiscount } }));
     }
 
     [Theory]

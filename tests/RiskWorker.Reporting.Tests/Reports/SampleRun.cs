@@ -98,6 +98,11 @@ internal sealed class SampleRun
                     new("desk1", "UNKNOWN-9", "-", -40, null, "instrument is not in instruments.csv"),
                 ],
             },
+            Methods =
+            [
+                new("spot", "the closing price", "S", "the price itself", "the close is taken as tradable in any size", 138),
+                new("option, european", "log-normal underlying", "closed form", "Black and Scholes 1973", "one volatility whatever the strike: no smile", 12),
+            ],
             Adjustments = [new("EQ.ALPHA", new DateOnly(2026, 6, 1), 0.5, "two for one split")],
         };
     }

@@ -44,6 +44,16 @@ public sealed class ResultsExportTests
     }
 
     [Fact]
+    public void Json_has_the_methods_of_the_kinds_held()
+    {
+        using var json = JsonDocument.Parse(Bytes(s => ResultsJson.Write(s_record, s)));
+        var methods = json.RootElement.GetProperty("methods");
+
+        Assert.Equal(2, methods.GetArrayLength());
+        Assert.Equal("""{"kind":"option, european","model":"log-normal","method":"closed form","source":"Black and Scholes 1973","caution":"no smile","lines":2}""", JsonSerializer.Serialize(methods[1]));
+    }
+
+    [Fact]
     public void Json_begins_with_the_fields_of_the_published_shape_in_its_order()
     {
         using var json = JsonDocument.Parse(Bytes(s => ResultsJson.Write(s_record, s)));

@@ -97,6 +97,24 @@ public sealed class CsvRulesTests
     }
 
     [Fact]
+    public void Check_missing_rates_of_options_of_every_kind_are_one_warning()
+    {
+        using var fixture = new FeedFixture();
+        fixture["instruments.csv"] = "instrument,kind,currency,factor,strike,expiry,right,style,vol,curve,carry,payoff,notional,barrier,barrier_kind,monitoring,issue,average,fixings\n"
+            + "OPT,option,EUR,ALPHA,100,2027-03-19,call,american,0.2,,0,,,,,,,,\n"
+            + "DIG,digital,EUR,ALPHA,100,2027-03-19,call,,0.2,0,,cash,10,,,,,,\n"
+            + "BAR,barrier,EUR,ALPHA,100,2027-03-19,call,,0.2,,,,,80,down-in,daily,2026-11-02,,\n"
+            + "ASI,asian,EUR,ALPHA,100,2027-03-19,call,,0.2,,,,,,,,,geometric,2027-03-19\n"
+            + "LOO,lookback,EUR,ALPHA,,2027-03-19,call,,0.2,,,,,,,daily,2026-11-02,,\n"
+            + "ALL,lookback,EUR,ALPHA,,2027-03-19,call,,0.2,0,EUR,,,,,daily,2026-11-02,,\n"
+            + "FWD,forward,EUR,ALPHA,100,2027-03-19,,,,,,,,,,,,,\nS,spot,EUR,ALPHA,,,,,,,,,,,,,,,\n";
+        var checkedFeed = fixture.Check();
+
+        Assert.DoesNotContain(checkedFeed.Faults, f => f.File == "instruments.csv");
+        Assert.Equal(new Finding(FindingSeverity.Warning, "assumed-zero-rate", "instruments.csv", "5 options have no curve or no carry, which counts as 0: ASI, BAR, DIG, LOO, OPT."), Assert.Single(checkedFeed.Warnings));
+    }
+
+    [Fact]
     public void Check_unknown_columns_files_terms_and_missing_rates_are_warnings_with_their_first_ten_names()
     {
         using var fixture = new FeedFixture();

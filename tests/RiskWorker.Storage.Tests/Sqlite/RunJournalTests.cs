@@ -53,13 +53,17 @@ public sealed class RunJournalTests : IDisposable
         json["results"]!.AsObject().Remove("adjustments");
         json["results"]!.AsObject().Remove("holdings");
         json["results"]!.AsObject().Remove("sensitivities");
+        json["results"]!.AsObject().Remove("methods");
         json["settings"]!["checks"]!.AsObject().Remove("staleDays");
+        json["settings"]!.AsObject().Remove("curveInterpolation");
 
         var read = RecordJson.Read(System.Text.Encoding.UTF8.GetBytes(json.ToJsonString()));
 
         Assert.Empty(read.Results.Adjustments);
         Assert.Empty(read.Results.Holdings.Unpriced);
         Assert.Empty(read.Results.Sensitivities);
+        Assert.Empty(read.Results.Methods);
+        Assert.Equal(Domain.Market.CurveInterpolation.LinearZero, read.Settings.CurveInterpolation);
         Assert.Equal(3, read.Settings.Checks.StaleDays);
     }
 

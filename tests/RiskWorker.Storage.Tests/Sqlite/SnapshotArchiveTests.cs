@@ -1,4 +1,5 @@
 using Microsoft.Data.Sqlite;
+using RiskWorker.Domain.Instruments;
 using RiskWorker.Domain.Market;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Storage.Sqlite;
@@ -192,6 +193,25 @@ public sealed class SnapshotArchiveTests : IDisposable
     }
 
     private static DateOnly Day(int day) => new(2026, 11, day);
+
+    // A version that did not price them took such rows as they were.
+    [Fact]
+    public void Read_instrument_that_only_an_earlier_version_took_is_kept_unmodelled_in_store_and_archive()
+    {
+        Raw("""UPDATE instrument SET kind = 'bond', terms = '{"coupon":"0.02","notional":"1000","maturity":"2031-03-15"}' WHERE instrument = 'ALPHA-S'""");
+
+        var frozen = new SnapshotReader(_store).Freeze(s_day, s_settings, "lognormal");
+        var archived = _store.Snapshots.Read(Append(frozen));
+
+        Assert.Empty(archived.Faults);
+        Assert.All([frozen.Snapshot, archived.Snapshot!], snapshot =>
+        {
+            var kept = Assert.IsType<UnmodelledInstrument>(snapshot.Instruments["ALPHA-S"]);
+            Assert.Equal(("bond", "1000"), (kept.Kind, kept.Terms["notional"]));
+            Assert.StartsWith("its frequency is missing, expected 0 (no coupons), 1, 2, 4 or 12", kept.Fault, StringComparison.Ordinal);
+            Assert.IsType<Forward>(snapshot.Instruments["ALPHA"]);
+        });
+    }
 
     private void Count(int day, int? profitFrom = null) =>
         _store.Runs.Append(RunRecords.Of(Day(day), profitFrom: profitFrom is { } from ? Day(from) : null, evidence: day % 2 == 0 ? EvidenceKind.Recorded : EvidenceKind.Backfilled));

@@ -63,8 +63,18 @@ public sealed class SnapshotReaderTests(ITestOutputHelper output)
         var hashes = new List<string> { SettingsText.Leaf(new()).Part.Hash };
         foreach (var changed in OneChangeEach(new RunSettings()).Cast<RunSettings>()) hashes.Add(SettingsText.Leaf(changed).Part.Hash);
 
-        Assert.Equal(1 + 7 + 8 + 6 + 2, hashes.Count);
+        Assert.Equal(1 + 7 + 8 + 6 + 3, hashes.Count);
         Assert.Equal(hashes.Count, hashes.Distinct().Count());
+    }
+
+    // A run of before there was a choice keeps the hash of its settings.
+    [Fact]
+    public void Text_of_settings_says_how_curves_run_only_where_that_is_not_the_usual_way()
+    {
+        static string Text(RunSettings settings) => System.Text.Encoding.UTF8.GetString(SettingsText.Leaf(settings).Text);
+
+        Assert.DoesNotContain("curves", Text(new()), StringComparison.Ordinal);
+        Assert.Contains("curves\tloglineardiscount\t", Text(new() { CurveInterpolation = Domain.Market.CurveInterpolation.LogLinearDiscount }), StringComparison.Ordinal);
     }
 
     [Fact]

@@ -20,14 +20,31 @@ internal static class HoldingsSection
         return blocks;
     }
 
-    /// <summary>The largest unpriced lines with their estimated sizes.</summary>
+    /// <summary>How many lines no figure holds, and how much; null where there is none.</summary>
+    public static RichText? LeftOut(RunReading run)
+    {
+        var held = run.Results.Holdings;
+        if (held.Unpriced.Count == 0)
+            return null;
+
+        var (lines, unknown, scale) = (held.Unpriced.Count, held.UnpricedOfUnknownSize, run.Scale());
+        var which = $"{Numerals.Count(lines)} of {Phrases.Plural(held.Positions, "position line")} {(lines == 1 ? "is" : "are")} in no figure";
+        var known = $"{scale.Text(held.UnpricedNotional)} {scale.Unit}";
+        return unknown == lines
+            ? RichText.Of(new TextRun($"{which}; nothing gives {(lines == 1 ? "its" : "their")} notional.", Strong: true))
+            : RichText.Of(
+                new TextRun($"{which}: gross notional {known}", Strong: true),
+                new TextRun((unknown == 0 ? "" : $", and {Phrases.Plural(unknown, "line")} of unknown notional") + $", beside a gross value of {scale.Text(held.GrossValue)} in the figures."));
+    }
+
+    /// <summary>The largest unpriced lines with their notionals.</summary>
     public static Table UnpricedTable(RunReading run, int most)
     {
         var scale = run.Scale();
         var rows = run.Results.Holdings.Unpriced.Take(most).Select(line => new Row(
             [new TextCell(line.Instrument, line.Kind == "-" ? "kind unknown" : line.Kind), run.NameOf(line.Book), Numerals.Fixed(line.Quantity), line.Size is null ? "unknown" : scale.Text(line.Size), line.Reason]));
         return new Table(
-            [new("Instrument", 1.6), new("Book", 1.4), new("Quantity", 1, Alignment.Right), new("Estimated size", 1, Alignment.Right, scale.Unit), new("Why", 3)],
+            [new("Instrument", 1.6), new("Book", 1.4), new("Quantity", 1, Alignment.Right), new("Gross notional", 1, Alignment.Right, scale.Unit), new("Why", 3)],
             [new RowGroup([.. rows])], "");
     }
 

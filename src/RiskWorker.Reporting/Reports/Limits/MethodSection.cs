@@ -1,3 +1,4 @@
+using RiskWorker.Domain.Market;
 using RiskWorker.Reporting.Document;
 
 namespace RiskWorker.Reporting.Reports.Limits;
@@ -14,6 +15,7 @@ internal static class MethodSection
             0.54),
         new Heading("Conventions", 3),
         Conventions(run),
+        .. MethodsTable.Blocks(run),
         new Heading("Hashes", 3),
         Identity.Full(run),
         new Heading("Cautions", 3),
@@ -73,6 +75,9 @@ internal static class MethodSection
         new("Shocks", "ln(S(t) / S(t−1)) for prices, differences for rates; only between consecutive observed business days of a factor's calendar."),
         new("Exceptions", "loss strictly greater than the VaR of the previous close; a missing VaR or P&L counts. Hypothetical P&L: yesterday's positions at today's prices"
             + (run.Record.Settings.TimeEffectsIncluded ? ", the valuation date moved too." : ", the valuation date held.")),
+        new("Curves", run.Record.Settings.CurveInterpolation == CurveInterpolation.LinearZero
+            ? "zero rates linear in time between two tenors, flat beyond the first and the last."
+            : "discount factors log-linear in time between two tenors (constant forward rates), zero rates flat beyond the first and the last."),
         new("Year", "252 business days; option time in calendar days / 365."),
     ]);
 

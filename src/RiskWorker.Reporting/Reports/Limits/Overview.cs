@@ -91,10 +91,15 @@ internal static class Overview
     private static IEnumerable<Block> LeftOut(RunReading run)
     {
         var held = run.Results.Holdings;
-        if (held.Unpriced.Count == 0)
+        if (HoldingsSection.LeftOut(run) is not { } leftOut)
+        {
             yield return new Paragraph($"Every position line is in the figures: {Numerals.Count(held.Priced)} of {Numerals.Count(held.Positions)}.");
+        }
         else
+        {
+            yield return new Paragraph(leftOut);
             yield return HoldingsSection.UnpricedTable(run, ListedUnpriced);
+        }
         if (held.Unpriced.Count > ListedUnpriced)
             yield return new Paragraph($"{Phrases.Sentence(Phrases.Number(held.Unpriced.Count - ListedUnpriced))} more lines are listed under Holdings.", Voice.Note);
         yield return new Paragraph(

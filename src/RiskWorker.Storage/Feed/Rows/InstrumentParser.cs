@@ -35,7 +35,7 @@ internal sealed class InstrumentParser(WarningLog warnings) : IRowParser<string?
         _names.Claim(name, cells, Name, "each instrument");
         foreach (var fault in InstrumentReader.Read(new(name, kind, currency, terms)).Faults)
             cells.Fault(s_column[fault.Term], fault.Found, fault.Expected);
-        if (kind == InstrumentKinds.Option && !(terms.ContainsKey("curve") && terms.ContainsKey("carry"))) warnings.Add(FeedWarningCodes.AssumedZeroRate, name);
+        if (InstrumentKinds.Options.Contains(kind) && !(terms.ContainsKey("curve") && terms.ContainsKey("carry"))) warnings.Add(FeedWarningCodes.AssumedZeroRate, name);
         row = [name, kind, currency, JsonSerializer.Serialize(terms, TermsJson.Default.SortedDictionaryStringString), issuer, lot?.Text, volume?.Text];
         return cells.RowIsSound;
     }
