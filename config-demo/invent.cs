@@ -981,7 +981,8 @@ internal static class Exotic
         double Mean(double t) => terms.Spot * Math.Exp(terms.Growth * t) / count;
         var mean = toCome.Sum(Mean);
         if (strike <= 0) return terms.Discount * (mean - strike);
-        var square = toCome.Sum((double a) => toCome.Sum((double b) => Mean(a) * Mean(b) * Math.Exp(terms.Volatility * terms.Volatility * Math.Min(a, b))));
+        double Row(double a) => toCome.Sum(b => Mean(a) * Mean(b) * Math.Exp(terms.Volatility * terms.Volatility * Math.Min(a, b)));
+        var square = toCome.Sum(Row);
         return terms.Discount * Black(mean, strike, Math.Sqrt(Math.Log(square / (mean * mean))), 1);
     }
 
@@ -991,7 +992,8 @@ internal static class Exotic
         double count = past.Length + toCome.Length;
         var drift = terms.Growth - terms.Volatility * terms.Volatility / 2;
         var mean = (past.Sum(Math.Log) + toCome.Sum(t => Math.Log(terms.Spot) + drift * t)) / count;
-        var variance = terms.Volatility * terms.Volatility * toCome.Sum((double a) => toCome.Sum((double b) => Math.Min(a, b))) / (count * count);
+        double Row(double a) => toCome.Sum(b => Math.Min(a, b));
+        var variance = terms.Volatility * terms.Volatility * toCome.Sum(Row) / (count * count);
         return terms.Discount * Black(Math.Exp(mean + variance / 2), terms.Strike, Math.Sqrt(variance), 1);
     }
 
