@@ -118,7 +118,7 @@ internal sealed class OptionBinder(InstrumentBinder binder, IPastLevels? past, u
     /// <summary>Levels of the fixings so far, today's close among them; null with a fault where one is missing.</summary>
     private List<double>? PastFixings(Asian a, UnderlyingKey underlying, DateOnly date, Note note)
     {
-        if (a.Fixings.IsContinuous) return a.Issue < date ? [.. Closes(underlying, a.Issue!.Value, date)] : [];
+        if (a.Fixings.IsContinuous) return a.Issue < date ? ClosesSince(a.Issue!.Value, underlying, date, note) : [];
         var levels = new List<double>();
         foreach (var fixing in a.Fixings.Fixings.TakeWhile(f => f.Date <= date))
         {
@@ -138,9 +138,9 @@ internal sealed class OptionBinder(InstrumentBinder binder, IPastLevels? past, u
         // An option on the highest level looks up, whichever side it is on; without a strike a call buys at the lowest.
         var isHighest = (l.Right == OptionRight.Call) == l.Strike.HasValue;
         var days = Weekdays(date, l.Expiry);
-        return Other(l, new(l.Underlying, l.Strike ?? 0, l.Expiry, l.Right, l.Volatility, l.Curve, l.Carry), currency, date, ref fault, (underlying, _, _) =>
+        return Other(l, new(l.Underlying, l.Strike ?? 0, l.Expiry, l.Right, l.Volatility, l.Curve, l.Carry), currency, date, ref fault, (underlying, _, note) =>
         {
-            var closes = l.Issue <= date ? Closes(underlying, l.Issue, date).ToList() : [];
+            if ((l.Issue < date ? ClosesSince(l.Issue, underlying, date, note) : [.. Closes(underlying, l.Issue, date)]) is not { } closes) return null;
             double? extreme = closes.Count == 0 ? null : isHighest ? closes.Max() : closes.Min();
             return Always(PathContracts.Lookback(seed, l, date, extreme, days));
         });
@@ -154,6 +154,15 @@ internal sealed class OptionBinder(InstrumentBinder binder, IPastLevels? past, u
             if (day.DayOfWeek is not (DayOfWeek.Saturday or DayOfWeek.Sunday) || day == last) days.Add(day);
         }
         return days;
+    }
+
+    /// <summary>All closes since an issue in the past; null with a fault where there is none.</summary>
+    private List<double>? ClosesSince(DateOnly issue, UnderlyingKey underlying, DateOnly date, Note note)
+    {
+        List<double> closes = [.. Closes(underlying, issue, date)];
+        if (closes.Count > 0) return closes;
+        note.Fault = new(UnpricedReason.MissingFixing, $"it looks back to its issue on {issue:yyyy-MM-dd}, and its underlying has not been observed since");
+        return null;
     }
 
     private IEnumerable<double> Closes(UnderlyingKey underlying, DateOnly from, DateOnly to) =>

@@ -1,9 +1,11 @@
+using System.Runtime.CompilerServices;
 using RiskWorker.Engine.Plans;
 using RiskWorker.Numerics.Kernels;
 
 namespace RiskWorker.Engine.Simulation;
 
 /// <summary>Full revaluation: the profit of every holding of a slice, formula by formula, summed by cell.</summary>
+/// <remarks>Compiled well at the first call: a run is over before code that starts out plain would have been promoted.</remarks>
 internal static class HoldingProfits
 {
     /// <summary>Adds the profits of <paramref name="slice"/> in the lanes of <paramref name="market"/> to their cells.</summary>
@@ -12,6 +14,7 @@ internal static class HoldingProfits
     /// <param name="market">The market, at the horizon.</param>
     /// <param name="horizon">The horizon.</param>
     /// <param name="cells">Profit by cell of the plan.</param>
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     public static void Add(RevaluationPlan plan, PlanSlice slice, MarketLanes market, int horizon, LaneTable cells)
     {
         // By index throughout: an enumerator of an interface would be allocated for every tile.
@@ -27,6 +30,7 @@ internal static class HoldingProfits
     }
 
     /// <summary>Adds the discounted amounts of a slice.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     public static void AddFlows(RevaluationPlan plan, PlanSlice slice, MarketLanes market, LaneTable cells)
     {
         foreach (var held in slice.Flows)
@@ -38,6 +42,7 @@ internal static class HoldingProfits
     }
 
     /// <summary>Adds options of any formula on an underlying that the market has been moved to.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     public static void AddFormulas(FormulaBatch batch, ItemRange range, MarketLanes market, LaneTable cells)
     {
         if (range.IsEmpty) return;
@@ -50,12 +55,14 @@ internal static class HoldingProfits
     }
 
     /// <summary>Adds the linear holdings of an underlying that the market has been moved to.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     public static void AddLinear(UnderlyingGroup group, ItemRange range, MarketLanes market, LaneTable cells)
     {
         for (var h = range.From; h < range.To; h++) BookProfit.AddLinear(market.Spots, group.Spot, group.Linear[h].Units, cells[group.Linear[h].Cell]);
     }
 
     /// <summary>Adds options of an underlying that the market has been moved to; the market's volatility is theirs afterwards.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     public static void AddOptions(OptionBatch batch, ItemRange range, MarketLanes market, int horizon, LaneTable cells)
     {
         if (range.IsEmpty) return;
@@ -64,6 +71,7 @@ internal static class HoldingProfits
     }
 
     /// <summary>Adds one option; the market has been moved to its underlying and its volatility.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveInlining)]
     public static void AddOption(OptionBatch batch, int place, MarketLanes market, int horizon, LaneTable cells)
     {
         ref readonly var item = ref batch.Items[place];

@@ -1,3 +1,5 @@
+using System.Runtime.CompilerServices;
+
 namespace RiskWorker.Engine.Simulation;
 
 /// <summary>Rows of numbers side by side, one number a lane. The memory stays from one use to the next.</summary>
@@ -10,7 +12,11 @@ internal sealed class LaneTable
     public int Width { get; set; }
 
     /// <summary>The lanes of row <paramref name="row"/>.</summary>
-    public Span<double> this[int row] => _values.AsSpan(row * _capacity, Width);
+    public Span<double> this[int row]
+    {
+        [MethodImpl(MethodImplOptions.AggressiveInlining)]
+        get => _values.AsSpan(row * _capacity, Width);
+    }
 
     /// <summary>Makes room for so many rows of so many lanes; what they hold is left open.</summary>
     public void Shape(int rows, int capacity)

@@ -1,3 +1,4 @@
+using System.Runtime.CompilerServices;
 using RiskWorker.Engine.Plans;
 using RiskWorker.Engine.Surfaces;
 using RiskWorker.Numerics.Kernels;
@@ -16,6 +17,7 @@ internal sealed class SurfaceProfits(RevaluationPlan plan, SurfaceSet surfaces, 
     private readonly double[] _before = new double[capacity];
 
     /// <summary>Adds the profits of the whole plan in the lanes of <paramref name="market"/> to their cells.</summary>
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     public void Add(MarketLanes market, int horizon, LaneTable cells)
     {
         foreach (var held in _whole.Groups)
@@ -32,6 +34,7 @@ internal sealed class SurfaceProfits(RevaluationPlan plan, SurfaceSet surfaces, 
         HoldingProfits.AddFlows(plan, _whole, market, cells);
     }
 
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     private void AddBatch(OptionBatch batch, BatchSurfaces fitted, MarketLanes market, int horizon, ReadOnlySpan<double> z, bool isInside, LaneTable cells)
     {
         var w = _w.AsSpan(0, market.Width);

@@ -68,6 +68,7 @@ public static class EuropeanOption
     /// </param>
     /// <param name="profit">As long as <paramref name="x"/> and apart from the other spans.</param>
     [ScalarTwin(nameof(Profit))]
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     public static void AccumulateValue(
         in EuropeanOptionTerms terms, ReadOnlySpan<double> x, ReadOnlySpan<double> spot, double quantity, double baseValue, Span<double> profit)
     {
@@ -87,6 +88,7 @@ public static class EuropeanOption
     /// <param name="baseValue">Value of one unit today.</param>
     /// <param name="profit">As long as <paramref name="x"/> and apart from the other spans.</param>
     [ScalarTwin(nameof(Profit))]
+    [MethodImpl(MethodImplOptions.AggressiveOptimization)]
     public static void AccumulateValue(
         in EuropeanOptionTerms terms,
         ReadOnlySpan<double> x,

@@ -1,5 +1,6 @@
 using RiskWorker.Domain.Books;
 using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Backtesting;
 using RiskWorker.Engine.Calibration;
 using RiskWorker.Engine.Plans;
 using RiskWorker.Engine.Pricing;
@@ -15,7 +16,7 @@ internal sealed record CompiledBook(Snapshot Snapshot, BookTree Tree, Calibrated
     {
         var tree = BookTree.Build(snapshot.Books).Tree!;
         var model = Calibrator.Calibrate(snapshot);
-        var binder = new InstrumentBinder(tree.ReportingCurrency, model.Factors);
+        var binder = new InstrumentBinder(tree.ReportingCurrency, model.Factors, new ClosingLevels(snapshot));
         var lines = LineValuation.Of(snapshot.Positions, snapshot.Instruments, binder, model.Levels, snapshot.AsOf);
         Assert.All(lines, line => Assert.Null(line.Unpriced));
         var plan = new PlanCompiler(tree, model, binder.Currencies, horizons.Select(h => new Horizon(h))).Compile(snapshot.Settings.Simulation.Seed, lines);
