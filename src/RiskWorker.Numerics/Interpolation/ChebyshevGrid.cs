@@ -18,11 +18,19 @@ public sealed class ChebyshevGrid
     // Row k, column j: coefficient of z^k in the polynomial that is 1 at point j and 0 at the others.
     private readonly double[] _powers;
 
+    // Row m, column j: coefficient of T_m in the same polynomial.
+    private readonly double[] _series;
+
     private ChebyshevGrid(int degree)
     {
         Degree = degree;
         Points = PointsOf(degree);
         _powers = PowersOf(degree);
+        _series = new double[(degree + 1) * (degree + 1)];
+        for (var m = 0; m <= degree; m++)
+        {
+            for (var j = 0; j <= degree; j++) _series[(m * (degree + 1)) + j] = Weight(degree, m, j);
+        }
     }
 
     /// <summary>The grid of degree <paramref name="degree"/>, 1 to <see cref="MostDegree"/>; made once.</summary>
@@ -52,14 +60,22 @@ public sealed class ChebyshevGrid
     /// <param name="values">Values at the points, <paramref name="stride"/> apart.</param>
     /// <param name="stride">Distance of two values.</param>
     /// <param name="coefficients">n + 1 elements, <paramref name="stride"/> apart; may be the memory of <paramref name="values"/>.</param>
-    public void Interpolate(ReadOnlySpan<double> values, int stride, Span<double> coefficients)
+    public void Interpolate(ReadOnlySpan<double> values, int stride, Span<double> coefficients) => Multiply(_powers, values, stride, coefficients);
+
+    /// <summary>Coefficients of the interpolating polynomial by Chebyshev polynomial T_0, T_1, ..., which rounding does not touch as it does powers.</summary>
+    /// <param name="values">Values at the points, <paramref name="stride"/> apart.</param>
+    /// <param name="stride">Distance of two values.</param>
+    /// <param name="coefficients">n + 1 elements, <paramref name="stride"/> apart; may be the memory of <paramref name="values"/>.</param>
+    public void Expand(ReadOnlySpan<double> values, int stride, Span<double> coefficients) => Multiply(_series, values, stride, coefficients);
+
+    private void Multiply(double[] matrix, ReadOnlySpan<double> values, int stride, Span<double> coefficients)
     {
         Span<double> sums = stackalloc double[MostDegree + 1];
         var count = Degree + 1;
         for (var k = 0; k < count; k++)
         {
             var sum = 0.0;
-            for (var j = 0; j < count; j++) sum = Math.FusedMultiplyAdd(_powers[(k * count) + j], values[j * stride], sum);
+            for (var j = 0; j < count; j++) sum = Math.FusedMultiplyAdd(matrix[(k * count) + j], values[j * stride], sum);
             sums[k] = sum;
         }
         for (var k = 0; k < count; k++) coefficients[k * stride] = sums[k];
@@ -82,12 +98,17 @@ public sealed class ChebyshevGrid
             }
             for (var j = 0; j < count; j++)
             {
-                var halves = (m == 0 || m == degree ? 0.5 : 1) * (j == 0 || j == degree ? 0.5 : 1);
-                var weight = 2.0 / degree * halves * CosineOfTurn(j * m, 2 * degree);
+                var weight = Weight(degree, m, j);
                 for (var k = 0; k < count; k++) powers[(k * count) + j] = Math.FusedMultiplyAdd(weight, current[k], powers[(k * count) + j]);
             }
         }
         return powers;
+    }
+
+    private static double Weight(int degree, int m, int j)
+    {
+        var halves = (m == 0 || m == degree ? 0.5 : 1) * (j == 0 || j == degree ? 0.5 : 1);
+        return 2.0 / degree * halves * CosineOfTurn(j * m, 2 * degree);
     }
 
     /// <summary>cos(2 pi part / whole), reduced to an eighth of a turn.</summary>

@@ -44,8 +44,8 @@ public readonly ref struct MarketSpans
     /// <summary>One scenario.</summary>
     public MarketPoint this[int scenario] => new(X[scenario], Spot[scenario], Discount[scenario], Carry[scenario], Deviation[scenario]);
 
-    /// <summary>Some of the scenarios.</summary>
-    internal MarketSpans Slice(int first, int length) => new(
+    /// <summary>The <paramref name="length"/> scenarios from <paramref name="first"/> on.</summary>
+    public MarketSpans Slice(int first, int length) => new(
         X.Slice(first, length), Spot.Slice(first, length), Discount.Slice(first, length), Carry.Slice(first, length), Deviation.Slice(first, length));
 
     /// <summary>Guards what a kernel writes to.</summary>

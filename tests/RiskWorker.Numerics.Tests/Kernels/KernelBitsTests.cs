@@ -45,6 +45,10 @@ public sealed class KernelBitsTests
         [nameof(Elementwise)] = CrossRates,
         [nameof(UnitScale)] = (n, y) => UnitScale.Apply(n.Between(-0.3, 0.3, Count), 3.7, 0.01, y),
         [nameof(PolynomialSum)] = Polynomials,
+        [nameof(FourVariableSum)] = (n, y) => FourVariableSum.Add(
+            n.Between(-50, 50, 9 * 5 * 3 * 4), 5, 3, 4, n.Between(-1, 1, Count), n.Between(-1, 1, Count), n.Between(-1, 1, Count), n.Between(-1, 1, Count), y),
+        [nameof(BoundaryScale)] = (n, y) => BoundaryScale.Apply(n.Between(-0.3, 0.3, Count), n.Between(-0.5, 0.2, Count), 0.3, y),
+        [nameof(Branch)] = Branches,
         [nameof(LaneSum)] = (n, y) => Sums(n.Between(-1e6, 1e6, 600), y),
     };
 
@@ -75,6 +79,9 @@ public sealed class KernelBitsTests
     [InlineData("Elementwise", "e83c48058ffce0ed22fe7337fccb311e")]
     [InlineData("UnitScale", "849222ae93c6890bb75d188cf11d23d0")]
     [InlineData("PolynomialSum", "48de1c7b7d8e9610abe5836b526807d8")]
+    [InlineData("FourVariableSum", "b1ebf22df992dfddca55f27cee5b3401")]
+    [InlineData("BoundaryScale", "bcd573c277c54ea805ba1f4a0ef6a0e7")]
+    [InlineData("Branch", "3a22e42d28e549be717a7d35e158cbfb")]
     [InlineData("LaneSum", "092d79c6bd865de46f059ec3ddc79409")]
     public void Outputs_bits_are_the_pinned_ones(string name, string expected)
     {
@@ -153,6 +160,13 @@ public sealed class KernelBitsTests
         double[] z = n.Between(-1, 1, Count), w = n.Between(-1, 1, Count);
         PolynomialSum.Add(n.Between(-50, 50, 17), z, y);
         PolynomialSum.Add(n.Between(-50, 50, 11 * 6), 6, z, w, y);
+    }
+
+    private static void Branches(SeededNumbers n, double[] y)
+    {
+        double[] at = n.Between(-2, 2, Count);
+        Branch.From(at, 0.5, n.Between(-50, 50, Count), y);
+        Branch.ExerciseBelow(at, -1, n.Between(60, 160, Count), 97.3, -1, y);
     }
 
     private static void CrossRates(SeededNumbers n, double[] y)

@@ -6,14 +6,13 @@ namespace RiskWorker.Engine.Pricing.Options;
 public sealed class AmericanFormula(double strike, double years, bool isCall) : NumericFormula
 {
     /// <inheritdoc/>
-    public override void Price(double discount, double carry, double deviation, ReadOnlySpan<double> spots, Span<double> values, Span<double> standardErrors)
-    {
-        OptionAt(discount, carry, deviation).Value(spots, values);
-        standardErrors.Clear();
-    }
+    public override double? Kink => years > 0 ? null : strike;
 
     /// <inheritdoc/>
-    public override double? ExerciseSpot(double discount, double carry, double deviation) => OptionAt(discount, carry, deviation).ExerciseSpot;
+    public override EarlyExercise? Exercise => new(strike, isCall ? 1 : -1);
+
+    /// <inheritdoc/>
+    public override SpotPrices At(double discount, double carry, double deviation) => new Prices(OptionAt(discount, carry, Math.Max(deviation, 0)));
 
     /// <inheritdoc/>
     public override IEnumerable<double> Numbers() => [7, strike, years, isCall ? 1 : 0];
@@ -22,4 +21,16 @@ public sealed class AmericanFormula(double strike, double years, bool isCall) : 
     private AmericanOption OptionAt(double discount, double carry, double deviation) => years > 0
         ? new(strike, years, deviation / Math.Sqrt(years), discount / years, carry / years, isCall)
         : new(strike, 0, 0, 0, 0, isCall);
+
+    /// <summary>The exercise boundary is found once.</summary>
+    private sealed class Prices(AmericanOption option) : SpotPrices
+    {
+        public override double? ExerciseSpot => option.ExerciseSpot;
+
+        public override void Price(ReadOnlySpan<double> spots, Span<double> values, Span<double> standardErrors)
+        {
+            option.Value(spots, values);
+            standardErrors.Clear();
+        }
+    }
 }

@@ -34,8 +34,12 @@ internal static class PathContracts
         if (years == 0) return new ExpiringLookback(option.Strike, extreme, isCall);
         double[] looks = isContinuous ? [years] : [.. days.Select(d => Years(date, d))];
         return new PathFormula(seed, years, (rate, yield) => new LookbackPayoff(PathSchedule.Flat(looks, rate, yield, years), isContinuous, option.Strike, extreme, isCall),
-            [3, option.Strike ?? 0, isCall ? 1 : -1, isContinuous ? 1 : 0, extreme ?? 0, .. looks]);
+            [3, option.Strike ?? 0, isCall ? 1 : -1, isContinuous ? 1 : 0, extreme ?? 0, .. looks], Level(option.Strike, extreme, isCall));
     }
+
+    // Beyond the extreme so far, or the strike where that lies beyond it, the spot itself sets the extreme.
+    private static double? Level(double? strike, double? extreme, bool isCall) =>
+        strike is { } k && extreme is { } past ? (isCall ? Math.Max(k, past) : Math.Min(k, past)) : strike ?? extreme;
 
     private static double Years(DateOnly from, DateOnly to) => Curves.CurveTime.Between(from, to);
 
