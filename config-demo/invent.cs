@@ -42,6 +42,27 @@ internal sealed record Implied(string Of, string Calendar, double Level, double 
     public string Name => Of + ".vol";
 }
 
+/// <summary>
+/// A curve of zero rates. It keeps to a story (short and long rate at a few dates, straight lines between them) and wanders about it:
+/// a level and a slope that move by <paramref name="DailyMove"/> and half of it, and a little of each tenor's own.
+/// </summary>
+internal sealed record ZeroCurve(string Currency, string Calendar, double DailyMove, double[] Loadings, (DateOnly Date, double Short, double Long)[] Story)
+{
+    public static readonly (string Name, double Years)[] Tenors = [("3M", 0.25), ("1Y", 1), ("2Y", 2), ("5Y", 5), ("10Y", 10), ("20Y", 20)];
+
+    public string Name => Currency + ".zero";
+
+    public string Factor(string tenor) => Name + "." + tenor;
+}
+
+/// <summary>An issuer's spread over the zero curve: one factor, or a curve of its own where it has tenors. It reverts, and widens when markets fall.</summary>
+internal sealed record CreditSpread(string Of, string Currency, string Calendar, double Level, double[] Loadings, (string Name, double Years, double Ratio)[] Tenors)
+{
+    public string Name => Of + ".spread";
+
+    public string Factor(string tenor) => tenor == "" ? Name : Name + "." + tenor;
+}
+
 internal enum Driver
 {
     World,
@@ -50,6 +71,7 @@ internal enum Driver
     Energy,
     Metal,
     Harvest,
+    Interest,
 }
 
 internal static class World
@@ -107,10 +129,34 @@ internal static class World
         new("GBPUSD", "World", 0.082, -0.10),
     ];
 
+    //                                                                                         World Europe Dollar Energy Metal Harvest Interest
+    public static readonly ZeroCurve[] Curves =
+    [
+        new("EUR", "Lowland", 0.00042, [0.30, 0.15, 0, 0, 0, 0, 0.65],
+            [(Span.First, -0.0052, 0.0040), (new(2022, 8, 1), -0.0030, 0.0175), (new(2023, 10, 2), 0.0365, 0.0300), (new(2025, 3, 3), 0.0250, 0.0270), (Span.AsOf, 0.0205, 0.0290)]),
+        new("USD", "Atlantic", 0.00052, [0.25, 0, 0.15, 0, 0, 0, 0.70],
+            [(Span.First, 0.0030, 0.0165), (new(2023, 6, 1), 0.0480, 0.0370), (new(2024, 9, 2), 0.0470, 0.0375), (Span.AsOf, 0.0345, 0.0360)]),
+        new("GBP", "Isles", 0.00050, [0.25, 0.10, 0, 0, 0, 0, 0.62],
+            [(Span.First, 0.0035, 0.0105), (new(2023, 9, 1), 0.0495, 0.0410), (new(2025, 1, 2), 0.0450, 0.0430), (Span.AsOf, 0.0335, 0.0415)]),
+    ];
+
+    public static readonly CreditSpread[] Spreads =
+    [
+        new("Merrin", "EUR", "Lowland", 0.0115, [-0.36, -0.28, 0, 0, 0, 0], [("2Y", 2, 0.75), ("7Y", 7, 1.15)]),
+        new("Ostwal", "EUR", "Lowland", 0.0080, [-0.30, -0.28, 0, -0.10, 0, 0], [("", 0, 1)]),
+    ];
+
     // Irregularities worth a finding: a split, a quote that was never delivered, a price that stopped moving.
     public static readonly (string Factor, DateOnly Date, double Ratio, string Reason) Split = ("Boldenau", new(2025, 5, 12), 0.5, "two shares for one");
     public static readonly (string Factor, DateOnly Date) Missing = ("Cocoa", new(2025, 4, 3));
     public static readonly (string Factor, DateOnly Since) Frozen = ("Pellgate", new(2026, 11, 23));
+
+    /// <summary>The factors of a curve, or the one factor of that name, by tenor.</summary>
+    public static (string Factor, double Years)[] Points(string curve) =>
+    [
+        .. Curves.Where(c => c.Name == curve).SelectMany(c => ZeroCurve.Tenors.Select(t => (c.Factor(t.Name), t.Years))),
+        .. Spreads.Where(s => s.Name == curve).SelectMany(s => s.Tenors.Select(t => (s.Factor(t.Name), t.Years))),
+    ];
 
     /// <summary>Flat continuously compounded rates; they discount, and carry a currency against another.</summary>
     public static readonly Dictionary<string, double> Rates = new()
@@ -124,8 +170,11 @@ internal static class World
     };
 }
 
-/// <summary>A node of the book tree; opening cash and the size of a day's intraday trading in its own currency, leaf books only.</summary>
-internal sealed record Book(string Name, string Parent, string Title, string Currency, double Cash = 0, double Intraday = 0)
+/// <summary>
+/// A node of the book tree; opening cash and the size of a day's intraday trading in its own currency, leaf books only. What was
+/// <paramref name="Added"/> to the first invention draws from a stream of its own, so that the rest stays as it was.
+/// </summary>
+internal sealed record Book(string Name, string Parent, string Title, string Currency, double Cash = 0, double Intraday = 0, bool Added = false)
 {
     public bool IsLeaf => Cash > 0;
 }
@@ -141,6 +190,40 @@ internal enum Kind
     Forward,
     Call,
     Put,
+    CurveForward,
+    AmericanCall,
+    AmericanPut,
+    DigitalPut,
+    DownOutCall,
+    UpOutPut,
+    ArithmeticCall,
+    GeometricCall,
+    LookbackCall,
+    Bond,
+    Floater,
+    Swap,
+}
+
+/// <summary>
+/// A bond, floater or swap on the zero curve of its currency. It is issued whole periods before it matures, so that a fixed coupon
+/// is always the rate over the frequency. A frequency of 0 means that there is no such leg.
+/// </summary>
+internal sealed record RateProduct(
+    string Name, Kind Kind, string Currency, string Issuer, double Coupon, int Frequency, int FloatFrequency, double FloatSpread,
+    DateOnly Issue, DateOnly Maturity, string Spread = "", bool ReceivesFixed = true)
+{
+    public string Curve => Currency + ".zero";
+
+    public double Notional => Kind == Kind.Swap ? 1_000_000 : 100;
+
+    public static RateProduct Bond(string name, string currency, string issuer, double coupon, int frequency, DateOnly issue, DateOnly maturity, string spread = "") =>
+        new(name, Kind.Bond, currency, issuer, coupon, frequency, 0, 0, issue, maturity, spread);
+
+    public static RateProduct Floater(string name, string currency, string issuer, double floatSpread, int frequency, DateOnly issue, DateOnly maturity, string spread) =>
+        new(name, Kind.Floater, currency, issuer, 0, 0, frequency, floatSpread, issue, maturity, spread);
+
+    public static RateProduct Swap(string name, string currency, bool receivesFixed, double coupon, int frequency, int floatFrequency, DateOnly issue, DateOnly maturity) =>
+        new(name, Kind.Swap, currency, "", coupon, frequency, floatFrequency, 0, issue, maturity, "", receivesFixed);
 }
 
 /// <summary>
@@ -148,7 +231,7 @@ internal enum Kind
 /// trading wanders around that size. Dated contracts expire in March and September (cycle 0) or June and December (cycle 1)
 /// and roll half a year on, so that a line of each cycle keeps two expiries alive.
 /// </summary>
-internal sealed record Line(string Book, Kind Kind, string On, double Notional, double Moneyness = 1, int Cycle = 0);
+internal sealed record Line(string Book, Kind Kind, string On, double Notional, double Moneyness = 1, int Cycle = 0, bool Added = false);
 
 internal sealed record Limit(
     string Name, string Book, string Measure, string Confidence, int Days, string Amount, string Basis, string Reference,
@@ -168,6 +251,7 @@ internal static class Firm
         new("OpShare", "OPTION", "Options on shares", "EUR", 6_000_000, 8_000),
         new("OpWrite", "OPTION", "Index option writing", "EUR", 9_000_000, 6_000),
         new("OpFx", "OPTION", "Currency options", "EUR", 5_000_000, 5_000),
+        new("OpExotic", "OPTION", "Barriers and averages", "EUR", 1_500_000, 2_000, Added: true),
         new("COMMOD", "HOUSE", "Commodities", "EUR"),
         new("CoMetal", "COMMOD", "Base metals", "USD", 6_000_000, 12_000),
         new("CoEnergy", "COMMOD", "Oil and gas", "EUR", 7_000_000, 12_000),
@@ -176,10 +260,15 @@ internal static class Firm
         new("TrHedge", "TREAS", "Currency hedges", "EUR", 2_000_000, 2_000),
         new("TrCross", "TREAS", "Currency crosses", "EUR", 3_000_000, 4_000),
         new("TrCash", "TREAS", "Liquidity", "EUR", 30_000_000, 1_000),
+        new("RATES", "HOUSE", "Rates", "EUR"),
+        new("RtBond", "RATES", "Bonds and floaters", "EUR", 2_000_000, 4_000, Added: true),
+        new("RtSwap", "RATES", "Swaps", "EUR", 3_000_000, 4_000, Added: true),
+        new("RtDollar", "RATES", "Dollar rates", "USD", 2_500_000, 5_000, Added: true),
+        new("RtFund", "RATES", "Currency funding", "EUR", 1_500_000, 1_500, Added: true),
     ];
 
     /// <summary>Groups whose children keep other currencies report their own P&amp;L in EUR; that of the other groups is the sum of their children's.</summary>
-    public static readonly string[] ReportingGroups = ["HOUSE", "EQUITY", "COMMOD"];
+    public static readonly string[] ReportingGroups = ["HOUSE", "EQUITY", "COMMOD", "RATES"];
 
     public static readonly Underlying[] Underlyings =
     [
@@ -239,6 +328,26 @@ internal static class Firm
         ["Boldenau"] = ("Boldenau Devices", 620_000),
     };
 
+    public static readonly RateProduct[] RateProducts =
+    [
+        RateProduct.Bond("Vlier-28", "EUR", "State of Vlier", 0.0125, 1, new(2020, 5, 20), new(2028, 5, 20)),
+        RateProduct.Bond("Vlier-30", "EUR", "State of Vlier", 0.0225, 1, new(2023, 10, 15), new(2030, 10, 15)),
+        RateProduct.Bond("Vlier-34", "EUR", "State of Vlier", 0.0275, 1, new(2024, 4, 10), new(2034, 4, 10)),
+        RateProduct.Bond("Vlier-41", "EUR", "State of Vlier", 0.03, 1, new(2021, 9, 5), new(2041, 9, 5)),
+        RateProduct.Bond("Merrin-30", "EUR", "Merrin Bank", 0.035, 1, new(2024, 6, 12), new(2030, 6, 12), "Merrin.spread"),
+        RateProduct.Bond("Ostwal-33", "EUR", "Ostwal Grid", 0.0325, 1, new(2023, 2, 18), new(2033, 2, 18), "Ostwal.spread"),
+        RateProduct.Bond("Heathmoor-31", "GBP", "Heathmoor Insurance", 0.05, 2, new(2024, 7, 22), new(2031, 7, 22), "0.0135"),
+        RateProduct.Floater("Merrin-29F", "EUR", "Merrin Bank", 0.0095, 4, new(2024, 9, 16), new(2029, 9, 16), "Merrin.spread"),
+        RateProduct.Bond("Tamar-28", "USD", "Tamar Union", 0.0425, 2, new(2023, 8, 15), new(2028, 8, 15)),
+        RateProduct.Bond("Tamar-31", "USD", "Tamar Union", 0.04, 2, new(2024, 5, 15), new(2031, 5, 15)),
+        RateProduct.Bond("Tamar-36", "USD", "Tamar Union", 0.0425, 2, new(2024, 11, 15), new(2036, 11, 15)),
+        RateProduct.Swap("EUR-swap-29R", "EUR", true, 0.0245, 1, 2, new(2024, 3, 8), new(2029, 3, 8)),
+        RateProduct.Swap("EUR-swap-34P", "EUR", false, 0.0265, 1, 2, new(2024, 10, 24), new(2034, 10, 24)),
+        RateProduct.Swap("EUR-swap-45R", "EUR", true, 0.0285, 1, 2, new(2025, 1, 27), new(2045, 1, 27)),
+        RateProduct.Swap("USD-swap-30R", "USD", true, 0.0385, 2, 4, new(2025, 2, 11), new(2030, 2, 11)),
+        RateProduct.Swap("USD-swap-35P", "USD", false, 0.0395, 2, 4, new(2025, 6, 3), new(2035, 6, 3)),
+    ];
+
     public static readonly Line[] Lines =
     [
         .. Spots("EqLow", ("Brakvest", 4000), ("Corvane", 5000), ("Lindeholm", 3500), ("Merrin", 4500), ("Ostwal", 3000)),
@@ -281,6 +390,15 @@ internal static class Firm
         .. Forwards("TrCross", ("GBPUSD", 3000), ("CHFJPY", -2500), ("USDJPY", 2000)),
         .. new (string Currency, double Notional)[] { ("USD", 4000), ("GBP", 2500), ("NOK", 1500), ("CHF", 2000), ("JPY", 1200) }
             .Select(c => new Line("TrCash", Kind.Fx, c.Currency, c.Notional)),
+
+        .. Exotics("OpShare", (Kind.AmericanPut, "Brakvest", 0.95, 900), (Kind.AmericanCall, "Corvane", 1.02, 700), (Kind.AmericanPut, "Merrin", 0.98, -600), (Kind.AmericanCall, "Quinlane", 1.05, 600)),
+        .. Exotics("OpExotic", (Kind.DownOutCall, "Corvane", 1, 1200), (Kind.UpOutPut, "Heathmoor", 1, 900), (Kind.DigitalPut, "AtlIndex", 0.96, -250)),
+        .. Exotics("OpExotic", (Kind.ArithmeticCall, "Crude", 1.02, 1200), (Kind.GeometricCall, "Copper", 1, -1000), (Kind.LookbackCall, "LowIndex", 1, 700)),
+        .. RateLines("RtBond", ("Vlier-28", 3000), ("Vlier-30", 4000), ("Vlier-34", 3500), ("Vlier-41", 1000), ("Merrin-30", 2500), ("Ostwal-33", 2000), ("Heathmoor-31", 1200), ("Merrin-29F", 3000)),
+        .. RateLines("RtSwap", ("EUR-swap-29R", 20000), ("EUR-swap-34P", 14000), ("EUR-swap-45R", 6000)),
+        .. RateLines("RtDollar", ("Tamar-28", 2500), ("Tamar-31", 3000), ("Tamar-36", 1500), ("USD-swap-30R", 12000), ("USD-swap-35P", 3000)),
+        new("RtFund", Kind.CurveForward, "USD", -2500, Added: true),
+        new("RtFund", Kind.CurveForward, "GBP", -1500, Cycle: 1, Added: true),
     ];
 
     // One is meant to be breached (metal-var) and one to be near (option-es); the others have room.
@@ -298,6 +416,9 @@ internal static class Firm
         new("writing-es", "OpWrite", "es", "0.975", 1, "320000", "amount", "", "0.8", "2026-10-01", "Risk committee", "cut after the losses in March"),
         new("commodity-var", "COMMOD", "var", "0.99", 1, "400000", "amount", "", "0.8", "2025-01-02", "Risk committee", "yearly review"),
         new("metal-var", "CoMetal", "var", "0.99", 1, "170000", "amount", "", "0.8", "2026-11-25", "Risk committee", "cut until the desk has a second trader"),
+        new("exotic-es", "OpExotic", "es", "0.975", 1, "90000", "amount", "", "0.8", "2026-10-01", "Risk committee", "barriers and averages stay a sideline"),
+        new("rates-var", "RATES", "var", "0.99", 1, "220000", "amount", "", "0.8", "2026-01-02", "Risk committee", "yearly review"),
+        new("dollar-var", "RtDollar", "var", "0.99", 1, "110000", "amount", "", "0.8", "2026-01-02", "Risk committee", "yearly review"),
         new("treasury-var", "TREAS", "var", "0.99", 1, "200000", "amount", "", "0.9", "2025-01-02", "Risk committee", "treasury hedges and takes no view"),
     ];
 
@@ -314,6 +435,14 @@ internal static class Firm
 
     private static IEnumerable<Line> Forwards(string book, params (string On, double Notional)[] held) =>
         held.SelectMany(h => new[] { new Line(book, Kind.Forward, h.On, h.Notional), new Line(book, Kind.Forward, h.On, h.Notional, 1, 1) });
+
+    private static IEnumerable<Line> Exotics(string book, params (Kind Kind, string On, double Moneyness, double Notional)[] held) =>
+        held.Select(h => new Line(book, h.Kind, h.On, h.Notional, h.Moneyness, Added: true));
+
+    private static IEnumerable<Line> RateLines(string book, params (string Product, double Notional)[] held) =>
+        held.Select(h => new Line(book, Product(h.Product).Kind, h.Product, h.Notional, Added: true));
+
+    public static RateProduct Product(string name) => Array.Find(RateProducts, p => p.Name == name)!;
 
     private static IEnumerable<Line> Chain(string book, string on, params (Kind Right, double Moneyness, double Notional)[] legs) =>
         legs.SelectMany(l => new[] { new Line(book, l.Right, on, l.Notional, l.Moneyness), new Line(book, l.Right, on, l.Notional, l.Moneyness, 1) });
@@ -466,6 +595,8 @@ internal sealed class Market
         var moves = new Moves(market.Days);
         foreach (var factor in World.Factors) market.Price(factor, moves);
         foreach (var implied in World.Volatilities) market.Imply(implied, moves);
+        foreach (var curve in World.Curves) market.Draw(curve, moves);
+        foreach (var spread in World.Spreads) market.Widen(spread, moves);
         return market;
     }
 
@@ -473,6 +604,25 @@ internal sealed class Market
 
     /// <summary>EUR for one unit of <paramref name="currency"/>.</summary>
     public double Rate(string currency, int day) => currency == "EUR" ? 1 : Close(currency, day);
+
+    /// <summary>The zero rate, or spread, of a curve at <paramref name="years"/>: straight lines between tenors, flat beyond the ends.</summary>
+    public double Zero(string curve, int day, double years)
+    {
+        var points = World.Points(curve);
+        var next = Array.FindIndex(points, p => p.Years >= years);
+        if (next == 0 || points.Length == 1) return Close(points[0].Factor, day);
+        if (next < 0) return Close(points[^1].Factor, day);
+        var (before, after) = (points[next - 1], points[next]);
+        var weight = (years - before.Years) / (after.Years - before.Years);
+        return (1 - weight) * Close(before.Factor, day) + weight * Close(after.Factor, day);
+    }
+
+    /// <summary>The newest day of the market that is not after <paramref name="date"/>.</summary>
+    public int DayOf(DateOnly date)
+    {
+        var found = Array.BinarySearch(Days, date);
+        return found >= 0 ? found : ~found - 1;
+    }
 
     /// <summary>Shares earn a premium; commodities are slowly pulled back to what it costs to produce them.</summary>
     private void Price(Priced factor, Moves moves)
@@ -512,6 +662,54 @@ internal sealed class Market
         Print(implied.Name, implied.Calendar, 4, path);
     }
 
+    /// <summary>The short end moves less with the level than the long end, and more with the slope.</summary>
+    private void Draw(ZeroCurve curve, Moves moves)
+    {
+        const double reversion = 0.008;
+        var level = Wander(moves.Common(curve.Name + " level", curve.Loadings), reversion, curve.DailyMove);
+        var slope = Wander(moves.Common(curve.Name + " slope", []), reversion, curve.DailyMove / 2);
+        foreach (var (tenor, years) in ZeroCurve.Tenors)
+        {
+            var name = curve.Factor(tenor);
+            var own = Wander(moves.Common(name, []), 0.05, curve.DailyMove / 7);
+            var path = new double[Days.Length];
+            for (var t = 0; t < path.Length; t++)
+            {
+                var (brief, lasting) = Told(curve.Story, Days[t]);
+                path[t] = lasting + (brief - lasting) * Math.Exp(-years / 2.5) + level[t] * (1 - 0.65 * Math.Exp(-years)) + slope[t] * (Math.Exp(-years / 4) - 0.4) + own[t];
+            }
+
+            Print(name, curve.Calendar, 6, path);
+        }
+    }
+
+    private static (double Short, double Long) Told((DateOnly Date, double Short, double Long)[] story, DateOnly day)
+    {
+        var next = Math.Max(Array.FindIndex(story, s => s.Date >= day), 1);
+        var (from, to) = (story[next - 1], story[next]);
+        var way = (day.DayNumber - from.Date.DayNumber) / (double)(to.Date.DayNumber - from.Date.DayNumber);
+        return (from.Short + way * (to.Short - from.Short), from.Long + way * (to.Long - from.Long));
+    }
+
+    private void Widen(CreditSpread spread, Moves moves)
+    {
+        const double dailyMove = 0.018;
+        var common = Wander(moves.Common(spread.Name, spread.Loadings), 0.006, dailyMove);
+        foreach (var (tenor, _, ratio) in spread.Tenors)
+        {
+            var own = Wander(moves.Common(spread.Factor(tenor) + " own", []), 0.05, dailyMove / 5);
+            Print(spread.Factor(tenor), spread.Calendar, 6, [.. common.Zip(own, (c, o) => spread.Level * ratio * Math.Exp(c + o))]);
+        }
+    }
+
+    /// <summary>Steps of <paramref name="size"/> that are slowly pulled back to 0.</summary>
+    private static double[] Wander(double[] shocks, double reversion, double size)
+    {
+        var path = new double[shocks.Length];
+        for (var t = 1; t < path.Length; t++) path[t] = (1 - reversion) * path[t - 1] + size * shocks[t];
+        return path;
+    }
+
     /// <summary>Keeps what the market printed: rounded, on open days, with the irregularities.</summary>
     private void Print(string factor, string calendar, int decimals, double[] path)
     {
@@ -538,13 +736,17 @@ internal sealed class Market
 internal sealed class Moves
 {
     private readonly Dictionary<string, (double[] Shocks, double[] Turbulence)> _moves = [];
+    private readonly (double[] Shocks, double[] Variance)[] _drivers;
 
     public Moves(DateOnly[] days)
     {
         var stress = Array.ConvertAll(days, d => StressOn(days, d));
-        var drivers = Enum.GetValues<Driver>().Select(d => DriverPath(d, stress)).ToArray();
-        foreach (var factor in World.Factors) _moves[factor.Name] = Combine(factor, drivers);
+        _drivers = [.. Enum.GetValues<Driver>().Select(d => DriverPath(d, stress))];
+        foreach (var factor in World.Factors) _moves[factor.Name] = Combine(factor.Name, factor.Loadings, _drivers);
     }
+
+    /// <summary>Moves that share in the drivers by <paramref name="loadings"/>, the rest of their variance being of their own.</summary>
+    public double[] Common(string name, double[] loadings) => Combine(name, loadings, _drivers).Shocks;
 
     public double[] Of(string factor) => _moves[factor].Shocks;
 
@@ -584,20 +786,20 @@ internal sealed class Moves
         return (shocks, variance);
     }
 
-    private static (double[] Shocks, double[] Turbulence) Combine(Priced factor, (double[] Shocks, double[] Variance)[] drivers)
+    private static (double[] Shocks, double[] Turbulence) Combine(string name, double[] loadings, (double[] Shocks, double[] Variance)[] drivers)
     {
-        var own = new Turbulence("own " + factor.Name, asymmetric: false);
-        var ownShare = 1 - factor.Loadings.Sum(l => l * l);
+        var own = new Turbulence("own " + name, asymmetric: false);
+        var ownShare = 1 - loadings.Sum(l => l * l);
         var days = drivers[0].Shocks.Length;
         var (shocks, variance) = (new double[days], new double[days]);
         for (var t = 0; t < days; t++)
         {
             variance[t] = ownShare * own.Variance;
             shocks[t] = Math.Sqrt(ownShare) * own.Next();
-            for (var d = 0; d < drivers.Length; d++)
+            for (var d = 0; d < loadings.Length; d++)
             {
-                shocks[t] += factor.Loadings[d] * drivers[d].Shocks[t];
-                variance[t] += factor.Loadings[d] * factor.Loadings[d] * drivers[d].Variance[t];
+                shocks[t] += loadings[d] * drivers[d].Shocks[t];
+                variance[t] += loadings[d] * loadings[d] * drivers[d].Variance[t];
             }
         }
 
@@ -609,7 +811,217 @@ internal sealed class Moves
 // Instruments and their values
 // ---------------------------------------------------------------------------------------------------------------
 
-internal sealed record Instrument(string Name, Kind Kind, string On, string Currency, double Multiplier, double Strike = 0, DateOnly Expiry = default);
+internal sealed record Instrument(string Name, Kind Kind, string On, string Currency, double Multiplier, double Strike = 0, DateOnly Expiry = default)
+{
+    /// <summary>Where rates are read from: a curve, or where there is none the flat rate of the currency and the underlying's flat carry.</summary>
+    public string? Curve { get; init; }
+
+    public string? CarryCurve { get; init; }
+
+    /// <summary>Day on which an option that remembers its path began to.</summary>
+    public DateOnly Issue { get; init; }
+
+    public double Barrier { get; init; }
+
+    public DateOnly[] Fixings { get; init; } = [];
+
+    /// <summary>What a bond, floater or swap pays.</summary>
+    public RateProduct? Rates { get; init; }
+
+    /// <summary>Rate of the floating period that runs.</summary>
+    public double Fixing { get; init; }
+}
+
+/// <summary>The value of bonds, floaters and swaps: what they will pay, discounted on the zero curve and the issuer's spread.</summary>
+internal static class RateValuation
+{
+    private const double DaysOfFloating = 360;
+
+    public static double Value(Market market, Instrument held, int day)
+    {
+        var product = held.Rates!;
+        var (today, value) = (market.Days[day], 0.0);
+        foreach (var (_, end) in Periods(product, product.Frequency).Where(p => p.End > today)) value += Coupon(product) * Discount(market, product, day, end);
+        foreach (var (start, end) in Periods(product, product.FloatFrequency).Where(p => p.End > today))
+        {
+            var forward = start > today ? Growth(market, product, day, start, end) - 1 : held.Fixing * Floating(start, end);
+            value += SignOfFloating(product) * product.Notional * (forward + product.FloatSpread * Floating(start, end)) * Discount(market, product, day, end);
+        }
+
+        return product.Kind == Kind.Swap ? value : value + product.Notional * Discount(market, product, day, product.Maturity);
+    }
+
+    /// <summary>What one unit pays after the date <paramref name="from"/> and by <paramref name="to"/>.</summary>
+    public static double Paid(Instrument held, DateOnly from, DateOnly to)
+    {
+        var product = held.Rates!;
+        bool Falls((DateOnly, DateOnly End) period) => period.End > from && period.End <= to;
+        return Periods(product, product.Frequency).Count(Falls) * Coupon(product)
+            + Periods(product, product.FloatFrequency).Where(Falls).Sum(p => SignOfFloating(product) * product.Notional * (held.Fixing + product.FloatSpread) * Floating(p.Start, p.End));
+    }
+
+    /// <summary>The floating period that runs at the close of <paramref name="today"/>.</summary>
+    public static (DateOnly Start, DateOnly End) Running(RateProduct product, DateOnly today) => Periods(product, product.FloatFrequency).First(p => p.End > today);
+
+    /// <summary>Rate of a floating period, read from the curve on the last day of the market before it, as printed.</summary>
+    public static double Fixing(Market market, RateProduct product, (DateOnly Start, DateOnly End) period) =>
+        Math.Round((Growth(market, product, market.DayOf(period.Start), period.Start, period.End) - 1) / Floating(period.Start, period.End), 6);
+
+    private static IEnumerable<(DateOnly Start, DateOnly End)> Periods(RateProduct product, int frequency)
+    {
+        const int monthsOfYear = 12;
+        if (frequency == 0) yield break;
+        for (var (start, months) = (product.Issue, monthsOfYear / frequency); start < product.Maturity; start = start.AddMonths(months)) yield return (start, start.AddMonths(months));
+    }
+
+    private static double Coupon(RateProduct product) => product.Frequency == 0 ? 0 : (product.ReceivesFixed ? 1 : -1) * product.Notional * product.Coupon / product.Frequency;
+
+    private static int SignOfFloating(RateProduct product) => product.Kind == Kind.Swap && product.ReceivesFixed ? -1 : 1;
+
+    private static double Floating(DateOnly start, DateOnly end) => (end.DayNumber - start.DayNumber) / DaysOfFloating;
+
+    private static double Growth(Market market, RateProduct product, int day, DateOnly start, DateOnly end) =>
+        Math.Exp(Exponent(market, product.Curve, day, end) - Exponent(market, product.Curve, day, start));
+
+    private static double Discount(Market market, RateProduct product, int day, DateOnly paid) =>
+        Math.Exp(-Exponent(market, product.Curve, day, paid) - Exponent(market, product.Spread, day, paid));
+
+    private static double Exponent(Market market, string curve, int day, DateOnly date)
+    {
+        if (curve == "") return 0;
+        var years = Valuation.Years(market.Days[day], date);
+        return years * (double.TryParse(curve, NumberStyles.Float, CultureInfo.InvariantCulture, out var flat) ? flat : market.Zero(curve, day, years));
+    }
+}
+
+/// <summary>What an option's value rests on: spot, strike, rate, carry, volatility, years.</summary>
+internal readonly record struct Terms(double Spot, double Strike, double Rate, double Carry, double Volatility, double Years)
+{
+    public double Growth => Rate - Carry;
+
+    public double Deviation => Volatility * Math.Sqrt(Years);
+
+    public double Discount => Math.Exp(-Rate * Years);
+
+    public double Forward => Spot * Math.Exp(Growth * Years);
+}
+
+/// <summary>Options beyond the plain ones.</summary>
+internal static class Exotic
+{
+    public const double Payoff = 1000;
+
+    // Half a look's move, by which a barrier that is looked at daily lies farther away (Broadie, Glasserman, Kou 1997).
+    private const double ShiftOfLooks = 0.5826;
+    private const double LooksOfYear = 252;
+    private const int Steps = 300;
+
+    public static double Value(Market market, Instrument held, Terms terms, int day) => held.Kind switch
+    {
+        Kind.AmericanCall => American(terms, 1),
+        Kind.AmericanPut => American(terms, -1),
+        Kind.DigitalPut => Payoff * terms.Discount * Valuation.Normal(terms.Deviation / 2 - Math.Log(terms.Forward / terms.Strike) / terms.Deviation),
+        Kind.DownOutCall => OutLike(terms, held.Barrier, 1),
+        Kind.UpOutPut => OutLike(terms, held.Barrier * Math.Exp(ShiftOfLooks * terms.Volatility / Math.Sqrt(LooksOfYear)), -1),
+        Kind.ArithmeticCall => Arithmetic(terms, Past(market, held, day), ToCome(market, held, day)),
+        Kind.GeometricCall => Geometric(terms, Past(market, held, day), ToCome(market, held, day)),
+        Kind.LookbackCall => Lookback(terms, Lowest(market, held, day)),
+        _ => throw new InvalidOperationException(held.Name),
+    };
+
+    /// <summary>Whether a barrier is touched at the close of <paramref name="day"/>.</summary>
+    public static bool IsKnocked(Market market, Instrument held, int day) => held.Kind switch
+    {
+        Kind.DownOutCall => market.Close(held.On, day) <= held.Barrier,
+        Kind.UpOutPut => market.Close(held.On, day) >= held.Barrier,
+        _ => false,
+    };
+
+    /// <summary>The binomial tree of Cox, Ross and Rubinstein (1979); what it gets wrong for the plain option is taken off.</summary>
+    private static double American(Terms terms, int sign)
+    {
+        var step = terms.Years / Steps;
+        var up = Math.Exp(terms.Volatility * Math.Sqrt(step));
+        var chance = (Math.Exp(terms.Growth * step) - 1 / up) / (up - 1 / up);
+        var discount = Math.Exp(-terms.Rate * step);
+        var (early, late) = (new double[Steps + 1], new double[Steps + 1]);
+        double Exercise(int n, int ups) => sign * (terms.Spot * Math.Pow(up, 2 * ups - n) - terms.Strike);
+        for (var i = 0; i <= Steps; i++) early[i] = late[i] = Math.Max(Exercise(Steps, i), 0);
+        for (var n = Steps - 1; n >= 0; n--)
+        {
+            for (var i = 0; i <= n; i++)
+            {
+                late[i] = discount * (chance * late[i + 1] + (1 - chance) * late[i]);
+                early[i] = Math.Max(discount * (chance * early[i + 1] + (1 - chance) * early[i]), Exercise(n, i));
+            }
+        }
+
+        return Math.Max(early[0] - late[0] + Plain(terms, sign), sign * (terms.Spot - terms.Strike));
+    }
+
+    private static double Plain(Terms terms, int sign) => terms.Discount * Black(terms.Forward, terms.Strike, terms.Deviation, sign);
+
+    /// <summary>A down-and-out call with its barrier below the strike, or an up-and-out put with it above (Reiner and Rubinstein 1991).</summary>
+    private static double OutLike(Terms terms, double barrier, int sign)
+    {
+        if (sign * (terms.Spot - barrier) <= 0) return 0;
+        var mu = terms.Growth / (terms.Volatility * terms.Volatility) - 0.5;
+        var y = Math.Log(barrier * barrier / (terms.Spot * terms.Strike)) / terms.Deviation + (1 + mu) * terms.Deviation;
+        var ratio = barrier / terms.Spot;
+        var knockedIn = sign * terms.Discount * (terms.Forward * Math.Pow(ratio, 2 * (mu + 1)) * Valuation.Normal(sign * y)
+            - terms.Strike * Math.Pow(ratio, 2 * mu) * Valuation.Normal(sign * (y - terms.Deviation)));
+        return Plain(terms, sign) - knockedIn;
+    }
+
+    /// <summary>An average of log-normal prices taken for log-normal: its first two moments are matched (Turnbull and Wakeman 1991).</summary>
+    private static double Arithmetic(Terms terms, double[] past, double[] toCome)
+    {
+        var count = past.Length + toCome.Length;
+        var strike = terms.Strike - past.Sum() / count;
+        double Mean(double t) => terms.Spot * Math.Exp(terms.Growth * t) / count;
+        var mean = toCome.Sum(Mean);
+        if (strike <= 0) return terms.Discount * (mean - strike);
+        double Row(double a) => toCome.Sum(b => Mean(a) * Mean(b) * Math.Exp(terms.Volatility * terms.Volatility * Math.Min(a, b)));
+        var square = toCome.Sum(Row);
+        return terms.Discount * Black(mean, strike, Math.Sqrt(Math.Log(square / (mean * mean))), 1);
+    }
+
+    /// <summary>A geometric average is log-normal itself (Kemna and Vorst 1990).</summary>
+    private static double Geometric(Terms terms, double[] past, double[] toCome)
+    {
+        double count = past.Length + toCome.Length;
+        var drift = terms.Growth - terms.Volatility * terms.Volatility / 2;
+        var mean = (past.Sum(Math.Log) + toCome.Sum(t => Math.Log(terms.Spot) + drift * t)) / count;
+        double Row(double a) => toCome.Sum(b => Math.Min(a, b));
+        var variance = terms.Volatility * terms.Volatility * toCome.Sum(Row) / (count * count);
+        return terms.Discount * Black(Math.Exp(mean + variance / 2), terms.Strike, Math.Sqrt(variance), 1);
+    }
+
+    /// <summary>A call that buys at the lowest price since its issue (Goldman, Sosin and Gatto 1979).</summary>
+    private static double Lookback(Terms terms, double lowest)
+    {
+        var (growth, variance) = (terms.Growth, terms.Volatility * terms.Volatility);
+        var a = Math.Log(terms.Spot / lowest) / terms.Deviation + (growth / variance + 0.5) * terms.Deviation;
+        return terms.Discount * (terms.Forward * Valuation.Normal(a) - lowest * Valuation.Normal(a - terms.Deviation)
+            + terms.Spot * variance / (2 * growth) * (Math.Pow(terms.Spot / lowest, -2 * growth / variance) * Valuation.Normal(2 * growth * terms.Years / terms.Deviation - a)
+                - Math.Exp(growth * terms.Years) * Valuation.Normal(-a)));
+    }
+
+    private static double Black(double forward, double strike, double deviation, int sign)
+    {
+        var d1 = Math.Log(forward / strike) / deviation + deviation / 2;
+        return sign * (forward * Valuation.Normal(sign * d1) - strike * Valuation.Normal(sign * (d1 - deviation)));
+    }
+
+    private static double[] Past(Market market, Instrument held, int day) =>
+        [.. held.Fixings.Where(f => f <= market.Days[day]).Select(f => market.Close(held.On, market.DayOf(f)))];
+
+    private static double[] ToCome(Market market, Instrument held, int day) =>
+        [.. held.Fixings.Where(f => f > market.Days[day]).Select(f => Valuation.Years(market.Days[day], f))];
+
+    private static double Lowest(Market market, Instrument held, int day) =>
+        Enumerable.Range(0, day + 1).Where(t => market.Days[t] >= held.Issue).Min(t => market.Close(held.On, t));
+}
 
 internal static class Valuation
 {
@@ -628,9 +1040,25 @@ internal static class Valuation
         Kind.Fx => 1,
         Kind.Future => 0,
         Kind.Spot => Price(market, held.On, day),
-        Kind.Forward => Forward(market, held, day),
-        _ => Option(market, held, day),
+        Kind.Forward or Kind.CurveForward => Forward(market, held, day),
+        Kind.Call or Kind.Put => Option(market, held, day),
+        Kind.Bond or Kind.Floater or Kind.Swap => RateValuation.Value(market, held, day),
+        _ => Exotic.Value(market, held, TermsOf(market, held, day), day),
     };
+
+    /// <summary>The rate, and the carry, of an instrument that expires in <paramref name="years"/>.</summary>
+    public static (double Rate, double Carry) RatesOf(Market market, Instrument held, int day, double years) => (
+        held.Curve is null ? World.Rates[held.Currency] : market.Zero(held.Curve, day, years),
+        held.CarryCurve is null ? Underlying(held.On)!.Carry : market.Zero(held.CarryCurve, day, years));
+
+    private static Terms TermsOf(Market market, Instrument held, int day)
+    {
+        var years = Years(market.Days[day], held.Expiry);
+        var (rate, carry) = RatesOf(market, held, day, years);
+        return new(Price(market, held.On, day), held.Strike, rate, carry, Volatility(market, held, day), years);
+    }
+
+    private static double Volatility(Market market, Instrument held, int day) => Underlying(held.On)!.FlatVolatility ?? market.Close(held.On + ".vol", day);
 
     private static double Forward(Market market, Instrument held, int day)
     {
@@ -642,7 +1070,7 @@ internal static class Valuation
     private static double Option(Market market, Instrument held, int day)
     {
         var (spot, strike, years) = Discounted(market, held, day);
-        var volatility = Underlying(held.On)!.FlatVolatility ?? market.Close(held.On + ".vol", day);
+        var volatility = Volatility(market, held, day);
         var deviation = volatility * Math.Sqrt(years);
         var d1 = Math.Log(spot / strike) / deviation + deviation / 2;
         var sign = held.Kind == Kind.Call ? 1 : -1;
@@ -651,14 +1079,13 @@ internal static class Valuation
 
     private static (double Spot, double Strike, double Years) Discounted(Market market, Instrument held, int day)
     {
-        var underlying = Underlying(held.On)!;
         var years = Years(market.Days[day], held.Expiry);
-        var spot = Price(market, held.On, day) * Math.Exp(-underlying.Carry * years);
-        return (spot, held.Strike * Math.Exp(-World.Rates[held.Currency] * years), years);
+        var (rate, carry) = RatesOf(market, held, day, years);
+        return (Price(market, held.On, day) * Math.Exp(-carry * years), held.Strike * Math.Exp(-rate * years), years);
     }
 
     /// <summary>The normal distribution function: its Taylor series about 0 (Marsaglia 2004), in the tails Laplace's continued fraction.</summary>
-    private static double Normal(double x)
+    public static double Normal(double x)
     {
         const double tail = 3;
         if (x > tail) return 1 - UpperTail(x);
@@ -697,15 +1124,17 @@ internal sealed class Listing(Market market)
     public static double Lot(Instrument held) => held.Kind switch
     {
         Kind.Fx => 10_000,
-        Kind.Forward when Valuation.Underlying(held.On)!.Base is not null => 10_000,
+        Kind.Forward or Kind.CurveForward when Valuation.Underlying(held.On)!.Base is not null => 10_000,
+        Kind.Bond or Kind.Floater => 1000,
         Kind.Spot => 10,
         _ => 1,
     };
 
     public Instrument Cash(string currency) => Add(new("Cash-" + currency, Kind.Fx, currency, currency, 1));
 
-    /// <summary>Whether a dated contract is near enough to its expiry to be rolled.</summary>
-    public bool IsDue(Instrument held, int day) => held.Expiry != default && held.Expiry.DayNumber - market.Days[day].DayNumber < RollBeforeExpiry;
+    /// <summary>Whether a dated contract is near enough to its expiry to be rolled, or has been knocked out.</summary>
+    public bool IsDue(Instrument held, int day) =>
+        held.Expiry != default && (held.Expiry.DayNumber - market.Days[day].DayNumber < RollBeforeExpiry || Exotic.IsKnocked(market, held, day));
 
     /// <summary>The contract that <paramref name="line"/> deals in when it is opened or rolled on <paramref name="day"/>.</summary>
     public Instrument For(Line line, int day) => line.Kind switch
@@ -713,8 +1142,18 @@ internal sealed class Listing(Market market)
         Kind.Fx => Cash(line.On),
         Kind.Spot => Add(new(line.On, Kind.Spot, line.On, CurrencyOf(line.On), 1)),
         Kind.Future => Add(new(line.On + "-f", Kind.Future, line.On, CurrencyOf(line.On), Firm.FutureMultipliers[line.On])),
+        Kind.Bond or Kind.Floater or Kind.Swap => Paying(Firm.Product(line.On), day),
         _ => Dated(line, day),
     };
+
+    /// <summary>Where something floats, a row a period: the rate fixed for it is a term of the row, and the next period is another row.</summary>
+    private Instrument Paying(RateProduct product, int day)
+    {
+        if (product.FloatFrequency == 0) return Add(new(product.Name, product.Kind, product.Name, product.Currency, 1) { Rates = product });
+        var period = RateValuation.Running(product, market.Days[day]);
+        var name = product.Name + "." + period.Start.ToString("yyMM", CultureInfo.InvariantCulture);
+        return Add(new(name, product.Kind, product.Name, product.Currency, 1) { Rates = product, Fixing = RateValuation.Fixing(market, product, period) });
+    }
 
     private Instrument Dated(Line line, int day)
     {
@@ -722,20 +1161,61 @@ internal sealed class Listing(Market market)
         var expiry = NextExpiry(line.Cycle, market.Days[day]);
         var month = expiry.ToString("yyMM", CultureInfo.InvariantCulture);
         var price = Valuation.Price(market, line.On, day);
-        if (line.Kind == Kind.Forward) return Forward(underlying, expiry, $"{line.On}-fwd-{month}", price, day);
+        if (line.Kind == Kind.Forward) return Forward(new($"{line.On}-fwd-{month}", Kind.Forward, line.On, underlying.Currency, 1, 0, expiry), price, day);
+        if (line.Kind == Kind.CurveForward)
+        {
+            var (curve, carry) = (underlying.Currency + ".zero", underlying.Base + ".zero");
+            return Forward(new($"{line.On}-cfwd-{month}", Kind.CurveForward, line.On, underlying.Currency, 1, 0, expiry) { Curve = curve, CarryCurve = carry }, price, day);
+        }
 
         var strike = Math.Round(Math.Round(price * line.Moneyness / underlying.StrikeStep) * underlying.StrikeStep, 4);
+        if (line.Kind is not (Kind.Call or Kind.Put)) return Exotics(line.Kind, underlying, strike, expiry, day);
         var name = $"{line.On}-{month}-{(line.Kind == Kind.Call ? 'C' : 'P')}{Text.Short(strike)}";
         return Add(new(name, line.Kind, line.On, underlying.Currency, underlying.Multiplier, strike, expiry));
     }
 
-    /// <summary>Struck at the money to four digits, so that it is worth next to nothing when it is agreed.</summary>
-    private Instrument Forward(Underlying underlying, DateOnly expiry, string name, double price, int day)
+    /// <summary>What remembers its path bears the day of its issue in its name, since another day's remembers another path.</summary>
+    private Instrument Exotics(Kind kind, Underlying underlying, double strike, DateOnly expiry, int day)
     {
-        var years = Valuation.Years(market.Days[day], expiry);
-        var fair = price * Math.Exp((World.Rates[underlying.Currency] - underlying.Carry) * years);
-        var strike = Math.Round(fair, Text.DecimalsFor(fair, 4));
-        return Add(new(name, Kind.Forward, underlying.Name, underlying.Currency, 1, strike, expiry));
+        const double wayDown = 0.85;
+        const double wayUp = 1.15;
+        var issue = market.Days[day];
+        var (month, issued) = (expiry.ToString("yyMM", CultureInfo.InvariantCulture), issue.ToString("yyMMdd", CultureInfo.InvariantCulture));
+        Instrument Named(string ending, double struck, double multiplier) => new($"{underlying.Name}-{month}-{ending}", kind, underlying.Name, underlying.Currency, multiplier, struck, expiry);
+        var (plain, curve) = (Text.Short(strike), underlying.Currency + ".zero");
+        double Beyond(double way) => Math.Round(Math.Round(strike * way / underlying.StrikeStep) * underlying.StrikeStep, 4);
+        return Add(kind switch
+        {
+            Kind.AmericanCall => Named("AC" + plain, strike, underlying.Multiplier),
+            Kind.AmericanPut => Named("AP" + plain, strike, underlying.Multiplier),
+            Kind.DigitalPut => Named("DP" + plain, strike, 1) with { Curve = curve },
+            Kind.DownOutCall => Named($"DOC{plain}-{issued}", strike, underlying.Multiplier) with { Curve = curve, Issue = issue, Barrier = Beyond(wayDown) },
+            Kind.UpOutPut => Named($"UOP{plain}-{issued}", strike, underlying.Multiplier) with { Curve = curve, Issue = issue, Barrier = Beyond(wayUp) },
+            Kind.ArithmeticCall => Named($"AVC{plain}-{issued}", strike, underlying.Multiplier) with { Issue = issue, Fixings = [.. MonthEnds(underlying.Name, issue, expiry)] },
+            Kind.GeometricCall => Named($"GVC{plain}-{issued}", strike, underlying.Multiplier) with { Curve = curve, CarryCurve = curve, Issue = issue, Fixings = [.. MonthEnds(underlying.Name, issue, expiry)] },
+            _ => Named($"LBC-{issued}", 0, underlying.Multiplier) with { Issue = issue },
+        });
+    }
+
+    /// <summary>The last day of each month on which the factor is quoted, after <paramref name="from"/> and before <paramref name="to"/>.</summary>
+    private static IEnumerable<DateOnly> MonthEnds(string factor, DateOnly from, DateOnly to)
+    {
+        var calendar = Array.Find(World.Factors, f => f.Name == factor)!.Calendar;
+        for (var month = new DateOnly(from.Year, from.Month, 1).AddMonths(1); month <= to; month = month.AddMonths(1))
+        {
+            var last = month.AddDays(-1);
+            while (!Calendars.IsOpen(calendar, last)) last = last.AddDays(-1);
+            if (last > from) yield return last;
+        }
+    }
+
+    /// <summary>Struck at the money to four digits, so that it is worth next to nothing when it is agreed.</summary>
+    private Instrument Forward(Instrument agreed, double price, int day)
+    {
+        var years = Valuation.Years(market.Days[day], agreed.Expiry);
+        var (rate, carry) = Valuation.RatesOf(market, agreed, day, years);
+        var fair = price * Math.Exp((rate - carry) * years);
+        return Add(agreed with { Strike = Math.Round(fair, Text.DecimalsFor(fair, 4)) });
     }
 
     private Instrument Add(Instrument instrument)
@@ -779,8 +1259,8 @@ internal sealed class House(Market market)
     private const double FeeRate = 0.0001;
     private const double ExecutionNoise = 0.003;
 
-    private readonly Chance _trading = new("trading");
-    private readonly Chance _intraday = new("intraday");
+    private readonly (Chance Trading, Chance Intraday) _first = (new("trading"), new("intraday"));
+    private readonly (Chance Trading, Chance Intraday) _added = (new("trading added"), new("intraday added"));
     private readonly Listing _listing = new(market);
     private readonly Dictionary<Line, Holding> _holdings = [];
     private readonly Dictionary<(string Book, string Currency), double> _cash = [];
@@ -813,8 +1293,9 @@ internal sealed class House(Market market)
     private void LiveThrough(int before, int day)
     {
         SettleFutures(before, day);
+        CollectCoupons(before, day);
         foreach (var line in Firm.Lines) Trade(line, day);
-        foreach (var book in Firm.Books.Where(b => b.IsLeaf)) Pay(book.Name, book.Currency, book.Intraday * _intraday.FatTailed());
+        foreach (var book in Firm.Books.Where(b => b.IsLeaf)) Pay(book.Name, book.Currency, book.Intraday * StreamsOf(book.Added).Intraday.FatTailed());
 
         var opening = _values;
         Close(day);
@@ -834,20 +1315,35 @@ internal sealed class House(Market market)
         }
     }
 
+    private void CollectCoupons(int before, int day)
+    {
+        foreach (var line in Firm.Lines)
+        {
+            var (held, quantity, _) = _holdings[line];
+            if (held.Rates is not null) Pay(line.Book, held.Currency, quantity * RateValuation.Paid(held, market.Days[before], market.Days[day]));
+        }
+    }
+
+    private (Chance Trading, Chance Intraday) StreamsOf(bool added) => added ? _added : _first;
+
     private void Trade(Line line, int day)
     {
+        var trading = StreamsOf(line.Added).Trading;
+        var trades = trading.Uniform() < ChanceOfTrade;
+        var swing = SwingOfTrade * (2 * trading.Uniform() - 1);
+
+        // What floats may have begun a new period, whose row takes the old one's place.
         var holding = _holdings[line];
-        var trades = _trading.Uniform() < ChanceOfTrade;
-        var swing = SwingOfTrade * (2 * _trading.Uniform() - 1);
+        if (holding.Held.Rates is not null) _holdings[line] = holding = holding with { Held = _listing.For(line, day) };
         if (_listing.IsDue(holding.Held, day))
         {
-            Buy(line.Book, holding.Held, -holding.Quantity, day);
+            Buy(line, holding.Held, -holding.Quantity, day);
             Open(line, day);
         }
         else if (trades)
         {
             var aim = InLots(holding.Held, holding.Opened * (1 + swing));
-            Buy(line.Book, holding.Held, aim - holding.Quantity, day);
+            Buy(line, holding.Held, aim - holding.Quantity, day);
             _holdings[line] = holding with { Quantity = aim };
         }
     }
@@ -856,21 +1352,22 @@ internal sealed class House(Market market)
     {
         var held = _listing.For(line, day);
         var quantity = InLots(held, line.Notional * 1000 / (Exposure(held, day) * market.Rate(held.Currency, day)));
-        Buy(line.Book, held, quantity, day);
+        Buy(line, held, quantity, day);
         _holdings[line] = new(held, quantity, quantity);
     }
 
     /// <summary>Pays the value at the close; the price really dealt at was a little off it, and a fee is due.</summary>
-    private void Buy(string book, Instrument held, double quantity, int day)
+    private void Buy(Line line, Instrument held, double quantity, int day)
     {
+        var book = line.Book;
         var value = quantity * Valuation.Value(market, held, day);
         if (held.Kind == Kind.Fx) Pay(book, "EUR", -value * market.Rate(held.Currency, day));
         else Pay(book, held.Currency, -value);
 
-        // Options, forwards and currencies are dealt at tighter prices than shares, measured on what they are written on.
-        var tightness = held.Kind is Kind.Spot or Kind.Future ? 1 : 0.1;
+        // Options, forwards and currencies are dealt at tighter prices than shares, measured on what they are written on; bonds and swaps too.
+        var tightness = held.Kind is Kind.Spot or Kind.Future ? 1 : held.Rates is null ? 0.1 : 0.05;
         var size = Math.Abs(quantity * Exposure(held, day)) * tightness;
-        Pay(book, held.Currency, size * (ExecutionNoise * _intraday.Normal() - FeeRate));
+        Pay(book, held.Currency, size * (ExecutionNoise * StreamsOf(line.Added).Intraday.Normal() - FeeRate));
     }
 
     /// <summary>Cash is kept in whole units.</summary>
@@ -878,7 +1375,13 @@ internal sealed class House(Market market)
         _cash[(book, currency)] = Math.Round(_cash.GetValueOrDefault((book, currency)) + amount);
 
     private double Exposure(Instrument held, int day) =>
-        held.Multiplier * (held.Kind == Kind.Fx ? 1 : Valuation.Price(market, held.On, day));
+        held.Multiplier * held.Kind switch
+        {
+            Kind.Fx => 1,
+            Kind.DigitalPut => Exotic.Payoff,
+            Kind.Bond or Kind.Floater or Kind.Swap => held.Rates!.Notional,
+            _ => Valuation.Price(market, held.On, day),
+        };
 
     private static double InLots(Instrument held, double quantity)
     {
@@ -941,45 +1444,97 @@ internal sealed class Feed(string folder)
     private const string OddUnderlying = "Corvane";
     private const double OddFactor = 1.06;
 
+    private static readonly string[] s_columns =
+    [
+        "instrument", "kind", "currency", "multiplier", "factor", "base_currency", "strike", "expiry", "right", "style", "vol", "vol_factor", "curve", "carry", "issuer", "lot", "daily_volume",
+        "coupon", "frequency", "day_count", "issue", "maturity", "notional", "spread", "projection", "float_frequency", "float_day_count", "float_spread", "last_fixing", "receive",
+        "payoff", "barrier", "barrier_kind", "monitoring", "average", "fixings",
+    ];
+
     public void Write(Market market, House house)
     {
         Table("books.csv", "book,parent,name,currency", Firm.Books.Select(b => $"{b.Name},{b.Parent},{b.Title},{b.Currency}"));
-        Table("factors.csv", "factor,class,shock,currency,calendar", Factors());
+        Table("factors.csv", "factor,class,shock,currency,calendar,curve,tenor_years", Factors());
         Table("holidays.csv", "calendar,date", Calendars.Holidays().Select(h => $"{h.Calendar},{Text.Date(h.Date)}"));
         Table("adjustments.csv", "factor,date,ratio,reason", [$"{World.Split.Factor},{Text.Date(World.Split.Date)},{Text.Short(World.Split.Ratio)},{World.Split.Reason}"]);
         Table("observations.csv", "date,factor,value", market.Quotes.OrderBy(q => q.Day).Select(q => $"{Text.Date(market.Days[q.Day])},{q.Factor},{q.Value}"));
-        Table("instruments.csv", "instrument,kind,currency,multiplier,factor,base_currency,strike,expiry,right,style,vol,vol_factor,curve,carry,issuer,lot,daily_volume", house.Instruments.Select(Instrument));
+        Table("instruments.csv", string.Join(',', s_columns), house.Instruments.Select(Instrument));
         Table("positions.csv", "as_of,book,instrument,quantity,market_value", Positions(market, house));
         Table("limits.csv", "limit,book,measure,confidence,horizon_days,amount,basis,reference_book,warn_at,valid_from,approver,reason", Firm.Limits.Select(Limit));
         Table("pnl.csv", "date,book,actual", house.Pnl.Select(p => $"{Text.Date(market.Days[p.Day])},{p.Book},{Text.Plain(p.Amount, 0)}"));
     }
 
     private static IEnumerable<string> Factors() => World.Factors
-        .Select(f => $"{f.Name},{f.Class},lognormal,{f.Currency},{f.Calendar}")
-        .Concat(World.Volatilities.Select(v => $"{v.Name},vol,lognormal,,{v.Calendar}"));
+        .Select(f => $"{f.Name},{f.Class},lognormal,{f.Currency},{f.Calendar},,")
+        .Concat(World.Volatilities.Select(v => $"{v.Name},vol,lognormal,,{v.Calendar},,"))
+        .Concat(World.Curves.SelectMany(c => ZeroCurve.Tenors.Select(t => $"{c.Factor(t.Name)},rate,normal,{c.Currency},{c.Calendar},{c.Name},{Text.Short(t.Years)}")))
+        .Concat(World.Spreads.SelectMany(s => s.Tenors.Select(t => $"{s.Factor(t.Name)},credit,normal,{s.Currency},{s.Calendar}," + (t.Name == "" ? "," : $"{s.Name},{Text.Short(t.Years)}"))));
 
     private static string Instrument(Instrument i)
     {
-        var multiplier = i.Multiplier == 1 ? "" : Text.Short(i.Multiplier);
-        var (issuer, dailyVolume) = Firm.Issuers.GetValueOrDefault(i.On, ("", 0));
-        var name = $"{i.Name},{Spelling(i.Kind)},{i.Currency},{multiplier}";
-        var lot = i.Kind == Kind.Fx ? "" : Text.Short(Listing.Lot(i));
-        var trading = $"{issuer},{lot},{(i.Kind == Kind.Spot && dailyVolume > 0 ? Text.Short(dailyVolume) : "")}";
-        return i.Kind switch
+        var cells = i.Kind switch
         {
-            Kind.Fx => $"{name},,,,,,,,,,,{trading}",
-            Kind.Spot or Kind.Future => $"{name},{i.On},,,,,,,,,,{trading}",
-            _ => $"{name},{DatedTerms(i)},{trading}",
+            Kind.Fx => [],
+            Kind.Spot or Kind.Future => new() { ["factor"] = i.On },
+            _ when i.Rates is { } product => RateTerms(product, i.Fixing),
+            _ => DatedTerms(i),
         };
+        var (issuer, dailyVolume) = i.Rates is { } rates ? (rates.Issuer, 0) : Firm.Issuers.GetValueOrDefault(i.On, ("", 0));
+        (cells["instrument"], cells["kind"], cells["currency"], cells["issuer"]) = (i.Name, Spelling(i.Kind), i.Currency, issuer);
+        if (i.Multiplier != 1) cells["multiplier"] = Text.Short(i.Multiplier);
+        if (i.Kind != Kind.Fx) cells["lot"] = Text.Short(Listing.Lot(i));
+        if (i.Kind == Kind.Spot && dailyVolume > 0) cells["daily_volume"] = Text.Short(dailyVolume);
+        return string.Join(',', s_columns.Select(c => cells.GetValueOrDefault(c, "")));
     }
 
-    private static string DatedTerms(Instrument i)
+    private static Dictionary<string, string> DatedTerms(Instrument i)
     {
         var underlying = Valuation.Underlying(i.On)!;
-        var on = underlying.Base is null ? $"{i.On}," : $",{underlying.Base}";
-        var volatility = underlying.FlatVolatility is { } flat ? $"{Text.Short(flat)}," : $",{i.On}.vol";
-        var right = i.Kind == Kind.Forward ? ",,," : $"{(i.Kind == Kind.Call ? "call" : "put")},european,{volatility}";
-        return $"{on},{Text.Short(i.Strike)},{Text.Date(i.Expiry)},{right},{Text.Short(World.Rates[i.Currency])},{Text.Short(underlying.Carry)}";
+        var cells = new Dictionary<string, string>
+        {
+            [underlying.Base is null ? "factor" : "base_currency"] = underlying.Base ?? i.On,
+            ["strike"] = i.Kind == Kind.LookbackCall ? "" : Text.Short(i.Strike),
+            ["expiry"] = Text.Date(i.Expiry),
+            ["curve"] = i.Curve ?? Text.Short(World.Rates[i.Currency]),
+            ["carry"] = i.CarryCurve ?? Text.Short(underlying.Carry),
+        };
+        if (i.Kind is Kind.Forward or Kind.CurveForward) return cells;
+        cells["right"] = i.Kind is Kind.Put or Kind.AmericanPut or Kind.DigitalPut or Kind.UpOutPut ? "put" : "call";
+        cells["style"] = i.Kind is Kind.AmericanCall or Kind.AmericanPut ? "american" : "european";
+        if (underlying.FlatVolatility is { } flat) cells["vol"] = Text.Short(flat);
+        else cells["vol_factor"] = i.On + ".vol";
+        foreach (var (column, text) in ExoticTerms(i)) cells[column] = text;
+        return cells;
+    }
+
+    private static (string Column, string Text)[] ExoticTerms(Instrument i) => i.Kind switch
+    {
+        Kind.DigitalPut => [("payoff", "cash"), ("notional", Text.Short(Exotic.Payoff))],
+        Kind.DownOutCall => [("barrier", Text.Short(i.Barrier)), ("barrier_kind", "down-out"), ("monitoring", "continuous"), ("issue", Text.Date(i.Issue))],
+        Kind.UpOutPut => [("barrier", Text.Short(i.Barrier)), ("barrier_kind", "up-out"), ("monitoring", "daily"), ("issue", Text.Date(i.Issue))],
+        Kind.ArithmeticCall => [("average", "arithmetic"), ("fixings", string.Join(';', i.Fixings.Select(Text.Date)))],
+        Kind.GeometricCall => [("average", "geometric"), ("fixings", string.Join(';', i.Fixings.Select(Text.Date)))],
+        Kind.LookbackCall => [("monitoring", "continuous"), ("issue", Text.Date(i.Issue))],
+        _ => [],
+    };
+
+    private static Dictionary<string, string> RateTerms(RateProduct product, double fixing)
+    {
+        var cells = new Dictionary<string, string> { ["issue"] = Text.Date(product.Issue), ["maturity"] = Text.Date(product.Maturity), ["curve"] = product.Curve, ["spread"] = product.Spread };
+        if (product.Kind == Kind.Swap) (cells["notional"], cells["receive"]) = (Text.Short(product.Notional), product.ReceivesFixed ? "fixed" : "float");
+        if (product.Frequency > 0)
+        {
+            (cells["coupon"], cells["frequency"]) = (Text.Short(product.Coupon), Text.Short(product.Frequency));
+            cells["day_count"] = product.Kind == Kind.Swap || product.Spread != "" ? "30/360" : "ACT/ACT";
+        }
+
+        if (product.FloatFrequency > 0)
+        {
+            (cells["projection"], cells["float_frequency"], cells["float_day_count"]) = (product.Curve, Text.Short(product.FloatFrequency), "ACT/360");
+            (cells["float_spread"], cells["last_fixing"]) = (product.FloatSpread == 0 ? "" : Text.Short(product.FloatSpread), Text.Short(fixing));
+        }
+
+        return cells;
     }
 
     private static string Spelling(Kind kind) => kind switch
@@ -987,7 +1542,14 @@ internal sealed class Feed(string folder)
         Kind.Spot => "spot",
         Kind.Fx => "fx",
         Kind.Future => "future",
-        Kind.Forward => "forward",
+        Kind.Forward or Kind.CurveForward => "forward",
+        Kind.DigitalPut => "digital",
+        Kind.DownOutCall or Kind.UpOutPut => "barrier",
+        Kind.ArithmeticCall or Kind.GeometricCall => "asian",
+        Kind.LookbackCall => "lookback",
+        Kind.Bond => "bond",
+        Kind.Floater => "floater",
+        Kind.Swap => "swap",
         _ => "option",
     };
 

@@ -1,4 +1,6 @@
 using RiskWorker.Domain.Books;
+using RiskWorker.Domain.Instruments;
+using RiskWorker.Domain.Market;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Engine.Calibration;
 using RiskWorker.Engine.Measures;
@@ -13,7 +15,10 @@ namespace RiskWorker.Benchmarks.WalkForward;
 /// <summary>VaR 99% and ES 97.5% of the whole firm on one past day.</summary>
 internal readonly record struct DayMeasures(DateOnly Date, MeasureResult Var, MeasureResult Es);
 
-/// <summary>Today's positions measured day by day on what was known then: the engine's calibration, plan and sampler for each day.</summary>
+/// <summary>
+/// Today's positions measured day by day on what was known then: the engine's calibration, plan and sampler for each day. As in NumPy,
+/// only log-normal factors, and cash, spot, futures, forwards and European options at flat rates.
+/// </summary>
 internal sealed class FixedPositions
 {
     private const decimal Level = 0.95m;
@@ -30,7 +35,7 @@ internal sealed class FixedPositions
     public FixedPositions(string configFolder, int scenarios, ulong seed)
     {
         (_scenarios, _seed) = (scenarios, seed);
-        _today = SnapshotOf(configFolder);
+        _today = Plain(SnapshotOf(configFolder));
         _tree = BookTree.Build(_today.Books).Tree!;
     }
 
@@ -69,6 +74,34 @@ internal sealed class FixedPositions
         var all = Enumerable.Range(0, plan.Nodes.Count).Select(node => new DayMeasures(day, measures.Of(node, s_var, Level), measures.Of(node, s_es, Level))).ToList();
         return all[0];
     }
+
+    private static Snapshot Plain(Snapshot all)
+    {
+        Factor[] factors = [.. all.Factors.Where(f => f.Shock == ShockKind.Lognormal)];
+        var observations = new List<Observation>();
+        foreach (var factor in factors)
+        {
+            var column = all.Observations.Column(all.Observations.ColumnOf(factor.Name));
+            for (var t = 0; t < column.Length; t++)
+            {
+                if (!double.IsNaN(column[t])) observations.Add(new(all.Observations.Dates[t], factor.Name, column[t]));
+            }
+        }
+        return all with
+        {
+            Factors = factors,
+            Observations = ObservationHistory.From(factors.Select(f => f.Name), observations),
+            Positions = [.. all.Positions.Where(p => IsPlain(all.Instruments[p.Instrument]))],
+        };
+    }
+
+    private static bool IsPlain(Instrument instrument) => instrument switch
+    {
+        Cash or Spot or Future => true,
+        Forward f => f.Curve?.Curve is null && f.Carry?.Curve is null,
+        Option o => o.Style == ExerciseStyle.European && o.Curve?.Curve is null && o.Carry?.Curve is null,
+        _ => false,
+    };
 
     private static Snapshot SnapshotOf(string configFolder)
     {

@@ -3,6 +3,7 @@ last days the model calibrated on what was known then, moves drawn, every positi
 
   walk_forward.py FOLDER [--days 750] [--scenarios 50000] [--seed 1] [--draw-once]
 
+Only what a plain loop values is taken: log-normal factors; cash, spot, futures, forwards and European options at flat rates.
 EWMA 0.94 over the newest 500 days that are complete over all factors, zero expected return, log-normal moves over one day. With
 --draw-once the standard normals are drawn before the loop and serve every day. Prints one JSON object.
 """
@@ -26,7 +27,7 @@ def read(name):
 
 
 # Factors, prices on open days, and the daily log-return of each factor where it has one.
-factors = sorted(read("factors.csv"), key=lambda r: r["factor"])
+factors = sorted((r for r in read("factors.csv") if r["shock"] == "lognormal"), key=lambda r: r["factor"])
 at = {r["factor"]: j for j, r in enumerate(factors)}
 F = len(factors)
 observations = read("observations.csv")
@@ -34,7 +35,8 @@ dates = sorted({r["date"] for r in observations})
 row = {d: t for t, d in enumerate(dates)}
 prices = np.full((len(dates), F), np.nan)
 for r in observations:
-    prices[row[r["date"]], at[r["factor"]]] = float(r["value"])
+    if r["factor"] in at:
+        prices[row[r["date"]], at[r["factor"]]] = float(r["value"])
 holidays = {}
 for r in read("holidays.csv"):
     holidays.setdefault(r["calendar"], set()).add(r["date"])
@@ -82,14 +84,24 @@ rate_factor = {f["currency"]: at[f["factor"]] for f in factors if f["class"] == 
 instruments = {r["instrument"]: r for r in read("instruments.csv")}
 positions = read("positions.csv")
 today = max(r["as_of"] for r in positions)
+number = lambda text: float(text) if text else 0.0
+
+
+def is_plain(i):
+    try:
+        number(i["curve"]), number(i["carry"])
+    except ValueError:
+        return False
+    return i["kind"] in ("fx", "spot", "future", "forward") or i["kind"] == "option" and i["style"] == "european"
+
+
 held = {}
 for r in positions:
-    if r["as_of"] == today:
+    if r["as_of"] == today and is_plain(instruments[r["instrument"]]):
         key = (r["book"], r["instrument"])
         held[key] = held.get(key, 0.0) + float(r["quantity"])
 cells = sorted({(book_at[b], instruments[i]["currency"]) for b, i in held})
 cell_at = {c: k for k, c in enumerate(cells)}
-number = lambda text: float(text) if text else 0.0
 
 lines = []
 for (b, name), quantity in held.items():

@@ -11,11 +11,11 @@ public sealed class DemoTests(DemoRun demo) : IClassFixture<DemoRun>
     public void Measure_demo_breaches_one_limit_and_warns_of_one()
     {
         Assert.Equal((1, 1), (demo.First.Code, demo.Second.Code));
-        Assert.Contains("1 of 13 limits is breached.", demo.First.Output, StringComparison.Ordinal);
+        Assert.Contains("1 of 16 limits is breached.", demo.First.Output, StringComparison.Ordinal);
         var statuses = Results(demo.FirstFolder)["limits"]!.AsArray().ToLookup(l => (string)l!["status"]!, l => (string)l!["limit"]!);
         Assert.Equal(["metal-var"], statuses["breached"]);
         Assert.Equal(["option-es"], statuses["warning"]);
-        Assert.Equal(11, statuses["within"].Count());
+        Assert.Equal(14, statuses["within"].Count());
     }
 
     [Fact]
@@ -33,7 +33,7 @@ public sealed class DemoTests(DemoRun demo) : IClassFixture<DemoRun>
     public void Pdf_says_what_is_breached()
     {
         var text = PdfWords(demo.FirstFolder);
-        Assert.Contains("One of thirteen limits is breached", text, StringComparison.Ordinal);
+        Assert.Contains("One of sixteen limits is breached", text, StringComparison.Ordinal);
         Assert.Contains("metal-var", text, StringComparison.Ordinal);
         Assert.Contains((string)Results(demo.FirstFolder)["run"]!, text, StringComparison.Ordinal);
     }

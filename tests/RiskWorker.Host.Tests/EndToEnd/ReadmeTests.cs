@@ -27,7 +27,7 @@ public sealed partial class ReadmeTests : IDisposable
 
         Assert.True(ending.Code == 1, $"Exit code {ending.Code}: {ending.Error}");
         Assert.Contains("250 past dates filled, marked as backfilled.", ending.Output, StringComparison.Ordinal);
-        Assert.Contains("1 of 13 limits is breached.", ending.Output, StringComparison.Ordinal);
+        Assert.Contains("1 of 16 limits is breached.", ending.Output, StringComparison.Ordinal);
         var file = Directory.GetFiles(_out.Path, "results.json", SearchOption.AllDirectories).Single();
         using var results = JsonDocument.Parse(await File.ReadAllBytesAsync(file, TestContext.Current.CancellationToken));
         Assert.NotEmpty(results.RootElement.GetProperty("backtest").EnumerateArray());
