@@ -200,12 +200,28 @@ public sealed class VerifyRunTests(MeasuredRuns runs) : IClassFixture<MeasuredRu
         Assert.Equal((VerifyOutcome.Equal, VerifyOutcome.Equal), (Check(report, VerifiedThing.Chain).Outcome, Check(report, VerifiedThing.Record).Outcome));
     }
 
+    // A version before it had none; a later one may say it better. Neither is tampering.
+    [Theory]
+    [InlineData(false)]
+    [InlineData(true)]
+    public async Task RunAsync_other_words_on_the_methods_are_no_difference(bool hasWords)
+    {
+        Assert.NotEmpty(Stored(runs.Recorded).Results.Methods);
+        ValuationMethod[] methods = hasWords ? [new("spot", "a price", "S", "a rule", "a caution", 7)] : [];
+
+        var report = await VerifyAsync(Append(Numerics.NumericsEpoch.Current, results => results with { Methods = methods }));
+
+        Assert.Equal(VerifyOutcome.Equal, Check(report, VerifiedThing.Figures).Outcome);
+    }
+
     /// <summary>Stores the recorded run once more, under another epoch and with another value of the firm, properly chained.</summary>
-    private string AppendOfEpoch(int epoch, Func<double, double> value)
+    private string AppendOfEpoch(int epoch, Func<double, double> value) =>
+        Append(epoch, results => results with { Nodes = [.. results.Nodes.Select((node, i) => i == 0 ? node with { Value = value(node.Value) } : node)] });
+
+    private string Append(int epoch, Func<RunResults, RunResults> change)
     {
         var record = Stored(runs.Recorded);
-        var nodes = record.Results.Nodes.Select((node, i) => i == 0 ? node with { Value = value(node.Value) } : node);
-        var results = record.Results with { Nodes = [.. nodes] };
+        var results = change(record.Results);
         record = record with { Run = RunIdentity.Of(record.Snapshot, 2), Attempt = 2, Epoch = epoch, Results = results, Figures = FiguresHash.Of(results) };
         using var store = RiskStore.Open(MeasuredRuns.WorkspaceIn(_folder).StoreFile);
         store.Runs.Append(record);
