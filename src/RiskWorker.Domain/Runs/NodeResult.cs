@@ -33,12 +33,20 @@ public sealed record NodeResult
     /// <summary>Measures in the reporting currency; null where that is the node's own.</summary>
     public IReadOnlyList<MeasureResult>? MeasuresRoot { get; init; }
 
+    /// <summary>How far prices found by numerical methods may carry its value, in its currency; null where none of its positions has such a price.</summary>
+    public PriceError? PriceError { get; init; }
+
     /// <summary>Distribution of profit by horizon, in the node's currency.</summary>
     public required IReadOnlyList<ProfitDistribution> Distributions { get; init; }
 
     /// <summary>The measures in the reporting currency, whichever list holds them.</summary>
     public IReadOnlyList<MeasureResult> InReportingCurrency => MeasuresRoot ?? Measures;
 }
+
+/// <summary>The error of prices found by numerical methods, in the currency of a node: position by position, added without regard to sign.</summary>
+/// <param name="Table">Largest error of the tables that scenarios are valued by.</param>
+/// <param name="Standard">Standard error of those prices that are simulated; they share their draws, so it adds up instead of averaging out.</param>
+public sealed record PriceError(double Table, double Standard);
 
 /// <summary>A measure with its sampling interval. Positive is a loss.</summary>
 /// <param name="Spec">What is measured.</param>

@@ -12,6 +12,7 @@ public static class NodeResults
     public static IReadOnlyList<NodeResult> Of(BookTree tree, RevaluationPlan plan, LookOutcome outcome, IReadOnlyList<MeasureSpec> measures, IReadOnlyList<Position> positions)
     {
         var held = positions.CountBy(p => p.Book, StringComparer.Ordinal).ToDictionary(StringComparer.Ordinal);
+        var errors = PriceErrors.Of(plan);
         var sums = outcome.Record.Sums.Total();
         return [.. tree.Books.Select((book, node) => Of(book, node))];
 
@@ -28,6 +29,7 @@ public static class NodeResults
                 Currency = book.Currency,
                 Value = value / plan.Currencies[plan.Nodes[node].Currency].Rate,
                 ValueRoot = value,
+                PriceError = errors[node],
                 Positions = held.GetValueOrDefault(book.Name),
                 Measures = [.. measures.Select(m => outcome.Measures.Of(node, m, outcome.Level))],
                 MeasuresRoot = own ? [.. measures.Select(m => outcome.Measures.Of(node, m, outcome.Level, inReportingCurrency: true))] : null,

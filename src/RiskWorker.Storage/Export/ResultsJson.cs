@@ -90,6 +90,13 @@ public static class ResultsJson
         json.WriteNumber("depth", node.Depth);
         json.Number("valueRoot", node.ValueRoot);
         json.WriteNumber("positions", node.Positions);
+        if (node.PriceError is { } error)
+        {
+            json.WriteStartObject("priceError");
+            json.Number("table", error.Table);
+            json.Number("standard", error.Standard);
+            json.WriteEndObject();
+        }
         json.Array("distributions", node.Distributions, Distribution);
     }
 

@@ -8,7 +8,15 @@ internal static class MethodsTable
 {
     public static Block[] Blocks(RunReading run) => run.Results.Methods.Count == 0
         ? []
-        : [new Heading("How positions are valued", 3), Table(run.Results.Methods)];
+        : [new Heading("How positions are valued", 3), Table(run.Results.Methods), .. Errors(run)];
+
+    private static IEnumerable<Block> Errors(RunReading run)
+    {
+        if (run.Results.Nodes is not [{ PriceError: { } error } root, ..]) yield break;
+        var simulated = error.Standard > 0 ? $" Those that are simulated have a standard error of {Numerals.Fixed(error.Standard, 2)} {root.Currency}." : "";
+        yield return new Paragraph($"Numerical prices: in scenarios they are read from tables, which lie at most {Numerals.Fixed(error.Table, 2)} {root.Currency} from the pricers themselves, "
+            + $"over all positions of {root.Book} added without regard to sign.{simulated} No interval of a measure holds this.", Voice.Note);
+    }
 
     private static Table Table(IReadOnlyList<ValuationMethod> methods)
     {
