@@ -62,7 +62,7 @@ public sealed class ChebyshevGrid
     /// <param name="coefficients">n + 1 elements, <paramref name="stride"/> apart; may be the memory of <paramref name="values"/>.</param>
     public void Interpolate(ReadOnlySpan<double> values, int stride, Span<double> coefficients) => Multiply(_powers, values, stride, coefficients);
 
-    /// <summary>Coefficients of the interpolating polynomial by Chebyshev polynomial T_0, T_1, ..., which rounding does not touch as it does powers.</summary>
+    /// <summary>Coefficients of the interpolating polynomial by Chebyshev polynomial T_0, T_1, ...</summary>
     /// <param name="values">Values at the points, <paramref name="stride"/> apart.</param>
     /// <param name="stride">Distance of two values.</param>
     /// <param name="coefficients">n + 1 elements, <paramref name="stride"/> apart; may be the memory of <paramref name="values"/>.</param>

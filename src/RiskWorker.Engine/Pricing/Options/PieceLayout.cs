@@ -33,8 +33,8 @@ internal sealed class PieceLayout
         {
             var (from, to, middle, count) = (worst.Piece.Shape.From, worst.Piece.Shape.To, worst.Piece.Shape.At(0), _found.Count);
             Add([new(from, middle, 0), new(middle, to, 0)]);
-            // What halves do not mend is the noise of simulated prices: the piece stays whole, and the layout ends.
-            if (_sampler.StandardError > 0 && _found.Skip(count).Max(f => f.Error) > LeastGain * worst.Error)
+            // What is below a standard error and halves do not mend is noise: the piece stays whole, and the layout ends.
+            if (worst.Error <= _sampler.StandardError && _found.Skip(count).Max(f => f.Error) > LeastGain * worst.Error)
             {
                 _found.RemoveRange(count, 2);
                 break;
