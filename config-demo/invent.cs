@@ -1058,7 +1058,15 @@ internal static class Valuation
         return new(Price(market, held.On, day), held.Strike, rate, carry, Volatility(market, held, day), years);
     }
 
-    private static double Volatility(Market market, Instrument held, int day) => Underlying(held.On)!.FlatVolatility ?? market.Close(held.On + ".vol", day);
+    // The averages and the lookback are quoted at one volatility by their maker, and kept at it.
+    public static double? FlatVolatility(Instrument held) => held.Kind switch
+    {
+        Kind.ArithmeticCall => 0.34,
+        Kind.LookbackCall => 0.19,
+        _ => Underlying(held.On)!.FlatVolatility,
+    };
+
+    private static double Volatility(Market market, Instrument held, int day) => FlatVolatility(held) ?? market.Close(held.On + ".vol", day);
 
     private static double Forward(Market market, Instrument held, int day)
     {
@@ -1501,7 +1509,7 @@ internal sealed class Feed(string folder)
         if (i.Kind is Kind.Forward or Kind.CurveForward) return cells;
         cells["right"] = i.Kind is Kind.Put or Kind.AmericanPut or Kind.DigitalPut or Kind.UpOutPut ? "put" : "call";
         cells["style"] = i.Kind is Kind.AmericanCall or Kind.AmericanPut ? "american" : "european";
-        if (underlying.FlatVolatility is { } flat) cells["vol"] = Text.Short(flat);
+        if (Valuation.FlatVolatility(i) is { } flat) cells["vol"] = Text.Short(flat);
         else cells["vol_factor"] = i.On + ".vol";
         foreach (var (column, text) in ExoticTerms(i)) cells[column] = text;
         return cells;

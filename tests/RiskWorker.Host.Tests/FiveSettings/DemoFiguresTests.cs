@@ -9,7 +9,7 @@ namespace RiskWorker.Host.Tests.FiveSettings;
 /// </summary>
 public sealed class DemoFiguresTests : IDisposable
 {
-    private const string Pinned = "sha256:06b9db80c5551c0602d28a2ab1ab6733f3d0af3924c7667b0e85f4325d120214";
+    private const string Pinned = "sha256:3dd447040263eb4615e522f8422f23e68566745c5093c0097f48065437a37726";
 
     private readonly TemporaryFolder _folder = new();
 
