@@ -33,6 +33,7 @@ public sealed class FiguresTests : IDisposable
         {
             using var other = await MeasureAsync(model, setting);
             Assert.True(FiguresOf(first) == FiguresOf(other), $"Under {setting.Name} the figures are {FiguresOf(other)}, on the machine as it is {FiguresOf(first)}.");
+            Assert.Equal(SensitivitiesOf(first), SensitivitiesOf(other)); // which are no part of the figures' hash
         }
         return first;
     }
@@ -50,6 +51,13 @@ public sealed class FiguresTests : IDisposable
     }
 
     internal static string FiguresOf(JsonDocument results) => results.RootElement.GetProperty("figures").GetString()!;
+
+    private static string SensitivitiesOf(JsonDocument results)
+    {
+        var sensitivities = results.RootElement.GetProperty("sensitivities");
+        Assert.NotEqual(0, sensitivities.GetArrayLength());
+        return sensitivities.GetRawText();
+    }
 
     private static JsonElement RepairOf(JsonDocument results) => results.RootElement.GetProperty("calibration").GetProperty("repairDistance");
 }
