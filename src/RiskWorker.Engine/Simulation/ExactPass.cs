@@ -8,25 +8,29 @@ namespace RiskWorker.Engine.Simulation;
 /// </summary>
 internal sealed class ExactPass
 {
-    private const int Capacity = 64;
+    private const int MostLanes = 64;
     private const int Lanes = 8; // a full vector of lanes: odd ones would be valued one by one
+    private const long MostNumbers = 8_000_000; // 64 MB a thread, however many nodes and factors a plan has
     private readonly RevaluationPlan _plan;
     private readonly PlanSlice[] _slices;
     private readonly int[][][] _rows;
     private readonly Queue[][] _queues;
-    private readonly MarketLanes _market = new(Capacity);
+    private readonly MarketLanes _market = new(MostLanes);
+    private readonly int _capacity;
     private readonly LaneTable _cells = new();
     private readonly NodeProfits _nodes = new();
-    private readonly double[] _losses = new double[Capacity];
+    private readonly double[] _losses = new double[MostLanes];
 
     /// <summary>Makes room for the nodes of <paramref name="plan"/>, whose slices are <paramref name="slices"/>.</summary>
     public ExactPass(RevaluationPlan plan, PlanSlice[] slices)
     {
         (_plan, _slices) = (plan, slices);
+        var numbers = Math.Max(1, slices.Sum(s => (long)s.Factors.Length) * plan.Horizons.Count);
+        _capacity = (int)Math.Clamp(MostNumbers / numbers / Lanes * Lanes, Lanes, MostLanes);
         _market.Serve(plan);
-        _cells.Shape(plan.Cells.Count, Capacity);
-        _nodes.Serve(plan, Capacity);
-        _queues = [.. plan.Horizons.Select(_ => slices.Select(slice => new Queue(slice.Factors.Length)).ToArray())];
+        _cells.Shape(plan.Cells.Count, MostLanes);
+        _nodes.Serve(plan, MostLanes);
+        _queues = [.. plan.Horizons.Select(_ => slices.Select(slice => new Queue(slice.Factors.Length, _capacity)).ToArray())];
         _rows = [.. plan.Horizons.Select((_, h) => slices.Select(s => RowsOf(plan, s.Node, h)).ToArray())];
     }
 
@@ -57,9 +61,9 @@ internal sealed class ExactPass
     {
         var (queue, slice) = (_queues[horizon][node], _slices[node]);
         for (var row = 0; row < slice.Factors.Length; row++)
-            queue.Normals[(row * Capacity) + queue.Count] = normals[(_plan.Moves.RowOf[slice.Factors[row]] * stride) + lane];
+            queue.Normals[(row * _capacity) + queue.Count] = normals[(_plan.Moves.RowOf[slice.Factors[row]] * stride) + lane];
         queue.Places[queue.Count++] = place;
-        if (queue.Count == Capacity) Revalue(node, horizon, losses);
+        if (queue.Count == _capacity) Revalue(node, horizon, losses);
     }
 
     /// <summary>Revalues everything that has been put aside.</summary>
@@ -83,10 +87,10 @@ internal sealed class ExactPass
         var width = (queue.Count + Lanes - 1) / Lanes * Lanes;
         for (var row = 0; row < slice.Factors.Length; row++)
         {
-            var lanes = queue.Normals.AsSpan(row * Capacity, width);
+            var lanes = queue.Normals.AsSpan(row * _capacity, width);
             lanes[queue.Count..].Fill(lanes[queue.Count - 1]);
         }
-        _market.Take(queue.Normals, slice.RowOf, Capacity, width);
+        _market.Take(queue.Normals, slice.RowOf, _capacity, width);
         _market.MoveTo(horizon, slice);
         _cells.Width = width;
         _cells.Clear(slice.Cells.From, slice.Cells.To);
@@ -101,11 +105,11 @@ internal sealed class ExactPass
         queue.Count = 0;
     }
 
-    private sealed class Queue(int factors)
+    private sealed class Queue(int factors, int capacity)
     {
-        public double[] Normals { get; } = new double[factors * Capacity];
+        public double[] Normals { get; } = new double[factors * capacity];
 
-        public int[] Places { get; } = new int[Capacity];
+        public int[] Places { get; } = new int[capacity];
 
         public int Count { get; set; }
     }
