@@ -9,6 +9,8 @@ namespace RiskWorker.Engine.Plans;
 internal sealed class PlanHash : IDisposable
 {
     private readonly IncrementalHash _hash = IncrementalHash.CreateHash(HashAlgorithmName.SHA256);
+    private readonly byte[] _buffer = new byte[1 << 13]; // a call a number would cost more than the hashing
+    private int _pending;
 
     /// <summary>The hash as 64 lower-case hex digits; the plan's own hash field is left out.</summary>
     public static string Of(RevaluationPlan plan)
@@ -23,10 +25,17 @@ internal sealed class PlanHash : IDisposable
         foreach (var cell in plan.Cells) hash.Add(cell.Node).Add(cell.Currency).Add(cell.Value);
         foreach (var node in plan.Nodes) hash.Text(node.Book).Add(node.Parent).Add(node.Currency).Add(node.ValueRoot);
         foreach (var row in plan.Rows) hash.Add(row.Node).Add(row.Horizon).Add(row.InOwnCurrency ? 1 : 0);
+        hash.Flush();
         return Convert.ToHexStringLower(hash._hash.GetHashAndReset());
     }
 
     public void Dispose() => _hash.Dispose();
+
+    private void Flush()
+    {
+        _hash.AppendData(_buffer, 0, _pending);
+        _pending = 0;
+    }
 
     private void Add(FactorMoves moves)
     {
@@ -88,6 +97,7 @@ internal sealed class PlanHash : IDisposable
     {
         var bytes = Encoding.UTF8.GetBytes(text);
         Add(bytes.Length);
+        Flush();
         _hash.AppendData(bytes);
         return this;
     }
@@ -96,9 +106,9 @@ internal sealed class PlanHash : IDisposable
 
     private PlanHash Add(long value)
     {
-        Span<byte> bytes = stackalloc byte[8];
-        BinaryPrimitives.WriteInt64LittleEndian(bytes, value);
-        _hash.AppendData(bytes);
+        if (_pending == _buffer.Length) Flush();
+        BinaryPrimitives.WriteInt64LittleEndian(_buffer.AsSpan(_pending), value);
+        _pending += sizeof(long);
         return this;
     }
 }

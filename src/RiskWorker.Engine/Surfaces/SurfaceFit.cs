@@ -7,8 +7,8 @@ namespace RiskWorker.Engine.Surfaces;
 /// <summary>Fits one price surface at a time: raises the degree until the error is small enough, or gives up. The buffers of one thread.</summary>
 internal sealed class SurfaceFit
 {
-    private const int FirstDegree = 6;
-    private const int Step = 2;
+    private const int FirstDegree = 8;
+    private const int Step = 4;
 
     // A bound is this many times the largest error found on a grid this many times as fine.
     private const int Safety = 4;
