@@ -189,8 +189,8 @@ public static class FindingCodes
 
     /// <summary>An average that cannot be formed.</summary>
     public static readonly FindingCode FixingMissing = new("fixing-missing", Warning,
-        "A past fixing of an average is known neither from its terms nor from the observations, so no figure holds the instrument",
-        "give it as DATE=VALUE among the fixings, or load an observation of that date");
+        "A fixing of the past is known neither from the terms nor from the observations, so no figure holds the instrument",
+        "give it as DATE=VALUE among the fixings or as last_fixing, or load an observation of that date");
 
     /// <summary>A barrier that has been touched.</summary>
     public static readonly FindingCode BarrierCrossed = new("barrier-crossed", Warning,

@@ -34,7 +34,7 @@ internal sealed class FlowList(DateOnly valuation)
             Add(period.End, notional * leg.Spread * rule.Of(period));
             if (period.Start > valuation) AddProjected(period, projection, notional);
             else if (leg.LastFixing is { } fixing) Add(period.End, notional * fixing * rule.Of(period));
-            else return new(UnpricedReason.NotModelled, $"its last_fixing is missing, the rate of the period from {period.Start:yyyy-MM-dd}");
+            else return new(UnpricedReason.MissingFixing, $"its last_fixing is missing, the rate of the period from {period.Start:yyyy-MM-dd}");
         }
         return null;
     }

@@ -162,7 +162,7 @@ public sealed class RateFlowsTests
     public void Of_floater_whose_period_has_begun_without_a_fixing_names_the_term()
     {
         var unfixed = s_floater.Leg with { LastFixing = null };
-        var expected = new Unpriced(UnpricedReason.NotModelled, "its last_fixing is missing, the rate of the period from 2026-08-31");
+        var expected = new Unpriced(UnpricedReason.MissingFixing, "its last_fixing is missing, the rate of the period from 2026-08-31");
         Assert.Equal(expected, RateFlows.Of(s_floater with { Leg = unfixed }, new(2026, 11, 29), s_market.Curves, out var none));
         Assert.Empty(none);
         Assert.Equal(expected with { Clause = "its last_fixing is missing, the rate of the period from 2026-11-30" }, RateFlows.Of(s_swap with { Floating = unfixed }, new(2026, 11, 30), s_market.Curves, out _));
