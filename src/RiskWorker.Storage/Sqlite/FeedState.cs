@@ -17,7 +17,8 @@ internal sealed class FeedState
     public FeedState(SqliteConnection connection, long load)
     {
         Load = load;
-        Reference = ReferenceData.Read(connection);
+        var instruments = ReferenceData.InstrumentRows(connection);
+        Reference = ReferenceData.Read(connection, instruments);
         Observations = ReadObservations(connection, Reference.Factors);
         PositionDates = [.. connection.Query("SELECT as_of FROM position_date ORDER BY as_of", r => Iso.Date(r.GetString(0)))];
         _profit = [.. connection.Query("SELECT date, book, actual, hypothetical FROM pnl", r => new ProfitAndLoss(Iso.Date(r.GetString(0)), r.GetString(1), r.Number(2), r.Number(3)))
@@ -29,7 +30,7 @@ internal sealed class FeedState
         _wholeLeaves =
         [
             .. SnapshotLeaves.Reference(Reference),
-            SnapshotLeaves.Instruments(ReferenceData.InstrumentRows(connection)),
+            SnapshotLeaves.Instruments(instruments),
         ];
     }
 

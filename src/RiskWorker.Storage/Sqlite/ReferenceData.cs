@@ -21,10 +21,11 @@ internal sealed record ReferenceData(
     IReadOnlyList<CovarianceEntry> Covariance,
     IReadOnlyList<Finding> FeedWarnings)
 {
-    public static ReferenceData Read(SqliteConnection connection) => InOrder(
+    /// <summary>Reads it; <paramref name="instruments"/> are the rows of <see cref="InstrumentRows"/>, read over all cores: there may be very many.</summary>
+    public static ReferenceData Read(SqliteConnection connection, IReadOnlyList<string?[]> instruments) => InOrder(
         WithCurrencies(connection.Query("SELECT book, parent, name, currency FROM book", ReadBook)),
         connection.Query("SELECT factor, class, shock, currency, curve, tenor_years, calendar, liquidity_days, proxy, beta FROM factor", ReadFactor),
-        InstrumentRows(connection).ConvertAll(Instrument),
+        instruments.AsParallel().AsOrdered().Select(Instrument),
         connection.Query("""SELECT "limit", book, measure, confidence, horizon_days, amount, basis, reference_book, warn_at, valid_from, valid_to, approver, reason FROM risk_limit""", ReadLimit),
         connection.Query("SELECT calendar, date FROM holiday", r => new Holiday(r.GetString(0), Iso.Date(r.GetString(1)))),
         connection.Query("SELECT factor, date, ratio, reason FROM adjustment", r => new Adjustment(r.GetString(0), Iso.Date(r.GetString(1)), r.Number(2)!.Value, r.Text(3))),
