@@ -15,6 +15,7 @@ public sealed class FiguresTests : IDisposable
         using var results = await AgreedAsync("estimated");
         Assert.Equal("complete", results.RootElement.GetProperty("status").GetString());
         Assert.Equal(JsonValueKind.Null, RepairOf(results).ValueKind);
+        Assert.True(results.RootElement.GetProperty("surfaces").GetProperty("revalued").GetInt64() > 0, "no price surface was in use");
     }
 
     [Fact]
