@@ -1,6 +1,7 @@
 using RiskWorker.Engine.Plans;
 using RiskWorker.Engine.Reductions;
 using RiskWorker.Engine.Simulation;
+using RiskWorker.Engine.Surfaces;
 using RiskWorker.Engine.Tests.Plans;
 using RiskWorker.TestKit;
 
@@ -27,6 +28,37 @@ public sealed class AllocationTests
             for (var offset = 0; offset < Blocks.Size; offset += ScenarioTile.Width)
                 tile.Evaluate(((long)block * Blocks.Size) + offset, Math.Min(ScenarioTile.Width, Blocks.Size - offset), losses, offset, Blocks.Size);
             reduction.Accumulate(record, new(block, Blocks.Size, losses));
+        }
+    }
+
+    // The same by surface, the queues of the exact pass included; what a call allocates by itself does not grow with its blocks.
+    [Fact]
+    public void Block_is_valued_by_surface_and_its_tail_exactly_without_an_allocation()
+    {
+        var plan = MixedPlan();
+        var workspace = new SimulationWorkspace(1);
+        var surfaces = new SurfaceBuilder(plan, 1e-7).Build(workspace, CancellationToken.None);
+        Assert.True(surfaces.Count > 0);
+        var evaluator = new BlockEvaluator(plan, workspace, surfaces);
+        var (few, many) = (Allocations.FewestOf(() => Evaluate(2)), Allocations.FewestOf(() => Evaluate(12)));
+        Assert.Equal(few, many);
+
+        void Evaluate(int blocks) => evaluator.Evaluate(BlockRange.From(0, blocks * Blocks.Size), new Nothing(plan.Rows.Count), null, CancellationToken.None);
+    }
+
+    /// <summary>Keeps nothing, and wants every loss exact: about half of all scenarios.</summary>
+    private sealed class Nothing(int rows) : Reduction<object>
+    {
+        public override double[] ExactFrom { get; } = new double[rows];
+
+        public override object Empty(int blocks = 0) => this;
+
+        public override void Accumulate(object record, in LossBlock block)
+        {
+        }
+
+        public override void Merge(object record, object from)
+        {
         }
     }
 
