@@ -10,6 +10,7 @@ internal static class CompareCommand
     private static readonly Option<int> s_options = Whole("--options", 1000, "Options in it");
     private static readonly Option<int> s_books = Whole("--books", 20, "Books below the root");
     private static readonly Option<int> s_days = Whole("--days", 750, "Days of history");
+    private static readonly Option<bool> s_full = new("--full") { Description = "Revalue every scenario fully, without price surfaces" };
     private static readonly Option<int> s_pairs = Whole("--pairs", 3, "Pairs of runs, one of each program in turn");
     private static readonly Option<int[]> s_scenarios = new("--scenarios")
     {
@@ -22,7 +23,7 @@ internal static class CompareCommand
     {
         var command = new Command("compare", "Runs the NumPy yardstick and riskworker in turn on one invented book and prints the ratios")
         {
-            s_peer, s_factors, s_options, s_books, s_days, s_scenarios, s_pairs, CommonPaths.Python, CommonPaths.Riskworker,
+            s_peer, s_factors, s_options, s_books, s_days, s_scenarios, s_pairs, s_full, CommonPaths.Python, CommonPaths.Riskworker,
         };
         command.SetAction(parsed => Run(parsed, parsed.GetValue(record)));
         return command;
@@ -31,7 +32,7 @@ internal static class CompareCommand
     private static int Run(ParseResult parsed, bool record)
     {
         var programs = new Programs(parsed.GetValue(CommonPaths.Python)!, parsed.GetValue(s_peer)!, parsed.GetValue(CommonPaths.Riskworker)!);
-        var size = new BookSize(parsed.GetValue(s_factors), parsed.GetValue(s_options), parsed.GetValue(s_books), parsed.GetValue(s_days));
+        var size = new BookSize(parsed.GetValue(s_factors), parsed.GetValue(s_options), parsed.GetValue(s_books), parsed.GetValue(s_days), parsed.GetValue(s_full));
         var numPy = NumPy.Of(programs.Python);
         using var book = new StandardBook(programs, size);
         var comparisons = parsed.GetValue(s_scenarios)!.Select(n => Comparison.Measure(book, n, parsed.GetValue(s_pairs))).ToList();

@@ -2,12 +2,12 @@ using System.Globalization;
 
 namespace RiskWorker.Benchmarks.Compare;
 
-/// <summary>The size of an invented book.</summary>
-internal sealed record BookSize(int Factors, int Options, int Books, int Days)
+/// <summary>The size of an invented book, and whether the product may value it by surfaces.</summary>
+internal sealed record BookSize(int Factors, int Options, int Books, int Days, bool IsFull)
 {
     public string[] Arguments => ["--factors", Text(Factors), "--options", Text(Options), "--books", Text(Books), "--days", Text(Days)];
 
-    public override string ToString() => $"{Factors} factors, {Options:N0} options, {Books} books, {Days} days";
+    public override string ToString() => $"{Factors} factors, {Options:N0} options, {Books} books, {Days} days{(IsFull ? ", full revaluation" : "")}";
 
     private static string Text(int number) => number.ToString(CultureInfo.InvariantCulture);
 }
@@ -22,11 +22,12 @@ internal sealed record Programs(string Python, string Peer, string Riskworker);
 internal sealed class StandardBook : IDisposable
 {
     private readonly Programs _programs;
+    private readonly string _revaluation;
     private readonly DirectoryInfo _folder = Directory.CreateTempSubdirectory("riskworker-compare-");
 
     public StandardBook(Programs programs, BookSize size)
     {
-        _programs = programs;
+        (_programs, _revaluation) = (programs, size.IsFull ? "full" : "surface");
         ChildProcess.Run(programs.Python, [Path.Combine(programs.Peer, "make_book.py"), _folder.FullName, .. size.Arguments]);
     }
 
@@ -39,7 +40,7 @@ internal sealed class StandardBook : IDisposable
     /// <summary>One run of the product into an empty folder, so that it reads the feed and builds its store; one look, as the yardstick takes.</summary>
     public Measurement Riskworker(int scenarios)
     {
-        File.WriteAllText(Path.Combine(_folder.FullName, "riskworker.json"), $$"""{ "simulation": { "scenarios": {{Text(scenarios)}}, "cap": {{Text(scenarios)}}, "looks": 1 } }""");
+        File.WriteAllText(Path.Combine(_folder.FullName, "riskworker.json"), $$"""{ "simulation": { "scenarios": {{Text(scenarios)}}, "cap": {{Text(scenarios)}}, "looks": 1, "revaluation": "{{_revaluation}}" } }""");
         var to = Directory.CreateDirectory(Path.Combine(_folder.FullName, "out"));
         try
         {
