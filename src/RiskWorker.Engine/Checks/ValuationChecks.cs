@@ -16,14 +16,14 @@ public static class ValuationChecks
     {
         var findings = new FindingList(snapshot.Settings.Checks);
         UnpricedChecks.Run(snapshot, tree, today, findings);
-        AddRemarks(today, findings);
+        AddCrossedBarriers(today, findings);
         BookValueChecks.Run(snapshot, tree, today, previous, findings);
         return findings.Ordered();
     }
 
-    private static void AddRemarks(LineValue[] lines, FindingList findings)
+    private static void AddCrossedBarriers(LineValue[] lines, FindingList findings)
     {
-        string[] remarks = [.. lines.Where(l => l.Bound?.Remark is not null).Select(l => $"{l.Position.Instrument}: {l.Bound!.Remark}").Distinct(StringComparer.Ordinal).Order(StringComparer.Ordinal)];
-        if (remarks.Length > 0) findings.Add(FindingCodes.BarrierCrossed, "instruments.csv", $"{FindingList.Count(remarks.Length, "barrier", "barriers")} crossed before this date: {FindingList.Names(remarks)}");
+        string[] crossed = [.. lines.Where(l => l.Bound?.CrossedBarrier is not null).Select(l => $"{l.Position.Instrument}: {l.Bound!.CrossedBarrier}").Distinct(StringComparer.Ordinal).Order(StringComparer.Ordinal)];
+        if (crossed.Length > 0) findings.Add(FindingCodes.BarrierCrossed, "instruments.csv", $"{FindingList.Count(crossed.Length, "barrier", "barriers")} crossed before this date: {FindingList.Names(crossed)}");
     }
 }

@@ -21,8 +21,8 @@ public abstract class BoundInstrument(int currency, double multiplier)
     /// <summary>Last date that it lives on; <see cref="DateOnly.MaxValue"/> where it has none.</summary>
     public DateOnly LastDay { get; init; } = DateOnly.MaxValue;
 
-    /// <summary>What a reader should know of how it is valued, as a clause to follow its name; null for nothing.</summary>
-    public string? Remark { get; init; }
+    /// <summary>What a barrier that was crossed before the date has made of it, as a clause to follow its name; null where none was.</summary>
+    public string? CrossedBarrier { get; init; }
 
     /// <summary>Value of one unit held, in the instrument's currency. NaN where a level that it needs is NaN or allows no value.</summary>
     public double Value(ReadOnlySpan<double> levels) => Multiplier * UnitValue(levels);

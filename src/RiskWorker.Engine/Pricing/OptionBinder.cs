@@ -27,16 +27,16 @@ internal sealed class OptionBinder(InstrumentBinder binder, IPastLevels? past, u
         _ => Unbound(new(UnpricedReason.NotModelled, $"the kind '{instrument.Kind}' is not priced in this version"), ref fault),
     };
 
-    private readonly record struct Common(Underlying Underlying, double Strike, DateOnly Expiry, OptionRight Right, VolatilityTerm Volatility, RateTerm? Curve, RateTerm? Carry);
+    private readonly record struct SharedTerms(Underlying Underlying, double Strike, DateOnly Expiry, OptionRight Right, VolatilityTerm Volatility, RateTerm? Curve, RateTerm? Carry);
 
     private delegate Func<double, OptionFormula>? FormulaOf(UnderlyingKey underlying, double years, Note note);
 
-    /// <summary>Where a formula leaves a fault or a remark.</summary>
+    /// <summary>Where a formula leaves a fault, or what a crossed barrier has made of it.</summary>
     private sealed class Note
     {
         public Unpriced? Fault { get; set; }
 
-        public string? Remark { get; set; }
+        public string? CrossedBarrier { get; set; }
     }
 
     private BoundInstrument? Forward(Forward f, int currency, DateOnly date, ref Unpriced? fault)
@@ -76,7 +76,7 @@ internal sealed class OptionBinder(InstrumentBinder binder, IPastLevels? past, u
             var knocked = b.Knocked is { } given && given <= date ? b.Knocked : FirstTouch(underlying, b, isUp, date);
             if (knocked is { } day)
             {
-                note.Remark = $"its barrier {b.Barrier:R} was crossed on {day:yyyy-MM-dd}, so it {(isIn ? "is a plain option now" : "is worth nothing any more")}";
+                note.CrossedBarrier = $"its barrier {b.Barrier:R} was crossed on {day:yyyy-MM-dd}, so it {(isIn ? "is a plain option now" : "is worth nothing any more")}";
                 return isIn ? spot => new PlainFormula(new(spot, b.Strike, isCall)) : Always(new SettledFormula(0));
             }
             return spot => new BarrierFormula(new(spot, b.Strike, b.Barrier, isCall, isUp, isIn, b.Rebate, years, b.Monitoring == Monitoring.Daily ? YearsBetweenLooks : 0));
@@ -169,7 +169,7 @@ internal sealed class OptionBinder(InstrumentBinder binder, IPastLevels? past, u
     private IEnumerable<double> Closes(UnderlyingKey underlying, DateOnly from, DateOnly to) =>
         past is null ? [] : past.Dates(from, to).Select(d => past.On(underlying, d, to)).Where(level => level > 0);
 
-    private BoundOption? Other(Instrument instrument, Common terms, int currency, DateOnly date, ref Unpriced? fault, FormulaOf formulaOf)
+    private BoundOption? Other(Instrument instrument, SharedTerms terms, int currency, DateOnly date, ref Unpriced? fault, FormulaOf formulaOf)
     {
         var underlying = UnderlyingOf(terms.Underlying, instrument, currency, ref fault);
         if (Expired(terms.Expiry, date, ref fault)) return null;
@@ -184,7 +184,7 @@ internal sealed class OptionBinder(InstrumentBinder binder, IPastLevels? past, u
         var note = new Note();
         var formulaAt = formulaOf(underlying, years, note);
         fault = note.Fault;
-        return fault is null ? new BoundOption(currency, instrument.Multiplier, underlying, new(discount, carry, variance), formulaAt!) { LastDay = terms.Expiry, Remark = note.Remark } : null;
+        return fault is null ? new BoundOption(currency, instrument.Multiplier, underlying, new(discount, carry, variance), formulaAt!) { LastDay = terms.Expiry, CrossedBarrier = note.CrossedBarrier } : null;
     }
 
     private (LinearForm Discount, LinearForm Carry) Rates(RateTerm? curve, RateTerm? carry, Instrument instrument, double years, ref Unpriced? fault)
