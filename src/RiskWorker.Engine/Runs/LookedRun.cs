@@ -76,7 +76,7 @@ public sealed class LookedRun
 
     private SurfaceSummary? SummaryOf(LossSampler sampler, TailRecord record)
     {
-        if (sampler.Surfaces is not { } surfaces) return null;
+        if (sampler.Surfaces is not { } surfaces) return sampler.AreSurfacesRefused ? SurfaceSummary.Refused : null;
         var beyondPilot = record.Count - (Math.Min(LossSampler.PilotScenarios, record.Count) / Blocks.Size * Blocks.Size);
         return new(surfaces.Count, surfaces.Options, beyondPilot * _plan.Nodes.Count * _plan.Horizons.Count, record.Revalued);
     }

@@ -40,10 +40,15 @@ public sealed class SurfaceSet
     {
         var bounds = new double[plan.Nodes.Count * _currencies];
         foreach (var surface in groups.SelectMany(g => g.Batches).SelectMany(b => b.Surfaces)) Add(surface.Cell, surface.Bound);
-        // What is linear is valued alike, but added to another partial sum.
+        // What has no surface is valued alike, but added to another partial sum; parts may be large where their sum is nothing.
         foreach (var group in plan.Groups)
         {
             foreach (var holding in group.Linear) Add(holding.Cell, Rounding * Math.Abs(holding.Units * group.Spot));
+            foreach (var item in group.Formulas.SelectMany(f => f.Items)) Add(item.Cell, Rounding * Math.Abs(item.Quantity * item.BaseValue));
+        }
+        foreach (var flow in plan.Flows)
+        {
+            foreach (var amount in flow.Amounts) Add(amount.Cell, Rounding * Math.Abs(amount.Units * flow.Factor));
         }
         for (var node = plan.Nodes.Count - 1; node > 0; node--)
         {

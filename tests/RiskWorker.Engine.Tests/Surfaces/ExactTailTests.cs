@@ -107,6 +107,17 @@ public sealed class ExactTailTests
         }
     }
 
+    // A swap of a billion is worth next to nothing, but its legs are what the sums round against.
+    [Fact]
+    public void Bound_holds_the_rounding_of_legs_that_cancel()
+    {
+        var plan = CompiledBook.Of(WideBook.Holding(new Domain.Books.Position("HOME", "RECEIVER", 1_000_000)).Build(), 1).Plan;
+        var surfaces = new SurfaceBuilder(plan, 1e-7).Build(new SimulationWorkspace(1), CancellationToken.None);
+        Assert.Equal(0, surfaces.Count);
+        Assert.InRange(surfaces.BoundOf(0, 0, 0), 1e-13 * 1e9, 1e-13 * 1e10);
+        Assert.True(Math.Abs(plan.Nodes[0].ValueRoot) < 1e8);
+    }
+
     private static LossSampler Sampler(RevaluationKind kind, double error) =>
         new(s_book.Plan, new SimulationWorkspace(2), s_demand, new() { Scenarios = Scenarios, Revaluation = kind, SurfaceError = error }, null, CancellationToken.None);
 

@@ -1,4 +1,5 @@
 using RiskWorker.Domain.Market;
+using RiskWorker.Domain.Runs;
 using RiskWorker.Reporting.Document;
 
 namespace RiskWorker.Reporting.Reports.Limits;
@@ -85,6 +86,7 @@ internal static class MethodSection
     {
         const string Unscaled = "the measure is never scaled from another horizon.";
         if (run.Results.Simulation?.Surfaces is not { } surfaces) return $"every position valued anew in every scenario at the horizon; {Unscaled}";
+        if (surfaces == SurfaceSummary.Refused) return $"every position valued anew in every scenario at the horizon, since on the pilot a price surface lay outside its bound; {Unscaled}";
         var drawn = $"{Phrases.Plural(surfaces.Count, "price surface")} stand for {Numerals.Count(surfaces.Options)} options beyond the pilot (error checked on a grid and on the pilot)";
         return run.Record.Settings.Simulation.ExactTail
             ? $"{drawn}; {Numerals.Count(surfaces.Revalued)} of {Numerals.Count(surfaces.Scenarios)} scenarios by node might belong to a tail and were revalued fully: VaR, ES and their intervals "
