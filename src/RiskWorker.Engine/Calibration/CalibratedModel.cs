@@ -1,5 +1,6 @@
 using RiskWorker.Domain.Market;
 using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Models;
 
 namespace RiskWorker.Engine.Calibration;
 
@@ -33,6 +34,9 @@ public sealed record CalibratedModel
 
     /// <summary>L, the lower trapezoidal factor of the correlation of the moving factors: Moving.Length × Rank, row-major, zeros above the diagonal.</summary>
     public required double[] Lower { get; init; }
+
+    /// <summary>How the moves are distributed jointly.</summary>
+    public ScenarioLaw Law { get; init; } = LognormalLaw.Instance;
 
     /// <summary>Frobenius distance from the correlation matrix found to the nearest one, or null where it needed no repair.</summary>
     public double? RepairDistance { get; init; }

@@ -1,14 +1,14 @@
 using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Models;
 using RiskWorker.Engine.Pricing;
 using RiskWorker.Engine.Pricing.Curves;
 using RiskWorker.Engine.Pricing.Options;
-using RiskWorker.Engine.Surfaces;
 using RiskWorker.Numerics.Kernels;
 
 namespace RiskWorker.Engine.Plans;
 
-/// <summary>How far the scenarios of a run may carry what an option depends on: six standard deviations either way, over all horizons.</summary>
-internal sealed class MarketRanges(FactorMoves moves, double[] levels, IReadOnlyList<Horizon> horizons)
+/// <summary>How far the scenarios of a run may carry what an option depends on: as many standard deviations either way as the law reaches, over all horizons.</summary>
+internal sealed class MarketRanges(FactorMoves moves, ScenarioLaw law, double[] levels, IReadOnlyList<Horizon> horizons)
 {
     // What does not move still needs a table of some width.
     private const double Narrowest = 1e-4;
@@ -55,7 +55,7 @@ internal sealed class MarketRanges(FactorMoves moves, double[] levels, IReadOnly
         if (daily == 0 && drift == 0) return new(start, 0);
         foreach (var horizon in horizons)
         {
-            var (centre, half) = (start + (drift * horizon.Days), AxisScale.Deviations * daily * Math.Sqrt(horizon.Days));
+            var (centre, half) = (start + (drift * horizon.Days), law.Reach(horizon.Days) * daily * Math.Sqrt(horizon.Days));
             (low, high) = (Math.Min(low, centre - half), Math.Max(high, centre + half));
         }
         return Between(low, high);

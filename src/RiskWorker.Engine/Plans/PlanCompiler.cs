@@ -42,7 +42,7 @@ public sealed class PlanCompiler
         var holdings = Holdings(lines);
         var moves = Moves();
         var options = holdings.Where(h => h.Bound is BoundOption).DistinctBy(h => h.Instrument).Select(h => (h.Instrument, (BoundOption)h.Bound)).ToList();
-        var formulas = PriceTables.Build(options, moves, _model.Levels, _horizons, threads, cancellation);
+        var formulas = PriceTables.Build(options, moves, _model.Law, _model.Levels, _horizons, threads, cancellation);
         var currencies = Currencies(holdings);
         var cells = Cells(holdings, currencies);
         var nodes = Nodes(cells, currencies);
@@ -50,6 +50,7 @@ public sealed class PlanCompiler
         {
             Seed = seed,
             Moves = moves,
+            Law = _model.Law,
             Horizons = _horizons,
             Currencies = currencies,
             Groups = Groups(holdings, cells, currencies, formulas),

@@ -18,6 +18,7 @@ internal sealed class PlanHash : IDisposable
         using var hash = new PlanHash();
         hash.Add((long)plan.Seed);
         hash.Add(plan.Moves);
+        foreach (var number in plan.Law.Numbers()) hash.Add(number); // of the log-normal law there is none
         foreach (var horizon in plan.Horizons) hash.Add(horizon.Days);
         foreach (var currency in plan.Currencies) hash.Text(currency.Code).Add(currency.Factor).Add(currency.Rate);
         foreach (var group in plan.Groups) hash.Add(group);

@@ -1,4 +1,5 @@
 using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Models;
 using RiskWorker.Engine.Pricing;
 using RiskWorker.Engine.Pricing.Options;
 
@@ -10,14 +11,15 @@ internal static class PriceTables
     /// <summary>A formula for each instrument.</summary>
     /// <param name="options">Options by instrument.</param>
     /// <param name="moves">How the factors move.</param>
+    /// <param name="law">How those moves are distributed.</param>
     /// <param name="levels">Their levels today.</param>
     /// <param name="horizons">Horizons of the plan.</param>
     /// <param name="threads">Threads to use; no table depends on how many.</param>
     /// <param name="cancellation">Stops between tables.</param>
     public static Dictionary<string, OptionFormula> Build(
-        IReadOnlyList<(string Instrument, BoundOption Option)> options, FactorMoves moves, double[] levels, IReadOnlyList<Horizon> horizons, int threads, CancellationToken cancellation)
+        IReadOnlyList<(string Instrument, BoundOption Option)> options, FactorMoves moves, ScenarioLaw law, double[] levels, IReadOnlyList<Horizon> horizons, int threads, CancellationToken cancellation)
     {
-        var ranges = new MarketRanges(moves, levels, horizons);
+        var ranges = new MarketRanges(moves, law, levels, horizons);
         var formulas = new OptionFormula[options.Count];
         Parallel.For(0, formulas.Length, new ParallelOptions { MaxDegreeOfParallelism = threads, CancellationToken = cancellation }, i =>
         {

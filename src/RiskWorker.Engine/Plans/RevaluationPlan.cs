@@ -1,4 +1,5 @@
 using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Models;
 using RiskWorker.Numerics.Kernels;
 
 namespace RiskWorker.Engine.Plans;
@@ -14,6 +15,9 @@ public sealed record RevaluationPlan
 
     /// <summary>How the factors move.</summary>
     public required FactorMoves Moves { get; init; }
+
+    /// <summary>How those moves are distributed jointly.</summary>
+    public ScenarioLaw Law { get; init; } = LognormalLaw.Instance;
 
     /// <summary>Horizons, ascending.</summary>
     public required IReadOnlyList<Horizon> Horizons { get; init; }

@@ -43,7 +43,7 @@ internal sealed class BumpedProfits
             _rowOf[factors[i]] = i;
             (_shocks[(i * width) + DownOf(i)], _shocks[(i * width) + UpOf(i)]) = (bumps[i].Down, bumps[i].Up);
         }
-        _market.TakeShocks(_shocks, _rowOf, width, width);
+        _market.Take(_shocks, _rowOf, width, width, areShocks: true);
         _market.MoveTo(0, _whole);
         _cells.Width = width;
         _cells.Clear(0, _plan.Cells.Count);

@@ -4,7 +4,7 @@ namespace RiskWorker.Engine.Simulation;
 
 /// <summary>
 /// Full revaluation of single scenarios of single nodes: whatever the surfaces place near a tail or in it. Scenarios of a node
-/// are gathered with the normals of the factors that it needs, and revalued side by side, its own positions only.
+/// are gathered with the moves of the factors that it needs, and revalued side by side, its own positions only.
 /// </summary>
 internal sealed class ExactPass
 {
@@ -52,16 +52,16 @@ internal sealed class ExactPass
     /// <summary>Puts a scenario of a node aside.</summary>
     /// <param name="node">The node.</param>
     /// <param name="horizon">The horizon.</param>
-    /// <param name="normals">Normals of the tile that holds the scenario, a row a moving factor of the plan.</param>
+    /// <param name="moves">Moves of the tile that holds the scenario, a row a moving factor of the plan.</param>
     /// <param name="stride">Distance of those rows.</param>
     /// <param name="lane">Its lane there.</param>
     /// <param name="losses">The block's losses, where those by surface will be replaced.</param>
     /// <param name="place">Its place in a row of <paramref name="losses"/>.</param>
-    public void Add(int node, int horizon, double[] normals, int stride, int lane, double[] losses, int place)
+    public void Add(int node, int horizon, double[] moves, int stride, int lane, double[] losses, int place)
     {
         var (queue, slice) = (_queues[horizon][node], _slices[node]);
         for (var row = 0; row < slice.Factors.Length; row++)
-            queue.Normals[(row * _capacity) + queue.Count] = normals[(_plan.Moves.RowOf[slice.Factors[row]] * stride) + lane];
+            queue.Moves[(row * _capacity) + queue.Count] = moves[(_plan.Moves.RowOf[slice.Factors[row]] * stride) + lane];
         queue.Places[queue.Count++] = place;
         if (queue.Count == _capacity) Revalue(node, horizon, losses);
     }
@@ -87,10 +87,10 @@ internal sealed class ExactPass
         var width = (queue.Count + Lanes - 1) / Lanes * Lanes;
         for (var row = 0; row < slice.Factors.Length; row++)
         {
-            var lanes = queue.Normals.AsSpan(row * _capacity, width);
+            var lanes = queue.Moves.AsSpan(row * _capacity, width);
             lanes[queue.Count..].Fill(lanes[queue.Count - 1]);
         }
-        _market.Take(queue.Normals, slice.RowOf, _capacity, width);
+        _market.Take(queue.Moves, slice.RowOf, _capacity, width, _plan.Law.GivesShocks);
         _market.MoveTo(horizon, slice);
         _cells.Width = width;
         _cells.Clear(slice.Cells.From, slice.Cells.To);
@@ -107,7 +107,7 @@ internal sealed class ExactPass
 
     private sealed class Queue(int factors, int capacity)
     {
-        public double[] Normals { get; } = new double[factors * capacity];
+        public double[] Moves { get; } = new double[factors * capacity];
 
         public int[] Places { get; } = new int[capacity];
 

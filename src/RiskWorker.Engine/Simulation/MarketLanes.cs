@@ -62,21 +62,16 @@ internal sealed class MarketLanes
         _levels.Shape(plan.FormFactors.Length, _capacity);
     }
 
-    /// <summary>Takes the normals of the lanes.</summary>
-    /// <param name="normals">A row a moving factor, <paramref name="stride"/> apart.</param>
-    /// <param name="rowOf">For each factor its row, or -1 where it does not move.</param>
-    /// <param name="stride">Distance of rows.</param>
-    /// <param name="width">Lanes.</param>
-    public void Take(double[] normals, int[] rowOf, int stride, int width) => Take(normals, rowOf, stride, width, areShocks: false);
-
-    /// <summary>Takes the very moves of the lanes: no deviation, no drift and no number of days is applied to them.</summary>
-    /// <param name="shocks">A row a factor, <paramref name="stride"/> apart: log-returns of a log-normal factor, differences of a normal one.</param>
+    /// <summary>Takes the moves of the lanes.</summary>
+    /// <param name="moves">A row a factor, <paramref name="stride"/> apart: multiples of a day's deviation, or shocks outright.</param>
     /// <param name="rowOf">For each factor its row, or -1 where it stays at its level of today.</param>
     /// <param name="stride">Distance of rows.</param>
     /// <param name="width">Lanes.</param>
-    public void TakeShocks(double[] shocks, int[] rowOf, int stride, int width) => Take(shocks, rowOf, stride, width, areShocks: true);
-
-    private void Take(double[] moves, int[] rowOf, int stride, int width, bool areShocks) =>
+    /// <param name="areShocks">
+    /// Whether they are shocks, log-returns of a log-normal factor and differences of a normal one: no deviation, no drift and no number
+    /// of days is then applied to them.
+    /// </param>
+    public void Take(double[] moves, int[] rowOf, int stride, int width, bool areShocks) =>
         (_moves, _rowOf, _stride, Width, _rates.Width, _levels.Width, _areShocks) = (moves, rowOf, stride, width, width, width, areShocks);
 
     /// <summary>Goes to a horizon, converts the currencies of <paramref name="slice"/> and moves the factors of its curves.</summary>

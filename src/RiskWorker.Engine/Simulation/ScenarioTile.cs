@@ -1,7 +1,6 @@
 using System.Diagnostics.CodeAnalysis;
 using RiskWorker.Engine.Plans;
-using RiskWorker.Numerics.Kernels;
-using RiskWorker.Numerics.Random;
+using RiskWorker.Engine.Simulation.Moves;
 
 namespace RiskWorker.Engine.Simulation;
 
@@ -18,15 +17,13 @@ public sealed class ScenarioTile
     private readonly NodeProfits _nodes = new();
     private RevaluationPlan _plan;
     private PlanSlice _whole;
-    private DrawStream _stream;
-    private double[] _draws = [];
-    private double[] _normals = [];
+    private MoveSource? _source;
 
     /// <summary>Allocates the buffers for <paramref name="plan"/>.</summary>
     public ScenarioTile(RevaluationPlan plan) => Serve(plan);
 
-    /// <summary>Correlated normals of the scenarios last drawn, a row a moving factor, as far apart as there are scenarios.</summary>
-    internal double[] Normals => _normals;
+    /// <summary>Moves of the scenarios last drawn at the horizon last moved to, a row a moving factor, as far apart as there are scenarios.</summary>
+    internal double[] Moves { get; private set; } = [];
 
     /// <summary>The market of the scenarios last drawn, at the horizon last moved to.</summary>
     internal MarketLanes Market { get; } = new(Width);
@@ -37,9 +34,7 @@ public sealed class ScenarioTile
     {
         if (ReferenceEquals(_plan, plan) && _whole is not null) return;
         (_plan, _whole) = (plan, PlanSlice.Whole(plan));
-        _stream = new(plan.Seed, DrawPurpose.FactorMoves, 0);
-        Room.For(ref _draws, (plan.Moves.Rank + 1) * Width); // room for the second half of an odd last pair
-        Room.For(ref _normals, plan.Moves.Rows * Width);
+        _source = MoveSource.For(plan, Width, _source);
         _cells.Shape(plan.Cells.Count, Width);
         _nodes.Serve(plan, Width);
         Market.Serve(plan);
@@ -57,20 +52,18 @@ public sealed class ScenarioTile
         for (var horizon = 0; horizon < _plan.Horizons.Count; horizon++) Evaluate(horizon, losses, offset, stride, null);
     }
 
-    /// <summary>Draws the normals of scenarios <paramref name="first"/> to first + width - 1.</summary>
+    /// <summary>Draws scenarios <paramref name="first"/> to first + width - 1.</summary>
     internal void Draw(long first, int width)
     {
-        var moves = _plan.Moves;
-        for (var draw = 0; draw < moves.Rank; draw += 2)
-            NormalDraws.FillPair(_stream, (ulong)first, (uint)draw / 2, _draws.AsSpan(draw * width, width), _draws.AsSpan((draw + 1) * width, width));
-        TriangularProduct.Multiply(moves.Lower, moves.Rows, moves.Rank, _draws.AsSpan(0, moves.Rank * width), _normals.AsSpan(0, moves.Rows * width), width);
-        Market.Take(_normals, moves.RowOf, width, width);
+        _source!.Draw(first, width);
         _cells.Width = width;
     }
 
     /// <summary>Writes the losses of the scenarios last drawn at one horizon; by surface where <paramref name="surfaces"/> are given.</summary>
     internal void Evaluate(int horizon, double[] losses, int offset, int stride, SurfaceProfits? surfaces)
     {
+        Moves = _source!.At(horizon);
+        Market.Take(Moves, _plan.Moves.RowOf, _cells.Width, _cells.Width, _plan.Law.GivesShocks);
         Market.MoveTo(horizon, _whole);
         _cells.Clear(0, _plan.Cells.Count);
         if (surfaces is null) HoldingProfits.Add(_plan, _whole, Market, horizon, _cells);

@@ -110,7 +110,7 @@ internal sealed class SurfaceTile
             var found = Selection.Greater(losses.AsSpan((row * Blocks.Size) + offset, width), Math.BitDecrement(exactFrom[row] - BoundOf(_plan.Rows[row])), near, out _);
             if (rows.Length == 1)
             {
-                for (var i = 0; i < found; i++) _exact.Add(node, horizon, _tile.Normals, width, near[i], losses, offset + near[i]);
+                for (var i = 0; i < found; i++) _exact.Add(node, horizon, _tile.Moves, width, near[i], losses, offset + near[i]);
                 return;
             }
             for (var i = 0; i < found; i++) _isNear[near[i]] = true;
@@ -118,7 +118,7 @@ internal sealed class SurfaceTile
         if (rows.Length == 1) return;
         for (var lane = 0; lane < width; lane++)
         {
-            if (_isNear[lane]) _exact.Add(node, horizon, _tile.Normals, width, lane, losses, offset + lane);
+            if (_isNear[lane]) _exact.Add(node, horizon, _tile.Moves, width, lane, losses, offset + lane);
             _isNear[lane] = false;
         }
     }
