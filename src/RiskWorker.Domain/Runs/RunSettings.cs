@@ -8,6 +8,9 @@ public sealed record RunSettings
     /// <summary>The model of record.</summary>
     public ModelSettings Model { get; init; } = new();
 
+    /// <summary>Models that are run beside it, by name; their figures stand apart.</summary>
+    public IReadOnlyList<ModelSettings> Challengers { get; init; } = [];
+
     /// <summary>The measures to compute, in the order of <see cref="MeasureSpec.CompareTo"/>; those that valid limits name are added by the run.</summary>
     public IReadOnlyList<MeasureSpec> Measures { get; init; } =
         [new(MeasureKind.Var, new(0.99m), new(1)), new(MeasureKind.Es, new(0.975m), new(1))];

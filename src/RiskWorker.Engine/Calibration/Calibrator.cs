@@ -1,5 +1,6 @@
 using RiskWorker.Domain.Market;
 using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Models;
 
 namespace RiskWorker.Engine.Calibration;
 
@@ -12,18 +13,24 @@ public static class Calibrator
 
     /// <summary>The same with the snapshot's <paramref name="table"/> of shocks, where it is at hand.</summary>
     /// <exception cref="CalibrationException">The data cannot be used.</exception>
-    public static CalibratedModel Calibrate(Snapshot snapshot, ShockTable table)
+    public static CalibratedModel Calibrate(Snapshot snapshot, ShockTable table) =>
+        Calibrate(snapshot, table, snapshot.Settings.Model, snapshot.Settings.Measures.Select(m => m.Horizon.Days).Append(1).Max());
+
+    /// <summary>Calibrates any model for horizons of up to <paramref name="longest"/> days.</summary>
+    /// <exception cref="CalibrationException">The data cannot be used.</exception>
+    public static CalibratedModel Calibrate(Snapshot snapshot, ShockTable table, ModelSettings model, int longest)
     {
-        var (model, factors) = (snapshot.Settings.Model, snapshot.Factors);
+        var factors = snapshot.Factors;
         var estimated = model.Covariance != CovarianceEstimator.Given;
-        var window = factors.Count > 0 && (estimated || Drift.NeedsShocks(model)) ? ShockWindow.Newest(table, model.Window) : null;
+        var wanted = model.Kind == ModelKind.Historical ? model.Window + longest - 1 : model.Window; // so that every horizon has as many scenarios as the window has days
+        var window = factors.Count > 0 && (estimated || Drift.NeedsShocks(model)) ? ShockWindow.Newest(table, wanted) : null;
         if (window is not null) RequirePositivePrices(table, window);
         var last = LastObservations(table);
         var covariance = model.Covariance switch
         {
             CovarianceEstimator.Given => GivenCovariance.Of(snapshot.Covariance, factors),
             _ when window is null => [],
-            CovarianceEstimator.Ewma => CovarianceEstimation.Ewma(window, factors.Count, model.Lambda),
+            CovarianceEstimator.Ewma when model.Kind != ModelKind.Historical => CovarianceEstimation.Ewma(window, factors.Count, model.Lambda),
             _ => CovarianceEstimation.Equal(window, factors.Count),
         };
         var correlation = MovingCorrelation.Of(covariance, factors.Count);
@@ -35,6 +42,7 @@ public static class Calibrator
             Deviations = correlation.Deviations,
             DailyDrift = Drift.Daily(model, factors, correlation.Deviations, window),
             Moving = correlation.Order,
+            Law = ScenarioLaws.Of(model, window, correlation.Order, correlation.Deviations, longest),
             Rank = correlation.Factor.Rank,
             Lower = correlation.Factor.Lower,
             RepairDistance = correlation.RepairDistance,

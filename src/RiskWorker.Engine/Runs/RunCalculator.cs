@@ -44,7 +44,7 @@ public sealed class RunCalculator
         var (tree, _) = BookTree.Build(_snapshot.Books);
         if (tree is null || Blocked) return Failed(tree);
         var clock = Stopwatch.StartNew();
-        var model = Calibrator.Calibrate(_snapshot);
+        var model = Calibrator.Calibrate(_snapshot, ShockTable.From(_snapshot), _snapshot.Settings.Model, LongestHorizon);
         Timings = Timings with { Calibrate = clock.Elapsed.TotalSeconds };
 
         var valued = new BookValuation(_snapshot, tree, model);
@@ -52,6 +52,8 @@ public sealed class RunCalculator
         if (Blocked) return Failed(tree) with { Holdings = valued.Holdings };
         return Simulate(tree, model, valued);
     }
+
+    private int LongestHorizon => _snapshot.Settings.Measures.Concat(_snapshot.Limits.Where(l => l.IsValidOn(_snapshot.AsOf)).Select(l => l.Measure)).Max(m => m.Horizon.Days);
 
     private bool Blocked => _findings.Exists(f => f.Severity == FindingSeverity.Blocking);
 

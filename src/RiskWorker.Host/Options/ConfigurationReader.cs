@@ -55,6 +55,7 @@ public static class ConfigurationReader
         }
         var root = new SettingsSection(file, "", faults, s_keys);
         var models = ModelsSection.Read(root);
+        var record = ModelsSection.Record(root, models);
         root["delivery"]?.Section(); // reserved: nothing can be set in them yet
         root["page"]?.Section();
         return new()
@@ -65,7 +66,8 @@ public static class ConfigurationReader
             Schedules = SchedulesSection.Read(root["schedules"]),
             Run = new()
             {
-                Model = ModelsSection.Record(root, models),
+                Model = record,
+                Challengers = ModelsSection.Challengers(root, models, record),
                 Measures = MeasuresSection.Read(root["measures"]),
                 Simulation = SimulationSection.Read(root["simulation"]),
                 Checks = ChecksSection.Read(root["checks"]),

@@ -107,6 +107,9 @@ public static class ResultsJson
         json.Number("low", measure.Low);
         json.Number("high", measure.High);
         json.Number("level", measure.Level);
+        if (measure.Sample is not { } sample) return;
+        json.Number("sampleLow", sample.Low);
+        json.Number("sampleHigh", sample.High);
     }
 
     private static void Spec(Utf8JsonWriter json, MeasureSpec spec)

@@ -15,6 +15,7 @@ internal abstract class MoveSource
         MoveSource source = plan.Law switch
         {
             LognormalLaw => before as NormalMoves ?? new NormalMoves(capacity),
+            HistoricalLaw => before as HistoricalMoves ?? new HistoricalMoves(capacity),
             _ => throw new InvalidOperationException($"No draws are known for {plan.Law.GetType().Name}."),
         };
         source.Serve(plan);

@@ -9,7 +9,8 @@ internal static class ModelWords
     /// <summary>One line: name, kind, covariance.</summary>
     public static string Line(ModelSettings model)
     {
-        var name = model.Name == model.Kind ? model.Kind : $"{model.Name} ({model.Kind})";
+        var kind = ModelKinds.NameOf(model.Kind);
+        var name = model.Name == kind ? kind : $"{model.Name} ({kind})";
         return $"{name}, {Covariance(model)}";
     }
 

@@ -1,0 +1,22 @@
+using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Calibration;
+
+namespace RiskWorker.Engine.Models;
+
+/// <summary>From settings and shocks to the law of the joint moves.</summary>
+internal static class ScenarioLaws
+{
+    /// <summary>The law of <paramref name="model"/>.</summary>
+    /// <param name="model">The settings.</param>
+    /// <param name="window">The shocks; null where the model is estimated from none.</param>
+    /// <param name="moving">The factors that move, in the order of the plan's rows.</param>
+    /// <param name="deviations">Standard deviation of each factor.</param>
+    /// <param name="longest">The longest horizon in days.</param>
+    /// <exception cref="CalibrationException">The shocks do not suffice.</exception>
+    public static ScenarioLaw Of(ModelSettings model, ShockWindow? window, int[] moving, double[] deviations, int longest) => model.Kind switch
+    {
+        ModelKind.Lognormal => LognormalLaw.Instance,
+        ModelKind.Historical => HistoricalLaw.Of(window!, moving, deviations, model, longest),
+        _ => throw new InvalidOperationException($"No law is known for {model.Kind}."),
+    };
+}
