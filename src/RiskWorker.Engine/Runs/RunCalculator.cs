@@ -5,7 +5,6 @@ using RiskWorker.Engine.Backtesting;
 using RiskWorker.Engine.Calibration;
 using RiskWorker.Engine.Checks;
 using RiskWorker.Engine.Limits;
-using RiskWorker.Engine.Plans;
 using RiskWorker.Engine.Pricing;
 using RiskWorker.Engine.Sensitivities;
 
@@ -44,13 +43,15 @@ public sealed class RunCalculator
         var (tree, _) = BookTree.Build(_snapshot.Books);
         if (tree is null || Blocked) return Failed(tree);
         var clock = Stopwatch.StartNew();
-        var model = Calibrator.Calibrate(_snapshot, ShockTable.From(_snapshot), _snapshot.Settings.Model, LongestHorizon);
+        var table = ShockTable.From(_snapshot);
+        CalibratedModel Calibrated(ModelSettings settings) => Calibrator.Calibrate(_snapshot, table, settings, LongestHorizon);
+        var model = Calibrated(_snapshot.Settings.Model);
         Timings = Timings with { Calibrate = clock.Elapsed.TotalSeconds };
 
         var valued = new BookValuation(_snapshot, tree, model);
         _findings.AddRange(ValuationChecks.Run(_snapshot, tree, valued.Today, valued.Previous));
         if (Blocked) return Failed(tree) with { Holdings = valued.Holdings };
-        return Simulate(tree, model, valued);
+        return Simulate(tree, model, valued, Calibrated);
     }
 
     private int LongestHorizon => _snapshot.Settings.Measures.Concat(_snapshot.Limits.Where(l => l.IsValidOn(_snapshot.AsOf)).Select(l => l.Measure)).Max(m => m.Horizon.Days);
@@ -61,46 +62,39 @@ public sealed class RunCalculator
 
     private static FirmIdentity FirmOf(BookTree tree) => new(tree.Books[0].DisplayName, tree.ReportingCurrency);
 
-    private RunResults Simulate(BookTree tree, CalibratedModel model, BookValuation valued)
+    private RunResults Simulate(BookTree tree, CalibratedModel model, BookValuation valued, Func<ModelSettings, CalibratedModel> calibrate)
     {
         var valid = _snapshot.Limits.Where(l => l.IsValidOn(_snapshot.AsOf)).ToLookup(l => tree.IndexOf(l.Book) >= 0 && (l.ReferenceBook is null || tree.IndexOf(l.ReferenceBook) >= 0));
         var limits = valid[true].ToList();
         var measures = _snapshot.Settings.Measures.Concat(limits.Select(l => l.Measure)).Distinct().Order().ToList();
         var clock = Stopwatch.StartNew();
-        var plan = new PlanCompiler(tree, model, valued.Binder.Currencies, measures.Select(m => m.Horizon)).Compile(_snapshot.Settings.Simulation.Seed, valued.Today, _threads, _cancellation);
-        var outcome = new LookedRun(tree, plan, limits, measures, _snapshot.Settings.Simulation).Run(_threads, _progress, _cancellation);
+        var lines = new ModelLines(tree, valued.Binder.Currencies, valued.Today, measures, _threads, _progress, _cancellation);
+        var run = ModelRun.Of(lines, model, limits, _snapshot.Settings.Simulation);
+        var (plan, outcome) = (run.Plan, run.Outcome);
         var sensitivities = BookSensitivities.Of(plan, model.Factors);
         Timings = Timings with { Simulate = clock.Elapsed.TotalSeconds };
         _findings.AddRange(UndecidableLimits.Of(outcome, limits, _snapshot.Settings.Checks));
         if (Blocked) return Failed(tree) with { Holdings = valued.Holdings }; // where the settings make that finding block
+        var challengers = Challengers.Run(_snapshot.Settings, lines, calibrate, _findings);
+        if (Blocked) return Failed(tree) with { Holdings = valued.Holdings }; // where the settings make a challenger that fails block
         var hypothetical = HypotheticalProfits.Of(_snapshot, tree);
+        var count = new ExceptionCount(_snapshot, tree, hypothetical);
         return new RunResults
         {
             Findings = FindingList.InOrder(_findings),
             Firm = FirmOf(tree),
-            Calibration = SummaryOf(model, plan),
+            Calibration = run.Calibration,
             Simulation = outcome.Simulation,
             Nodes = NodeResults.Of(tree, plan, outcome, measures, _snapshot.Positions),
             Limits = [.. outcome.Limits.Concat(valid[false].Select(l => LimitEvaluator.WithoutBook(l, tree.ReportingCurrency, (double)outcome.Level))).OrderBy(l => l.Limit.Name, StringComparer.Ordinal)],
             Sensitivities = sensitivities,
+            Models = challengers,
             Hypothetical = hypothetical,
-            Backtest = ExceptionCount.Of(_snapshot, tree, measures, hypothetical),
+            Backtest = count.Results(measures),
+            ModelBacktests = ModelBacktests.Of(count, _snapshot.Settings, tree, measures),
             Holdings = valued.Holdings,
             Methods = PricingMethods.Held(valued.Today, tree),
             Adjustments = model.Adjustments,
         };
     }
-
-    private static CalibrationSummary SummaryOf(CalibratedModel model, RevaluationPlan plan) => new()
-    {
-        Shocks = model.Shocks,
-        DroppedDays = model.DroppedDays.Count,
-        From = model.From,
-        To = model.To,
-        Factors = model.Factors.Count,
-        Still = model.Factors.Count - model.Moving.Length,
-        Rank = model.Rank,
-        RepairDistance = model.RepairDistance,
-        Plan = plan.Hash,
-    };
 }

@@ -1,0 +1,64 @@
+using RiskWorker.Domain.Books;
+using RiskWorker.Domain.Limits;
+using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Calibration;
+using RiskWorker.Engine.Plans;
+using RiskWorker.Engine.Pricing;
+
+namespace RiskWorker.Engine.Runs;
+
+/// <summary>One model on the lines of a date: compiled and simulated.</summary>
+internal sealed class ModelRun
+{
+    private ModelRun(CalibratedModel model, RevaluationPlan plan, IReadOnlyList<MeasureSpec> measures, LookOutcome outcome) =>
+        (Model, Plan, Measures, Outcome) = (model, plan, measures, outcome);
+
+    /// <summary>The model.</summary>
+    public CalibratedModel Model { get; }
+
+    /// <summary>What it was compiled to.</summary>
+    public RevaluationPlan Plan { get; }
+
+    /// <summary>What was measured.</summary>
+    public IReadOnlyList<MeasureSpec> Measures { get; }
+
+    /// <summary>What was drawn.</summary>
+    public LookOutcome Outcome { get; }
+
+    /// <summary>The model after calibration, for the record.</summary>
+    public CalibrationSummary Calibration => new()
+    {
+        Shocks = Model.Shocks,
+        DroppedDays = Model.DroppedDays.Count,
+        From = Model.From,
+        To = Model.To,
+        Factors = Model.Factors.Count,
+        Still = Model.Factors.Count - Model.Moving.Length,
+        Rank = Model.Rank,
+        RepairDistance = Model.RepairDistance,
+        Parameters = [.. Model.Law.Parameters(Model)],
+        Plan = Plan.Hash,
+    };
+
+    /// <summary>Runs <paramref name="model"/>.</summary>
+    /// <param name="lines">What is held, and how to run it.</param>
+    /// <param name="model">The model.</param>
+    /// <param name="limits">Limits to decide; without any the run looks once.</param>
+    /// <param name="settings">Scenarios and looks.</param>
+    public static ModelRun Of(ModelLines lines, CalibratedModel model, IReadOnlyList<Limit> limits, SimulationSettings settings)
+    {
+        var plan = new PlanCompiler(lines.Tree, model, lines.Currencies, lines.Measures.Select(m => m.Horizon)).Compile(settings.Seed, lines.Values, lines.Threads, lines.Cancellation);
+        return new(model, plan, lines.Measures, new LookedRun(lines.Tree, plan, limits, lines.Measures, settings).Run(lines.Threads, lines.Progress, lines.Cancellation));
+    }
+}
+
+/// <summary>What every model of a run is run on, and with.</summary>
+/// <param name="Tree">The books.</param>
+/// <param name="Currencies">The currencies known.</param>
+/// <param name="Values">The lines, valued.</param>
+/// <param name="Measures">The measures.</param>
+/// <param name="Threads">Threads to use.</param>
+/// <param name="Progress">Told how far it has come, or null.</param>
+/// <param name="Cancellation">Stops it.</param>
+internal sealed record ModelLines(
+    BookTree Tree, CurrencyTable Currencies, IReadOnlyList<LineValue> Values, IReadOnlyList<MeasureSpec> Measures, int Threads, IProgress<RunProgress>? Progress, CancellationToken Cancellation);
