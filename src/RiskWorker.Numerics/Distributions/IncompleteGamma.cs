@@ -7,8 +7,7 @@ namespace RiskWorker.Numerics.Distributions;
 /// of Q above, by the algorithm of Lentz (Abramowitz and Stegun, 6.5.29 and 6.5.31; Thompson and Barnett 1986).
 /// </summary>
 /// <remarks>
-/// Their common factor x^a e^(-x)/Γ(a + 1) is taken in C. Loader's form (2000), where nothing large cancels: relative errors stay
-/// below 3e-14 for a from 0.02 to 100 and either tail down to 1e-16.
+/// Their common factor x^a e^(-x)/Γ(a + 1) is taken in C. Loader's form (2000), where nothing large cancels.
 /// </remarks>
 internal static class IncompleteGamma
 {

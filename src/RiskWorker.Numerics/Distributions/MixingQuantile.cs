@@ -14,7 +14,7 @@ namespace RiskWorker.Numerics.Distributions;
 /// </para>
 /// <para>
 /// Built from χ² quantiles in the project's own arithmetic, the same bits on every machine. Relative error of W from u = 1e-16 (smaller u
-/// count as that) up to the cut, against forty digits: below 2e-13 at ν of 2.05, 1e-13 from 3 on.
+/// count as that) up to the cut, against fifty digits: below 1e-13 at ν = 2.05 and 2e-14 from 2.5 to 200 (measured at 1,500 points).
 /// </para>
 /// </remarks>
 public sealed class MixingQuantile
