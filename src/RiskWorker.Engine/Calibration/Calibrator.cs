@@ -23,7 +23,7 @@ public static class Calibrator
         var factors = snapshot.Factors;
         var estimated = model.Covariance != CovarianceEstimator.Given;
         var wanted = model.Kind == ModelKind.Historical ? model.Window + longest - 1 : model.Window; // so that every horizon has as many scenarios as the window has days
-        var window = factors.Count > 0 && (estimated || Drift.NeedsShocks(model)) ? ShockWindow.Newest(table, wanted) : null;
+        var window = factors.Count > 0 && (estimated || Drift.NeedsShocks(model) || ScenarioLaws.NeedShocks(model)) ? ShockWindow.Newest(table, wanted) : null;
         if (window is not null) RequirePositivePrices(table, window);
         var last = LastObservations(table);
         var covariance = model.Covariance switch

@@ -6,6 +6,15 @@ namespace RiskWorker.Engine.Models;
 /// <summary>From settings and shocks to the law of the joint moves.</summary>
 internal static class ScenarioLaws
 {
+    /// <summary>Whether the law is estimated from shocks, whatever the covariance is from.</summary>
+    public static bool NeedShocks(ModelSettings model) => model.Kind switch
+    {
+        ModelKind.Lognormal => false,
+        ModelKind.StudentT => model.DegreesOfFreedom is null || model.Margins == StudentMargins.Own,
+        ModelKind.JumpDiffusion => !model.Jumps.AreGiven,
+        _ => true,
+    };
+
     /// <summary>The law of <paramref name="model"/>.</summary>
     /// <param name="model">The settings.</param>
     /// <param name="window">The shocks; null where the model is estimated from none.</param>
@@ -16,6 +25,7 @@ internal static class ScenarioLaws
     public static ScenarioLaw Of(ModelSettings model, ShockWindow? window, int[] moving, double[] deviations, int longest) => model.Kind switch
     {
         ModelKind.Lognormal => LognormalLaw.Instance,
+        ModelKind.StudentT => StudentEstimation.Of(model, window, moving, deviations),
         ModelKind.Historical => HistoricalLaw.Of(window!, moving, deviations, model, longest),
         _ => throw new InvalidOperationException($"No law is known for {model.Kind}."),
     };
