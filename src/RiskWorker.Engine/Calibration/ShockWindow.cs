@@ -63,6 +63,22 @@ public sealed class ShockWindow
         return new(table, [.. kept], [.. dropped]);
     }
 
+    /// <summary>Takes the newest <paramref name="window"/> days of <paramref name="table"/> on which any factor has a shock; those of the others are NaN.</summary>
+    /// <exception cref="CalibrationException">There is no such day.</exception>
+    public static ShockWindow Observed(ShockTable table, int window)
+    {
+        ArgumentOutOfRangeException.ThrowIfLessThan(window, 1);
+        var (missing, _) = Coverage(table);
+        var kept = new List<int>();
+        for (var t = missing.Length - 1; t >= 0 && kept.Count < window; t--)
+        {
+            if (missing[t] < table.Factors.Count) kept.Add(t);
+        }
+        if (kept.Count == 0) throw new CalibrationException("observations", "There is no day on which any factor has a shock.");
+        kept.Reverse();
+        return new(table, [.. kept], []);
+    }
+
     /// <summary>For each date how many factors lack a shock, and whether any factor was observed.</summary>
     private static (int[] Missing, bool[] Observed) Coverage(ShockTable table)
     {

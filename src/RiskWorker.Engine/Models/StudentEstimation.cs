@@ -60,13 +60,13 @@ internal static class StudentEstimation
 
     private static (DegreesOfFreedomFit Fit, string Method) Copula(double[] scores, int factors) => FullCorrelation(scores, factors) is { } correlation
         ? (CopulaLikelihood.Fit(scores, correlation), "likelihood of the copula, margins first")
-        : (CopulaLikelihood.FitPairs(scores, factors, Neighbours(scores, factors)), "likelihood of the copula pair by pair, margins first: too few days for all together");
+        : (CopulaPairLikelihood.Fit(scores, factors, Neighbours(scores, factors)), "likelihood of the copula pair by pair, margins first: too few days for all together");
 
     // Each factor with the next: as many pairs as factors, whatever their number.
-    private static (int First, int Second, double Correlation)[] Neighbours(double[] scores, int factors)
+    private static CopulaPair[] Neighbours(double[] scores, int factors)
     {
         var correlation = Correlation(scores, factors);
-        return [.. Enumerable.Range(1, factors - 1).Select(i => (i - 1, i, Math.Clamp(correlation[((i - 1) * factors) + i], -MostCorrelated, MostCorrelated)))];
+        return [.. Enumerable.Range(1, factors - 1).Select(i => new CopulaPair(i - 1, i, Math.Clamp(correlation[((i - 1) * factors) + i], -MostCorrelated, MostCorrelated)))];
     }
 
     private const double MostCorrelated = 0.999;
@@ -92,7 +92,8 @@ internal static class StudentEstimation
         var rows = new double[moving.Length * days];
         for (var row = 0; row < moving.Length; row++)
         {
-            var (shocks, standardised) = (window.Row(moving[row]), rows.AsSpan(row * days, days));
+            var shocks = window.Row(moving[row]);
+            var standardised = rows.AsSpan(row * days, days);
             if (model.Covariance == CovarianceEstimator.Ewma) _ = StandardizedResiduals.Write(shocks, EwmaVariance.Of(shocks, model.Lambda), standardised);
             else
             {

@@ -36,7 +36,7 @@ internal sealed class ModelRun
         Still = Model.Factors.Count - Model.Moving.Length,
         Rank = Model.Rank,
         RepairDistance = Model.RepairDistance,
-        Parameters = [.. Model.Law.Parameters(Model)],
+        Parameters = [.. Model.Parameters, .. Model.Law.Parameters(Model)],
         Plan = Plan.Hash,
     };
 

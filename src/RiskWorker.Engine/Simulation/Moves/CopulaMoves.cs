@@ -61,9 +61,8 @@ internal sealed class CopulaMoves(int capacity) : MoveSource
     private void DrawMixing(int day, Span<double> roots)
     {
         var other = _variates.AsSpan(0, roots.Length);
-        var (even, odd) = (roots, other);
-        if ((day & 1) == 1) (even, odd) = (other, roots);
-        UniformDraws.FillPair(new(_plan.Seed, DrawPurpose.MixingVariable, 0), (ulong)_first, (uint)day / 2, even, odd);
+        var isOdd = (day & 1) == 1;
+        UniformDraws.FillPair(new(_plan.Seed, DrawPurpose.MixingVariable, 0), (ulong)_first, (uint)day / 2, isOdd ? other : roots, isOdd ? roots : other);
         _mixing.Of(roots, roots);
         Elementwise.SquareRoot(roots, roots);
     }
