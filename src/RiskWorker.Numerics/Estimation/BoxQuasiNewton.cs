@@ -5,6 +5,9 @@ internal interface IBoxObjective
 {
     /// <summary>The value at <paramref name="x"/>; writes the slope.</summary>
     double Of(ReadOnlySpan<double> x, Span<double> slope);
+
+    /// <summary>An estimate of the second derivatives at <paramref name="x"/>, symmetric and semidefinite, row-major.</summary>
+    double[] Curvature(ReadOnlySpan<double> x);
 }
 
 /// <summary>Where a minimisation ended.</summary>
@@ -15,7 +18,7 @@ internal interface IBoxObjective
 internal sealed record BoxMinimum(double[] X, double Value, double SlopeNorm, int Steps);
 
 /// <summary>
-/// A minimum over a box by projected quasi-Newton steps: coordinates that an end of their interval holds stand still, the others
+/// A minimum over a box by projected quasi-Newton steps: coordinates at or near an end that they are pushed to stand there, the others
 /// take the step of the BFGS matrix (Bertsekas 1982, SIAM J. Control Optim. 20, 221-246; Nocedal and Wright 2006, chapters 6 and 18,
 /// for the update, damped as by Powell 1978). Pure arithmetic in a fixed order.
 /// </summary>
@@ -24,7 +27,8 @@ internal sealed class BoxQuasiNewton
     private const int MostSteps = 300;
     private const int MostCuts = 40;
     private const double Sufficient = 1e-4;
-    private const double Rounding = 1e-15;
+    private const double Rounding = 1e-14;
+    private const double Near = 1e-7;
 
     private readonly IBoxObjective _function;
     private readonly double[] _low;
@@ -38,13 +42,16 @@ internal sealed class BoxQuasiNewton
         (_function, _low, _high, _reach, _n) = (function, low, high, reach, low.Length);
     }
 
-    /// <summary>Descends from <paramref name="start"/> with the curvature given there until the slope's norm is at most <paramref name="tolerance"/> or no step goes down.</summary>
-    public BoxMinimum From(ReadOnlySpan<double> start, double[] curvature, double tolerance)
+    /// <summary>
+    /// Descends from <paramref name="start"/>, with the function's own curvature at first and whenever no step goes down, until the slope's norm
+    /// is at most <paramref name="tolerance"/> or that curvature shows no step down either.
+    /// </summary>
+    public BoxMinimum From(ReadOnlySpan<double> start, double tolerance)
     {
-        var matrix = (double[])curvature.Clone();
         var (x, slope) = (start.ToArray(), new double[_n]);
         Project(x);
         var value = _function.Of(x, slope);
+        var matrix = _function.Curvature(x);
         var (steps, isFresh) = (0, true);
         while (steps < MostSteps && Norm(x, slope) > tolerance)
         {
@@ -52,7 +59,7 @@ internal sealed class BoxQuasiNewton
             if (Descend(x, value, slope, direction) is not var (next, nextValue, nextSlope))
             {
                 if (isFresh) break;
-                matrix = Diagonal(curvature);
+                matrix = _function.Curvature(x);
                 isFresh = true;
                 continue;
             }
@@ -89,13 +96,23 @@ internal sealed class BoxQuasiNewton
         return null;
     }
 
-    /// <summary>-B⁻¹ slope over the coordinates that are free to move; a B that is not definite there gains on its diagonal until it is.</summary>
+    /// <summary>
+    /// -B⁻¹ slope over the coordinates that are free to move; a B that is not definite there gains on its diagonal until it is. A coordinate
+    /// whose end is near and downhill goes there: left free it would shorten the step of all the others time and again.
+    /// </summary>
     private double[] Direction(double[] matrix, double[] x, double[] slope)
     {
-        int[] free = [.. Enumerable.Range(0, _n).Where(i => !(slope[i] > 0 && x[i] <= _low[i]) && !(slope[i] < 0 && x[i] >= _high[i]))];
+        var direction = new double[_n];
+        var held = new bool[_n];
+        for (var i = 0; i < _n; i++)
+        {
+            var end = slope[i] > 0 ? _low[i] : _high[i];
+            held[i] = slope[i] != 0 && Math.Abs(end - x[i]) <= Near * (_high[i] - _low[i]);
+            if (held[i]) direction[i] = end - x[i];
+        }
+        int[] free = [.. Enumerable.Range(0, _n).Where(i => !held[i])];
         var size = free.Length;
         var lower = new double[size * size];
-        var direction = new double[_n];
         for (var ridge = 1e-10; !Factor(matrix, free, ridge, lower); ridge *= 100)
         {
             // Each round adds a hundredfold; a diagonal of zeros ends as the unit matrix.
@@ -167,12 +184,5 @@ internal sealed class BoxQuasiNewton
     private void Project(double[] x)
     {
         for (var i = 0; i < _n; i++) x[i] = Math.Clamp(x[i], _low[i], _high[i]);
-    }
-
-    private double[] Diagonal(double[] matrix)
-    {
-        var diagonal = new double[matrix.Length];
-        for (var i = 0; i < _n; i++) diagonal[(i * _n) + i] = matrix[(i * _n) + i];
-        return diagonal;
     }
 }

@@ -15,7 +15,7 @@ public static class EwmaVariance
     {
         Series.RequireFinite(values, 1, nameof(values));
         Series.RequireFinite(mean, nameof(mean));
-        if (!(lambda > 0 && lambda < 1)) throw new ArgumentOutOfRangeException(nameof(lambda), lambda, "The decay factor lies strictly between 0 and 1.");
+        RequireDecay(lambda);
         var variances = new double[values.Length];
         var variance = Series.MeanSquare(values, mean);
         for (var t = 0; t < values.Length; t++)
@@ -25,5 +25,19 @@ public static class EwmaVariance
             variance = Math.FusedMultiplyAdd(lambda, variance, (1 - lambda) * (error * error));
         }
         return new(mean, variances, variance);
+    }
+
+    /// <summary>The recursion as a process to simulate: omega 0, alpha 1 - λ, beta λ.</summary>
+    /// <exception cref="ArgumentException">λ or the mean is no such number.</exception>
+    public static GarchParameters Process(double lambda, double mean = 0)
+    {
+        RequireDecay(lambda);
+        Series.RequireFinite(mean, nameof(mean));
+        return new(mean, 0, 1 - lambda, lambda);
+    }
+
+    private static void RequireDecay(double lambda)
+    {
+        if (!(lambda > 0 && lambda < 1)) throw new ArgumentOutOfRangeException(nameof(lambda), lambda, "The decay factor lies strictly between 0 and 1.");
     }
 }

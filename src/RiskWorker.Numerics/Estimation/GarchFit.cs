@@ -115,12 +115,11 @@ public sealed class GarchFit
         double[] constant = [1, 0, 0, 0];
         constant = constant[..coordinates];
         // The scaled series' own mean and variance: the most likely of all that do not react, where the search stays.
-        var best = search.From(constant, likelihood.Information(constant), Tolerance);
+        var best = search.From(constant, Tolerance);
         var iterations = best.Steps;
         foreach (var region in s_starts)
         {
-            var start = BestOf(region, likelihood, coordinates);
-            var end = search.From(start, likelihood.Information(start), Tolerance);
+            var end = search.From(BestOf(region, likelihood, coordinates), Tolerance);
             iterations += end.Steps;
             if (Reacts(end.X) && end.Value < best.Value) best = end;
         }

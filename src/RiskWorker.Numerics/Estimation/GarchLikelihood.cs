@@ -47,12 +47,12 @@ internal sealed class GarchLikelihood : IBoxObjective
     /// Fisher's information a day, Σ (½ v⁻² ∇v ∇v' + v⁻¹ ∇m ∇m')/n, in the coordinates: positive semidefinite everywhere, and near
     /// the maximum close to the curvature.
     /// </summary>
-    public double[] Information(ReadOnlySpan<double> x)
+    public double[] Curvature(ReadOnlySpan<double> x)
     {
         var process = At(x);
         Recur(process);
         var n = x.Length;
-        var information = new double[n * n];
+        var curvature = new double[n * n];
         Span<double> d = stackalloc double[4];
         for (var t = 0; t < _values.Length; t++)
         {
@@ -64,15 +64,15 @@ internal sealed class GarchLikelihood : IBoxObjective
             d[3] = r * Row(5)[t];
             for (var i = 0; i < n; i++)
             {
-                for (var j = 0; j <= i; j++) information[(i * n) + j] = Math.FusedMultiplyAdd(d[i], d[j], information[(i * n) + j]);
+                for (var j = 0; j <= i; j++) curvature[(i * n) + j] = Math.FusedMultiplyAdd(d[i], d[j], curvature[(i * n) + j]);
             }
-            if (n > 3) information[15] = Math.FusedMultiplyAdd(2, r, information[15]);
+            if (n > 3) curvature[15] = Math.FusedMultiplyAdd(2, r, curvature[15]);
         }
         for (var i = 0; i < n; i++)
         {
-            for (var j = 0; j <= i; j++) information[(i * n) + j] = information[(j * n) + i] = information[(i * n) + j] * 0.5 / _values.Length;
+            for (var j = 0; j <= i; j++) curvature[(i * n) + j] = curvature[(j * n) + i] = curvature[(i * n) + j] * 0.5 / _values.Length;
         }
-        return information;
+        return curvature;
     }
 
     private Span<double> Row(int row) => _rows.AsSpan(row * _width, _values.Length);

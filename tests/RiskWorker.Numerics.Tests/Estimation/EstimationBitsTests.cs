@@ -12,6 +12,7 @@ public sealed class EstimationBitsTests
     {
         [nameof(GarchFit)] = () => Windows().SelectMany(w => Numbers(GarchFit.Of(w, w.Length % 2 == 0 ? 0 : null))),
         [nameof(EwmaVariance)] = () => Windows().SelectMany(w => Numbers(EwmaVariance.Of(w, 0.94))),
+        [nameof(VarianceStep)] = Steps,
         [nameof(StandardizedResiduals)] = () => Windows().SelectMany(w => Residuals(w)),
         [nameof(LedoitWolf)] = () => new[] { true, false }.SelectMany(removeMean => new[]
         {
@@ -25,8 +26,9 @@ public sealed class EstimationBitsTests
     };
 
     [Theory]
-    [InlineData("GarchFit", "ac93bcbe40e4d98e8df3cfd74ef4578e")]
+    [InlineData("GarchFit", "98daf11e398c0eadfab20fc591b181e8")]
     [InlineData("EwmaVariance", "4191ac84fbfd3214df1f05ccdf26a3da")]
+    [InlineData("VarianceStep", "ec8b00412faff3d9987b99d2333f8e24")]
     [InlineData("StandardizedResiduals", "36e1ea1966e0e2ad76952bbb328c54e8")]
     [InlineData("LedoitWolf", "c3a6d16039aaffbc6a7e810b1075239f")]
     [InlineData("PairwiseCovariance", "63996f3de6e2e0534f6a6b57b5808346")]
@@ -69,6 +71,14 @@ public sealed class EstimationBitsTests
             if (gaps && k % 7 == 3) rows[k] = double.NaN;
         }
         return rows;
+    }
+
+    private static double[] Steps()
+    {
+        var numbers = new SeededNumbers(33);
+        double[] variance = numbers.Between(0.1, 2, 1003), move = new double[1003];
+        for (var day = 0; day < 20; day++) VarianceStep.Advance(new(0.01, 0.03, 0.1, 0.87), numbers.Between(-3, 3, 1003), variance, move);
+        return [.. variance, .. move];
     }
 
     private static IEnumerable<double> Jumps()

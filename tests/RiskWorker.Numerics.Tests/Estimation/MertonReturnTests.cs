@@ -1,4 +1,5 @@
 using RiskWorker.Numerics.Estimation;
+using RiskWorker.Numerics.Random;
 
 namespace RiskWorker.Numerics.Tests.Estimation;
 
@@ -48,6 +49,26 @@ public sealed class MertonReturnTests
             Assert.Equal(At(11), x.ReturnLoss(tail).Shortfall, 1e-10);
             Assert.Equal(x.ReturnLoss(tail).ValueAtRisk, -Math.Log(1 - x.LongLoss(tail).ValueAtRisk), 1e-14);
         }
+    }
+
+    // Draws as a simulation would make them; a share of n draws has a standard error of √(p(1 - p)/n), a tail's mean that of Manistre and Hancock (2005).
+    [Fact]
+    public void Losses_are_those_of_simulated_returns()
+    {
+        const int n = 400_000, days = 10;
+        double[] count = new double[n], other = new double[n], z = new double[n], size = new double[n], loss = new double[n];
+        UniformDraws.FillPair(new(9, DrawPurpose.Jumps, 0), 0, 0, count, other);
+        NormalDraws.FillPair(new(9, DrawPurpose.FactorMoves, 0), 0, 0, z, size);
+        new PoissonCounts(0.04 * days).Of(count, count);
+        for (var s = 0; s < n; s++)
+            loss[s] = 1 - Math.Exp((0.01 * Math.Sqrt(days) * z[s]) + (count[s] * -0.05) + (Math.Sqrt(count[s]) * 0.02 * size[s]));
+
+        var (valueAtRisk, shortfall) = new MertonReturn(0, 0.01, 0.04, -0.05, 0.02, days).LongLoss(0.01);
+
+        Assert.Equal(0.01, loss.Count(l => l > valueAtRisk) / (double)n, 4 * Math.Sqrt(0.01 * 0.99 / n));
+        var tail = loss.OrderDescending().Take(n / 100).ToArray();
+        var spread = tail.Average(l => (l - shortfall) * (l - shortfall)) + (0.99 * (shortfall - valueAtRisk) * (shortfall - valueAtRisk));
+        Assert.Equal(shortfall, tail.Average(), 4 * Math.Sqrt(spread / (n * 0.01)));
     }
 
     [Fact]
