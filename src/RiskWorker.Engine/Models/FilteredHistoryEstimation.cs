@@ -23,11 +23,11 @@ internal static class FilteredHistoryEstimation
             if (isFitted)
             {
                 fits[row] = GarchFit.Of(shocks);
-                (processes[row], filtered) = (fits[row].Parameters, fits[row].Variance);
+                (processes[row], filtered) = (fits[row].Parameters with { Mean = 0 }, fits[row].Variance); // moves of the past are used as they are, their mean is not
             }
             else
             {
-                (processes[row], filtered) = (new(0, 0, 1 - model.Lambda, model.Lambda), EwmaVariance.Of(shocks, model.Lambda));
+                (processes[row], filtered) = (EwmaVariance.Process(model.Lambda), EwmaVariance.Of(shocks, model.Lambda));
             }
             _ = StandardizedResiduals.Write(shocks, filtered, residuals.AsSpan(row * days, days));
             variances[row] = filtered.Forecast;

@@ -1,6 +1,6 @@
 using RiskWorker.Engine.Models;
 using RiskWorker.Engine.Plans;
-using RiskWorker.Numerics.Kernels;
+using RiskWorker.Numerics.Estimation;
 using RiskWorker.Numerics.Random;
 
 namespace RiskWorker.Engine.Simulation.Moves;
@@ -39,7 +39,6 @@ internal sealed class FilteredMoves(int capacity) : MoveSource
     private void Walk(int row)
     {
         var residuals = _law.Residuals.AsSpan(row * _law.Days, _law.Days);
-        var terms = new VarianceStepTerms(_law.Processes[row].Omega, _law.Processes[row].Alpha, _law.Processes[row].Beta);
         Span<double> drawn = _drawn.AsSpan(0, _width), variances = _variances.AsSpan(0, _width), sums = _sums.AsSpan(0, _width);
         variances.Fill(_law.Variances[row]);
         sums.Clear();
@@ -47,7 +46,7 @@ internal sealed class FilteredMoves(int capacity) : MoveSource
         {
             var days = _days.AsSpan(day * _width, _width);
             for (var lane = 0; lane < days.Length; lane++) drawn[lane] = residuals[days[lane]];
-            VarianceStep.Advance(drawn, terms, variances, sums);
+            VarianceStep.Advance(_law.Processes[row], drawn, variances, sums);
             if (day + 1 == _plan.Horizons[next].Days) sums.CopyTo(_atHorizon[next++].AsSpan(row * _width, _width));
         }
     }
