@@ -16,16 +16,21 @@ public static class Calibrator
     public static CalibratedModel Calibrate(Snapshot snapshot, ShockTable table) =>
         Calibrate(snapshot, table, snapshot.Settings.Model, snapshot.Settings.Measures.Select(m => m.Horizon.Days).Append(1).Max());
 
-    /// <summary>Calibrates any model for horizons of up to <paramref name="longest"/> days.</summary>
+    /// <summary>Calibrates any model but a stressed one, whose span has to be found first.</summary>
+    /// <param name="snapshot">Factors and given covariances.</param>
+    /// <param name="table">The snapshot's shocks.</param>
+    /// <param name="model">The model.</param>
+    /// <param name="longest">The longest horizon in days.</param>
+    /// <param name="lastDay">Shocks after it are left out; null where none is. Levels are today's whatever it is.</param>
     /// <exception cref="CalibrationException">The data cannot be used.</exception>
-    public static CalibratedModel Calibrate(Snapshot snapshot, ShockTable table, ModelSettings model, int longest)
+    public static CalibratedModel Calibrate(Snapshot snapshot, ShockTable table, ModelSettings model, int longest, DateOnly? lastDay = null)
     {
         var factors = snapshot.Factors;
-        var (complete, parameters) = (CompleteDays(table, model, longest), new List<ModelParameter>());
+        var (complete, parameters) = (CompleteDays(table, model, longest, lastDay), new List<ModelParameter>());
         if (complete is not null) RequirePositivePrices(table, complete);
         var last = LastObservations(table);
         var jumps = model is { Kind: ModelKind.JumpDiffusion, Jumps.AreGiven: false } && complete is not null ? JumpEstimation.Of(model, complete, factors.Count) : null;
-        var paired = model.MissingDays == MissingDays.Pairwise && model.Covariance != CovarianceEstimator.Given && factors.Count > 0 ? ShockWindow.Observed(table, model.Window) : null;
+        var paired = model.MissingDays == MissingDays.Pairwise && model.Covariance != CovarianceEstimator.Given && factors.Count > 0 ? ShockWindow.Observed(table, model.Window, lastDay) : null;
         if (paired is not null) RequirePositivePrices(table, paired);
         var covariance = model.Covariance switch
         {
@@ -61,13 +66,13 @@ public static class Calibrator
     }
 
     /// <summary>The complete days that something is estimated from; null where nothing is.</summary>
-    private static ShockWindow? CompleteDays(ShockTable table, ModelSettings model, int longest)
+    private static ShockWindow? CompleteDays(ShockTable table, ModelSettings model, int longest, DateOnly? lastDay)
     {
         if (table.Factors.Count == 0) return null;
         var forCovariance = model.Covariance != CovarianceEstimator.Given && model.MissingDays == MissingDays.Complete;
         if (!forCovariance && !Drift.NeedsShocks(model) && !ScenarioLaws.NeedShocks(model)) return null;
         // So that every horizon has as many scenarios as the window has days.
-        return ShockWindow.Newest(table, model.Kind == ModelKind.Historical ? model.Window + longest - 1 : model.Window);
+        return ShockWindow.Newest(table, model.Kind == ModelKind.Historical ? model.Window + longest - 1 : model.Window, lastDay);
     }
 
     /// <summary>Index of the date of each factor's level.</summary>

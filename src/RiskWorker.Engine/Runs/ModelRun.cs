@@ -40,6 +40,10 @@ internal sealed class ModelRun
         Plan = Plan.Hash,
     };
 
+    /// <summary>The plan of <paramref name="model"/>.</summary>
+    public static RevaluationPlan PlanOf(ModelLines lines, CalibratedModel model, SimulationSettings settings) =>
+        new PlanCompiler(lines.Tree, model, lines.Currencies, lines.Measures.Select(m => m.Horizon)).Compile(settings.Seed, lines.Values, lines.Threads, lines.Cancellation);
+
     /// <summary>Runs <paramref name="model"/>.</summary>
     /// <param name="lines">What is held, and how to run it.</param>
     /// <param name="model">The model.</param>
@@ -47,7 +51,7 @@ internal sealed class ModelRun
     /// <param name="settings">Scenarios and looks.</param>
     public static ModelRun Of(ModelLines lines, CalibratedModel model, IReadOnlyList<Limit> limits, SimulationSettings settings)
     {
-        var plan = new PlanCompiler(lines.Tree, model, lines.Currencies, lines.Measures.Select(m => m.Horizon)).Compile(settings.Seed, lines.Values, lines.Threads, lines.Cancellation);
+        var plan = PlanOf(lines, model, settings);
         return new(model, plan, lines.Measures, new LookedRun(lines.Tree, plan, limits, lines.Measures, settings).Run(lines.Threads, lines.Progress, lines.Cancellation));
     }
 }

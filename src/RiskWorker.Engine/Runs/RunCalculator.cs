@@ -43,15 +43,14 @@ public sealed class RunCalculator
         var (tree, _) = BookTree.Build(_snapshot.Books);
         if (tree is null || Blocked) return Failed(tree);
         var clock = Stopwatch.StartNew();
-        var table = ShockTable.From(_snapshot);
-        CalibratedModel Calibrated(ModelSettings settings) => Calibrator.Calibrate(_snapshot, table, settings, LongestHorizon);
-        var model = Calibrated(_snapshot.Settings.Model);
+        var calibration = new ModelCalibration(_snapshot, LongestHorizon);
+        var model = calibration.Of(_snapshot.Settings.Model);
         Timings = Timings with { Calibrate = clock.Elapsed.TotalSeconds };
 
         var valued = new BookValuation(_snapshot, tree, model);
         _findings.AddRange(ValuationChecks.Run(_snapshot, tree, valued.Today, valued.Previous));
         if (Blocked) return Failed(tree) with { Holdings = valued.Holdings };
-        return Simulate(tree, model, valued, Calibrated);
+        return Simulate(tree, model, valued, calibration);
     }
 
     private int LongestHorizon => _snapshot.Settings.Measures.Concat(_snapshot.Limits.Where(l => l.IsValidOn(_snapshot.AsOf)).Select(l => l.Measure)).Max(m => m.Horizon.Days);
@@ -62,20 +61,22 @@ public sealed class RunCalculator
 
     private static FirmIdentity FirmOf(BookTree tree) => new(tree.Books[0].DisplayName, tree.ReportingCurrency);
 
-    private RunResults Simulate(BookTree tree, CalibratedModel model, BookValuation valued, Func<ModelSettings, CalibratedModel> calibrate)
+    private RunResults Simulate(BookTree tree, CalibratedModel model, BookValuation valued, ModelCalibration calibration)
     {
         var valid = _snapshot.Limits.Where(l => l.IsValidOn(_snapshot.AsOf)).ToLookup(l => tree.IndexOf(l.Book) >= 0 && (l.ReferenceBook is null || tree.IndexOf(l.ReferenceBook) >= 0));
         var limits = valid[true].ToList();
         var measures = _snapshot.Settings.Measures.Concat(limits.Select(l => l.Measure)).Distinct().Order().ToList();
         var clock = Stopwatch.StartNew();
         var lines = new ModelLines(tree, valued.Binder.Currencies, valued.Today, measures, _threads, _progress, _cancellation);
+        // The levels of the newest span have valued the lines; the moves come from the worst one.
+        if (_snapshot.Settings.Model.Kind == ModelKind.Stressed) model = StressedSpan.Find(lines, _snapshot.Settings.Model, calibration, _snapshot.Settings.Simulation);
         var run = ModelRun.Of(lines, model, limits, _snapshot.Settings.Simulation);
         var (plan, outcome) = (run.Plan, run.Outcome);
         var sensitivities = BookSensitivities.Of(plan, model.Factors);
         Timings = Timings with { Simulate = clock.Elapsed.TotalSeconds };
         _findings.AddRange(UndecidableLimits.Of(outcome, limits, _snapshot.Settings.Checks));
         if (Blocked) return Failed(tree) with { Holdings = valued.Holdings }; // where the settings make that finding block
-        var challengers = Challengers.Run(_snapshot.Settings, lines, calibrate, _findings);
+        var challengers = Challengers.Run(_snapshot.Settings, lines, calibration, _findings);
         if (Blocked) return Failed(tree) with { Holdings = valued.Holdings }; // where the settings make a challenger that fails block
         var hypothetical = HypotheticalProfits.Of(_snapshot, tree);
         var count = new ExceptionCount(_snapshot, tree, hypothetical);
