@@ -29,7 +29,7 @@ public static class EwmaVariance
 
     /// <summary>The recursion as a process to simulate: omega 0, alpha 1 - λ, beta λ.</summary>
     /// <exception cref="ArgumentException">λ or the mean is no such number.</exception>
-    public static GarchParameters Process(double lambda, double mean = 0)
+    public static GarchParameters AsProcess(double lambda, double mean = 0)
     {
         RequireDecay(lambda);
         Series.RequireFinite(mean, nameof(mean));

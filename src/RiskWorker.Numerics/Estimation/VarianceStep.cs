@@ -7,7 +7,7 @@ namespace RiskWorker.Numerics.Estimation;
 
 /// <summary>
 /// One day of a process with <see cref="GarchParameters"/> in every scenario: with e = √v·z the move grows by mean + e, and v becomes
-/// omega + alpha e² + beta v. Exponential weighting is the process of <see cref="EwmaVariance.Process"/>.
+/// omega + alpha e² + beta v. Exponential weighting is the process of <see cref="EwmaVariance.AsProcess"/>.
 /// </summary>
 /// <remarks>Elementwise; a NaN stays one; allocates nothing.</remarks>
 public static class VarianceStep

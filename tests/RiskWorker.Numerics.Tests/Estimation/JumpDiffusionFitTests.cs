@@ -26,7 +26,7 @@ public sealed class JumpDiffusionFitTests
     public void Of_a_simulated_process_finds_its_parameters()
     {
         // Standard errors at 20,000 days and 200 jumps: intensity 0.0007, mean 0.0014, deviation 0.001, diffusion 0.00005. Jumps
-        // below the threshold are missed: about 1 in 25 here.
+        // below the threshold are missed: 1 in 27 here.
         var series = ReturnSeries.Jumping(20_000, 0.01, 0.01, -0.08, 0.02, seed: 4);
 
         var fit = JumpDiffusionFit.Of(series, 4);
@@ -79,7 +79,7 @@ public sealed class JumpDiffusionFitTests
         Assert.Equal(Math.Sqrt(series.Average(x => x * x)), fit.Diffusion, 1e-14);
     }
 
-    // P(|z| > 3) is 0.0027: 54 of 20,000, standard error 7.3. Without the correction for what is cut off there would be 20 in a hundred more.
+    // P(|z| > 3) is 0.0027: 54 of 20,000, standard error 7.3 (4 of them). Without the correction for what is cut off there would be 16 in a hundred more.
     [Fact]
     public void Mark_of_normal_days_has_the_threshold_where_it_belongs()
     {

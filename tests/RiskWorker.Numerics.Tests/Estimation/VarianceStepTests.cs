@@ -54,7 +54,7 @@ public sealed class VarianceStepTests
     public void Advance_of_a_filters_residuals_rebuilds_its_series()
     {
         var marks = ReturnSeries.MarkPound()[..300];
-        var process = EwmaVariance.Process(0.94, 0.01);
+        var process = EwmaVariance.AsProcess(0.94, 0.01);
         var filtered = EwmaVariance.Of(marks, 0.94, 0.01);
         double variance = filtered.Variances[0], total = 0;
         for (var t = 0; t < marks.Length; t++)
@@ -73,6 +73,6 @@ public sealed class VarianceStepTests
         Assert.Equal(0, Allocations.FewestOf(() => VarianceStep.Advance(Process, z, variance, move)));
         Assert.Throws<ArgumentException>(() => VarianceStep.Advance(Process, z, variance.AsSpan(1), move));
         Assert.Throws<ArgumentException>(() => VarianceStep.Advance(Process, z, variance, move.AsSpan(1)));
-        Assert.Throws<ArgumentOutOfRangeException>(() => EwmaVariance.Process(1));
+        Assert.Throws<ArgumentOutOfRangeException>(() => EwmaVariance.AsProcess(1));
     }
 }
