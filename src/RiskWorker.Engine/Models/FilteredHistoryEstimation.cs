@@ -27,7 +27,7 @@ internal static class FilteredHistoryEstimation
             }
             else
             {
-                (processes[row], filtered) = (EwmaVariance.Process(model.Lambda), EwmaVariance.Of(shocks, model.Lambda));
+                (processes[row], filtered) = (EwmaVariance.AsProcess(model.Lambda), EwmaVariance.Of(shocks, model.Lambda));
             }
             _ = StandardizedResiduals.Write(shocks, filtered, residuals.AsSpan(row * days, days));
             variances[row] = filtered.Forecast;
