@@ -59,6 +59,22 @@ public sealed record RevaluationPlan
 /// <param name="Factors">Each factor's law.</param>
 public sealed record FactorMoves(int Rank, double[] Lower, int[] RowOf, int Rows, FactorLaw[] Factors)
 {
+    /// <summary>The factor of each row, whether or not it is held still.</summary>
+    public int[] FactorOf { get; private init; } = Inverse(RowOf, Rows);
+
+    /// <summary>The same draws with every factor held at its level but those that <paramref name="moves"/> names.</summary>
+    public FactorMoves Only(Func<int, bool> moves) => this with { RowOf = [.. RowOf.Select((row, factor) => moves(factor) ? row : -1)] };
+
+    private static int[] Inverse(int[] rowOf, int rows)
+    {
+        var factors = new int[rows];
+        for (var factor = 0; factor < rowOf.Length; factor++)
+        {
+            if (rowOf[factor] >= 0) factors[rowOf[factor]] = factor;
+        }
+        return factors;
+    }
+
     /// <summary>The moves of <paramref name="model"/>.</summary>
     public static FactorMoves Of(CalibratedModel model)
     {

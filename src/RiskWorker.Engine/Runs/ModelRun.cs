@@ -52,7 +52,9 @@ internal sealed class ModelRun
     public static ModelRun Of(ModelLines lines, CalibratedModel model, IReadOnlyList<Limit> limits, SimulationSettings settings)
     {
         var plan = PlanOf(lines, model, settings);
-        return new(model, plan, lines.Measures, new LookedRun(lines.Tree, plan, limits, lines.Measures, settings).Run(lines.Threads, lines.Progress, lines.Cancellation));
+        var outcome = new LookedRun(lines.Tree, plan, limits, lines.Measures, settings).Run(lines.Threads, lines.Progress, lines.Cancellation);
+        var cascades = LiquidityCascades.Of(lines, model.Factors, plan, outcome, settings);
+        return new(model, plan, lines.Measures, cascades.Count == 0 ? outcome : outcome with { Measures = outcome.Measures.With(cascades) });
     }
 }
 

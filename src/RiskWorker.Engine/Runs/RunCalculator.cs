@@ -53,7 +53,7 @@ public sealed class RunCalculator
         return Simulate(tree, model, valued, calibration);
     }
 
-    private int LongestHorizon => _snapshot.Settings.Measures.Concat(_snapshot.Limits.Where(l => l.IsValidOn(_snapshot.AsOf)).Select(l => l.Measure)).Max(m => m.Horizon.Days);
+    private int LongestHorizon => _snapshot.Settings.Measures.Concat(_snapshot.ValidLimits.Select(l => l.Measure)).Max(m => m.Horizon.Days);
 
     private bool Blocked => _findings.Exists(f => f.Severity == FindingSeverity.Blocking);
 
@@ -63,7 +63,7 @@ public sealed class RunCalculator
 
     private RunResults Simulate(BookTree tree, CalibratedModel model, BookValuation valued, ModelCalibration calibration)
     {
-        var valid = _snapshot.Limits.Where(l => l.IsValidOn(_snapshot.AsOf)).ToLookup(l => tree.IndexOf(l.Book) >= 0 && (l.ReferenceBook is null || tree.IndexOf(l.ReferenceBook) >= 0));
+        var valid = _snapshot.ValidLimits.ToLookup(l => tree.IndexOf(l.Book) >= 0 && (l.ReferenceBook is null || tree.IndexOf(l.ReferenceBook) >= 0));
         var limits = valid[true].ToList();
         var measures = _snapshot.Settings.Measures.Concat(limits.Select(l => l.Measure)).Distinct().Order().ToList();
         var clock = Stopwatch.StartNew();

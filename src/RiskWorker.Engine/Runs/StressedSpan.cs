@@ -23,10 +23,11 @@ internal sealed class StressedSpan
     private readonly SimulationSettings _settings;
     private readonly MeasureSpec _measure;
     private readonly Dictionary<int, double> _tried = [];
+    private int _used;
 
     private StressedSpan(ModelLines lines, ModelSettings model, ModelCalibration calibration, SimulationSettings settings)
     {
-        (_lines, _model, _calibration, _measure) = (lines with { Progress = null }, model, calibration, lines.Measures[0]);
+        (_lines, _model, _calibration, _measure) = (lines with { Progress = null }, model, calibration, lines.Measures.Select(m => m.Kind == MeasureKind.Les ? m with { Kind = MeasureKind.Es } : m).First());
         _settings = settings with { Scenarios = Scenarios, Looks = 1, Cap = Scenarios, Precision = null, Revaluation = RevaluationKind.Full };
     }
 
@@ -58,8 +59,8 @@ internal sealed class StressedSpan
     private IEnumerable<ModelParameter> Parameters(IReadOnlyList<DateOnly> days, int worst)
     {
         yield return new("days of the span", _model.Span, Note: string.Create(CultureInfo.InvariantCulture, $"the worst of {_tried.Count} spans tried, by {_measure} of the top node; it ends on {days[worst]:yyyy-MM-dd}"));
-        yield return new($"{_measure} of the top node on the worst span", _tried[worst], Note: string.Create(CultureInfo.InvariantCulture, $"from {Scenarios} scenarios"));
-        yield return new($"{_measure} of the top node on the newest span", _tried[days.Count - 1], Note: string.Create(CultureInfo.InvariantCulture, $"from {Scenarios} scenarios"));
+        yield return new($"{_measure} of the top node on the worst span", _tried[worst], Note: $"from {_used} scenarios");
+        yield return new($"{_measure} of the top node on the newest span", _tried[days.Count - 1], Note: $"from {_used} scenarios");
     }
 
     // From the newest back, so that the newest is among them.
@@ -83,6 +84,7 @@ internal sealed class StressedSpan
     {
         var moved = plan with { Moves = FactorMoves.Of(candidate), Law = candidate.Law };
         var outcome = new LookedRun(_lines.Tree, moved, [], [_measure], _settings).Run(_lines.Threads, null, _lines.Cancellation);
+        _used = outcome.Simulation.Scenarios;
         return outcome.Measures.Of(0, _measure, outcome.Level).Value;
     }
 }

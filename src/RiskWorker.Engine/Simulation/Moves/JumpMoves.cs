@@ -15,7 +15,6 @@ internal sealed class JumpMoves(int capacity) : MoveSource
     private readonly CorrelatedNormals _normals = new(capacity);
     private RevaluationPlan _plan = null!;
     private JumpLaw? _law;
-    private int[] _factorOf = [];
     private CompoundJumpTerms[] _terms = [];
     private double[] _compensators = [];
     private PoissonCounts[] _common = [];
@@ -35,11 +34,11 @@ internal sealed class JumpMoves(int capacity) : MoveSource
         _normals.Draw(first, width);
         // The second of the common pair is not used.
         UniformDraws.FillPair(new(_plan.Seed, DrawPurpose.Jumps, 0), (ulong)first, 0, _commonUniforms.AsSpan(0, width), _ownUniforms.AsSpan(0, width));
-        for (var row = 0; row < _factorOf.Length; row++)
+        for (var row = 0; row < _plan.Moves.Rows; row++)
         {
             if (!Jumps(row)) continue;
             var sizes = _sizes.AsSpan(row * width, width);
-            UniformDraws.FillPair(new(_plan.Seed, DrawPurpose.Jumps, (uint)_factorOf[row] + 1), (ulong)first, 0, _ownUniforms.AsSpan(row * width, width), sizes);
+            UniformDraws.FillPair(new(_plan.Seed, DrawPurpose.Jumps, (uint)_plan.Moves.FactorOf[row] + 1), (ulong)first, 0, _ownUniforms.AsSpan(row * width, width), sizes);
             InverseNormal.Of(sizes, sizes);
         }
     }
@@ -50,9 +49,9 @@ internal sealed class JumpMoves(int capacity) : MoveSource
         var days = _plan.Horizons[horizon].Days;
         Span<double> common = _commonCounts.AsSpan(0, _width), own = _ownCounts.AsSpan(0, _width);
         _common[horizon].Of(_commonUniforms.AsSpan(0, _width), common);
-        for (var row = 0; row < _factorOf.Length; row++)
+        for (var row = 0; row < _plan.Moves.Rows; row++)
         {
-            var factor = _plan.Moves.Factors[_factorOf[row]];
+            var factor = _plan.Moves.Factors[_plan.Moves.FactorOf[row]];
             var x = _moves.AsSpan(row * _width, _width);
             LogNormalMoves.LogReturns(_normals.Rows.AsSpan(row * _width, _width), factor.Deviation * Math.Sqrt(days), (factor.Drift - _compensators[row]) * days, x);
             if (!Jumps(row)) continue;
@@ -76,11 +75,6 @@ internal sealed class JumpMoves(int capacity) : MoveSource
         Room.For(ref _sizes, rows * capacity);
         Room.For(ref _moves, rows * capacity);
         (_plan, _law) = (plan, (JumpLaw)plan.Law);
-        _factorOf = new int[rows];
-        for (var factor = 0; factor < plan.Moves.RowOf.Length; factor++)
-        {
-            if (plan.Moves.RowOf[factor] is >= 0 and var row) _factorOf[row] = factor;
-        }
         _terms = [.. Enumerable.Range(0, rows).Select(Terms)];
         _compensators = [.. Enumerable.Range(0, rows).Select(Compensator)];
         _common = [.. plan.Horizons.Select(h => new PoissonCounts(_law.CommonPerDay * h.Days))];
@@ -95,7 +89,7 @@ internal sealed class JumpMoves(int capacity) : MoveSource
 
     private double Compensator(int row)
     {
-        var isLognormal = _plan.Moves.Factors[_factorOf[row]].IsLognormal;
+        var isLognormal = _plan.Moves.Factors[_plan.Moves.FactorOf[row]].IsLognormal;
         return (_law!.CommonPerDay * Expected(_law.Common[row], isLognormal)) + (_law.OwnPerDay[row] * Expected(_law.Own[row], isLognormal));
     }
 
