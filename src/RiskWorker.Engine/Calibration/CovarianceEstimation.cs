@@ -15,6 +15,7 @@ internal static class CovarianceEstimation
     public static double[] Of(ModelSettings model, double[] shocks, int factors, List<ModelParameter> parameters)
     {
         var weights = Weights(model, shocks.Length / Math.Max(factors, 1));
+        if (model.IsAroundMean) shocks = Centred(shocks, factors, weights);
         return model.Covariance == CovarianceEstimator.Shrunk ? Shrunk(shocks, factors, parameters) : Weighted(shocks, factors, weights);
     }
 
@@ -37,6 +38,21 @@ internal static class CovarianceEstimation
         if (model.Covariance != CovarianceEstimator.Ewma || model.Kind is ModelKind.Historical or ModelKind.FilteredHistorical) return weights;
         for (var k = days - 2; k >= 0; k--) weights[k] = weights[k + 1] * model.Lambda;
         return weights;
+    }
+
+    // By weights, too: with them the covariance is Σ w (x - m)(x - m)' / Σ w.
+    private static double[] Centred(double[] shocks, int factors, double[] weights)
+    {
+        var centred = new double[shocks.Length];
+        var total = weights.Sum();
+        for (var j = 0; j < factors; j++)
+        {
+            var (from, mean) = (j * weights.Length, 0.0);
+            for (var t = 0; t < weights.Length; t++) mean = Math.FusedMultiplyAdd(weights[t], shocks[from + t], mean);
+            mean /= total;
+            for (var t = 0; t < weights.Length; t++) centred[from + t] = shocks[from + t] - mean;
+        }
+        return centred;
     }
 
     private static double[] Weighted(double[] shocks, int factors, double[] weights)

@@ -20,6 +20,13 @@ internal sealed class ModelCalibration(Snapshot snapshot, int longest)
         return [.. complete.Skip(needed - 1)];
     }
 
+    /// <summary>What days that proxies fill do to the factors they fill; none where the model uses no complete days.</summary>
+    public IReadOnlyList<FillEffect> FillEffects(ModelSettings model)
+    {
+        if (_table.Factors.Count == 0 || model.Covariance == CovarianceEstimator.Given) return [];
+        return Calibration.FillEffects.Of(_table, ShockWindow.Newest(_table, model.Window));
+    }
+
     /// <summary>Calibrates <paramref name="model"/>; a stressed one to the newest span.</summary>
     /// <param name="model">The model.</param>
     /// <param name="lastDay">Shocks after it are left out; null where none is.</param>

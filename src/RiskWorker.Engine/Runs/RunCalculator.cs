@@ -36,6 +36,9 @@ public sealed class RunCalculator
     /// <summary>Seconds spent calibrating and simulating; the other phases are not this class's.</summary>
     public Timings Timings { get; private set; } = new(0, 0, 0, 0);
 
+    /// <summary>Whether the run is evidence only: then it has no sensitivities and tries no other choices.</summary>
+    public bool IsEvidenceOnly { get; init; }
+
     /// <summary>Runs.</summary>
     public RunResults Calculate()
     {
@@ -72,12 +75,13 @@ public sealed class RunCalculator
         if (_snapshot.Settings.Model.Kind == ModelKind.Stressed) model = StressedSpan.Find(lines, _snapshot.Settings.Model, calibration, _snapshot.Settings.Simulation);
         var run = ModelRun.Of(lines, model, limits, _snapshot.Settings.Simulation);
         var (plan, outcome) = (run.Plan, run.Outcome);
-        var sensitivities = BookSensitivities.Of(plan, model.Factors);
+        IReadOnlyList<Sensitivity> sensitivities = IsEvidenceOnly ? [] : BookSensitivities.Of(plan, model.Factors);
         Timings = Timings with { Simulate = clock.Elapsed.TotalSeconds };
         _findings.AddRange(UndecidableLimits.Of(outcome, limits, _snapshot.Settings.Checks));
         if (Blocked) return Failed(tree) with { Holdings = valued.Holdings }; // where the settings make that finding block
         var challengers = Challengers.Run(_snapshot.Settings, lines, calibration, _findings);
         if (Blocked) return Failed(tree) with { Holdings = valued.Holdings }; // where the settings make a challenger that fails block
+        var effects = IsEvidenceOnly || challengers.Count == 0 ? null : ChoiceEffects.Of(lines, _snapshot.Settings, calibration, run);
         var hypothetical = HypotheticalProfits.Of(_snapshot, tree);
         var count = new ExceptionCount(_snapshot, tree, hypothetical);
         return new RunResults
@@ -90,6 +94,7 @@ public sealed class RunCalculator
             Limits = [.. outcome.Limits.Concat(valid[false].Select(l => LimitEvaluator.WithoutBook(l, tree.ReportingCurrency, (double)outcome.Level))).OrderBy(l => l.Limit.Name, StringComparer.Ordinal)],
             Sensitivities = sensitivities,
             Models = challengers,
+            Effects = effects,
             Hypothetical = hypothetical,
             Backtest = count.Results(measures),
             ModelBacktests = ModelBacktests.Of(count, _snapshot.Settings, tree, measures),
