@@ -38,7 +38,8 @@ public sealed record Configuration
             Written = Written with
             {
                 Model = overrides.Model is null ? Written.Model : Models[overrides.Model],
-                Challengers = [.. Written.Challengers.Where(c => c.Name != overrides.Model)], // a challenger that is run for the record does not run beside itself
+                // A challenger that is run for the record does not run beside itself.
+                Challengers = overrides.Model is null ? Written.Challengers : [.. Written.Challengers.Where(c => c.Name != overrides.Model)],
                 Simulation = simulation with { Scenarios = scenarios, Seed = overrides.Seed ?? simulation.Seed, Cap = Math.Max(scenarios, simulation.Cap) },
             },
         };
