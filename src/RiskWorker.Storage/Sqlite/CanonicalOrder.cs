@@ -14,14 +14,24 @@ internal sealed class CanonicalOrder(ReadOnlyMemory<byte> text) : IComparer<(int
         return Compare(span.Slice(x.Start, x.Length), span.Slice(y.Start, y.Length));
     }
 
-    /// <summary>Whether the rows stand in this order already: most come out of an index.</summary>
-    public bool Holds(List<(int Start, int Length)> rows)
+    /// <summary>Brings rows into this order. Most come out of an index, or nearly sorted: those cost one look each.</summary>
+    public void Sort(List<(int Start, int Length)> rows)
     {
+        var shifts = 0;
         for (var i = 1; i < rows.Count; i++)
         {
-            if (Compare(rows[i - 1], rows[i]) > 0) return false;
+            var row = rows[i];
+            var at = i;
+            for (; at > 0 && Compare(rows[at - 1], row) > 0; at--)
+            {
+                rows[at] = rows[at - 1];
+                shifts++;
+            }
+            rows[at] = row;
+            if (shifts <= rows.Count) continue;
+            rows.Sort(this);
+            return;
         }
-        return true;
     }
 
     internal static int Compare(ReadOnlySpan<byte> x, ReadOnlySpan<byte> y)

@@ -21,8 +21,8 @@ internal sealed class CanonicalText
     public CanonicalText Text(string? text)
     {
         if (text is null) Bytes("\\0"u8);
-        else if (text.AsSpan().IndexOfAny("\\\t\n") < 0) Encoding.UTF8.GetBytes(text, _rows);
-        else Encoding.UTF8.GetBytes(text.Replace("\\", "\\\\", StringComparison.Ordinal).Replace("\t", "\\t", StringComparison.Ordinal).Replace("\n", "\\n", StringComparison.Ordinal), _rows);
+        else if (text.AsSpan().IndexOfAny("\\\t\n") < 0) Utf8(text);
+        else Utf8(text.Replace("\\", "\\\\", StringComparison.Ordinal).Replace("\t", "\\t", StringComparison.Ordinal).Replace("\n", "\\n", StringComparison.Ordinal));
         return Tab();
     }
 
@@ -48,8 +48,7 @@ internal sealed class CanonicalText
     public SnapshotLeaf Leaf(string path)
     {
         var rows = _rows.WrittenMemory;
-        var order = new CanonicalOrder(rows);
-        if (!order.Holds(_ends)) _ends.Sort(order);
+        new CanonicalOrder(rows).Sort(_ends);
         var text = Joined(rows.Span);
         _ends.Clear();
         _rows.ResetWrittenCount();
@@ -69,6 +68,8 @@ internal sealed class CanonicalText
         }
         return text;
     }
+
+    private void Utf8(string text) => _rows.Advance(Encoding.UTF8.GetBytes(text, _rows.GetSpan(Encoding.UTF8.GetMaxByteCount(text.Length))));
 
     private void Bytes(ReadOnlySpan<byte> bytes) => _rows.Write(bytes);
 

@@ -1,5 +1,4 @@
 using System.Globalization;
-using System.Text.Json;
 using Microsoft.Data.Sqlite;
 using RiskWorker.Domain.Books;
 using RiskWorker.Domain.Instruments;
@@ -48,7 +47,7 @@ internal sealed record ReferenceData(
     /// <summary>Reads a row of <see cref="InstrumentRows"/>; one with a term that only an earlier version took stays, unmodelled.</summary>
     public static Instrument Instrument(string?[] cells)
     {
-        var terms = JsonSerializer.Deserialize(cells[3]!, TermsJson.Default.DictionaryStringString)!;
+        var terms = TermsText.Read(cells[3]!);
         return InstrumentReader.ReadAccepted(new(cells[0]!, cells[1]!, cells[2]!, terms, cells[4], Number(cells[5]), Number(cells[6])));
     }
 
