@@ -1,3 +1,4 @@
+using System.Collections.Concurrent;
 using System.Runtime.ExceptionServices;
 
 namespace RiskWorker.Storage.Feed;
@@ -13,7 +14,9 @@ internal static class SideBySide
         var serial = progress is null ? null : new OneAtATime(progress);
         try
         {
-            Parallel.For(0, files.Count, new() { MaxDegreeOfParallelism = Environment.ProcessorCount, CancellationToken = cancellation }, i => results[i] = work(files[i], serial));
+            // One file at a time each: a range of them could leave the two longest to one core.
+            var places = Partitioner.Create(Enumerable.Range(0, files.Count), EnumerablePartitionerOptions.NoBuffering);
+            Parallel.ForEach(places, new() { CancellationToken = cancellation }, i => results[i] = work(files[i], serial));
         }
         catch (AggregateException several)
         {
