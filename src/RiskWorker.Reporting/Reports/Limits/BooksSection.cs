@@ -24,7 +24,7 @@ internal static class BooksSection
             new Heading("Books"),
             Tree(run, first, first[0]),
             new Paragraph(
-                $"Figures in {run.Scale().Unit}, whatever the currency of the book; intervals stand below. Stand-alone: the sum of {Phrases.Short(first[0])} over the books directly below; "
+                $"Figures in {run.Scale().Unit}, whatever the currency of the book; intervals{(run.IsHistory ? " of the days as a sample" : "")} stand below. Stand-alone: the sum of {Phrases.Short(first[0])} over the books directly below; "
                 + "it is left out where a book also holds positions of its own. Diversification: the part of that sum by which the whole is smaller.", Voice.Note),
             .. others.SelectMany(specs => (Block[])[new Heading("Other measures", 3), Tree(run, specs, null)]),
             .. run.Results.Nodes.Count > 1 ? [Chart(run, first[0])] : (Block[])[],
@@ -68,7 +68,7 @@ internal static class BooksSection
         foreach (var spec in specs)
         {
             var measure = RunReading.Find(node.InReportingCurrency, spec);
-            cells.Add(new TextCell(scale.Text(measure?.Value), measure is null ? "" : Phrases.Interval(scale, measure.Low, measure.High)));
+            cells.Add(new TextCell(scale.Text(measure?.Value), measure is null ? "" : Phrases.Interval(scale, measure)));
         }
 
         if (sumOf is { } summed)
@@ -96,7 +96,7 @@ internal static class BooksSection
         var books = rows.Count < run.Results.Nodes.Count ? $"The {Phrases.Number(rows.Count)} books with the largest {Phrases.Short(spec)}" : $"{Phrases.Short(spec)} by book";
         return new Figure(
             books, new MeasureChart(rows, spec.ToString(), run.Currency), 38 + (14 * rows.Count),
-            "Whisker: interval. Upright stroke: limit in money on this measure, where the book is in the reporting currency. Square: breached; diamond: inconclusive; triangle: warning; circle: within or without limit.");
+            (run.IsHistory ? "Whisker: interval of the days as a sample, where one is claimed" : "Whisker: interval") + ". Upright stroke: limit in money on this measure, where the book is in the reporting currency. Square: breached; diamond: inconclusive; triangle: warning; circle: within or without limit.");
     }
 
     private static MeasureRow ChartRow(RunReading run, NodeResult node, MeasureResult measure)
@@ -104,6 +104,7 @@ internal static class BooksSection
         var limit = run.Results.Limits.Where(one => one.Limit.Book == node.Book && one.Limit.Measure == measure.Spec)
             .OrderBy(one => Phrases.Urgency(one.Status)).ThenByDescending(one => one.Used).FirstOrDefault();
         double? amount = limit is { Limit.Basis: LimitBasis.Amount } && node.Currency == run.Currency ? limit.Limit.Amount : null;
-        return new(node.Name, measure.Value, measure.Low, measure.High, amount, limit is null ? StatusMark.None : Phrases.Mark(limit.Status));
+        var (low, high) = measure.Sample is { } sample ? (sample.Low, sample.High) : (measure.Low, measure.High);
+        return new(node.Name, measure.Value, low, high, amount, limit is null ? StatusMark.None : Phrases.Mark(limit.Status));
     }
 }

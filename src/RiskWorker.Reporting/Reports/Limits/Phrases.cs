@@ -80,6 +80,14 @@ internal static class Phrases
     public static string Interval(MoneyScale scale, double? low, double? high) =>
         (low, high) is (null, null) ? "interval outside the sample" : $"{Ends(low, scale.Text)} to {Ends(high, scale.Text)}";
 
+    /// <summary>The interval of a measure; of a history, what its days say as a sample, and called that.</summary>
+    public static string Interval(MoneyScale scale, MeasureResult measure) => measure.Sample switch
+    {
+        null => Interval(scale, measure.Low, measure.High),
+        { Low: null, High: null } => "no interval",
+        var sample => $"sample {Interval(scale, sample.Low, sample.High)}",
+    };
+
     /// <summary>An interval of utilisation.</summary>
     public static string UsedInterval(double? low, double? high) =>
         (low, high) is (null, null) ? "" : $"{Ends(low, Used)} to {Ends(high, Used)}";
