@@ -54,8 +54,8 @@ internal sealed class ModelPainter(ModelChart chart, Typesetter typesetter)
     {
         if (row.Low is not null || row.High is not null)
             frame.Line(row.Low ?? row.Value, y, row.High ?? row.Value, y, row.IsRecord ? Palette.Accent : Palette.Body, 1.8f);
-        var dot = frame.Plot.Add.Marker(row.Value, y, MarkerShape.FilledCircle, 5, PlotFrame.Of(row.IsRecord ? Palette.Accent : Palette.Paper));
-        (dot.MarkerLineWidth, dot.MarkerLineColor) = (1, PlotFrame.Of(Palette.Accent));
+        frame.Plot.Add.Marker(row.Value, y, MarkerShape.FilledCircle, 5, PlotFrame.Of(row.IsRecord ? Palette.Accent : Palette.Paper));
+        frame.Plot.Add.Marker(row.Value, y, MarkerShape.OpenCircle, 5, PlotFrame.Of(Palette.Accent)).LineWidth = 1.1f;
         frame.Text(Text(row, scale), Math.Max(row.Value, row.High ?? row.Value), y, Alignment.MiddleLeft, Palette.Ink, dx: 6);
     }
 }

@@ -17,7 +17,7 @@ internal sealed class TableLayout
     private const int LinesPerRow = 40;
 
     // A longer word of a head is broken: a model may be called anything.
-    private const float LongestHead = 64;
+    private const float LongestHead = 60;
 
     private readonly Typesetter typesetter;
     private readonly Table table;

@@ -24,12 +24,16 @@ internal static class BooksSection
             new Heading("Books"),
             Tree(run, first, first[0]),
             new Paragraph(
-                $"Figures in {run.Scale().Unit}, whatever the currency of the book; intervals{(run.IsHistory ? " of the days as a sample" : "")} stand below. Stand-alone: the sum of {Phrases.Short(first[0])} over the books directly below; "
+                $"Figures in {run.Scale().Unit}, whatever the currency of the book; {Below(run)}. Stand-alone: the sum of {Phrases.Short(first[0])} over the books directly below; "
                 + "it is left out where a book also holds positions of its own. Diversification: the part of that sum by which the whole is smaller.", Voice.Note),
             .. others.SelectMany(specs => (Block[])[new Heading("Other measures", 3), Tree(run, specs, null)]),
             .. run.Results.Nodes.Count > 1 ? [Chart(run, first[0])] : (Block[])[],
         ];
     }
+
+    private static string Below(RunReading run) => run.IsWeighted ? "days of different weight claim no interval"
+        : run.IsHistory ? "intervals of the days as a sample stand below"
+        : "intervals stand below";
 
     private static Table Tree(RunReading run, IReadOnlyList<MeasureSpec> specs, MeasureSpec? sumOf)
     {
@@ -68,7 +72,7 @@ internal static class BooksSection
         foreach (var spec in specs)
         {
             var measure = RunReading.Find(node.InReportingCurrency, spec);
-            cells.Add(new TextCell(scale.Text(measure?.Value), measure is null ? "" : Phrases.Interval(scale, measure)));
+            cells.Add(new TextCell(scale.Text(measure?.Value), measure is null ? "" : Phrases.Interval(run, scale, measure)));
         }
 
         if (sumOf is { } summed)
@@ -96,7 +100,7 @@ internal static class BooksSection
         var books = rows.Count < run.Results.Nodes.Count ? $"The {Phrases.Number(rows.Count)} books with the largest {Phrases.Short(spec)}" : $"{Phrases.Short(spec)} by book";
         return new Figure(
             books, new MeasureChart(rows, spec.ToString(), run.Currency), 38 + (14 * rows.Count),
-            (run.IsHistory ? "Whisker: interval of the days as a sample, where one is claimed" : "Whisker: interval") + ". Upright stroke: limit in money on this measure, where the book is in the reporting currency. Square: breached; diamond: inconclusive; triangle: warning; circle: within or without limit.");
+            (run.IsWeighted ? "" : run.IsHistory ? "Whisker: interval of the days as a sample. " : "Whisker: interval. ") + "Upright stroke: limit in money on this measure, where the book is in the reporting currency. Square: breached; diamond: inconclusive; triangle: warning; circle: within or without limit.");
     }
 
     private static MeasureRow ChartRow(RunReading run, NodeResult node, MeasureResult measure)

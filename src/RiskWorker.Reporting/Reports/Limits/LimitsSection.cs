@@ -22,8 +22,8 @@ internal static class LimitsSection
             new Table(Columns(unit), [.. groups.Select(group => Group(run, group, groups.Count > 1))], ""),
             new Paragraph(
                 "The upright line in a bar is the limit, the tick before it the warning level" + (run.IsHistory
-                    ? ". Past days are no draws, so there is no simulation noise and the value alone decides. The interval below a measure is what its days allow as a sample: it has no part in the status. "
-                        + $"It holds at {Phrases.Level(limits[0].Level)} for each limit, not for all together."
+                    ? ". Past days are no draws, so there is no simulation noise and the value alone decides."
+                        + (run.IsWeighted ? "" : $" The interval below a measure is what its days allow as a sample: it has no part in the status, and holds at {Phrases.Level(limits[0].Level)} for each limit, not for all together.")
                     : ", the whisker the interval of the use. "
                         + "Breached: the whole interval lies above the limit. Inconclusive: the limit lies inside the interval, so simulation noise decides and nothing is declared. "
                         + $"Intervals hold at {Phrases.Level(limits[0].Level)} for each limit, not for all together."), Voice.Note),
@@ -64,7 +64,7 @@ internal static class LimitsSection
 
     private static string Interval(RunReading run, LimitResult result, MoneyScale scale) => result.Value is null
         ? ""
-        : run.MeasureOf(result) is { Sample: not null } measure ? Phrases.Interval(scale, measure) : Phrases.Interval(scale, result.Low, result.High);
+        : run.MeasureOf(result) is { Sample: not null } measure ? Phrases.Interval(run, scale, measure) : Phrases.Interval(scale, result.Low, result.High);
 
     private static TextCell Amount(RunReading run, Domain.Limits.Limit limit, MoneyScale scale) => limit.Basis switch
     {

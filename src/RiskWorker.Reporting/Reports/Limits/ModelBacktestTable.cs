@@ -7,8 +7,10 @@ namespace RiskWorker.Reporting.Reports.Limits;
 internal static class ModelBacktestTable
 {
     private const int MostBooks = 12;
+    private const int MostRows = 84;
     private const int DaysForZone = 125;
     private const double Low = 0.05;
+    private const double Convincing = 0.8;
 
     public static IEnumerable<Block> Blocks(RunReading run)
     {
@@ -22,15 +24,14 @@ internal static class ModelBacktestTable
 
         var byBook = counts.ToLookup(count => count.Book, StringComparer.Ordinal);
         var below = run.Results.Nodes.Where(node => node.Book != root.Book && byBook.Contains(node.Book)).ToList();
-        var shown = below.OrderByDescending(node => byBook[node.Book].Any(IsRemarkable)).Take(MostBooks).ToHashSet();
+        var most = Math.Clamp(MostRows / byBook.Max(book => Distinct(book).Count()), 1, MostBooks);
+        var shown = below.OrderByDescending(node => byBook[node.Book].Any(IsRemarkable)).Take(most).ToHashSet();
         yield return new Paragraph(Evidence(counts));
-        yield return Table(byBook.Contains(root.Book) ? [root] : [], byBook, run);
-        if (shown.Count > 0)
-            yield return Table([.. below.Where(shown.Contains)], byBook, run);
+        yield return Table([.. byBook.Contains(root.Book) ? [root] : (IEnumerable<NodeResult>)[], .. below.Where(shown.Contains)], byBook, run);
         yield return new Paragraph(
             "p-values of likelihood-ratio tests: as many exceptions as the confidence says (Kupiec 1995); an exception makes none the next day more likely (Christoffersen 1998); both together. "
             + "The greater of actual and hypothetical counts. Where there are no more than 250 days, one line stands for both windows."
-            + (shown.Count < below.Count ? $" Shown are {Phrases.Number(shown.Count)} of {Phrases.Number(below.Count)} books below the top, those with a remarkable count first; all are in results.json." : ""), Voice.Note);
+            + (shown.Count < below.Count ? $" Shown are {Phrases.Number(shown.Count)} of {Phrases.Number(below.Count)} books below the top, those with a zone other than green or a p-value below 5% before others; all are in results.json." : ""), Voice.Note);
     }
 
     private static Table Table(IReadOnlyList<NodeResult> nodes, ILookup<string, ModelBacktest> byBook, RunReading run) => new(
@@ -70,8 +71,8 @@ internal static class ModelBacktestTable
         var least = counts.GroupBy(count => (count.Model, count.Book)).Min(group => group.Max(count => count.Days));
         var span = least == days ? Phrases.Plural(days, "day") : $"{Numerals.Count(least)} to {Phrases.Plural(days, "day")}";
         return $"There {(days == 1 ? "is" : "are")} {span} of evidence{(days < DaysForZone ? $", too few for a zone, which needs {Numerals.Count(DaysForZone)}" : "")}. "
-            + $"So few prove little: over {Phrases.Plural(days, "day")}, VaR {confidence} should be passed {Numerals.Fixed((double)(days * (1 - confidence.Level)), 1)} times, "
-            + $"{Phrases.Number(from)} or more would be remarkable, and a model whose VaR is passed twice as often as it says would show so many in only {Numerals.Fixed(found * 100)} of 100 such spans. "
+            + $"{(found < Convincing ? "So few prove little: over" : "Over")} {Phrases.Plural(days, "day")}, VaR {confidence} should be passed {Numerals.Fixed((double)(days * (1 - confidence.Level)), 1)} times, "
+            + $"{Phrases.Number(from)} or more would be remarkable, and a model whose VaR is passed twice as often as it says would show so many in {(found < Convincing ? "only " : "")}{Numerals.Fixed(found * 100)} of 100 such spans. "
             + "A test that finds nothing does not show that a model is right.";
     }
 }

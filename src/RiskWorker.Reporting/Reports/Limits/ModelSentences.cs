@@ -14,7 +14,6 @@ internal static class ModelSentences
 
         var (spec, record, others) = found;
         var (scale, top) = (run.Scale(), run.Root!.Name);
-        string Said((ModelReading Model, MeasureResult Measure) one) => $"{one.Model.Name} {Money(one)}";
         string Money((ModelReading Model, MeasureResult Measure) one) => scale.Text(one.Measure.Value);
         if (others is [var only])
             return $"On {spec} of {top}, {only.Model.Name} says {Money(only)} {scale.Unit} where the model of record, {record.Model.Name}, says {Money(record)}{Times(record, only)}.";
@@ -25,10 +24,10 @@ internal static class ModelSentences
         if (most.Measure.Value == least.Measure.Value)
             return $"On {spec} of {top}, all {Phrases.Number(all.Count)} models say {Money(record)} {scale.Unit}.";
         if (most.Model.IsRecord)
-            return $"On {spec} of {top}, the model of record says most, {Said(record)} {scale.Unit}; {least.Model.Name} says least, {Money(least)}{Times(record, least)}.";
+            return $"On {spec} of {top}, the model of record, {record.Model.Name}, says most, {Money(record)} {scale.Unit}; {least.Model.Name} says least, {Money(least)}{Times(record, least)}.";
 
         return least.Model.IsRecord
-            ? $"On {spec} of {top}, the model of record says least, {Said(record)} {scale.Unit}; {most.Model.Name} says most, {Money(most)}{Times(record, most)}."
+            ? $"On {spec} of {top}, the model of record, {record.Model.Name}, says least, {Money(record)} {scale.Unit}; {most.Model.Name} says most, {Money(most)}{Times(record, most)}."
             : $"On {spec} of {top}, {most.Model.Name} says most, {Money(most)} {scale.Unit}, and {least.Model.Name} least, {Money(least)}; the model of record, {record.Model.Name}, says {Money(record)}.";
     }
 

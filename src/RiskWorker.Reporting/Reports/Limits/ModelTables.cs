@@ -23,7 +23,7 @@ internal static class ModelTables
             }
         }
 
-        yield return new Paragraph($"Each book in its own currency. Below a figure: how many times the figure of {models[0].Name} it is; none where that is no loss.", Voice.Note);
+        yield return new Paragraph($"Each book in its own currency. Ratio: how many times the figure of {models[0].Name} the one before it is; none where that is no loss.", Voice.Note);
     }
 
     private static Table Table(RunReading run, MeasureSpec spec, ModelReading record, IReadOnlyList<ModelReading> others)
@@ -31,7 +31,7 @@ internal static class ModelTables
         var groups = run.Results.Nodes.GroupBy(node => node.Currency).OrderBy(group => group.Key != run.Currency).ThenBy(group => group.Key, StringComparer.Ordinal).ToList();
         var unit = groups.Count == 1 ? run.Scale(groups[0].Key).Unit : "";
         return new Table(
-            [new("Book", 2.2), new(record.Name, 1, Alignment.Right, unit), .. others.Select(model => new Column(model.Name, 1, Alignment.Right, unit))],
+            [new("Book", 2.2), new(record.Name, 1, Alignment.Right, unit), .. others.SelectMany(model => (Column[])[new(model.Name, 1, Alignment.Right, unit), new("ratio", 0.5, Alignment.Right)])],
             [.. groups.Select(group => Group(run, group, groups.Count > 1, spec, record, others))], "");
     }
 
@@ -47,7 +47,7 @@ internal static class ModelTables
             return new(
                 [
                     new TextCell(node.Name, Level: node.Depth - shallowest), scale.Text(held?.Value),
-                    .. others.Select(model => model.Measure(node.Book, spec)).Select(measure => new TextCell(scale.Text(measure?.Value), ModelComparison.Times(ModelComparison.Ratio(held, measure)))),
+                    .. others.Select(model => model.Measure(node.Book, spec)).SelectMany(measure => (Cell[])[scale.Text(measure?.Value), ModelComparison.Times(ModelComparison.Ratio(held, measure))]),
                 ],
                 node.Parent is null ? Emphasis.Strong : Emphasis.None);
         }

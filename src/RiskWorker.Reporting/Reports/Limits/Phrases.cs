@@ -88,6 +88,9 @@ internal static class Phrases
         var sample => $"sample {Interval(scale, sample.Low, sample.High)}",
     };
 
+    /// <summary>The interval of a measure of the model of record; nothing where no figure of the run has one, which is then said once.</summary>
+    public static string Interval(RunReading run, MoneyScale scale, MeasureResult measure) => run.IsWeighted ? "" : Interval(scale, measure);
+
     /// <summary>An interval of utilisation.</summary>
     public static string UsedInterval(double? low, double? high) =>
         (low, high) is (null, null) ? "" : $"{Ends(low, Used)} to {Ends(high, Used)}";
