@@ -22,13 +22,11 @@ internal sealed class ModelPainter(ModelChart chart, Typesetter typesetter)
         var lines = chart.Panels.SelectMany(panel => panel.Rows.Select(row => (ModelRow?)row).Prepend(null)).ToList();
         var names = lines.Select(row => row is null ? "" : typesetter.Cut(row.Name, PlotFrame.TickStyle, LongestName)).ToArray();
         var left = frame.Left(-lines.Count + 0.4, 0.6, ([.. lines.Select((_, i) => (double)-i)], names), "");
-        var across = size.Width - left - Right;
-
-        // The axis runs on until the longest figure fits beside the largest value.
         var words = chart.Panels.SelectMany(panel => panel.Rows).Select(row => typesetter.Width(typesetter.Clean(Text(row, scale)), PlotFrame.TickStyle)).DefaultIfEmpty(0).Max() + 12;
         var low = least < 0 ? least - ((most - least) * 0.04) : 0;
-        var high = most + ((most - low) * words / Math.Max(across - words, 1));
-        frame.Bottom(low, high, frame.TicksAcross(low, high, across, scale.Divisor), $"loss, {scale.Unit}");
+        var right = Axis(size.Width - left - Right);
+        if (right > Right)
+            Axis(size.Width - left - right);
         var y = 0;
         foreach (var panel in chart.Panels)
         {
@@ -36,10 +34,17 @@ internal sealed class ModelPainter(ModelChart chart, Typesetter typesetter)
             y -= panel.Rows.Count + 1;
         }
 
-        return frame.Draw(size, new PixelPadding(left, Right, 30, 2));
+        return frame.Draw(size, new PixelPadding(left, Math.Max(right, Right), 30, 2));
+
+        // The axis runs on until the longest figure fits beside the largest value.
+        float Axis(float across)
+        {
+            var high = most + ((most - low) * words / Math.Max(across - words, 1));
+            return frame.Bottom(low, high, frame.TicksAcross(low, high, across, scale.Divisor), $"loss, {scale.Unit}");
+        }
     }
 
-    private static string Text(ModelRow row, MoneyScale scale) => row.Ratio.Length > 0 ? $"{scale.Text(row.Value)}  ({row.Ratio})" : scale.Text(row.Value);
+    private static string Text(ModelRow row, MoneyScale scale) => row.Ratio.Length > 0 ? $"{scale.Text(row.Value)} ({row.Ratio})" : scale.Text(row.Value);
 
     private void Panel(ModelPanel panel, int top, double low, MoneyScale scale)
     {
