@@ -21,15 +21,15 @@ public sealed class ModelsSectionTests
     }
 
     [Theory]
-    [InlineData("a", 1.25, "On VaR 99%, 1 day of Halden & Moss, a says 515.4 thousand EUR where the model of record, house, says 412.3, 1.25 times as much.")]
-    [InlineData("a", 0.5, "On VaR 99%, 1 day of Halden & Moss, a says 206.2 thousand EUR where the model of record, house, says 412.3, 0.50 times as much.")]
+    [InlineData("a", 1.25, "On VaR 99%, 1 day of Halden & Moss, a says 515.4 thousand EUR, 1.25 times the 412.3 of the model of record, house.")]
+    [InlineData("a", 0.5, "On VaR 99%, 1 day of Halden & Moss, a says 206.2 thousand EUR, 0.50 times the 412.3 of the model of record, house.")]
     public void One_other_model_is_held_against_the_model_of_record(string name, double times, string sentence) =>
         Assert.Equal(sentence, Lead(SampleModels.Beside(s_run, (name, times))));
 
     [Theory]
     [InlineData(1.25, 2, "On VaR 99%, 1 day of Halden & Moss, the model of record, house, says least, 412.3 thousand EUR; b says most, 824.6, 2.00 times as much.")]
     [InlineData(0.75, 0.5, "On VaR 99%, 1 day of Halden & Moss, the model of record, house, says most, 412.3 thousand EUR; b says least, 206.2, 0.50 times as much.")]
-    [InlineData(0.5, 2, "On VaR 99%, 1 day of Halden & Moss, b says most, 824.6 thousand EUR, and a least, 206.2; the model of record, house, says 412.3.")]
+    [InlineData(0.5, 2, "On VaR 99%, 1 day of Halden & Moss, b says most, 824.6 thousand EUR, and a least, 206.2: 2.00 and 0.50 times the 412.3 of the model of record, house.")]
     [InlineData(1, 1, "On VaR 99%, 1 day of Halden & Moss, all three models say 412.3 thousand EUR.")]
     public void First_sentence_says_which_model_says_most_and_which_least(double first, double second, string sentence) =>
         Assert.Equal(sentence, Lead(SampleModels.Beside(s_run, ("a", first), ("b", second))));
@@ -167,6 +167,25 @@ public sealed class ModelsSectionTests
     }
 
     [Fact]
+    public void Cautions_of_the_other_kinds_stand_below_the_table_of_models_once_a_kind()
+    {
+        var run = SampleModels.With(
+            s_run, SampleModels.Model(s_run, "a", ModelKind.Lognormal, one => one), SampleModels.Model(s_run, "b", ModelKind.Historical, one => one), SampleModels.Model(s_run, "c", ModelKind.Historical, one => one));
+        var notes = Blocks(run).OfType<Paragraph>().Select(one => one.Text.ToString()).ToList();
+
+        Assert.Contains(notes, note => note.StartsWith("b, c: Historical simulation knows only moves that happened in its window", StringComparison.Ordinal));
+        Assert.DoesNotContain(notes, note => note.Contains("thinner tails", StringComparison.Ordinal));
+    }
+
+    [Fact]
+    public void Top_node_without_a_loss_is_compared_without_a_ratio()
+    {
+        var run = new SampleRun { Desks = 1, Scale = -1 }.Build();
+        Assert.Equal("On VaR 99%, 1 day of Halden & Moss, a says −515.4 thousand EUR; the model of record, house, says −412.3.", Lead(SampleModels.Beside(run, ("a", 1.25))));
+        Assert.Equal("On VaR 99%, 1 day of Halden & Moss, b says most, −206.2 thousand EUR, and a least, −824.6; the model of record, house, says −412.3.", Lead(SampleModels.Beside(run, ("a", 2), ("b", 0.5))));
+    }
+
+    [Fact]
     public void Parameters_stand_by_model_with_interval_and_note_and_those_of_the_record_on_the_method_page_too()
     {
         ModelParameter[] parameters = [new("degrees of freedom", 4.2137, 3.8, 4.72, "profile likelihood"), new("omega", 1.234e-6), new("days", 250)];
@@ -194,8 +213,8 @@ public sealed class ModelsSectionTests
         Assert.Equal("Halden & Moss", table.Groups[0].Title);
         Assert.Equal(
             [
-                "house|99%|250|2|2.5|green|0.75|0.65|0.86", "house|99%|500|5|5.0|green|0.75|0.65|0.86",
-                "a|99%|250|2|2.5|green|0.75|0.65|0.86", "a|99%|500|13|5.0|yellow|< 0.01/below 5%|–|0.04/below 5%",
+                "house|99%|250|2|2.5|green|0.75|0.65|0.86", "|99%|500|5|5.0|green|0.75|0.65|0.86",
+                "a|99%|250|2|2.5|green|0.75|0.65|0.86", "|99%|500|13|5.0|yellow|< 0.01/below 5%|–|0.04/below 5%",
             ],
             table.Groups[0].Rows.Select(row => Row(row).Replace('\u00A0', ' ')));
         Assert.Equal(9, table.Groups.Count);

@@ -39,19 +39,22 @@ internal static class ModelBacktestTable
             new("Model", 2), new("VaR", 0.7, Alignment.Right), new("Days", 0.6, Alignment.Right), new("Exceptions", 0.9, Alignment.Right), new("Expected", 0.8, Alignment.Right), new("Zone", 1.2),
             new("Coverage", 0.9, Alignment.Right, "p-value"), new("Independence", 1, Alignment.Right, "p-value"), new("Both", 0.8, Alignment.Right, "p-value"),
         ],
-        [.. nodes.Select(node => new RowGroup([.. Distinct(byBook[node.Book]).Select(count => Row(count))], run.NameOf(node.Book)))], "");
+        [.. nodes.Select(node => new RowGroup([.. Rows([.. Distinct(byBook[node.Book])])], run.NameOf(node.Book)))], "");
+
+    // A model is named once for all its lines.
+    private static IEnumerable<Row> Rows(IReadOnlyList<ModelBacktest> counts) => counts.Select((count, i) => Row(count, i > 0 && counts[i - 1].Model == count.Model ? "" : count.Model));
 
     // The longer window adds nothing where it holds the same days.
     private static IEnumerable<ModelBacktest> Distinct(IEnumerable<ModelBacktest> counts) => counts
         .GroupBy(count => (count.Model, count.Confidence))
         .SelectMany(group => group.OrderBy(count => count.Window).DistinctBy(count => count.Days));
 
-    private static Row Row(ModelBacktest count)
+    private static Row Row(ModelBacktest count, string name)
     {
         var (mark, word) = Phrases.Zone(count.Zone);
         return new(
         [
-            count.Model, count.Confidence.ToString(), Numerals.Count(count.Days), new TextCell(RichText.Strong(Numerals.Count(count.Exceptions))),
+            name, count.Confidence.ToString(), Numerals.Count(count.Days), new TextCell(RichText.Strong(Numerals.Count(count.Exceptions))),
             Numerals.Fixed((double)(count.Days * (1 - count.Confidence.Level)), 1), new StatusCell(mark, word), Test(count.Coverage), Test(count.Independence), Test(count.Conditional),
         ]);
     }

@@ -16,7 +16,11 @@ internal static class ModelSentences
         var (scale, top) = (run.Scale(), run.Root!.Name);
         string Money((ModelReading Model, MeasureResult Measure) one) => scale.Text(one.Measure.Value);
         if (others is [var only])
-            return $"On {spec} of {top}, {only.Model.Name} says {Money(only)} {scale.Unit} where the model of record, {record.Model.Name}, says {Money(record)}{Times(record, only)}.";
+        {
+            return ModelComparison.Ratio(record.Measure, only.Measure) is { } ratio
+                ? $"On {spec} of {top}, {only.Model.Name} says {Money(only)} {scale.Unit}, {Numerals.Fixed(ratio, 2)} times the {Money(record)} of the model of record, {record.Model.Name}."
+                : $"On {spec} of {top}, {only.Model.Name} says {Money(only)} {scale.Unit}; the model of record, {record.Model.Name}, says {Money(record)}.";
+        }
 
         var all = others.Prepend(record).ToList();
         var most = all.MaxBy(one => one.Measure.Value);
@@ -26,9 +30,13 @@ internal static class ModelSentences
         if (most.Model.IsRecord)
             return $"On {spec} of {top}, the model of record, {record.Model.Name}, says most, {Money(record)} {scale.Unit}; {least.Model.Name} says least, {Money(least)}{Times(record, least)}.";
 
-        return least.Model.IsRecord
-            ? $"On {spec} of {top}, the model of record, {record.Model.Name}, says least, {Money(record)} {scale.Unit}; {most.Model.Name} says most, {Money(most)}{Times(record, most)}."
-            : $"On {spec} of {top}, {most.Model.Name} says most, {Money(most)} {scale.Unit}, and {least.Model.Name} least, {Money(least)}; the model of record, {record.Model.Name}, says {Money(record)}.";
+        if (least.Model.IsRecord)
+            return $"On {spec} of {top}, the model of record, {record.Model.Name}, says least, {Money(record)} {scale.Unit}; {most.Model.Name} says most, {Money(most)}{Times(record, most)}.";
+
+        var both = $"On {spec} of {top}, {most.Model.Name} says most, {Money(most)} {scale.Unit}, and {least.Model.Name} least, {Money(least)}";
+        return ModelComparison.Ratio(record.Measure, most.Measure) is { } high && ModelComparison.Ratio(record.Measure, least.Measure) is { } low
+            ? $"{both}: {Numerals.Fixed(high, 2)} and {Numerals.Fixed(low, 2)} times the {Money(record)} of the model of record, {record.Model.Name}."
+            : $"{both}; the model of record, {record.Model.Name}, says {Money(record)}.";
     }
 
     /// <summary>Which of the differences on that measure are larger than the intervals, which are not, and of which nothing can be said.</summary>

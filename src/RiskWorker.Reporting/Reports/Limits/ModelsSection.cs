@@ -25,6 +25,7 @@ internal static class ModelsSection
             .. ModelTables.Of(run, models),
             new Heading("What the models are made from", 3),
             ParameterTables.Models(models),
+            .. Cautions(models),
             .. ParameterTables.Of(models),
             .. ModelBacktestTable.Blocks(run),
         ];
@@ -46,6 +47,13 @@ internal static class ModelsSection
         foreach (var failed in ModelSentences.Failed(run, models))
             yield return new Paragraph(failed);
     }
+
+    // The method page has those of the model of record.
+    private static IEnumerable<Block> Cautions(IReadOnlyList<ModelReading> models) => models
+        .Where(model => model.Settings is not null)
+        .GroupBy(model => ModelCautions.Sentences(model.Settings!))
+        .Where(group => !group.Any(model => model.IsRecord))
+        .Select(group => new Paragraph(RichText.Of(new TextRun(string.Join(", ", group.Select(model => model.Name)) + ": ", Strong: true), new TextRun(group.Key)), Voice.Note));
 
     // One scale for all figures, so that they are read together.
     private static IEnumerable<Block> Charts(RunReading run, IReadOnlyList<ModelReading> models)
@@ -84,7 +92,7 @@ internal static class ModelsSection
         var levels = measures.Select(measure => measure.Level).Distinct().ToList();
         var at = levels.Count == 1 ? Phrases.Level(levels[0]) : $"{Phrases.Level(levels[0])} for {models[0].Name}, {string.Join(" or ", levels.Skip(1).Select(Phrases.Level))} for the others";
         return $"Filled dot and upright line: the model of record, {models[0].Name}; open dots: the others, with their ratio to it. Bar: interval, at {at}"
-            + (measures.Any(measure => measure.Sample is not null) ? "; of a history, what its days allow as a sample, and no bar where none is claimed" : "")
+            + (measures.Any(measure => measure.Sample is not null) ? "; of a history, what its days allow as a sample, and no bar where none is claimed; a bar that ends at its dot has its other end beyond the sample" : "")
             + ". Models that are simulated share their draws, so the noise in a difference between two of them is usually smaller than their bars.";
     }
 }
