@@ -68,7 +68,7 @@ public static class MeasureListing
         }
         table.Write(console);
         Line(console, results.Nodes[0].Measures.Any(m => m.Sample is not null)
-            ? "Past days are no draws: intervals are those of the days as a sample, '-' where none is claimed."
+            ? "Past days are no draws: intervals are those of the days as a sample."
             : "Intervals hold simulation noise only, not the error of model or estimates.");
         console.WriteLine();
     }
