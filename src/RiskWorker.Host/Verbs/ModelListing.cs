@@ -25,6 +25,11 @@ internal static class ModelListing
             if (measures.Count == 0) table.Row(name, "no figures", "-", "-", "-");
         }
         table.Write(console);
+        if (results.Models.SelectMany(m => m.Nodes).Any(n => n.Measures.Any(m => m.Sample is not null)))
+        {
+            console.WriteLine("The interval of a history is that of its days as a sample.");
+            console.WriteLine();
+        }
     }
 
     private static string Ratio(MeasureResult? record, MeasureResult measure) =>

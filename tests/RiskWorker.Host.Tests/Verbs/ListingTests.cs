@@ -70,6 +70,8 @@ public sealed class ListingTests : IDisposable
                              ES 97.5% 10d   900.00   0.91                   -
             short            no figures          -      -                   -
 
+            The interval of a history is that of its days as a sample.
+
             """.ReplaceLineEndings("\n"), Lines(), StringComparison.Ordinal);
     }
 

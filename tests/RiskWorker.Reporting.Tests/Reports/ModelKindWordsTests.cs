@@ -68,10 +68,12 @@ public sealed class ModelKindWordsTests
 
         var pages = PdfText.Pages(PdfRenderer.Render(LimitReport.Build(run)));
         var limits = string.Join(' ', pages.Single(lines => lines.Contains("Limits")));
-        Assert.Contains("sample 329.8 to 618.5", limits);
+        Assert.Contains("329.8 to 618.5", limits);
+        Assert.Contains("below: sample", limits);
         Assert.Contains("the value alone decides. The interval below a measure is what its days allow as a sample", limits);
         var books = string.Join(' ', pages.First(lines => lines.Contains("Books")));
-        Assert.Contains("sample 329.8 to 618.5", books);
+        Assert.Contains("329.8 to 618.5", books);
+        Assert.Contains("below: sample", books);
         Assert.Contains("no interval", books);
     }
 
@@ -88,6 +90,8 @@ public sealed class ModelKindWordsTests
         Assert.Contains("days of different weight claim no interval", text);
         Assert.Contains("1% of the scenarios by weight lose", text);
         Assert.DoesNotContain("as a sample", text);
+        Assert.DoesNotContain("below: sample", text);
+        Assert.DoesNotContain("no interval ", text.Replace("no interval is claimed", "", StringComparison.Ordinal));
         PdfText.AssertInsideMargins(PdfRenderer.Render(LimitReport.Build(run)));
     }
 

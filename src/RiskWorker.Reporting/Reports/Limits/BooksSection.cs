@@ -38,7 +38,7 @@ internal static class BooksSection
     private static Table Tree(RunReading run, IReadOnlyList<MeasureSpec> specs, MeasureSpec? sumOf)
     {
         var unit = run.Scale().Unit;
-        var columns = specs.Select(spec => new Column(Phrases.Head(spec), 1.25, Alignment.Right, unit));
+        var columns = specs.Select(spec => new Column(Phrases.Head(spec), 1.25, Alignment.Right, Phrases.Head(run, unit)));
         if (sumOf is not null)
             columns = [new("Value", 1.1, Alignment.Right, unit), .. columns, new("Stand-alone", 1.1, Alignment.Right, unit), new("Diversification", 1, Alignment.Right, "%")];
 

@@ -19,7 +19,7 @@ internal static class LimitsSection
         return
         [
             new Heading("Limits"),
-            new Table(Columns(unit), [.. groups.Select(group => Group(run, group, groups.Count > 1))], ""),
+            new Table(Columns(run, unit), [.. groups.Select(group => Group(run, group, groups.Count > 1))], ""),
             new Paragraph(
                 "The upright line in a bar is the limit, the tick before it the warning level" + (run.IsHistory
                     ? ". Past days are no draws, so there is no simulation noise and the value alone decides."
@@ -30,10 +30,10 @@ internal static class LimitsSection
         ];
     }
 
-    private static Column[] Columns(string unit) =>
+    private static Column[] Columns(RunReading run, string unit) =>
     [
         new("Limit", 2.3),
-        new("Measure", 1.35, Alignment.Right, unit),
+        new("Measure", 1.35, Alignment.Right, Phrases.Head(run, unit)),
         new("Amount", 1, Alignment.Right, unit),
         new("Used", 2.3),
         new("Status", 1.3),
