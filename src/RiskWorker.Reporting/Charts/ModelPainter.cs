@@ -28,9 +28,10 @@ internal sealed class ModelPainter(ModelChart chart, Typesetter typesetter)
         if (right > Right)
             Axis(size.Width - left - right);
         var y = 0;
+        var perPoint = (frame.Plot.Axes.Bottom.Max - low) / (size.Width - left - Math.Max(right, Right));
         foreach (var panel in chart.Panels)
         {
-            Panel(panel, y, low, scale);
+            Panel(panel, y, (low, perPoint), scale);
             y -= panel.Rows.Count + 1;
         }
 
@@ -46,21 +47,27 @@ internal sealed class ModelPainter(ModelChart chart, Typesetter typesetter)
 
     private static string Text(ModelRow row, MoneyScale scale) => row.Ratio.Length > 0 ? $"{scale.Text(row.Value)} ({row.Ratio})" : scale.Text(row.Value);
 
-    private void Panel(ModelPanel panel, int top, double low, MoneyScale scale)
+    private void Panel(ModelPanel panel, int top, (double Low, double PerPoint) axis, MoneyScale scale)
     {
-        frame.Text(panel.Name, low, top, Alignment.MiddleLeft, Palette.Ink, dx: 4, strong: true);
-        if (panel.Rows.FirstOrDefault(row => row.IsRecord) is { } record)
+        frame.Text(panel.Name, axis.Low, top, Alignment.MiddleLeft, Palette.Ink, dx: 4, strong: true);
+        var record = panel.Rows.FirstOrDefault(row => row.IsRecord);
+        if (record is not null)
             frame.Line(record.Value, top - 0.5, record.Value, top - panel.Rows.Count - 0.4, Palette.Accent, 0.6f, LinePattern.Dotted);
         for (var i = 0; i < panel.Rows.Count; i++)
-            Row(panel.Rows[i], top - i - 1, scale);
+            Row(panel.Rows[i], top - i - 1, scale, record?.Value, axis.PerPoint);
     }
 
-    private void Row(ModelRow row, double y, MoneyScale scale)
+    private void Row(ModelRow row, double y, MoneyScale scale, double? line, double perPoint)
     {
         if (row.Low is not null || row.High is not null)
             frame.Line(row.Low ?? row.Value, y, row.High ?? row.Value, y, row.IsRecord ? Palette.Accent : Palette.Body, 1.8f);
         frame.Plot.Add.Marker(row.Value, y, MarkerShape.FilledCircle, 5, PlotFrame.Of(row.IsRecord ? Palette.Accent : Palette.Paper));
         frame.Plot.Add.Marker(row.Value, y, MarkerShape.OpenCircle, 5, PlotFrame.Of(Palette.Accent)).LineWidth = 1.1f;
-        frame.Text(Text(row, scale), Math.Max(row.Value, row.High ?? row.Value), y, Alignment.MiddleLeft, Palette.Ink, dx: 6);
+        var right = Math.Max(row.Value, row.High ?? row.Value);
+
+        // The figure stands beside its bar; a line that would cross it moves it to the line's right.
+        if (line > right && line < right + ((typesetter.Width(typesetter.Clean(Text(row, scale)), PlotFrame.TickStyle) + 9) * perPoint))
+            right = line.Value;
+        frame.Text(Text(row, scale), right, y, Alignment.MiddleLeft, Palette.Ink, dx: 6);
     }
 }

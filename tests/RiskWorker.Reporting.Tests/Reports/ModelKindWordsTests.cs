@@ -1,4 +1,5 @@
 using RiskWorker.Domain.Runs;
+using RiskWorker.Reporting.Document;
 using RiskWorker.Reporting.Pdf;
 using RiskWorker.Reporting.Reports;
 using RiskWorker.Reporting.Reports.Limits;
@@ -54,7 +55,7 @@ public sealed class ModelKindWordsTests
     public void History_of_record_prints_its_sample_wherever_an_interval_stands()
     {
         var run = SampleModels.History(s_run);
-        var page = Page(run, 0);
+        var page = PageOne(run);
         Assert.Contains("95% interval of the days as a sample 329.8 to 618.5", page);
         Assert.Contains("These figures have no simulation noise", page);
         Assert.Contains("their 500 scenarios are past days, none is drawn.", page);
@@ -66,12 +67,12 @@ public sealed class ModelKindWordsTests
         Assert.DoesNotContain("412.3 to 412.3", Flat(run));
         Assert.DoesNotContain("112.0% to 112.0%", Flat(run));
 
-        var pages = PdfText.Pages(PdfRenderer.Render(LimitReport.Build(run)));
-        var limits = string.Join(' ', pages.Single(lines => lines.Contains("Limits")));
+        var sections = LimitReport.Build(run).Sections;
+        var limits = DocumentText.Of(sections.Single(section => section.Blocks is [Heading { Text: "Limits" }, ..]));
         Assert.Contains("329.8 to 618.5", limits);
         Assert.Contains("below: sample", limits);
         Assert.Contains("the value alone decides. The interval below a measure is what its days allow as a sample", limits);
-        var books = string.Join(' ', pages.First(lines => lines.Contains("Books")));
+        var books = DocumentText.Of(sections.Single(section => section.Blocks is [Heading { Text: "Books" }, ..]));
         Assert.Contains("329.8 to 618.5", books);
         Assert.Contains("below: sample", books);
         Assert.Contains("no interval", books);
@@ -85,8 +86,8 @@ public sealed class ModelKindWordsTests
         var run = weighted with { Results = weighted.Results with { Nodes = [.. nodes] } };
         var text = Flat(run);
 
-        Assert.Contains("Days that weigh differently are no sample of equal draws, so no interval is claimed.", Page(run, 0));
-        Assert.Contains("no sample interval is claimed", Page(run, 0));
+        Assert.Contains("Days that weigh differently are no sample of equal draws, so no interval is claimed.", PageOne(run));
+        Assert.Contains("no sample interval is claimed", PageOne(run));
         Assert.Contains("days of different weight claim no interval", text);
         Assert.Contains("1% of the scenarios by weight lose", text);
         Assert.DoesNotContain("as a sample", text);
@@ -123,7 +124,7 @@ public sealed class ModelKindWordsTests
         };
     }
 
-    private static string Flat(RunRecord run) => PdfText.Flat(PdfRenderer.Render(LimitReport.Build(run)));
+    private static string Flat(RunRecord run) => DocumentText.Of(LimitReport.Build(run));
 
-    private static string Page(RunRecord run, int page) => string.Join(' ', PdfText.Pages(PdfRenderer.Render(LimitReport.Build(run)))[page]);
+    private static string PageOne(RunRecord run) => DocumentText.Of(LimitReport.Build(run).Sections[0]);
 }

@@ -52,11 +52,17 @@ public sealed class ModelsSectionTests
             Blocks(run).OfType<Paragraph>().ElementAt(1).Text.ToString());
     }
 
+    [Theory]
+    [InlineData(1.25, "The two lie further apart than their intervals explain.")]
+    [InlineData(1.015, "The intervals of the two meet, so the difference may be noise.")]
+    public void Second_sentence_on_one_other_model_names_none(double times, string sentence) =>
+        Assert.Equal(sentence, Blocks(SampleModels.Beside(s_run, ("a", times))).OfType<Paragraph>().ElementAt(1).Text.ToString());
+
     [Fact]
     public void Page_one_says_from_where_to_where_the_other_models_reach()
     {
-        Assert.Contains("Two others say 206.2 to 824.6 thousand EUR for VaR 99%: 0.50 to 2.00 times this figure.", Page(SampleModels.Beside(s_run, ("a", 2), ("b", 0.5)), 0));
-        Assert.Contains("a says 515.4 thousand EUR for VaR 99%, 1.25 times as much.", Page(SampleModels.Beside(s_run, ("a", 1.25)), 0));
+        Assert.Contains("Two others say 206.2 to 824.6 thousand EUR for VaR 99%: 0.50 to 2.00 times this figure.", PageOne(SampleModels.Beside(s_run, ("a", 2), ("b", 0.5))));
+        Assert.Contains("a says 515.4 thousand EUR for VaR 99%, 1.25 times as much.", PageOne(SampleModels.Beside(s_run, ("a", 1.25))));
     }
 
     [Fact]
@@ -71,9 +77,8 @@ public sealed class ModelsSectionTests
         Assert.True(chart.Panels[0].Rows[0].IsRecord);
         Assert.Equal((0, 412_300 * 3.05 * 1.5), (chart.Lowest, chart.Highest));
 
-        var text = Flat(run);
-        Assert.Contains("618.5 (1.50×)", text);
-        Assert.Contains("Bar: interval, at 99% for house, 95% for the others; of a history, what its days allow as a sample", text);
+        Assert.Contains("618.5 (1.50×)", PdfText.Lines(PdfRenderer.Render(LimitReport.Build(run))));
+        Assert.Contains("Bar: interval, at 99% for house, 95% for the others; of a history, what its days allow as a sample", Flat(run));
     }
 
     [Fact]
@@ -148,7 +153,7 @@ public sealed class ModelsSectionTests
 
         Assert.Empty(blocks.OfType<Figure>());
         Assert.Equal("The model 'short' has no figures: it could not be calibrated.", blocks.OfType<Paragraph>().First().Text.ToString());
-        Assert.DoesNotContain("Other models", Page(run, 0));
+        Assert.DoesNotContain("Other models", PageOne(run));
         PdfText.AssertInsideMargins(PdfRenderer.Render(LimitReport.Build(run)));
     }
 
@@ -301,7 +306,7 @@ public sealed class ModelsSectionTests
         _ => "?",
     }));
 
-    private static string Flat(RunRecord run) => PdfText.Flat(PdfRenderer.Render(LimitReport.Build(run)));
+    private static string Flat(RunRecord run) => DocumentText.Of(LimitReport.Build(run));
 
-    private static string Page(RunRecord run, int page) => string.Join(' ', PdfText.Pages(PdfRenderer.Render(LimitReport.Build(run)))[page]);
+    private static string PageOne(RunRecord run) => DocumentText.Of(LimitReport.Build(run).Sections[0]);
 }

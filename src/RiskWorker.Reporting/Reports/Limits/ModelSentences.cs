@@ -46,6 +46,9 @@ internal static class ModelSentences
             return null;
 
         var (_, record, others) = found;
+        if (others is [var only])
+            return Alone(ModelComparison.Of(record.Measure, only.Measure));
+
         var apart = others.ToLookup(one => ModelComparison.Of(record.Measure, one.Measure), one => one.Model.Name);
         var sentences = new List<string>();
         if (apart[Apart.Beyond].Any())
@@ -79,6 +82,13 @@ internal static class ModelSentences
         run.Results.Findings.FirstOrDefault(finding => finding.Subject == model.Name && finding.Message.Contains(model.Name, StringComparison.Ordinal)) is { } found
             ? found.Message
             : $"The model '{model.Name}' has no figures: it could not be calibrated.");
+
+    private static string Alone(Apart apart) => apart switch
+    {
+        Apart.Beyond => "The two lie further apart than their intervals explain.",
+        Apart.Within => "The intervals of the two meet, so the difference may be noise.",
+        _ => "One of the two claims no interval, so nothing says how much of the difference is chance.",
+    };
 
     private static (MeasureSpec Spec, (ModelReading Model, MeasureResult Measure) Record, List<(ModelReading Model, MeasureResult Measure)> Others)? Figures(RunReading run, IReadOnlyList<ModelReading> models)
     {
