@@ -33,6 +33,9 @@ public sealed record RunResults
     /// <summary>How the model of record and the others stood up over 250 and 500 days, in that order of models; empty where there are no others.</summary>
     public IReadOnlyList<ModelBacktest> ModelBacktests { get; init; } = [];
 
+    /// <summary>What the choices behind the figures do; null in a run without challengers and in one that is evidence only.</summary>
+    public RunEffects? Effects { get; init; }
+
     /// <summary>Hypothetical profit from the close before to this one; null where there is none.</summary>
     public HypotheticalProfit? Hypothetical { get; init; }
 

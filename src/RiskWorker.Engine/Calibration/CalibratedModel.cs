@@ -38,6 +38,9 @@ public sealed record CalibratedModel
     /// <summary>How the moves are distributed jointly.</summary>
     public ScenarioLaw Law { get; init; } = LognormalLaw.Instance;
 
+    /// <summary>What the estimator of the covariance found besides.</summary>
+    public IReadOnlyList<ModelParameter> Parameters { get; init; } = [];
+
     /// <summary>Frobenius distance from the correlation matrix found to the nearest one, or null where it needed no repair.</summary>
     public double? RepairDistance { get; init; }
 

@@ -9,6 +9,7 @@ public sealed class NodeMeasures
     private readonly RevaluationPlan _plan;
     private readonly Dictionary<PlanRow, LossSeries> _series;
     private readonly Dictionary<Horizon, int> _horizons;
+    private readonly Dictionary<Horizon, LiquidityCascade> _cascades = [];
 
     /// <summary>Takes one series for each row of <paramref name="plan"/>, in order.</summary>
     public NodeMeasures(RevaluationPlan plan, IReadOnlyList<LossSeries> series)
@@ -18,13 +19,20 @@ public sealed class NodeMeasures
         _horizons = plan.Horizons.Index().ToDictionary(h => h.Item, h => h.Index);
     }
 
+    private NodeMeasures(NodeMeasures of, Dictionary<Horizon, LiquidityCascade> cascades) =>
+        (_plan, _series, _horizons, _cascades) = (of._plan, of._series, of._horizons, cascades);
+
     /// <summary>A measure of <paramref name="node"/> with its interval at <paramref name="level"/>.</summary>
     /// <param name="node">Node number.</param>
     /// <param name="spec">The measure; its horizon must be one of the plan's.</param>
     /// <param name="level">Level of the interval.</param>
     /// <param name="inReportingCurrency">In the reporting currency, else in the node's own.</param>
-    public MeasureResult Of(int node, MeasureSpec spec, decimal level, bool inReportingCurrency = false) =>
-        SeriesOf(node, spec.Horizon, inReportingCurrency).Measure(spec, level);
+    public MeasureResult Of(int node, MeasureSpec spec, decimal level, bool inReportingCurrency = false) => spec.Kind == MeasureKind.Les
+        ? _cascades[spec.Horizon].Of(node, spec, level, inReportingCurrency)
+        : SeriesOf(node, spec.Horizon, inReportingCurrency).Measure(spec, level);
+
+    /// <summary>The same with liquidity-adjusted measures.</summary>
+    public NodeMeasures With(Dictionary<Horizon, LiquidityCascade> cascades) => new(this, cascades);
 
     /// <summary>The series of <paramref name="node"/> at <paramref name="horizon"/>.</summary>
     /// <exception cref="ArgumentOutOfRangeException">The plan has no such horizon.</exception>

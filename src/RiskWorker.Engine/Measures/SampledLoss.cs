@@ -48,7 +48,7 @@ public sealed class SampledLoss : LossSeries
     /// <inheritdoc/>
     public override MeasureResult Measure(MeasureSpec spec, decimal level)
     {
-        if (spec.Kind == MeasureKind.Es)
+        if (spec.Kind != MeasureKind.Var)
         {
             var shortfall = ExpectedShortfallInterval(spec.Confidence, level);
             return new(spec, ExpectedShortfall(spec.Confidence), shortfall.Low, shortfall.High, (double)level);

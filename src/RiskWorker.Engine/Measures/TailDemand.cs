@@ -17,7 +17,7 @@ public sealed class TailDemand
     {
         var all = measures.ToList();
         _var = [.. all.Where(m => m.Kind == MeasureKind.Var).Select(m => m.Confidence).Distinct()];
-        _es = [.. all.Where(m => m.Kind == MeasureKind.Es).Select(m => m.Confidence).Distinct()];
+        _es = [.. all.Where(m => m.Kind != MeasureKind.Var).Select(m => m.Confidence).Distinct()];
         _levels = [.. levels.Distinct()];
     }
 

@@ -40,7 +40,7 @@ public sealed class PlanCompiler
     public RevaluationPlan Compile(ulong seed, IReadOnlyList<LineValue> lines, int threads = 1, CancellationToken cancellation = default)
     {
         var holdings = Holdings(lines);
-        var moves = Moves();
+        var moves = FactorMoves.Of(_model);
         var options = holdings.Where(h => h.Bound is BoundOption).DistinctBy(h => h.Instrument).Select(h => (h.Instrument, (BoundOption)h.Bound)).ToList();
         var formulas = PriceTables.Build(options, moves, _model.Law, _model.Levels, _horizons, threads, cancellation);
         var currencies = Currencies(holdings);
@@ -206,16 +206,5 @@ public sealed class PlanCompiler
     {
         EuropeanOptionTerms[] After(int days) => [.. options.Select(o => o.Terms(_model.Levels, Years(o, days)))];
         return _remainingYears is null ? [.. Enumerable.Repeat(After(0), _horizons.Count)] : [.. _horizons.Select(h => After(h.Days))];
-    }
-
-    private FactorMoves Moves()
-    {
-        var rowOf = new int[_model.Factors.Count];
-        Array.Fill(rowOf, -1);
-        for (var row = 0; row < _model.Moving.Length; row++) rowOf[_model.Moving[row]] = row;
-        var laws = new FactorLaw[rowOf.Length];
-        for (var j = 0; j < laws.Length; j++)
-            laws[j] = new(_model.Levels[j], _model.Deviations[j], _model.DailyDrift[j], _model.Factors[j].Shock == Domain.Market.ShockKind.Lognormal);
-        return new(_model.Rank, _model.Lower, rowOf, _model.Moving.Length, laws);
     }
 }

@@ -10,9 +10,9 @@ internal static class Challengers
     /// <summary>Runs them one after the other; one that cannot be calibrated is a finding, and has no figures.</summary>
     /// <param name="settings">The models, and how to simulate.</param>
     /// <param name="lines">What they are run on.</param>
-    /// <param name="calibrate">Calibrates a model.</param>
+    /// <param name="calibration">Calibrates them.</param>
     /// <param name="findings">Where findings go.</param>
-    public static IReadOnlyList<ModelResult> Run(RunSettings settings, ModelLines lines, Func<ModelSettings, CalibratedModel> calibrate, List<Finding> findings)
+    public static IReadOnlyList<ModelResult> Run(RunSettings settings, ModelLines lines, ModelCalibration calibration, List<Finding> findings)
     {
         var results = new List<ModelResult>();
         var failed = new FindingList(settings.Checks);
@@ -20,7 +20,8 @@ internal static class Challengers
         {
             try
             {
-                results.Add(Result(model, ModelRun.Of(Named(lines, model.Name), calibrate(model), [], settings.Simulation with { Precision = null })));
+                var calibrated = model.Kind == ModelKind.Stressed ? StressedSpan.Find(lines, model, calibration, settings.Simulation) : calibration.Of(model);
+                results.Add(Result(model, ModelRun.Of(Named(lines, model.Name), calibrated, [], settings.Simulation with { Precision = null })));
             }
             catch (CalibrationException refusal)
             {

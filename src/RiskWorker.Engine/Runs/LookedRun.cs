@@ -92,6 +92,6 @@ public sealed class LookedRun
     private bool? PrecisionReached(NodeMeasures measures)
     {
         if (_settings.Precision is not { } wanted) return null;
-        return _measures.Select(m => measures.Of(0, m, _looks.Level)).All(m => (m.High - m.Low) / 2 <= wanted * Math.Abs(m.Value));
+        return _measures.Where(m => m.Kind != MeasureKind.Les).Select(m => measures.Of(0, m, _looks.Level)).All(m => (m.High - m.Low) / 2 <= wanted * Math.Abs(m.Value));
     }
 }

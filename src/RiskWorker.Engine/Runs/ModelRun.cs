@@ -36,9 +36,13 @@ internal sealed class ModelRun
         Still = Model.Factors.Count - Model.Moving.Length,
         Rank = Model.Rank,
         RepairDistance = Model.RepairDistance,
-        Parameters = [.. Model.Law.Parameters(Model)],
+        Parameters = [.. Model.Parameters, .. Model.Law.Parameters(Model)],
         Plan = Plan.Hash,
     };
+
+    /// <summary>The plan of <paramref name="model"/>.</summary>
+    public static RevaluationPlan PlanOf(ModelLines lines, CalibratedModel model, SimulationSettings settings) =>
+        new PlanCompiler(lines.Tree, model, lines.Currencies, lines.Measures.Select(m => m.Horizon)).Compile(settings.Seed, lines.Values, lines.Threads, lines.Cancellation);
 
     /// <summary>Runs <paramref name="model"/>.</summary>
     /// <param name="lines">What is held, and how to run it.</param>
@@ -47,8 +51,10 @@ internal sealed class ModelRun
     /// <param name="settings">Scenarios and looks.</param>
     public static ModelRun Of(ModelLines lines, CalibratedModel model, IReadOnlyList<Limit> limits, SimulationSettings settings)
     {
-        var plan = new PlanCompiler(lines.Tree, model, lines.Currencies, lines.Measures.Select(m => m.Horizon)).Compile(settings.Seed, lines.Values, lines.Threads, lines.Cancellation);
-        return new(model, plan, lines.Measures, new LookedRun(lines.Tree, plan, limits, lines.Measures, settings).Run(lines.Threads, lines.Progress, lines.Cancellation));
+        var plan = PlanOf(lines, model, settings);
+        var outcome = new LookedRun(lines.Tree, plan, limits, lines.Measures, settings).Run(lines.Threads, lines.Progress, lines.Cancellation);
+        var cascades = LiquidityCascades.Of(lines, model.Factors, plan, outcome, settings);
+        return new(model, plan, lines.Measures, cascades.Count == 0 ? outcome : outcome with { Measures = outcome.Measures.With(cascades) });
     }
 }
 

@@ -7,6 +7,7 @@ internal static class ModelSection
 {
     private const double LargestDrift = 10;
     private const int LongestWindow = 100_000;
+    private const double FewestFreedom = 2.05;
     private const double MostFreedom = 1_000;
 
     private static readonly string[] s_covarianceKeys = ["kind", "covariance", "lambda", "window", "drift", "drifts", "missingDays"];
@@ -86,7 +87,7 @@ internal static class ModelSection
 
     private static double? Decay(SettingsValue? value) => value?.Number(l => l is > 0 and < 1, "a number strictly between 0 and 1");
 
-    private static double? Freedom(SettingsValue? value) => value is { IsNull: false } given ? given.Number(n => n is > 2 and <= MostFreedom, $"a number above 2, at most {MostFreedom}, or null to have it fitted") : null;
+    private static double? Freedom(SettingsValue? value) => value is { IsNull: false } given ? given.Number(n => n is >= FewestFreedom and <= MostFreedom, $"a number from {FewestFreedom} to {MostFreedom:N0}, or null to have it fitted") : null;
 
     private static void CheckDriftsAreUsed(SettingsSection section, ModelSettings model)
     {

@@ -70,88 +70,22 @@ public static class CopulaLikelihood
                 each += dayWeights.MeanLogOnePlus(own, nu, room);
             }
 
-            return CopulaTerm(nu, factors, each, dayWeights.MeanLogOnePlus(joint, nu, room)) - halfLogDeterminant;
-        }
-
-        return DegreesOfFreedomSearch.Maximise(nu => dayWeights.Effective * At(nu), dayWeights.Effective * AtNormal(), dayWeights.Effective);
-    }
-
-    /// <summary>
-    /// By the mean of the likelihoods of pairs of factors, where the whole correlation is singular (composite likelihood: Varin, Reid and Firth 2011).
-    /// </summary>
-    /// <remarks>The mean counts n days: its interval is that of pairs which all tell the same, and wide where they do not.</remarks>
-    /// <param name="scores">A row a factor, row-major: normal scores.</param>
-    /// <param name="factors">Rows, at least 2.</param>
-    /// <param name="pairs">Two different factors and their correlation, strictly between -1 and 1; at least one pair.</param>
-    /// <param name="weights">One a day, 0 or more; none at all means equal ones.</param>
-    /// <exception cref="ArgumentException">A score is not finite, a pair faulty, or a length wrong.</exception>
-    public static DegreesOfFreedomFit FitPairs(
-        ReadOnlySpan<double> scores, int factors, ReadOnlySpan<(int First, int Second, double Correlation)> pairs, ReadOnlySpan<double> weights = default)
-    {
-        int days = DaysOf(scores, factors);
-        RequirePairs(pairs, factors);
-        double[] normals = scores.ToArray(), variates = new double[scores.Length], joint = new double[days], room = new double[days], means = new double[pairs.Length];
-        (int First, int Second, double Correlation)[] held = pairs.ToArray();
-        var dayWeights = DayWeights.Of(weights, days);
-        double AtNormal()
-        {
-            for (int i = 0; i < held.Length; i++)
-            {
-                (ReadOnlySpan<double> x, ReadOnlySpan<double> y, double r) = (Row(normals, held[i].First, days), Row(normals, held[i].Second, days), held[i].Correlation);
-                double spread = 1.0 - (r * r);
-                for (int t = 0; t < days; t++)
-                    joint[t] = PairSquare(x[t], y[t], r, spread) - Math.FusedMultiplyAdd(x[t], x[t], y[t] * y[t]);
-                means[i] = -0.5 * (dayWeights.Mean(joint) + Logarithm.Of(spread));
-            }
-
-            return LaneSum.Of(means) / means.Length;
-        }
-
-        double[] own = new double[factors];
-        double At(double nu)
-        {
-            MarginMap.OfNormalScore(nu).Of(normals, variates);
-            for (int j = 0; j < factors; j++)
-            {
-                joint.AsSpan().Clear();
-                Elementwise.AddSquare(Row(variates, j, days), 1.0, joint);
-                own[j] = dayWeights.MeanLogOnePlus(joint, nu, room);
-            }
-
-            for (int i = 0; i < held.Length; i++)
-            {
-                (ReadOnlySpan<double> x, ReadOnlySpan<double> y, double r) = (Row(variates, held[i].First, days), Row(variates, held[i].Second, days), held[i].Correlation);
-                double spread = 1.0 - (r * r);
-                for (int t = 0; t < days; t++)
-                    joint[t] = PairSquare(x[t], y[t], r, spread);
-                double each = own[held[i].First] + own[held[i].Second];
-                means[i] = CopulaTerm(nu, 2, each, dayWeights.MeanLogOnePlus(joint, nu, room)) - (0.5 * Logarithm.Of(spread));
-            }
-
-            return LaneSum.Of(means) / means.Length;
+            return Term(nu, factors, each, dayWeights.MeanLogOnePlus(joint, nu, room)) - halfLogDeterminant;
         }
 
         return DegreesOfFreedomSearch.Maximise(nu => dayWeights.Effective * At(nu), dayWeights.Effective * AtNormal(), dayWeights.Effective);
     }
 
     /// <summary>The mean log-density but for -½ ln det: Γ functions, the margins' sum and the joint term.</summary>
-    private static double CopulaTerm(double nu, int dimension, double margins, double joint)
+    internal static double Term(double nu, int dimension, double margins, double joint)
     {
         double half = LogGamma.Of(0.5 * nu), halfStep = LogGamma.HalfStep(0.5 * nu);
         double constant = LogGamma.Of(0.5 * (nu + dimension)) - half - (dimension * halfStep);
         return Math.FusedMultiplyAdd(0.5 * (nu + 1.0), margins, Math.FusedMultiplyAdd(-0.5 * (nu + dimension), joint, constant));
     }
 
-    // x² + (y - r x)²/(1 - r²): the quadratic form of a pair without cancellation.
-    private static double PairSquare(double x, double y, double r, double spread)
-    {
-        double rest = Math.FusedMultiplyAdd(-r, x, y);
-        return Math.FusedMultiplyAdd(x, x, rest * rest / spread);
-    }
-
-    private static ReadOnlySpan<double> Row(double[] rows, int row, int days) => rows.AsSpan(row * days, days);
-
-    private static int DaysOf(ReadOnlySpan<double> scores, int factors)
+    /// <summary>Days of rows of scores, which are checked.</summary>
+    internal static int DaysOf(ReadOnlySpan<double> scores, int factors)
     {
         if (factors < 2)
             throw new ArgumentException($"There are {factors} factors; a copula has at least 2.", nameof(factors));
@@ -165,19 +99,5 @@ public static class CopulaLikelihood
         }
 
         return days;
-    }
-
-    private static void RequirePairs(ReadOnlySpan<(int First, int Second, double Correlation)> pairs, int factors)
-    {
-        if (pairs.IsEmpty)
-            throw new ArgumentException("There are no pairs; there must be at least one.", nameof(pairs));
-        for (int i = 0; i < pairs.Length; i++)
-        {
-            (int first, int second, double r) = pairs[i];
-            if (first < 0 || first >= factors || second < 0 || second >= factors || first == second)
-                throw new ArgumentException($"Pair {i} has the factors {first} and {second}; they must be two different ones of 0 to {factors - 1}.", nameof(pairs));
-            if (!(Math.Abs(r) < 1.0))
-                throw new ArgumentException($"Pair {i} has the correlation {r}; it must lie strictly between -1 and 1.", nameof(pairs));
-        }
     }
 }

@@ -28,6 +28,7 @@ public static class ResultsJson
         json.Array("findings", record.Results.Findings, Finding);
         json.Array("backtest", record.Results.Backtest, Backtest);
         json.Array("modelBacktests", record.Results.ModelBacktests, ModelsJson.Backtest);
+        if (record.Results.Effects is { } effects) EffectsJson.Write(json, effects);
         Hypothetical(json, record.Results.Hypothetical);
         json.Lines("sensitivities", record.Results.Sensitivities, Sensitivity);
         Calibration(json, record.Results.Calibration);
@@ -113,7 +114,7 @@ public static class ResultsJson
         json.Number("sampleHigh", sample.High);
     }
 
-    private static void Spec(Utf8JsonWriter json, MeasureSpec spec)
+    internal static void Spec(Utf8JsonWriter json, MeasureSpec spec)
     {
         json.WriteString("measure", Words.Of(spec.Kind));
         json.WriteNumber("confidence", spec.Confidence.Level);

@@ -1,3 +1,4 @@
+using RiskWorker.Domain.Limits;
 using RiskWorker.Domain.Market;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Storage.Feed.Rows;
@@ -13,6 +14,7 @@ internal static class SettingsText
         var text = new CanonicalText();
         ModelText.Write(text, ModelText.Record, settings.Model);
         foreach (var (i, challenger) in settings.Challengers.Index()) ModelText.Write(text, ModelText.Challenger(i), challenger);
+        foreach (var rule in settings.Rules) text.Text("rule").Text(rule.Set).Text(rule.Book).Text(rule.ReferenceBook).End();
         foreach (var spec in settings.Measures) text.Text("measure").Text(Spelling.Of(spec.Kind)).Value<decimal>(spec.Confidence.Level).Value<int>(spec.Horizon.Days).End();
         text.Text("simulation").Value<int>(simulation.Scenarios).Value<ulong>(simulation.Seed).Value<int>(simulation.Looks).Value<int>(simulation.Cap).Number(simulation.Precision).End();
         if (simulation is not { Revaluation: RevaluationKind.Surface, SurfaceError: 1e-7, ExactTail: true })
@@ -32,6 +34,7 @@ internal static class SettingsText
         {
             Model = ModelText.Read(rows, ModelText.Record),
             Challengers = [.. Enumerable.Range(0, int.MaxValue).Select(ModelText.Challenger).TakeWhile(rows.Contains).Select(place => ModelText.Read(rows, place))],
+            Rules = [.. rows["rule"].Select(row => new RuleChoice(row.Name(), row.Text(), row.Text()))],
             Measures = [.. rows["measure"].Select(LeafText.Measure).Order()],
             Simulation = Simulation(rows["simulation"].Single(), rows["revaluation"].SingleOrDefault()),
             Checks = Checks(rows["checks"].Single()) with { Severity = ModelText.Sorted(rows["severity"], row => row.Choice<FindingSeverity>()) },

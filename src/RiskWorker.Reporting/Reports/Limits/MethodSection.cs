@@ -62,6 +62,8 @@ internal static class MethodSection
         new("ES", run.IsWeighted
             ? "the mean of the worst losses up to a weight of 1 − α, the loss at the boundary weighted by the part needed."
             : "the mean of the worst N (1 − α) losses, the loss at the boundary weighted by the fraction needed (Acerbi and Tasche 2002)."),
+        .. run.Specs.Any(spec => spec.Kind == MeasureKind.Les)
+            ? [new Fact("LES", "expected shortfall with each factor at its liquidity horizon, by the cascade of MAR33; the horizon printed is the base.")] : (Fact[])[],
         new("Intervals", Intervals(run)),
         new("Revaluation", Revaluation(run)),
         new("Horizon", $"{ModelWords.Horizon(run.Record.Settings.Model)} The shock is instantaneous: nothing expires or pays inside the horizon."),

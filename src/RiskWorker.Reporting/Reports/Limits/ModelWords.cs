@@ -87,8 +87,8 @@ internal static class ModelWords
     {
         ModelKind.Stressed when Moves(model) != model => Horizon(Moves(model)),
         ModelKind.Historical => "h days are the sum of h consecutive days of the history, so scenarios of more than one day share days.",
-        ModelKind.FilteredHistorical => "h days are filled with residuals of whole past days: factors move together as they did.",
-        ModelKind.StudentT => "h days have h times the daily covariance.",
+        ModelKind.FilteredHistorical => "each of h days draws a past day anew, all factors together, and scales its residuals to volatilities that every day of the path updates.",
+        ModelKind.StudentT => "h days have h times the daily covariance; each day has a mixing variable of its own.",
         ModelKind.JumpDiffusion => "h days have h times the daily covariance and h times as many jumps, days taken as independent.",
         _ => "h days have h times the daily covariance, days taken as independent.",
     };
