@@ -48,8 +48,21 @@ public sealed class ModelKindWordsTests
     [InlineData("student-t own", "student-t own (student-t), exponential weights 0.94 over 500 days, 4.500 degrees of freedom, own margins")]
     [InlineData("historical aged", "historical aged (historical), the moves of 250 days, weights falling by 0.985 a day")]
     [InlineData("filtered-historical", "filtered-historical, residuals of 500 days, volatility by a GARCH(1,1) fitted by maximum likelihood")]
-    [InlineData("stressed", "stressed, inner (student-t) at the worst 250 days of the history")]
+    [InlineData("stressed", "stressed, calibrated to the worst 250 days of the history: inner (student-t)")]
     public void Line_of_page_one_names_model_kind_and_how_it_is_found(string kind, string line) => Assert.Equal(line, ModelWords.Line(Settings(kind)));
+
+    [Theory]
+    [InlineData(0.0, "0")]
+    [InlineData(250.0, "250")]
+    [InlineData(12_345.6, "12,346")]
+    [InlineData(80.98, "80.98")]
+    [InlineData(4.2137, "4.214")]
+    [InlineData(-0.08312345, "−0.08312")]
+    [InlineData(0.99998, "1.000")]
+    [InlineData(0.99981, "0.9998")]
+    [InlineData(1.2344e-6, "1.234e−6")]
+    [InlineData(double.NaN, "–")]
+    public void Parameter_has_four_significant_digits(double value, string text) => Assert.Equal(text, Significant.Text(value));
 
     [Fact]
     public void History_of_record_prints_its_sample_wherever_an_interval_stands()

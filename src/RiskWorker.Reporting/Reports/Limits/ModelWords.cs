@@ -38,7 +38,7 @@ internal static class ModelWords
         ModelKind.Historical => $"the moves of {Phrases.Plural(model.Window, "day")}, {AgeWeights(model)}",
         ModelKind.FilteredHistorical => $"residuals of {Phrases.Plural(model.Window, "day")}, volatility by {Filter(model)}",
         ModelKind.JumpDiffusion => $"{Covariance(model)}, {Jumps(model)}",
-        ModelKind.Stressed => $"{Base(model)} at the worst {Phrases.Plural(model.Span, "day")} of the history",
+        ModelKind.Stressed => $"calibrated to the worst {Phrases.Plural(model.Span, "day")} of the history: {Base(model)}",
         _ => Covariance(model),
     };
 

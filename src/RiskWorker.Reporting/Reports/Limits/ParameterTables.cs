@@ -42,7 +42,9 @@ internal static class ParameterTables
     private static string Drift(ModelSettings settings)
     {
         var moves = ModelWords.Moves(settings);
-        return !ModelFacts.HasCovariance(moves.Kind) ? "past moves as they were" : moves.Drift == DriftKind.Zero ? "" : $"drift: {ModelWords.Drift(moves)}";
+        return moves.Kind == ModelKind.Historical ? "past moves as they were"
+            : !ModelFacts.HasCovariance(moves.Kind) || moves.Drift == DriftKind.Zero ? ""
+            : $"drift: {ModelWords.Drift(moves)}";
     }
 
     private static Table Table(IReadOnlyList<RowGroup> groups) => new(

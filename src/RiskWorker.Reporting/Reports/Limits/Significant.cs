@@ -14,8 +14,9 @@ internal static class Significant
         if (value is not { } number || !double.IsFinite(number))
             return Numerals.Missing;
 
-        var size = Math.Abs(number);
-        if (size is 0 or >= 1e3 || (size >= 1 && size == Math.Floor(size)))
+        // What rounds up to the next power of ten has a digit less behind the point.
+        var size = Math.Abs(number) * (1 + 5e-5);
+        if (size is 0 or >= 1e3 || (Math.Abs(number) >= 1 && number == Math.Floor(number)))
             return Numerals.Fixed(number);
         if (size < 1e-4)
             return number.ToString("0.###e-0", CultureInfo.InvariantCulture).Replace("-", Numerals.Minus, StringComparison.Ordinal);
