@@ -23,6 +23,19 @@ public sealed record ModelSettings
 
     /// <summary>Expected arithmetic return per year of 252 business days by factor, for <see cref="DriftKind.Explicit"/>; factors left out have 0.</summary>
     public IReadOnlyDictionary<string, double> Drifts { get; init; } = new SortedDictionary<string, double>(StringComparer.Ordinal);
+
+    /// <summary>Whether the valuation date moves with the horizon.</summary>
+    public AgeingKind Ageing { get; init; } = AgeingKind.None;
+}
+
+/// <summary>What becomes of the valuation date over a horizon.</summary>
+public enum AgeingKind
+{
+    /// <summary>It stays: shocks are instantaneous, and nothing expires or pays.</summary>
+    None,
+
+    /// <summary>It moves by the horizon: what expires, is fixed or pays inside does so.</summary>
+    Horizon,
 }
 
 /// <summary>Where a model's covariance comes from.</summary>

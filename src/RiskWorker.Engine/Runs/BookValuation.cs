@@ -4,16 +4,22 @@ using RiskWorker.Engine.Backtesting;
 using RiskWorker.Engine.Calibration;
 using RiskWorker.Engine.Checks;
 using RiskWorker.Engine.Pricing;
+using RiskWorker.Engine.Pricing.Ageing;
 
 namespace RiskWorker.Engine.Runs;
 
 /// <summary>The positions of a snapshot valued at their own close, today's and those of the date before.</summary>
 public sealed class BookValuation
 {
+    private readonly ClosingLevels _closes;
+    private readonly CalibratedModel _model;
+    private readonly string _currency;
+
     /// <summary>Values them.</summary>
     public BookValuation(Snapshot snapshot, BookTree tree, CalibratedModel model)
     {
         var closes = new ClosingLevels(snapshot);
+        (_closes, _model, _currency) = (closes, model, tree.ReportingCurrency);
         Binder = new(tree.ReportingCurrency, model.Factors, closes, snapshot.Settings.Simulation.Seed, snapshot.Settings.CurveInterpolation);
         Today = LineValuation.Of(snapshot.Positions, snapshot.Instruments, Binder, model.Levels, snapshot.AsOf);
         if (snapshot.Previous is { } previous)
@@ -32,4 +38,12 @@ public sealed class BookValuation
 
     /// <summary>What is held, what is priced and how it ties to the book of record.</summary>
     public Holdings Holdings { get; }
+
+    /// <summary>What today's instruments turn into by each of <paramref name="horizons"/>; null where the model of <paramref name="snapshot"/> leaves the valuation date as it is.</summary>
+    public BookAgeing? Ageing(Snapshot snapshot, IEnumerable<Horizon> horizons)
+    {
+        if (snapshot.Settings.Model.Ageing == AgeingKind.None) return null;
+        var ageing = new InstrumentAgeing(_currency, _model.Factors, _model.Levels, snapshot.AsOf, _closes, snapshot.Settings.Simulation.Seed, snapshot.Settings.CurveInterpolation);
+        return BookAgeing.Of(Today, ageing, snapshot.AsOf, horizons);
+    }
 }

@@ -65,7 +65,11 @@ public sealed class RunCalculator
         var limits = valid[true].ToList();
         var measures = _snapshot.Settings.Measures.Concat(limits.Select(l => l.Measure)).Distinct().Order().ToList();
         var clock = Stopwatch.StartNew();
-        var plan = new PlanCompiler(tree, model, valued.Binder.Currencies, measures.Select(m => m.Horizon)).Compile(_snapshot.Settings.Simulation.Seed, valued.Today, _threads, _cancellation);
+        var horizons = measures.Select(m => m.Horizon).Distinct().Order().ToList();
+        var ageing = valued.Ageing(_snapshot, horizons);
+        if (ageing is not null) _findings.AddRange(AgeingChecks.Run(ageing, tree, valued.Today, horizons, _snapshot.Settings.Checks));
+        if (Blocked) return Failed(tree) with { Holdings = valued.Holdings }; // where the settings make such a finding block
+        var plan = new PlanCompiler(tree, model, valued.Binder.Currencies, horizons).Compile(_snapshot.Settings.Simulation.Seed, valued.Today, _threads, ageing, _cancellation);
         var outcome = new LookedRun(tree, plan, limits, measures, _snapshot.Settings.Simulation).Run(_threads, _progress, _cancellation);
         var sensitivities = BookSensitivities.Of(plan, model.Factors);
         Timings = Timings with { Simulate = clock.Elapsed.TotalSeconds };

@@ -8,7 +8,7 @@ public static class ModelsSection
     private const double LargestDrift = 10;
     private const int LongestWindow = 100_000;
 
-    private static readonly Dictionary<string, int> s_ageing = new(StringComparer.Ordinal) { ["none"] = 0 };
+    private static readonly Dictionary<string, AgeingKind> s_ageing = new(StringComparer.Ordinal) { ["none"] = AgeingKind.None, ["horizon"] = AgeingKind.Horizon };
 
     private static readonly Dictionary<string, CovarianceEstimator> s_covariances = new(StringComparer.Ordinal)
     {
@@ -50,7 +50,6 @@ public static class ModelsSection
         var defaults = new ModelSettings { Name = name };
         if (value.Section("kind", "covariance", "lambda", "window", "drift", "drifts", "ageing") is not { } section) return defaults;
         CheckKind(section["kind"], defaults.Kind);
-        section["ageing"]?.Choice(s_ageing, "horizon");
         var model = defaults with
         {
             Covariance = section["covariance"]?.Choice(s_covariances, "shrunk") ?? defaults.Covariance,
@@ -58,6 +57,7 @@ public static class ModelsSection
             Window = section["window"]?.Whole(2, LongestWindow) ?? defaults.Window,
             Drift = section["drift"]?.Choice(s_drifts) ?? defaults.Drift,
             Drifts = Drifts(section),
+            Ageing = section["ageing"]?.Choice(s_ageing) ?? defaults.Ageing,
         };
         CheckDriftsAreUsed(section, model);
         return model;

@@ -13,6 +13,7 @@ internal static class SettingsText
         var text = new CanonicalText();
         text.Text("model").Text(model.Name).Text(model.Kind).Text(Spelling.Of(model.Covariance)).Number(model.Lambda).Value<int>(model.Window).Text(Spelling.Of(model.Drift)).End();
         foreach (var (factor, drift) in model.Drifts) text.Text("drift").Text(factor).Number(drift).End();
+        if (model.Ageing != AgeingKind.None) text.Text("ageing").Text(Spelling.Of(model.Ageing)).End();
         foreach (var spec in settings.Measures) text.Text("measure").Text(Spelling.Of(spec.Kind)).Value<decimal>(spec.Confidence.Level).Value<int>(spec.Horizon.Days).End();
         text.Text("simulation").Value<int>(simulation.Scenarios).Value<ulong>(simulation.Seed).Value<int>(simulation.Looks).Value<int>(simulation.Cap).Number(simulation.Precision).End();
         if (simulation is not { Revaluation: RevaluationKind.Surface, SurfaceError: 1e-7, ExactTail: true })
@@ -30,7 +31,11 @@ internal static class SettingsText
         var rows = CanonicalRow.Of(text).ToLookup(row => row.Name(), StringComparer.Ordinal);
         return new()
         {
-            Model = Model(rows["model"].Single()) with { Drifts = Sorted(rows["drift"], row => row.Amount()) },
+            Model = Model(rows["model"].Single()) with
+            {
+                Drifts = Sorted(rows["drift"], row => row.Amount()),
+                Ageing = rows["ageing"].SingleOrDefault()?.Choice<AgeingKind>() ?? AgeingKind.None, // stands only where it is not the usual one
+            },
             Measures = [.. rows["measure"].Select(LeafText.Measure).Order()],
             Simulation = Simulation(rows["simulation"].Single(), rows["revaluation"].SingleOrDefault()),
             Checks = Checks(rows["checks"].Single()) with { Severity = Sorted(rows["severity"], row => row.Choice<FindingSeverity>()) },

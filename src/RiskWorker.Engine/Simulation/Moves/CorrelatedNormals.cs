@@ -24,10 +24,13 @@ internal sealed class CorrelatedNormals(int capacity)
     }
 
     /// <summary>Draws scenarios <paramref name="first"/> to first + width - 1.</summary>
-    public void Draw(long first, int width)
+    public void Draw(long first, int width) => Draw(_stream, first, width);
+
+    /// <summary>The same from a stream of its own.</summary>
+    public void Draw(DrawStream stream, long first, int width)
     {
         for (var draw = 0; draw < _moves.Rank; draw += 2)
-            NormalDraws.FillPair(_stream, (ulong)first, (uint)draw / 2, _draws.AsSpan(draw * width, width), _draws.AsSpan((draw + 1) * width, width));
+            NormalDraws.FillPair(stream, (ulong)first, (uint)draw / 2, _draws.AsSpan(draw * width, width), _draws.AsSpan((draw + 1) * width, width));
         TriangularProduct.Multiply(_moves.Lower, _moves.Rows, _moves.Rank, _draws.AsSpan(0, _moves.Rank * width), _normals.AsSpan(0, _moves.Rows * width), width);
     }
 }

@@ -72,7 +72,7 @@ internal static class MethodSection
         new("ES", "the mean of the worst N (1 − α) losses, the loss at the boundary weighted by the fraction needed (Acerbi and Tasche 2002)."),
         new("Intervals", "of VaR: distribution-free, from order statistics of the binomial; of ES: asymptotic variance (Manistre and Hancock 2005)."),
         new("Revaluation", Revaluation(run)),
-        new("Horizon", "h days have h times the daily covariance, days taken as independent. The shock is instantaneous: nothing expires or pays inside the horizon."),
+        new("Horizon", $"h days have h times the daily covariance, days taken as independent. {ModelWords.Ageing(run.Record.Settings.Model)}"),
         new("Shocks", "ln(S(t) / S(t−1)) for prices, differences for rates; only between consecutive observed business days of a factor's calendar."),
         new("Exceptions", "loss strictly greater than the VaR of the previous close; a missing VaR or P&L counts. Hypothetical P&L: yesterday's positions at today's prices"
             + (run.Record.Settings.TimeEffectsIncluded ? ", the valuation date moved too." : ", the valuation date held.")),

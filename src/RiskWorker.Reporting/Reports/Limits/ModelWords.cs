@@ -27,6 +27,11 @@ internal static class ModelWords
         _ => $"given for {Phrases.Plural(model.Drifts.Count, "factor")}, zero for the others",
     };
 
+    public static string Ageing(ModelSettings model) => model.Ageing == AgeingKind.None
+        ? "The shock is instantaneous: nothing expires or pays inside the horizon."
+        : "The valuation date moves by the horizon (Monday to Friday): what expires, pays or is fixed inside does so at a close on the way there, a Brownian bridge of all factors; "
+            + "what is paid is held as cash without interest. Sensitivities are instantaneous.";
+
     private static int Decimals(double lambda)
     {
         var decimals = 2;

@@ -1,0 +1,87 @@
+using RiskWorker.Engine.Pricing;
+using RiskWorker.Engine.Pricing.Curves;
+using RiskWorker.Engine.Pricing.Options;
+
+namespace RiskWorker.Engine.Plans;
+
+/// <summary>
+/// What a plan's holdings turn into by one horizon, the valuation date having moved: profits that are certain, and what is valued, fixed
+/// or looked at close by close. Cash paid on the way stays in its own currency, without interest.
+/// </summary>
+/// <param name="Certain">Profit by cell that no scenario moves: the worth at unmoved levels of all that <paramref name="Closes"/> value, known cash, less today's value.</param>
+/// <param name="Barriers">Barriers that are looked at.</param>
+/// <param name="Fixings">Rates that are fixed inside and paid later.</param>
+/// <param name="Closes">Closes inside the horizon at which something happens, ascending, then the horizon's own.</param>
+public sealed record AgedHoldings(IReadOnlyList<LinearHolding> Certain, int Barriers, int Fixings, IReadOnlyList<DatedHoldings> Closes);
+
+/// <summary>
+/// What happens at one close. Its values are in money of that close and relative to unmoved levels: inside a horizon it is what pays there,
+/// at the horizon what is still alive.
+/// </summary>
+public sealed record DatedHoldings
+{
+    /// <summary>Whole business days after the as-of date.</summary>
+    public required int Day { get; init; }
+
+    /// <summary>What is valued, by underlying.</summary>
+    public required IReadOnlyList<UnderlyingGroup> Groups { get; init; }
+
+    /// <summary>Amounts that are valued, by exponent.</summary>
+    public required IReadOnlyList<FlowBatch> Flows { get; init; }
+
+    /// <summary>Barriers that are looked at before anything is valued, by underlying.</summary>
+    public IReadOnlyList<BarrierLook> Looks { get; init; } = [];
+
+    /// <summary>Options that are worth one thing where their barrier has been crossed and another where it has not.</summary>
+    public IReadOnlyList<BarrierBatch> Barriers { get; init; } = [];
+
+    /// <summary>Rates that are fixed here.</summary>
+    public IReadOnlyList<RateFixing> Fixings { get; init; } = [];
+
+    /// <summary>Amounts that have grown by a rate fixed before and are valued here.</summary>
+    public IReadOnlyList<FixedBatch> Fixed { get; init; } = [];
+
+    /// <summary>The factors whose levels flows, formulas and fixings read, ascending.</summary>
+    public int[] FormFactors => field ??=
+    [
+        .. Flows.SelectMany(f => f.Exponent.Factors.ToArray())
+            .Concat(Groups.SelectMany(g => g.Formulas).SelectMany(f => f.Market.Factors()))
+            .Concat(Barriers.SelectMany(b => b.Market.Factors()))
+            .Concat(Fixings.SelectMany(f => f.Exponent.Factors.ToArray()))
+            .Concat(Fixed.SelectMany(f => f.Discount.Factors.ToArray())).Distinct().Order(),
+    ];
+}
+
+/// <summary>A look at a barrier: from then on it counts as crossed where the underlying closes on it or beyond.</summary>
+/// <param name="Barrier">Number of the barrier among those of the horizon.</param>
+/// <param name="Underlying">The underlying.</param>
+/// <param name="Level">The level that counts as crossing.</param>
+/// <param name="IsUp">Whether it is crossed from below.</param>
+public readonly record struct BarrierLook(int Barrier, UnderlyingKey Underlying, double Level, bool IsUp);
+
+/// <summary>Options with a barrier on one underlying that see the same rates and variance up to their expiry.</summary>
+/// <param name="Underlying">The underlying.</param>
+/// <param name="Market">How rates and variance follow from the levels.</param>
+/// <param name="Items">The options, by cell.</param>
+public sealed record BarrierBatch(UnderlyingKey Underlying, MarketTerms Market, BarrierItem[] Items);
+
+/// <summary>One such option held in one cell.</summary>
+/// <param name="Cell">Where its profit goes.</param>
+/// <param name="Quantity">Units times multiplier.</param>
+/// <param name="BaseValue">Its value at unmoved levels.</param>
+/// <param name="Barrier">Number of its barrier.</param>
+/// <param name="Untouched">What it is worth where the barrier has not been crossed.</param>
+/// <param name="Crossed">What it is worth, and has paid, where it has.</param>
+public readonly record struct BarrierItem(int Cell, double Quantity, double BaseValue, int Barrier, OptionFormula Untouched, OptionFormula Crossed);
+
+/// <summary>A rate that is fixed at a close.</summary>
+/// <param name="Fixing">Its number among those of the horizon.</param>
+/// <param name="Exponent">Minus the logarithm of what an amount grows by.</param>
+public readonly record struct RateFixing(int Fixing, LinearForm Exponent);
+
+/// <summary>Amounts that grew alike by one fixing and are discounted alike.</summary>
+/// <param name="Fixing">Number of the fixing.</param>
+/// <param name="Discount">Minus the logarithm of the discount factor from the close on.</param>
+/// <param name="Factor">What one unit of the amounts is worth at unmoved levels.</param>
+/// <param name="Amounts">Amounts by cell.</param>
+public sealed record FixedBatch(int Fixing, LinearForm Discount, double Factor, IReadOnlyList<LinearHolding> Amounts);
