@@ -17,7 +17,8 @@ internal sealed class AgedCompiler
     private readonly Dictionary<string, OptionFormula> _today;
     private readonly SortedDictionary<int, CloseBuilder> _closes = [];
     private readonly SortedDictionary<int, double> _certain = [];
-    private readonly Dictionary<string, int> _barriers = new(StringComparer.Ordinal);
+    private readonly Dictionary<string, (int Number, PathMemory Formula)> _paths = new(StringComparer.Ordinal);
+    private readonly List<double> _starts = [];
     private readonly FixingBuilder _fixings;
 
     /// <summary>Takes what the plan rests on.</summary>
@@ -37,13 +38,14 @@ internal sealed class AgedCompiler
     public AgedHoldings Compile(IReadOnlyList<CellHolding> holdings, int threads, CancellationToken cancellation)
     {
         var formulas = Tables(holdings, threads, cancellation);
+        TabulatePaths(holdings, threads, cancellation);
         foreach (var holding in holdings)
         {
             var aged = _ageing.Of(holding.Instrument, _horizon);
             if (aged.Refusal is null) Earn(holding.Cell, Age(holding, aged, formulas.GetValueOrDefault(holding.Instrument)) - holding.Value);
             else CloseAt(_horizon.Days).Add(holding.Cell, holding.Quantity, holding.Bound, _today.GetValueOrDefault(holding.Instrument));
         }
-        return new([.. _certain.Select(c => new LinearHolding(c.Key, c.Value))], _barriers.Count, _fixings.Count,
+        return new([.. _certain.Select(c => new LinearHolding(c.Key, c.Value))], _starts, _fixings.Count,
             [.. _closes.Select(c => c.Value.Build(_fixings.FixedOn(c.Key), c.Key == _horizon.Days ? _fixings.Fixed : []))]);
     }
 
@@ -65,19 +67,25 @@ internal sealed class AgedCompiler
             else if (reset.Day > 0) CloseAt(reset.Day);
             if (reset.Discount is not null || reset.Day == 0) worth += _fixings.Add(cell, quantity, reset, CloseAt(_horizon.Days));
         }
-        if (aged.Barrier is { } barrier) worth += Watch(holding, barrier);
+        if (aged.Path is { } path) worth += CloseAt(path.Day).Add(cell, quantity, path, _paths[holding.Instrument].Number, _paths[holding.Instrument].Formula);
         return worth;
     }
 
-    private double Watch(in CellHolding holding, WatchedBarrier barrier)
+    // Every instrument's path is looked at once, whoever holds it.
+    private void TabulatePaths(IReadOnlyList<CellHolding> holdings, int threads, CancellationToken cancellation)
     {
-        if (!_barriers.TryGetValue(holding.Instrument, out var number))
+        List<(string Instrument, WatchedPath Path)> paths = [.. holdings.Select(h => h.Instrument).Distinct(StringComparer.Ordinal)
+            .Select(i => (i, _ageing.Of(i, _horizon))).Where(a => a.Item2 is { Refusal: null, Path: not null }).Select(a => (a.i, a.Item2.Path!))];
+        var (ranges, formulas) = (new MarketRanges(_moves, _model.Law, _levels, [_horizon]), new PathMemory[paths.Count]);
+        Parallel.For(0, formulas.Length, new ParallelOptions { MaxDegreeOfParallelism = threads, CancellationToken = cancellation }, i =>
+            formulas[i] = paths[i].Path.Formula.Tabulated(ranges.Of(paths[i].Path.Underlying, paths[i].Path.Market)));
+        for (var i = 0; i < paths.Count; i++)
         {
-            _barriers[holding.Instrument] = number = _barriers.Count;
-            var level = BarrierSpacing.Seen(barrier, _moves);
-            for (var day = barrier.FirstDay; day <= barrier.Day; day++) CloseAt(day).Add(new BarrierLook(number, barrier.Underlying, level, barrier.IsUp));
+            var (path, number) = (paths[i].Path, LookSpacing.NumberOf(paths[i].Path, _moves));
+            _paths[paths[i].Instrument] = (i, formulas[i]);
+            _starts.Add(path.Start);
+            foreach (var day in path.Looks) CloseAt(day).Add(new PathLook(i, path.Underlying, path.Kind, number));
         }
-        return CloseAt(barrier.Day).Add(holding.Cell, holding.Quantity, barrier, number);
     }
 
     private void Earn(int cell, double profit) => _certain[cell] = _certain.GetValueOrDefault(cell) + profit;

@@ -1,6 +1,6 @@
 using RiskWorker.Engine.Pricing;
+using RiskWorker.Engine.Pricing.Ageing;
 using RiskWorker.Engine.Pricing.Curves;
-using RiskWorker.Engine.Pricing.Options;
 
 namespace RiskWorker.Engine.Plans;
 
@@ -9,10 +9,10 @@ namespace RiskWorker.Engine.Plans;
 /// or looked at close by close. Cash paid on the way stays in its own currency, without interest.
 /// </summary>
 /// <param name="Certain">Profit by cell that no scenario moves: the worth at unmoved levels of all that <paramref name="Closes"/> value, known cash, less today's value.</param>
-/// <param name="Barriers">Barriers that are looked at.</param>
+/// <param name="Paths">For each path that is looked at, what it has left until today.</param>
 /// <param name="Fixings">Rates that are fixed inside and paid later.</param>
 /// <param name="Closes">Closes inside the horizon at which something happens, ascending, then the horizon's own.</param>
-public sealed record AgedHoldings(IReadOnlyList<LinearHolding> Certain, int Barriers, int Fixings, IReadOnlyList<DatedHoldings> Closes);
+public sealed record AgedHoldings(IReadOnlyList<LinearHolding> Certain, IReadOnlyList<double> Paths, int Fixings, IReadOnlyList<DatedHoldings> Closes);
 
 /// <summary>
 /// What happens at one close. Its values are in money of that close and relative to unmoved levels: inside a horizon it is what pays there,
@@ -29,11 +29,11 @@ public sealed record DatedHoldings
     /// <summary>Amounts that are valued, by exponent.</summary>
     public required IReadOnlyList<FlowBatch> Flows { get; init; }
 
-    /// <summary>Barriers that are looked at before anything is valued, by underlying.</summary>
-    public IReadOnlyList<BarrierLook> Looks { get; init; } = [];
+    /// <summary>Paths that are looked at before anything is valued, by underlying.</summary>
+    public IReadOnlyList<PathLook> Looks { get; init; } = [];
 
-    /// <summary>Options that are worth one thing where their barrier has been crossed and another where it has not.</summary>
-    public IReadOnlyList<BarrierBatch> Barriers { get; init; } = [];
+    /// <summary>Options whose value here hangs on the path so far.</summary>
+    public IReadOnlyList<PathBatch> Paths { get; init; } = [];
 
     /// <summary>Rates that are fixed here.</summary>
     public IReadOnlyList<RateFixing> Fixings { get; init; } = [];
@@ -46,33 +46,32 @@ public sealed record DatedHoldings
     [
         .. Flows.SelectMany(f => f.Exponent.Factors.ToArray())
             .Concat(Groups.SelectMany(g => g.Formulas).SelectMany(f => f.Market.Factors()))
-            .Concat(Barriers.SelectMany(b => b.Market.Factors()))
+            .Concat(Paths.SelectMany(b => b.Market.Factors()))
             .Concat(Fixings.SelectMany(f => f.Exponent.Factors.ToArray()))
             .Concat(Fixed.SelectMany(f => f.Discount.Factors.ToArray())).Distinct().Order(),
     ];
 }
 
-/// <summary>A look at a barrier: from then on it counts as crossed where the underlying closes on it or beyond.</summary>
-/// <param name="Barrier">Number of the barrier among those of the horizon.</param>
+/// <summary>A look at the path of an underlying.</summary>
+/// <param name="Path">Number of the path among those of the horizon.</param>
 /// <param name="Underlying">The underlying.</param>
-/// <param name="Level">The level that counts as crossing.</param>
-/// <param name="IsUp">Whether it is crossed from below.</param>
-public readonly record struct BarrierLook(int Barrier, UnderlyingKey Underlying, double Level, bool IsUp);
+/// <param name="Kind">What the look leaves.</param>
+/// <param name="Number">The level that counts as crossing a barrier; for an extreme, what a level is multiplied by.</param>
+public readonly record struct PathLook(int Path, UnderlyingKey Underlying, LookKind Kind, double Number);
 
-/// <summary>Options with a barrier on one underlying that see the same rates and variance up to their expiry.</summary>
+/// <summary>Options on the path of one underlying that see the same rates and variance up to their expiry.</summary>
 /// <param name="Underlying">The underlying.</param>
 /// <param name="Market">How rates and variance follow from the levels.</param>
 /// <param name="Items">The options, by cell.</param>
-public sealed record BarrierBatch(UnderlyingKey Underlying, MarketTerms Market, BarrierItem[] Items);
+public sealed record PathBatch(UnderlyingKey Underlying, MarketTerms Market, PathItem[] Items);
 
 /// <summary>One such option held in one cell.</summary>
 /// <param name="Cell">Where its profit goes.</param>
 /// <param name="Quantity">Units times multiplier.</param>
-/// <param name="BaseValue">Its value at unmoved levels.</param>
-/// <param name="Barrier">Number of its barrier.</param>
-/// <param name="Untouched">What it is worth where the barrier has not been crossed.</param>
-/// <param name="Crossed">What it is worth, and has paid, where it has.</param>
-public readonly record struct BarrierItem(int Cell, double Quantity, double BaseValue, int Barrier, OptionFormula Untouched, OptionFormula Crossed);
+/// <param name="BaseValue">Its value where no level moves.</param>
+/// <param name="Path">Number of its path.</param>
+/// <param name="Formula">The formula.</param>
+public readonly record struct PathItem(int Cell, double Quantity, double BaseValue, int Path, PathMemory Formula);
 
 /// <summary>A rate that is fixed at a close.</summary>
 /// <param name="Fixing">Its number among those of the horizon.</param>

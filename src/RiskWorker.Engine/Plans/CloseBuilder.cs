@@ -12,8 +12,8 @@ namespace RiskWorker.Engine.Plans;
 internal sealed class CloseBuilder(int day, double[] levels)
 {
     private readonly HoldingsBuilder _holdings = new(levels);
-    private readonly List<BarrierLook> _looks = [];
-    private readonly SortedDictionary<UnderlyingKey, SortedDictionary<MarketTerms, List<BarrierItem>>> _barriers = [];
+    private readonly List<PathLook> _looks = [];
+    private readonly SortedDictionary<UnderlyingKey, SortedDictionary<MarketTerms, List<PathItem>>> _paths = [];
 
     /// <summary>Adds what is held of an instrument as of this close.</summary>
     public double Add(int cell, double quantity, BoundInstrument bound, OptionFormula? formula)
@@ -29,16 +29,16 @@ internal sealed class CloseBuilder(int day, double[] levels)
         return amount * Exponential.Of(-exponent.At(levels));
     }
 
-    /// <summary>Adds a look at a barrier.</summary>
-    public void Add(in BarrierLook look) => _looks.Add(look);
+    /// <summary>Adds a look at a path.</summary>
+    public void Add(in PathLook look) => _looks.Add(look);
 
-    /// <summary>Adds an option whose barrier has the number <paramref name="number"/>.</summary>
-    public double Add(int cell, double quantity, WatchedBarrier barrier, int number)
+    /// <summary>Adds an option on a path, whose number is <paramref name="number"/>; <paramref name="formula"/> is its formula, as a table where it is numerical.</summary>
+    public double Add(int cell, double quantity, WatchedPath path, int number, PathMemory formula)
     {
-        if (!_barriers.TryGetValue(barrier.Underlying, out var byMarket)) _barriers[barrier.Underlying] = byMarket = [];
-        if (!byMarket.TryGetValue(barrier.Market, out var items)) byMarket[barrier.Market] = items = [];
-        var (units, unmoved) = (quantity * barrier.Multiplier, barrier.Untouched.Value(barrier.Market.At(levels, 0, barrier.Underlying.LevelOf(levels))));
-        items.Add(new(cell, units, unmoved, number, barrier.Untouched, barrier.Crossed));
+        if (!_paths.TryGetValue(path.Underlying, out var byMarket)) _paths[path.Underlying] = byMarket = [];
+        if (!byMarket.TryGetValue(path.Market, out var items)) byMarket[path.Market] = items = [];
+        var (units, unmoved) = (quantity * path.Multiplier, formula.Value(path.Market.At(levels, 0, path.Underlying.LevelOf(levels)), path.Unmoved));
+        items.Add(new(cell, units, unmoved, number, formula));
         return units * unmoved;
     }
 
@@ -48,8 +48,8 @@ internal sealed class CloseBuilder(int day, double[] levels)
         Day = day,
         Groups = _holdings.Groups,
         Flows = _holdings.Flows,
-        Looks = [.. _looks.OrderBy(l => l.Underlying).ThenBy(l => l.Barrier)],
-        Barriers = [.. _barriers.SelectMany(u => u.Value.Select(m => new BarrierBatch(u.Key, m.Key, [.. m.Value.OrderBy(i => i.Cell)])))],
+        Looks = [.. _looks.OrderBy(l => l.Underlying).ThenBy(l => l.Path)],
+        Paths = [.. _paths.SelectMany(u => u.Value.Select(m => new PathBatch(u.Key, m.Key, [.. m.Value.OrderBy(i => i.Cell)])))],
         Fixings = fixings,
         Fixed = grown,
     };

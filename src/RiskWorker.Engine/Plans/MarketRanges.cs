@@ -14,9 +14,12 @@ internal sealed class MarketRanges(FactorMoves moves, ScenarioLaw law, double[] 
     private const double Narrowest = 1e-4;
 
     /// <summary>The box of <paramref name="option"/>.</summary>
-    public MarketRange Of(BoundOption option) => new(
-        Return(option.Underlying) is var x && x.HalfWidth > Narrowest ? x : x with { HalfWidth = Narrowest },
-        Form(option.Market.Discount), Form(option.Market.Carry), Deviation(option.Market.Variance));
+    public MarketRange Of(BoundOption option) => Of(option.Underlying, option.Market);
+
+    /// <summary>The box of an option on <paramref name="underlying"/> that sees <paramref name="market"/>.</summary>
+    public MarketRange Of(in UnderlyingKey underlying, MarketTerms market) => new(
+        Return(underlying) is var x && x.HalfWidth > Narrowest ? x : x with { HalfWidth = Narrowest },
+        Form(market.Discount), Form(market.Carry), Deviation(market.Variance));
 
     private InputRange Return(in UnderlyingKey key) => Over(0, [.. Terms(key)]);
 

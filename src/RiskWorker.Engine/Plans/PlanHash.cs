@@ -69,21 +69,22 @@ internal sealed class PlanHash : IDisposable
 
     private void Add(AgedHoldings aged)
     {
-        Add(aged.Certain.Count).Add(aged.Barriers).Add(aged.Fixings).Add(aged.Closes.Count);
+        Add(aged.Certain.Count).Add(aged.Paths.Count).Add(aged.Fixings).Add(aged.Closes.Count);
         foreach (var certain in aged.Certain) Add(certain.Cell).Add(certain.Units);
+        foreach (var start in aged.Paths) Add(start);
         foreach (var close in aged.Closes) Add(close);
     }
 
     private void Add(DatedHoldings close)
     {
-        Add(close.Day).Add(close.Groups.Count).Add(close.Flows.Count).Add(close.Looks.Count).Add(close.Barriers.Count).Add(close.Fixings.Count).Add(close.Fixed.Count);
+        Add(close.Day).Add(close.Groups.Count).Add(close.Flows.Count).Add(close.Looks.Count).Add(close.Paths.Count).Add(close.Fixings.Count).Add(close.Fixed.Count);
         foreach (var group in close.Groups) Add(group, 1);
         foreach (var flow in close.Flows) Add(flow);
-        foreach (var look in close.Looks) Add(look.Barrier).Key(look.Underlying).Add(look.Level).Add(look.IsUp ? 1 : 0);
-        foreach (var batch in close.Barriers)
+        foreach (var look in close.Looks) Add(look.Path).Key(look.Underlying).Add((int)look.Kind).Add(look.Number);
+        foreach (var batch in close.Paths)
         {
             Key(batch.Underlying).Market(batch.Market).Add(batch.Items.Length);
-            foreach (var item in batch.Items) Add(item.Cell).Add(item.Quantity).Add(item.BaseValue).Add(item.Barrier).Numbers(item.Untouched).Numbers(item.Crossed);
+            foreach (var item in batch.Items) Add(item.Cell).Add(item.Quantity).Add(item.BaseValue).Add(item.Path).Numbers(item.Formula.Numbers());
         }
         foreach (var fixing in close.Fixings) Add(fixing.Fixing).Form(fixing.Exponent);
         foreach (var flow in close.Fixed)
@@ -100,7 +101,7 @@ internal sealed class PlanHash : IDisposable
         foreach (var item in batch.Items)
         {
             Add(item.Cell).Add(item.Quantity).Add(item.BaseValue);
-            Numbers(item.Formula);
+            Numbers(item.Formula.Numbers());
         }
     }
 
@@ -119,9 +120,9 @@ internal sealed class PlanHash : IDisposable
         return this;
     }
 
-    private PlanHash Numbers(Pricing.Options.OptionFormula formula)
+    private PlanHash Numbers(IEnumerable<double> numbers)
     {
-        foreach (var number in formula.Numbers()) Add(number);
+        foreach (var number in numbers) Add(number);
         return this;
     }
 

@@ -6,14 +6,14 @@ namespace RiskWorker.Engine.Simulation;
 
 /// <summary>
 /// Takes the scenarios of a tile through the closes of a horizon that moves the valuation date: what pays there, which rates are fixed, which
-/// barriers are crossed, and at the end what is still alive. The buffers of one thread.
+/// paths leave what, and at the end what is still alive. The buffers of one thread.
 /// </summary>
 internal sealed class HorizonPath(int capacity)
 {
-    private readonly LaneTable _isCrossed = new();
+    private readonly LaneTable _states = new();
     private readonly LaneTable _fixings = new();
     private readonly double[] _exponents = new double[capacity];
-    private readonly BarrierProfits _barriers = new(capacity);
+    private readonly PathProfits _paths = new(capacity);
     private RevaluationPlan _plan = null!;
     private PlanSlice[][] _slices = [];
 
@@ -22,7 +22,7 @@ internal sealed class HorizonPath(int capacity)
     {
         _plan = plan;
         _slices = [.. plan.Aged.Select(aged => aged.Closes.Select(close => PlanSlice.Whole(plan, close)).ToArray())];
-        _isCrossed.Shape(plan.Aged.Max(a => a.Barriers), capacity);
+        _states.Shape(plan.Aged.Max(a => a.Paths.Count), capacity);
         _fixings.Shape(plan.Aged.Max(a => a.Fixings), capacity);
     }
 
@@ -33,8 +33,8 @@ internal sealed class HorizonPath(int capacity)
     public void Pass(int horizon, MoveSource source, MarketLanes market, int width, LaneTable cells)
     {
         var aged = _plan.Aged[horizon];
-        (_isCrossed.Width, _fixings.Width) = (width, width);
-        _isCrossed.Clear(0, aged.Barriers);
+        (_states.Width, _fixings.Width) = (width, width);
+        for (var p = 0; p < aged.Paths.Count; p++) _states[p].Fill(aged.Paths[p]);
         cells.Clear(0, _plan.Cells.Count);
         for (var c = 0; c < aged.Certain.Count; c++) cells[aged.Certain[c].Cell].Fill(aged.Certain[c].Units);
         for (var c = 0; c < aged.Closes.Count - 1; c++)
@@ -53,11 +53,11 @@ internal sealed class HorizonPath(int capacity)
         for (var i = 0; i < close.Looks.Count; i++)
         {
             if (i == 0 || close.Looks[i].Underlying != close.Looks[i - 1].Underlying) market.Underlying(close.Looks[i].Underlying);
-            BarrierProfits.Look(close.Looks[i], market.Spots, _isCrossed[close.Looks[i].Barrier]);
+            PathProfits.Look(close.Looks[i], market, _states[close.Looks[i].Path]);
         }
         for (var i = 0; i < close.Fixings.Count; i++) market.Evaluate(close.Fixings[i].Exponent, _fixings[close.Fixings[i].Fixing]);
         HoldingProfits.Add(slice, market, cells);
-        for (var b = 0; b < close.Barriers.Count; b++) _barriers.Add(close.Barriers[b], market, _isCrossed, cells);
+        for (var b = 0; b < close.Paths.Count; b++) _paths.Add(close.Paths[b], market, _states, cells);
         for (var b = 0; b < close.Fixed.Count; b++) Add(close.Fixed[b], market, cells);
     }
 

@@ -24,8 +24,8 @@ internal sealed class BarrierAgeing(InstrumentBinder binder, double[] levels)
         var (alive, crossed) = isIn ? (expires ? rebate : untouched!.FormulaAt(spot), payoff) : (expires ? payoff : untouched!.FormulaAt(spot), (OptionFormula)rebate);
         return new()
         {
-            Barrier = new(today.Underlying, option.Barrier, isUp, option.Monitoring == Monitoring.Continuous, dates.DayOf(option.Issue.AddDays(-1)) + 1, dates.DayOf(date),
-                option.Multiplier, plain.Market, alive, crossed),
+            Path = new(today.Underlying, isUp ? LookKind.CrossedUp : LookKind.CrossedDown, option.Barrier, option.Monitoring == Monitoring.Continuous, 0, 0,
+                dates.DaysFrom(option.Issue, date), dates.DayOf(date), option.Multiplier, plain.Market, new CrossingMemory(alive, crossed)),
             Event = clause,
         };
     }

@@ -41,5 +41,12 @@ public sealed record HorizonDates
         return day;
     }
 
+    /// <summary>The closes inside the horizon from <paramref name="first"/> to <paramref name="last"/>, both included.</summary>
+    public IReadOnlyList<int> DaysFrom(DateOnly first, DateOnly last)
+    {
+        var before = DayOf(first.AddDays(-1));
+        return [.. Enumerable.Range(before + 1, Math.Max(0, DayOf(last) - before))];
+    }
+
     private static bool IsWeekday(DateOnly date) => date.DayOfWeek is not (DayOfWeek.Saturday or DayOfWeek.Sunday);
 }

@@ -11,8 +11,9 @@ namespace RiskWorker.Engine.Pricing.Ageing;
 public sealed class InstrumentAgeing
 {
     private readonly InstrumentBinder _binder;
-    private readonly double[] _levels;
     private readonly BarrierAgeing _barriers;
+    private readonly AverageAgeing _averages;
+    private readonly ExtremeAgeing _extremes;
 
     /// <summary>Takes what binds instruments at later dates.</summary>
     /// <param name="reportingCurrency">The root's currency.</param>
@@ -25,8 +26,9 @@ public sealed class InstrumentAgeing
     public InstrumentAgeing(
         string reportingCurrency, IReadOnlyList<Factor> factors, double[] levels, DateOnly asOf, IPastLevels? past = null, ulong seed = 1, CurveInterpolation interpolation = CurveInterpolation.LinearZero)
     {
-        _binder = new(reportingCurrency, factors, past is null ? null : new KnownCloses(past, asOf), seed, interpolation);
-        (_levels, _barriers) = (levels, new(_binder, levels));
+        past = past is null ? null : new KnownCloses(past, asOf);
+        _binder = new(reportingCurrency, factors, past, seed, interpolation);
+        (_barriers, _averages, _extremes) = (new(_binder, levels), new(_binder, past, levels), new(_binder, past, levels));
     }
 
     /// <summary>What <paramref name="instrument"/>, bound today as <paramref name="today"/>, turns into over <paramref name="dates"/>.</summary>
@@ -36,8 +38,9 @@ public sealed class InstrumentAgeing
         Bond or Floater or Swap => Flows(instrument, (BoundFlows)today, dates),
         Option { Style: ExerciseStyle.American } o when o.Expiry < dates.End => Settled(o with { Style = ExerciseStyle.European }, o.Expiry, dates),
         SingleBarrier b when today.CrossedBarrier is null && b.Issue <= dates.End => _barriers.Over(b with { Knocked = null }, (BoundOption)today, dates),
-        Asian a when AveragesInside(a, dates) => new() { Refusal = "its average is formed inside the horizon" },
-        Lookback l when l.Issue <= dates.End => new() { Refusal = "its extreme is looked for inside the horizon" },
+        Asian { Fixings.IsContinuous: true } a when a.Issue < dates.End && a.Expiry > dates.AsOf => new() { Refusal = "its continuous average runs inside the horizon" },
+        Asian a when a.Fixings.Fixings.Any(f => dates.Hold(f.Date)) => _averages.Over(a, (BoundOption)today, dates),
+        Lookback l when l.Issue <= dates.End => _extremes.Over(l, (BoundOption)today, dates),
         _ => today.LastDay < dates.End ? Settled(instrument, today.LastDay, dates) : Alive(instrument, today, dates),
     };
 
@@ -62,7 +65,4 @@ public sealed class InstrumentAgeing
             Event = flows.FirstPaid is { } paid ? $"pays on {paid:yyyy-MM-dd}" : flows.Resets.Count > 0 ? $"is fixed on {flows.Resets[0].Fixes:yyyy-MM-dd}" : null,
         };
     }
-
-    private static bool AveragesInside(Asian asian, HorizonDates dates) =>
-        asian.Fixings.IsContinuous ? asian.Issue < dates.End && asian.Expiry > dates.AsOf : asian.Fixings.Fixings.Any(f => dates.Hold(f.Date));
 }
