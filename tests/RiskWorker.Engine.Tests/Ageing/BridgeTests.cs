@@ -101,7 +101,7 @@ public sealed class BridgeTests
         var book = new AgedMarket().Showing("S", 1, 5, 9).Compile(10);
         var losses = book.Losses(2);
         ulong[] found = [.. new[] { 1, 5, 9 }.SelectMany(d => losses[book.RowOf($"S@{d:00}", 10)]).Select(BitConverter.DoubleToUInt64Bits)];
-        Assert.Equal([], found.Select(b => b.ToString("X16", System.Globalization.CultureInfo.InvariantCulture)));
+        Assert.Equal([0xBFE7C86BEBC6D200, 0x40031F34F6BD8C60, 0xBFFCB4402C83D680, 0x3FFD0F3422B87240, 0xBF8DC9800F6CE000, 0xC00442B85AE1EC20], found);
     }
 
     private static double Deviation(string factor) => factor == "S" ? AgedMarket.Sigma : AgedMarket.Tau;
