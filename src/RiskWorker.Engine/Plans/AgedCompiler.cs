@@ -18,7 +18,7 @@ internal sealed class AgedCompiler
     private readonly SortedDictionary<int, CloseBuilder> _closes = [];
     private readonly SortedDictionary<int, double> _certain = [];
     private readonly Dictionary<string, (int Number, PathMemory Formula)> _paths = new(StringComparer.Ordinal);
-    private readonly List<double> _starts = [];
+    private readonly List<PathStart> _starts = [];
     private readonly FixingBuilder _fixings;
 
     /// <summary>Takes what the plan rests on.</summary>
@@ -81,10 +81,11 @@ internal sealed class AgedCompiler
             formulas[i] = paths[i].Path.Formula.Tabulated(ranges.Of(paths[i].Path.Underlying, paths[i].Path.Market)));
         for (var i = 0; i < paths.Count; i++)
         {
-            var (path, number) = (paths[i].Path, LookSpacing.NumberOf(paths[i].Path, _moves));
+            var path = paths[i].Path;
+            var variance = path.IsContinuous && _moves.DeviationOf([.. path.Underlying.Terms()]) is var deviation ? deviation * deviation : 0;
             _paths[paths[i].Instrument] = (i, formulas[i]);
-            _starts.Add(path.Start);
-            foreach (var day in path.Looks) CloseAt(day).Add(new PathLook(i, path.Underlying, path.Kind, number));
+            _starts.Add(new(path.Start, path.IsUnderWay ? 0 : double.NaN));
+            foreach (var day in path.Looks) CloseAt(day).Add(new PathLook(i, path.Underlying, path.Kind, path.Barrier, path.Underlying.LevelOf(_levels), variance));
         }
     }
 

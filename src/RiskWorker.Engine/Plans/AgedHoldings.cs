@@ -9,10 +9,10 @@ namespace RiskWorker.Engine.Plans;
 /// or looked at close by close. Cash paid on the way stays in its own currency, without interest.
 /// </summary>
 /// <param name="Certain">Profit by cell that no scenario moves: the worth at unmoved levels of all that <paramref name="Closes"/> value, known cash, less today's value.</param>
-/// <param name="Paths">For each path that is looked at, what it has left until today.</param>
+/// <param name="Paths">The paths that are looked at.</param>
 /// <param name="Fixings">Rates that are fixed inside and paid later.</param>
 /// <param name="Closes">Closes inside the horizon at which something happens, ascending, then the horizon's own.</param>
-public sealed record AgedHoldings(IReadOnlyList<LinearHolding> Certain, IReadOnlyList<double> Paths, int Fixings, IReadOnlyList<DatedHoldings> Closes);
+public sealed record AgedHoldings(IReadOnlyList<LinearHolding> Certain, IReadOnlyList<PathStart> Paths, int Fixings, IReadOnlyList<DatedHoldings> Closes);
 
 /// <summary>
 /// What happens at one close. Its values are in money of that close and relative to unmoved levels: inside a horizon it is what pays there,
@@ -56,8 +56,15 @@ public sealed record DatedHoldings
 /// <param name="Path">Number of the path among those of the horizon.</param>
 /// <param name="Underlying">The underlying.</param>
 /// <param name="Kind">What the look leaves.</param>
-/// <param name="Number">The level that counts as crossing a barrier; for an extreme, what a level is multiplied by.</param>
-public readonly record struct PathLook(int Path, UnderlyingKey Underlying, LookKind Kind, double Number);
+/// <param name="Barrier">The barrier, where there is one.</param>
+/// <param name="Spot">The underlying's level today.</param>
+/// <param name="Variance">Variance of its log-return over a day where every moment since the close before counts; 0 where this close alone does.</param>
+public readonly record struct PathLook(int Path, UnderlyingKey Underlying, LookKind Kind, double Barrier, double Spot, double Variance);
+
+/// <summary>Where a path stands today.</summary>
+/// <param name="State">What it has left.</param>
+/// <param name="Return">0; NaN where it begins only at its first look.</param>
+public readonly record struct PathStart(double State, double Return);
 
 /// <summary>Options on the path of one underlying that see the same rates and variance up to their expiry.</summary>
 /// <param name="Underlying">The underlying.</param>

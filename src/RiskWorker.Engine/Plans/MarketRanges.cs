@@ -21,13 +21,7 @@ internal sealed class MarketRanges(FactorMoves moves, ScenarioLaw law, double[] 
         Return(underlying) is var x && x.HalfWidth > Narrowest ? x : x with { HalfWidth = Narrowest },
         Form(market.Discount), Form(market.Carry), Deviation(market.Variance));
 
-    private InputRange Return(in UnderlyingKey key) => Over(0, [.. Terms(key)]);
-
-    private static IEnumerable<(int Factor, double Weight)> Terms(UnderlyingKey key)
-    {
-        if (key.Factor >= 0) yield return (key.Factor, 1);
-        if (key.IsCross && key.Quote >= 0) yield return (key.Quote, -1);
-    }
+    private InputRange Return(in UnderlyingKey key) => Over(0, [.. key.Terms()]);
 
     // Levels of rates and spreads move by their shocks; one with log-normal shocks by about its level times them.
     private InputRange Form(LinearForm form)

@@ -33,6 +33,7 @@ public sealed class PlanCompiler
     /// <param name="cancellation">Stops between tables.</param>
     public RevaluationPlan Compile(ulong seed, IReadOnlyList<LineValue> lines, int threads = 1, BookAgeing? ageing = null, CancellationToken cancellation = default)
     {
+        if (ageing is not null && !_model.Law.HasPaths) throw new InvalidOperationException($"{_model.Law.GetType().Name} has no moves inside a horizon, so no book can age under it.");
         var holdings = Holdings(lines);
         var moves = Moves();
         var options = holdings.Where(h => h.Bound is BoundOption).DistinctBy(h => h.Instrument).Select(h => (h.Instrument, (BoundOption)h.Bound)).ToList();

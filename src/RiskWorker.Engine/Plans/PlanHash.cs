@@ -71,7 +71,7 @@ internal sealed class PlanHash : IDisposable
     {
         Add(aged.Certain.Count).Add(aged.Paths.Count).Add(aged.Fixings).Add(aged.Closes.Count);
         foreach (var certain in aged.Certain) Add(certain.Cell).Add(certain.Units);
-        foreach (var start in aged.Paths) Add(start);
+        foreach (var path in aged.Paths) Add(path.State).Add(double.IsNaN(path.Return) ? 1 : 0);
         foreach (var close in aged.Closes) Add(close);
     }
 
@@ -80,7 +80,7 @@ internal sealed class PlanHash : IDisposable
         Add(close.Day).Add(close.Groups.Count).Add(close.Flows.Count).Add(close.Looks.Count).Add(close.Paths.Count).Add(close.Fixings.Count).Add(close.Fixed.Count);
         foreach (var group in close.Groups) Add(group, 1);
         foreach (var flow in close.Flows) Add(flow);
-        foreach (var look in close.Looks) Add(look.Path).Key(look.Underlying).Add((int)look.Kind).Add(look.Number);
+        foreach (var look in close.Looks) Add(look.Path).Key(look.Underlying).Add((int)look.Kind).Add(look.Barrier).Add(look.Spot).Add(look.Variance);
         foreach (var batch in close.Paths)
         {
             Key(batch.Underlying).Market(batch.Market).Add(batch.Items.Length);

@@ -10,7 +10,6 @@ namespace RiskWorker.Engine.Simulation;
 /// </summary>
 internal sealed class HorizonPath(int capacity)
 {
-    private readonly LaneTable _states = new();
     private readonly LaneTable _fixings = new();
     private readonly double[] _exponents = new double[capacity];
     private readonly PathProfits _paths = new(capacity);
@@ -22,7 +21,7 @@ internal sealed class HorizonPath(int capacity)
     {
         _plan = plan;
         _slices = [.. plan.Aged.Select(aged => aged.Closes.Select(close => PlanSlice.Whole(plan, close)).ToArray())];
-        _states.Shape(plan.Aged.Max(a => a.Paths.Count), capacity);
+        _paths.Serve(plan);
         _fixings.Shape(plan.Aged.Max(a => a.Fixings), capacity);
     }
 
@@ -30,11 +29,11 @@ internal sealed class HorizonPath(int capacity)
     public PlanSlice Last(int horizon) => _slices[horizon][^1];
 
     /// <summary>Sets the profits of the cells to what is certain, and adds what the closes before the horizon's own pay.</summary>
-    public void Pass(int horizon, MoveSource source, MarketLanes market, int width, LaneTable cells)
+    public void Pass(int horizon, MoveSource source, MarketLanes market, long first, int width, LaneTable cells)
     {
         var aged = _plan.Aged[horizon];
-        (_states.Width, _fixings.Width) = (width, width);
-        for (var p = 0; p < aged.Paths.Count; p++) _states[p].Fill(aged.Paths[p]);
+        _fixings.Width = width;
+        _paths.Begin(horizon, first, width);
         cells.Clear(0, _plan.Cells.Count);
         for (var c = 0; c < aged.Certain.Count; c++) cells[aged.Certain[c].Cell].Fill(aged.Certain[c].Units);
         for (var c = 0; c < aged.Closes.Count - 1; c++)
@@ -50,14 +49,10 @@ internal sealed class HorizonPath(int capacity)
 
     private void Value(DatedHoldings close, PlanSlice slice, MarketLanes market, LaneTable cells)
     {
-        for (var i = 0; i < close.Looks.Count; i++)
-        {
-            if (i == 0 || close.Looks[i].Underlying != close.Looks[i - 1].Underlying) market.Underlying(close.Looks[i].Underlying);
-            PathProfits.Look(close.Looks[i], market, _states[close.Looks[i].Path]);
-        }
+        _paths.Look(close, market);
         for (var i = 0; i < close.Fixings.Count; i++) market.Evaluate(close.Fixings[i].Exponent, _fixings[close.Fixings[i].Fixing]);
         HoldingProfits.Add(slice, market, cells);
-        for (var b = 0; b < close.Paths.Count; b++) _paths.Add(close.Paths[b], market, _states, cells);
+        for (var b = 0; b < close.Paths.Count; b++) _paths.Add(close.Paths[b], market, cells);
         for (var b = 0; b < close.Fixed.Count; b++) Add(close.Fixed[b], market, cells);
     }
 

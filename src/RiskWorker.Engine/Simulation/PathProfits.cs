@@ -8,13 +8,58 @@ namespace RiskWorker.Engine.Simulation;
 internal sealed class PathProfits(int capacity)
 {
     private readonly double[] _values = new double[capacity];
+    private readonly LaneTable _states = new();
+    private readonly LaneTable _returns = new();
+    private readonly MomentExtremes _extremes = new(capacity);
+    private RevaluationPlan _plan = null!;
+    private long _first;
+    private int _horizon;
 
-    /// <summary>Takes one look.</summary>
-    /// <param name="look">The look.</param>
-    /// <param name="market">The market, at the close and moved to the underlying.</param>
-    /// <param name="states">What the path has left so far in each scenario.</param>
-    public static void Look(in PathLook look, MarketLanes market, Span<double> states)
+    /// <summary>Turns to <paramref name="plan"/>, which ages.</summary>
+    public void Serve(RevaluationPlan plan)
     {
+        _plan = plan;
+        _extremes.Serve(plan);
+        _states.Shape(plan.Aged.Max(a => a.Paths.Count), capacity);
+        _returns.Shape(plan.Aged.Max(a => a.Paths.Count), capacity);
+    }
+
+    /// <summary>Puts the paths of a horizon where they stand today, in scenarios <paramref name="first"/> to first + width - 1.</summary>
+    public void Begin(int horizon, long first, int width)
+    {
+        (_first, _horizon, _states.Width, _returns.Width) = (first, horizon, width, width);
+        var paths = _plan.Aged[horizon].Paths;
+        for (var p = 0; p < paths.Count; p++)
+        {
+            _states[p].Fill(paths[p].State);
+            _returns[p].Fill(paths[p].Return);
+        }
+    }
+
+    /// <summary>Takes the looks of a close, which the market has been moved to.</summary>
+    public void Look(DatedHoldings close, MarketLanes market)
+    {
+        var isDrawn = false;
+        for (var i = 0; i < close.Looks.Count; i++)
+        {
+            var look = close.Looks[i];
+            if (i == 0 || look.Underlying != close.Looks[i - 1].Underlying)
+            {
+                market.Underlying(look.Underlying);
+                isDrawn = false;
+            }
+            if (look.Variance > 0 && !isDrawn)
+            {
+                _extremes.Draw(look.Underlying, _plan.Horizons[_horizon].Days, close.Day, _first, market.Width);
+                isDrawn = true;
+            }
+            Look(look, market);
+        }
+    }
+
+    private void Look(in PathLook look, MarketLanes market)
+    {
+        var states = _states[look.Path];
         switch (look.Kind)
         {
             case LookKind.Sum:
@@ -24,22 +69,27 @@ internal sealed class PathProfits(int capacity)
                 Elementwise.Add(market.Returns, states);
                 return;
         }
-        var spots = market.Spots;
-        var number = look.Number;
+        var reached = market.Spots;
+        if (look.Variance > 0)
+        {
+            _extremes.Fill(look.Kind is LookKind.CrossedUp or LookKind.Highest, look.Spot, look.Variance, _returns[look.Path], market.Returns, _values.AsSpan(0, market.Width));
+            market.Returns.CopyTo(_returns[look.Path]);
+            reached = _values.AsSpan(0, market.Width);
+        }
         for (var s = 0; s < states.Length; s++)
         {
             states[s] = look.Kind switch
             {
-                LookKind.CrossedUp => spots[s] >= number ? 1 : states[s],
-                LookKind.CrossedDown => spots[s] <= number ? 1 : states[s],
-                LookKind.Highest => Math.Max(states[s], spots[s] * number),
-                _ => Math.Min(states[s], spots[s] * number),
+                LookKind.CrossedUp => reached[s] >= look.Barrier ? 1 : states[s],
+                LookKind.CrossedDown => reached[s] <= look.Barrier ? 1 : states[s],
+                LookKind.Highest => Math.Max(states[s], reached[s]),
+                _ => Math.Min(states[s], reached[s]),
             };
         }
     }
 
     /// <summary>Adds the options of <paramref name="batch"/> at the market's close.</summary>
-    public void Add(PathBatch batch, MarketLanes market, LaneTable states, LaneTable cells)
+    public void Add(PathBatch batch, MarketLanes market, LaneTable cells)
     {
         market.Underlying(batch.Underlying);
         var seen = market.Terms(batch.Market);
@@ -47,7 +97,7 @@ internal sealed class PathProfits(int capacity)
         for (var i = 0; i < batch.Items.Length; i++)
         {
             ref readonly var item = ref batch.Items[i];
-            item.Formula.Fill(seen, states[item.Path], values);
+            item.Formula.Fill(seen, _states[item.Path], values);
             BookProfit.AddLinear(values, item.BaseValue, item.Quantity, cells[item.Cell]);
         }
     }

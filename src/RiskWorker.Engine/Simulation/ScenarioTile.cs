@@ -19,6 +19,7 @@ public sealed class ScenarioTile
     private PlanSlice _whole;
     private MoveSource? _source;
     private HorizonPath? _path;
+    private long _first;
 
     /// <summary>Allocates the buffers for <paramref name="plan"/>.</summary>
     public ScenarioTile(RevaluationPlan plan) => Serve(plan);
@@ -59,13 +60,13 @@ public sealed class ScenarioTile
     internal void Draw(long first, int width)
     {
         _source!.Draw(first, width);
-        _cells.Width = width;
+        (_first, _cells.Width) = (first, width);
     }
 
     /// <summary>Writes the losses of the scenarios last drawn at one horizon; by surface where <paramref name="surfaces"/> are given.</summary>
     internal void Evaluate(int horizon, double[] losses, int offset, int stride, SurfaceProfits? surfaces)
     {
-        _path?.Pass(horizon, _source!, Market, _cells.Width, _cells);
+        _path?.Pass(horizon, _source!, Market, _first, _cells.Width, _cells);
         Moves = _source!.At(horizon);
         Market.Take(Moves, _plan.Moves.RowOf, _cells.Width, _cells.Width, _plan.Law.GivesShocks);
         Market.MoveTo(horizon, _path?.Last(horizon) ?? _whole);

@@ -12,6 +12,7 @@ namespace RiskWorker.Engine.Tests.Ageing;
 /// </summary>
 public sealed class BridgeTests
 {
+    private const string Pinned = "fb96ca4182ce652d840f4344b536002b1f090ce00def959a80a9c7b09f563c8d"; // may change only together with the numerics epoch
     private const int N = 200_000;
     private static readonly int[] s_days = [1, 2, 3, 4, 5, 6, 7, 8, 9];
 
@@ -102,6 +103,32 @@ public sealed class BridgeTests
         var losses = book.Losses(2);
         ulong[] found = [.. new[] { 1, 5, 9 }.SelectMany(d => losses[book.RowOf($"S@{d:00}", 10)]).Select(BitConverter.DoubleToUInt64Bits)];
         Assert.Equal([0xBFE7C86BEBC6D200, 0x40031F34F6BD8C60, 0xBFFCB4402C83D680, 0x3FFD0F3422B87240, 0xBF8DC9800F6CE000, 0xC00442B85AE1EC20], found);
+    }
+
+    // The same for every kind that ages: one hash over the bits of all losses.
+    [Fact]
+    public void Losses_of_every_kind_keep_their_bits()
+    {
+        var market = AgedKinds.All().Holding(AgedKinds.Asian(AverageKind.Arithmetic, AgedKinds.Later, OptionRight.Put, 101, new(AgedMarket.Close(3), null), new(AgedKinds.Later, null)) with { Name = "ARITHMETIC" },
+            AgedKinds.Lookback(99, AgedKinds.Later, OptionRight.Put, Monitoring.Continuous) with { Name = "LOWEST" });
+        var bytes = market.Compile(10).Losses(500).SelectMany(row => row).SelectMany(BitConverter.GetBytes).ToArray();
+        var hash = Convert.ToHexStringLower(System.Security.Cryptography.SHA256.HashData(bytes));
+        Assert.True(hash == Pinned, $"expected {Pinned}, found {hash}");
+    }
+
+    [Fact]
+    public void Hash_of_a_plan_tells_aged_books_apart()
+    {
+        string[] hashes =
+        [
+            AgedKinds.All().Compile(10).Plan.Hash, AgedKinds.All().Compile(9).Plan.Hash, AgedKinds.All().Showing("T", 2).Compile(10).Plan.Hash,
+            new AgedMarket().Holding(AgedKinds.Call(AgedMarket.Close(3))).Compile(10).Plan.Hash, new AgedMarket().Holding(AgedKinds.Call(AgedMarket.Close(4))).Compile(10).Plan.Hash,
+            new AgedMarket { Ageing = RiskWorker.Domain.Runs.AgeingKind.None }.Holding(AgedKinds.Call(AgedMarket.Close(4))).Compile(10).Plan.Hash,
+            new AgedMarket().Holding(AgedKinds.Barrier(BarrierKind.DownOut, 95, AgedKinds.Later, Monitoring.Daily)).Compile(10).Plan.Hash,
+            new AgedMarket().Holding(AgedKinds.Barrier(BarrierKind.DownOut, 95, AgedKinds.Later, Monitoring.Continuous)).Compile(10).Plan.Hash,
+        ];
+        Assert.Equal(hashes.Length, hashes.Distinct(StringComparer.Ordinal).Count());
+        Assert.Equal(hashes[0], AgedKinds.All().Compile(10).Plan.Hash);
     }
 
     private static double Deviation(string factor) => factor == "S" ? AgedMarket.Sigma : AgedMarket.Tau;

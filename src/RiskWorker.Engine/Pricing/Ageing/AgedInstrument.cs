@@ -44,6 +44,7 @@ public readonly record struct RateReset(int Day, LinearForm Growth, double Amoun
 /// <param name="Kind">What a look leaves.</param>
 /// <param name="Barrier">The barrier, where there is one.</param>
 /// <param name="IsContinuous">Whether every moment counts, else the closes alone.</param>
+/// <param name="IsUnderWay">Whether today's close belongs to it: the moments from then on do; else it begins at its first look.</param>
 /// <param name="Start">What the path has left until today.</param>
 /// <param name="Unmoved">What it leaves where no level moves.</param>
 /// <param name="Looks">The closes looked at, as business days after the as-of date, ascending; one that counts twice comes twice.</param>
@@ -52,7 +53,7 @@ public readonly record struct RateReset(int Day, LinearForm Growth, double Amoun
 /// <param name="Market">What the formula sees.</param>
 /// <param name="Formula">The value at that close.</param>
 public sealed record WatchedPath(
-    UnderlyingKey Underlying, LookKind Kind, double Barrier, bool IsContinuous, double Start, double Unmoved, IReadOnlyList<int> Looks, int Day, double Multiplier, MarketTerms Market, PathMemory Formula);
+    UnderlyingKey Underlying, LookKind Kind, double Barrier, bool IsContinuous, bool IsUnderWay, double Start, double Unmoved, IReadOnlyList<int> Looks, int Day, double Multiplier, MarketTerms Market, PathMemory Formula);
 
 /// <summary>What a look at a close leaves of a path.</summary>
 public enum LookKind

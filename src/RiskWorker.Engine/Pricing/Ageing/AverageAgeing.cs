@@ -23,7 +23,7 @@ internal sealed class AverageAgeing(InstrumentBinder binder, IPastLevels? past, 
         var rest = (BoundOption)bound!;
         return new()
         {
-            Path = new(today.Underlying, isGeometric ? LookKind.ReturnSum : LookKind.Sum, 0, false, 0, isGeometric ? 0 : inside.Length * spot,
+            Path = new(today.Underlying, isGeometric ? LookKind.ReturnSum : LookKind.Sum, 0, false, true, 0, isGeometric ? 0 : inside.Length * spot,
                 [.. inside.Select(f => dates.DayOf(f.Date))], dates.DayOf(date), option.Multiplier, rest.Market, FormulaOf(option, rest, spot, known, inside.Length, toCome, date)),
             Event = expires ? InstrumentAgeing.Expires(option.Expiry) : inside.Length > 0 ? $"is fixed on {inside[0].Date:yyyy-MM-dd}" : null,
         };

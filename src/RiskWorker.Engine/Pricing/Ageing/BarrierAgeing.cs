@@ -24,7 +24,7 @@ internal sealed class BarrierAgeing(InstrumentBinder binder, double[] levels)
         var (alive, crossed) = isIn ? (expires ? rebate : untouched!.FormulaAt(spot), payoff) : (expires ? payoff : untouched!.FormulaAt(spot), (OptionFormula)rebate);
         return new()
         {
-            Path = new(today.Underlying, isUp ? LookKind.CrossedUp : LookKind.CrossedDown, option.Barrier, option.Monitoring == Monitoring.Continuous, 0, 0,
+            Path = new(today.Underlying, isUp ? LookKind.CrossedUp : LookKind.CrossedDown, option.Barrier, option.Monitoring == Monitoring.Continuous, option.Issue <= dates.AsOf, 0, 0,
                 dates.DaysFrom(option.Issue, date), dates.DayOf(date), option.Multiplier, plain.Market, new CrossingMemory(alive, crossed)),
             Event = clause,
         };

@@ -19,7 +19,7 @@ internal sealed class ExtremeAgeing(InstrumentBinder binder, IPastLevels? past, 
         var unmoved = looks.Count == 0 ? start : isHighest ? Math.Max(start, spot) : Math.Min(start, spot);
         return new()
         {
-            Path = new(today.Underlying, isHighest ? LookKind.Highest : LookKind.Lowest, 0, option.Monitoring == Monitoring.Continuous, start, unmoved,
+            Path = new(today.Underlying, isHighest ? LookKind.Highest : LookKind.Lowest, 0, option.Monitoring == Monitoring.Continuous, option.Issue <= dates.AsOf, start, unmoved,
                 looks, dates.DayOf(date), option.Multiplier, rest.Market, new ExtremeMemory(expires ? null : rest.FormulaAt(spot), spot, option.Strike, start, isHighest ? 1 : -1)),
             Event = expires ? InstrumentAgeing.Expires(option.Expiry) : null,
         };

@@ -16,7 +16,7 @@ internal sealed class BridgeMoves(int capacity)
 {
     private const int Known = -1; // the end that is not a middle: 0 at the start, √h Z at the horizon
     private readonly CorrelatedNormals _normals = new(capacity);
-    private readonly List<double[]> _middles = [];
+    private double[][] _middles = [];
     private readonly List<Interval> _path = [];
     private RevaluationPlan _plan = null!;
     private long _first;
@@ -28,8 +28,14 @@ internal sealed class BridgeMoves(int capacity)
     {
         _plan = plan;
         _normals.Serve(plan);
-        _middles.Clear();
-        for (var days = plan.Horizons[^1].Days; days > 1; days = (days + 1) / 2) _middles.Add(new double[plan.Moves.Rows * capacity]);
+        var depth = 0;
+        for (var days = plan.Horizons[^1].Days; days > 1; days = (days + 1) / 2) depth++;
+        if (_middles.Length < depth) Array.Resize(ref _middles, depth);
+        for (var i = 0; i < depth; i++)
+        {
+            _middles[i] ??= [];
+            Room.For(ref _middles[i], plan.Moves.Rows * capacity);
+        }
         _path.Clear();
     }
 

@@ -6,11 +6,11 @@ namespace RiskWorker.Reporting.Reports.Limits;
 /// <summary>A model's settings in words.</summary>
 internal static class ModelWords
 {
-    /// <summary>One line: name, kind, covariance.</summary>
+    /// <summary>One line: name, kind, covariance, and whether it ages.</summary>
     public static string Line(ModelSettings model)
     {
         var name = model.Name == model.Kind ? model.Kind : $"{model.Name} ({model.Kind})";
-        return $"{name}, {Covariance(model)}";
+        return $"{name}, {Covariance(model)}{(model.Ageing == AgeingKind.None ? "" : ", the valuation date moved by the horizon")}";
     }
 
     public static string Covariance(ModelSettings model) => model.Covariance switch
@@ -30,7 +30,7 @@ internal static class ModelWords
     public static string Ageing(ModelSettings model) => model.Ageing == AgeingKind.None
         ? "The shock is instantaneous: nothing expires or pays inside the horizon."
         : "The valuation date moves by the horizon (Monday to Friday): what expires, pays or is fixed inside does so at a close on the way there, a Brownian bridge of all factors; "
-            + "what is paid is held as cash without interest. Sensitivities are instantaneous.";
+            + "what is paid counts in V(h), as cash in its own currency without interest. Sensitivities are instantaneous.";
 
     private static int Decimals(double lambda)
     {
