@@ -27,6 +27,9 @@ public sealed record CalibrationSummary
     /// <summary>Frobenius distance to the nearest correlation matrix, or null where no repair was needed.</summary>
     public double? RepairDistance { get; init; }
 
+    /// <summary>What the model was calibrated to, or given, beyond deviations and correlation.</summary>
+    public IReadOnlyList<ModelParameter> Parameters { get; init; } = [];
+
     /// <summary>Hash of the compiled plan.</summary>
     public required string Plan { get; init; }
 }

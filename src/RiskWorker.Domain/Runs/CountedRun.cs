@@ -15,7 +15,14 @@ public sealed record CountedRun(
     EvidenceKind Evidence,
     IReadOnlyList<CountedVar> Measures,
     DateOnly? HypotheticalDate,
-    IReadOnlyList<BookAmount> Hypothetical);
+    IReadOnlyList<BookAmount> Hypothetical)
+{
+    /// <summary>The same of the models that ran beside the one of record.</summary>
+    public IReadOnlyList<ChallengerVar> Challengers { get; init; } = [];
+}
+
+/// <summary>A one-day VaR that another model than the one of record gave.</summary>
+public readonly record struct ChallengerVar(string Model, string Book, Confidence Confidence, double Value);
 
 /// <summary>A one-day VaR that an earlier run reported.</summary>
 public readonly record struct CountedVar(string Book, Confidence Confidence, double Value);

@@ -42,7 +42,9 @@ public static class FiguresHash
         Bits(text, measure.Value);
         Bits(text, measure.Low);
         Bits(text, measure.High);
-        Bits(text, measure.Level).Append('\n');
+        Bits(text, measure.Level);
+        if (measure.Sample is { } sample) Bits(Bits(text.Append("sample "), sample.Low), sample.High);
+        text.Append('\n');
     }
 
     private static void Spec(StringBuilder text, MeasureSpec spec) =>

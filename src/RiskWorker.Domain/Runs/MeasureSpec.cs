@@ -8,6 +8,9 @@ public enum MeasureKind
 
     /// <summary>Expected shortfall: the mean of the worst N(1 - confidence) losses.</summary>
     Es,
+
+    /// <summary>Expected shortfall with each factor at its liquidity horizon, the cascade of MAR33; the horizon is the base.</summary>
+    Les,
 }
 
 /// <summary>Which measure, at which confidence, over which horizon.</summary>
@@ -21,6 +24,8 @@ public readonly record struct MeasureSpec(MeasureKind Kind, Confidence Confidenc
         return order != 0 ? order : Confidence.CompareTo(other.Confidence);
     }
 
+    private string Words => Kind switch { MeasureKind.Var => "VaR", MeasureKind.Es => "ES", _ => "Liquidity-adjusted ES" };
+
     /// <summary>As in 'VaR 99%, 1 day'.</summary>
-    public override string ToString() => $"{(Kind == MeasureKind.Var ? "VaR" : "ES")} {Confidence}, {Horizon}";
+    public override string ToString() => $"{Words} {Confidence}, {Horizon}";
 }

@@ -6,8 +6,8 @@ public sealed record ModelSettings
     /// <summary>Its name in the settings.</summary>
     public string Name { get; init; } = "lognormal";
 
-    /// <summary>Its kind; <c>lognormal</c> is the correlated log-normal model.</summary>
-    public string Kind { get; init; } = "lognormal";
+    /// <summary>Its kind.</summary>
+    public ModelKind Kind { get; init; }
 
     /// <summary>How the covariance of daily shocks is found.</summary>
     public CovarianceEstimator Covariance { get; init; } = CovarianceEstimator.Ewma;
@@ -24,8 +24,38 @@ public sealed record ModelSettings
     /// <summary>Expected arithmetic return per year of 252 business days by factor, for <see cref="DriftKind.Explicit"/>; factors left out have 0.</summary>
     public IReadOnlyDictionary<string, double> Drifts { get; init; } = new SortedDictionary<string, double>(StringComparer.Ordinal);
 
-    /// <summary>Whether the valuation date moves with the horizon.</summary>
+    /// <summary>What becomes of days on which a factor has no shock.</summary>
+    public MissingDays MissingDays { get; init; }
+
+    /// <summary>Whether covariances are taken around the mean of the window instead of zero: no setting, tried only to show what it does.</summary>
+    public bool IsAroundMean { get; init; }
+
+    /// <summary>Degrees of freedom of <see cref="ModelKind.StudentT"/>, above 2; null where they are fitted by profile likelihood.</summary>
+    public double? DegreesOfFreedom { get; init; }
+
+    /// <summary>Margins of <see cref="ModelKind.StudentT"/>.</summary>
+    public StudentMargins Margins { get; init; }
+
+    /// <summary>Decay per day of the weights of <see cref="ModelKind.Historical"/>, in (0, 1); null where all days weigh the same.</summary>
+    public double? AgeWeight { get; init; }
+
+    /// <summary>What says how volatile a day was in <see cref="ModelKind.FilteredHistorical"/>.</summary>
+    public VolatilityFilter Volatility { get; init; }
+
+    /// <summary>The jumps of <see cref="ModelKind.JumpDiffusion"/>.</summary>
+    public JumpSettings Jumps { get; init; } = new();
+
+    /// <summary>The model that <see cref="ModelKind.Stressed"/> calibrates to the worst span of the history; null for every other kind.</summary>
+    public ModelSettings? Stressed { get; init; }
+
+    /// <summary>Length of that span in days of shocks.</summary>
+    public int Span { get; init; } = 250;
+
+    /// <summary>Whether the valuation date moves with the horizon; for a stressed model what the one that it calibrates says.</summary>
     public AgeingKind Ageing { get; init; } = AgeingKind.None;
+
+    /// <summary>Whether the valuation date moves.</summary>
+    public bool Ages => (Stressed ?? this).Ageing == AgeingKind.Horizon;
 }
 
 /// <summary>What becomes of the valuation date over a horizon.</summary>
@@ -49,6 +79,19 @@ public enum CovarianceEstimator
 
     /// <summary>Read from <c>covariance.csv</c>.</summary>
     Given,
+
+    /// <summary>Equal weights, the correlation shrunk towards independence (Ledoit and Wolf 2004).</summary>
+    Shrunk,
+}
+
+/// <summary>What becomes of days on which a factor has no shock.</summary>
+public enum MissingDays
+{
+    /// <summary>Only days complete over all factors are used.</summary>
+    Complete,
+
+    /// <summary>Every pair of factors uses the days that both have; what comes out may need repair.</summary>
+    Pairwise,
 }
 
 /// <summary>The expected move of a factor.</summary>

@@ -54,4 +54,13 @@ public sealed record PriceError(double Table, double Standard);
 /// <param name="Low">Lower end; null where its rank lies outside the sample.</param>
 /// <param name="High">Upper end; null where its rank lies outside the sample.</param>
 /// <param name="Level">Level of the interval.</param>
-public sealed record MeasureResult(MeasureSpec Spec, double Value, double? Low, double? High, double Level);
+public sealed record MeasureResult(MeasureSpec Spec, double Value, double? Low, double? High, double Level)
+{
+    /// <summary>What the days of a history, taken as a sample, say of the law behind them, at the same level; null for a measure that is simulated.</summary>
+    public SampleInterval? Sample { get; init; }
+}
+
+/// <summary>An interval from a sample of past days; it stands outside the status of limits.</summary>
+/// <param name="Low">Lower end; null where no order statistic reaches, or none is claimed.</param>
+/// <param name="High">Upper end; null where no order statistic reaches, or none is claimed.</param>
+public sealed record SampleInterval(double? Low, double? High);

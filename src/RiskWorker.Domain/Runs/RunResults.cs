@@ -27,6 +27,15 @@ public sealed record RunResults
     /// <summary>Exception counts by book and confidence.</summary>
     public IReadOnlyList<BacktestResult> Backtest { get; init; } = [];
 
+    /// <summary>Models beside the one of record, by name.</summary>
+    public IReadOnlyList<ModelResult> Models { get; init; } = [];
+
+    /// <summary>How the model of record and the others stood up over 250 and 500 days, in that order of models; empty where there are no others.</summary>
+    public IReadOnlyList<ModelBacktest> ModelBacktests { get; init; } = [];
+
+    /// <summary>What the choices behind the figures do; null in a run without challengers and in one that is evidence only.</summary>
+    public RunEffects? Effects { get; init; }
+
     /// <summary>Hypothetical profit from the close before to this one; null where there is none.</summary>
     public HypotheticalProfit? Hypothetical { get; init; }
 

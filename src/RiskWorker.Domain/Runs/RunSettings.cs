@@ -1,3 +1,4 @@
+using RiskWorker.Domain.Limits;
 using RiskWorker.Domain.Market;
 
 namespace RiskWorker.Domain.Runs;
@@ -7,6 +8,12 @@ public sealed record RunSettings
 {
     /// <summary>The model of record.</summary>
     public ModelSettings Model { get; init; } = new();
+
+    /// <summary>Models that are run beside it, by name; their figures stand apart.</summary>
+    public IReadOnlyList<ModelSettings> Challengers { get; init; } = [];
+
+    /// <summary>Rule sets whose measures, window and models are among these settings, and whose limits are added to those of the feed.</summary>
+    public IReadOnlyList<RuleChoice> Rules { get; init; } = [];
 
     /// <summary>The measures to compute, in the order of <see cref="MeasureSpec.CompareTo"/>; those that valid limits name are added by the run.</summary>
     public IReadOnlyList<MeasureSpec> Measures { get; init; } =

@@ -61,4 +61,7 @@ public sealed record Snapshot
 
     /// <summary>Hashes of the parts, and of the whole.</summary>
     public required SnapshotHash Hash { get; init; }
+
+    /// <summary>Limits that bind on the as-of date: those of the feed, and those of the rule sets chosen.</summary>
+    public IReadOnlyList<Limit> ValidLimits => [.. Limits.Concat(RuleSets.LimitsOf(Settings.Rules)).Where(l => l.IsValidOn(AsOf))];
 }

@@ -18,7 +18,11 @@ public sealed class ExceptionCount
     private readonly Dictionary<DateOnly, CountedClose> _closes = [];
     private readonly Dictionary<DateOnly, Dictionary<string, double>> _hypothetical = [];
 
-    private ExceptionCount(Snapshot snapshot, BookTree tree, HypotheticalProfit? today)
+    /// <summary>Gathers profit and the VaR of counted runs.</summary>
+    /// <param name="snapshot">Holds the runs that are counted, observations and actual profit.</param>
+    /// <param name="tree">Its books.</param>
+    /// <param name="today">Hypothetical profit that ends on the as-of date, or null.</param>
+    public ExceptionCount(Snapshot snapshot, BookTree tree, HypotheticalProfit? today)
     {
         _tree = tree;
         _days = BacktestDays.Of(snapshot.Observations);
@@ -35,12 +39,22 @@ public sealed class ExceptionCount
     /// <param name="tree">Its books.</param>
     /// <param name="measures">Measures of this run.</param>
     /// <param name="today">Hypothetical profit that ends on the as-of date, or null.</param>
-    public static IReadOnlyList<BacktestResult> Of(Snapshot snapshot, BookTree tree, IEnumerable<MeasureSpec> measures, HypotheticalProfit? today)
+    public static IReadOnlyList<BacktestResult> Of(Snapshot snapshot, BookTree tree, IEnumerable<MeasureSpec> measures, HypotheticalProfit? today) =>
+        new ExceptionCount(snapshot, tree, today).Results(measures);
+
+    /// <summary>As <see cref="Of"/>.</summary>
+    public IReadOnlyList<BacktestResult> Results(IEnumerable<MeasureSpec> measures)
     {
-        var count = new ExceptionCount(snapshot, tree, today);
-        var confidences = measures.Where(m => m.Kind == MeasureKind.Var && m.Horizon.Days == 1).Select(m => m.Confidence).Distinct().Order().ToArray();
-        return [.. Enumerable.Range(0, tree.Books.Count).SelectMany(node => confidences.Select(c => count.Count(node, c)))];
+        var confidences = ConfidencesOf(measures);
+        return [.. Enumerable.Range(0, _tree.Books.Count).SelectMany(node => confidences.Select(c => Count(node, c)))];
     }
+
+    /// <summary>The confidences of a one-day VaR among <paramref name="measures"/>, ascending.</summary>
+    public static Confidence[] ConfidencesOf(IEnumerable<MeasureSpec> measures) =>
+        [.. measures.Where(m => m.Kind == MeasureKind.Var && m.Horizon.Days == 1).Select(m => m.Confidence).Distinct().Order()];
+
+    /// <summary>Whether the node has actual profit.</summary>
+    public bool HasActual(int node) => _actual.HasSeries(node);
 
     /// <summary>Profit by the day that it ends on: only such as starts from the counted day before is held against that day's VaR.</summary>
     private void GatherHypothetical(Snapshot snapshot, HypotheticalProfit? today)
@@ -73,7 +87,7 @@ public sealed class ExceptionCount
     private BacktestResult Count(int node, Confidence confidence)
     {
         var book = _tree.Books[node];
-        var series = Series(node, confidence);
+        var series = Series(node, confidence, Window);
         int? actual = _actual.HasSeries(node) ? series.Count(d => BacktestDay.IsException(d.Var, d.Actual)) : null;
         var hypothetical = series.Count(d => BacktestDay.IsException(d.Var, d.Hypothetical));
         return new()
@@ -90,28 +104,33 @@ public sealed class ExceptionCount
         };
     }
 
-    private List<BacktestDay> Series(int node, Confidence confidence)
+    /// <summary>The newest days of a node, oldest first: none before the first run that reports the VaR.</summary>
+    /// <param name="node">Node number.</param>
+    /// <param name="confidence">Confidence of the VaR.</param>
+    /// <param name="window">Most days.</param>
+    /// <param name="challenger">A model that ran beside the one of record, or null for that one.</param>
+    public IReadOnlyList<BacktestDay> Series(int node, Confidence confidence, int window, string? challenger = null)
     {
         var book = _tree.Books[node].Name;
         var series = new List<BacktestDay>();
-        if (FirstCounted(book, confidence) is not { } first) return series;
-        for (var t = Math.Max(1, _days.Length - Window); t < _days.Length; t++)
+        if (FirstCounted(book, confidence, challenger) is not { } first) return series;
+        for (var t = Math.Max(1, _days.Length - window); t < _days.Length; t++)
         {
             if (_days[t] <= first) continue;
             var close = _closes.GetValueOrDefault(_days[t - 1]);
-            var var = close?.VarOf(book, confidence);
+            var var = close?.VarOf(book, confidence, challenger);
             double? hypothetical = _hypothetical.TryGetValue(_days[t], out var books) && books.TryGetValue(book, out var amount) ? amount : null;
             series.Add(new(_days[t], var, _actual.Of(node, _days[t]), hypothetical, var is null ? null : close!.Evidence));
         }
         return series;
     }
 
-    private DateOnly? FirstCounted(string book, Confidence confidence)
+    private DateOnly? FirstCounted(string book, Confidence confidence, string? challenger)
     {
         DateOnly? first = null;
         foreach (var (date, close) in _closes)
         {
-            if (close.VarOf(book, confidence) is not null && !(date >= first)) first = date;
+            if (close.VarOf(book, confidence, challenger) is not null && !(date >= first)) first = date;
         }
         return first;
     }
@@ -119,10 +138,12 @@ public sealed class ExceptionCount
     /// <summary>What a stored run said at its close.</summary>
     private sealed class CountedClose(CountedRun run)
     {
-        private readonly Dictionary<(string, Confidence), double> _var = run.Measures.ToDictionary(m => (m.Book, m.Confidence), m => m.Value);
+        // The empty name is the model of record's: a model of the settings has one.
+        private readonly Dictionary<(string, string, Confidence), double> _var = run.Measures.Select(m => (Key: ("", m.Book, m.Confidence), m.Value))
+            .Concat(run.Challengers.Select(c => (Key: (c.Model, c.Book, c.Confidence), c.Value))).ToDictionary(m => m.Key, m => m.Value);
 
         public EvidenceKind Evidence => run.Evidence;
 
-        public double? VarOf(string book, Confidence confidence) => _var.TryGetValue((book, confidence), out var value) ? value : null;
+        public double? VarOf(string book, Confidence confidence, string? challenger) => _var.TryGetValue((challenger ?? "", book, confidence), out var value) ? value : null;
     }
 }

@@ -35,8 +35,14 @@ public sealed record CalibratedModel
     /// <summary>L, the lower trapezoidal factor of the correlation of the moving factors: Moving.Length × Rank, row-major, zeros above the diagonal.</summary>
     public required double[] Lower { get; init; }
 
+    /// <summary>Whether the valuation date moves with the horizon.</summary>
+    public bool Ages { get; init; }
+
     /// <summary>How the moves are distributed jointly.</summary>
     public ScenarioLaw Law { get; init; } = LognormalLaw.Instance;
+
+    /// <summary>What the estimator of the covariance found besides.</summary>
+    public IReadOnlyList<ModelParameter> Parameters { get; init; } = [];
 
     /// <summary>Frobenius distance from the correlation matrix found to the nearest one, or null where it needed no repair.</summary>
     public double? RepairDistance { get; init; }

@@ -1,5 +1,6 @@
 using RiskWorker.Domain.Market;
 using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Models;
 
 namespace RiskWorker.Engine.Calibration;
 
@@ -12,20 +13,33 @@ public static class Calibrator
 
     /// <summary>The same with the snapshot's <paramref name="table"/> of shocks, where it is at hand.</summary>
     /// <exception cref="CalibrationException">The data cannot be used.</exception>
-    public static CalibratedModel Calibrate(Snapshot snapshot, ShockTable table)
+    public static CalibratedModel Calibrate(Snapshot snapshot, ShockTable table) =>
+        Calibrate(snapshot, table, snapshot.Settings.Model, snapshot.Settings.Measures.Select(m => m.Horizon.Days).Append(1).Max());
+
+    /// <summary>Calibrates any model but a stressed one, whose span has to be found first.</summary>
+    /// <param name="snapshot">Factors and given covariances.</param>
+    /// <param name="table">The snapshot's shocks.</param>
+    /// <param name="model">The model.</param>
+    /// <param name="longest">The longest horizon in days.</param>
+    /// <param name="lastDay">Shocks after it are left out; null where none is. Levels are today's whatever it is.</param>
+    /// <exception cref="CalibrationException">The data cannot be used.</exception>
+    public static CalibratedModel Calibrate(Snapshot snapshot, ShockTable table, ModelSettings model, int longest, DateOnly? lastDay = null)
     {
-        var (model, factors) = (snapshot.Settings.Model, snapshot.Factors);
-        var estimated = model.Covariance != CovarianceEstimator.Given;
-        var window = factors.Count > 0 && (estimated || Drift.NeedsShocks(model)) ? ShockWindow.Newest(table, model.Window) : null;
-        if (window is not null) RequirePositivePrices(table, window);
+        var factors = snapshot.Factors;
+        var (complete, parameters) = (CompleteDays(table, model, longest, lastDay), new List<ModelParameter>());
+        if (complete is not null) RequirePositivePrices(table, complete);
         var last = LastObservations(table);
+        var jumps = model is { Kind: ModelKind.JumpDiffusion, Jumps.AreGiven: false } && complete is not null ? JumpEstimation.Of(model, complete, factors.Count) : null;
+        var paired = model.MissingDays == MissingDays.Pairwise && model.Covariance != CovarianceEstimator.Given && factors.Count > 0 ? ShockWindow.Observed(table, model.Window, lastDay) : null;
+        if (paired is not null) RequirePositivePrices(table, paired);
         var covariance = model.Covariance switch
         {
             CovarianceEstimator.Given => GivenCovariance.Of(snapshot.Covariance, factors),
-            _ when window is null => [],
-            CovarianceEstimator.Ewma => CovarianceEstimation.Ewma(window, factors.Count, model.Lambda),
-            _ => CovarianceEstimation.Equal(window, factors.Count),
+            _ when paired is not null => CovarianceEstimation.Pairwise(model, paired, factors.Count, factors, parameters),
+            _ when complete is null => [],
+            _ => CovarianceEstimation.Of(model, jumps?.Quiet ?? complete.Shocks, factors.Count, parameters),
         };
+        var window = paired ?? complete;
         var correlation = MovingCorrelation.Of(covariance, factors.Count);
         return new()
         {
@@ -33,12 +47,15 @@ public static class Calibrator
             Levels = [.. last.Select((t, j) => table.Values(j)[t])],
             LevelDates = [.. last.Select(t => table.Dates[t])],
             Deviations = correlation.Deviations,
-            DailyDrift = Drift.Daily(model, factors, correlation.Deviations, window),
+            DailyDrift = Drift.Daily(model, factors, correlation.Deviations, complete),
             Moving = correlation.Order,
+            Ages = model.Ages,
+            Law = ScenarioLaws.Of(model, complete, jumps, factors, correlation.Order, correlation.Deviations, longest),
             Rank = correlation.Factor.Rank,
             Lower = correlation.Factor.Lower,
             RepairDistance = correlation.RepairDistance,
-            Shocks = estimated ? window?.Days.Count ?? 0 : 0,
+            Parameters = parameters,
+            Shocks = model.Covariance != CovarianceEstimator.Given ? window?.Days.Count ?? 0 : 0,
             From = window?.Days[0],
             To = window?.Days[^1],
             DroppedDays = window?.Dropped ?? [],
@@ -47,6 +64,16 @@ public static class Calibrator
             Adjustments = Adjustments(table, window, last),
             ClosedDayObservations = Enumerable.Range(0, factors.Count).Sum(table.ClosedDayObservations),
         };
+    }
+
+    /// <summary>The complete days that something is estimated from; null where nothing is.</summary>
+    private static ShockWindow? CompleteDays(ShockTable table, ModelSettings model, int longest, DateOnly? lastDay)
+    {
+        if (table.Factors.Count == 0) return null;
+        var forCovariance = model.Covariance != CovarianceEstimator.Given && model.MissingDays == MissingDays.Complete;
+        if (!forCovariance && !Drift.NeedsShocks(model) && !ScenarioLaws.NeedShocks(model)) return null;
+        // So that every horizon has as many scenarios as the window has days.
+        return ShockWindow.Newest(table, model.Kind == ModelKind.Historical ? model.Window + longest - 1 : model.Window, lastDay);
     }
 
     /// <summary>Index of the date of each factor's level.</summary>

@@ -35,7 +35,8 @@ internal sealed record MovingCorrelation
         return new() { Deviations = deviations, Order = Array.ConvertAll(factor.Order, k => moving[k]), Factor = factor, RepairDistance = distance };
     }
 
-    private static double[] Correlation(double[] covariance, int n, int[] moving)
+    /// <summary>The correlation of the factors of an n × n covariance that move.</summary>
+    internal static double[] Correlation(double[] covariance, int n, int[] moving)
     {
         var size = moving.Length;
         var correlation = new double[size * size];

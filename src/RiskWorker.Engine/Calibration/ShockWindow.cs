@@ -44,13 +44,18 @@ public sealed class ShockWindow
     public ReadOnlySpan<double> Row(int factor) => Shocks.AsSpan(factor * _kept.Length, _kept.Length);
 
     /// <summary>Takes the newest <paramref name="window"/> complete days of <paramref name="table"/>.</summary>
+    /// <param name="table">The shocks.</param>
+    /// <param name="window">Most days.</param>
+    /// <param name="lastDay">Days after it are left alone; null where none is.</param>
     /// <exception cref="CalibrationException">No day is complete.</exception>
-    public static ShockWindow Newest(ShockTable table, int window)
+    public static ShockWindow Newest(ShockTable table, int window, DateOnly? lastDay = null)
     {
         ArgumentOutOfRangeException.ThrowIfLessThan(window, 1);
         var (missing, observed) = Coverage(table);
         var (kept, dropped) = (new List<int>(), new List<int>());
-        for (var t = missing.Length - 1; t >= 0 && kept.Count < window; t--)
+        var end = missing.Length;
+        while (end > 0 && table.Dates[end - 1] > lastDay) end--;
+        for (var t = end - 1; t >= 0 && kept.Count < window; t--)
         {
             if (!observed[t]) continue;
             if (missing[t] == 0) kept.Add(t);
@@ -61,6 +66,22 @@ public sealed class ShockWindow
         dropped.RemoveAll(t => t < kept[0]);
         dropped.Reverse();
         return new(table, [.. kept], [.. dropped]);
+    }
+
+    /// <summary>Takes the newest <paramref name="window"/> days of <paramref name="table"/> on which any factor has a shock; those of the others are NaN.</summary>
+    /// <exception cref="CalibrationException">There is no such day.</exception>
+    public static ShockWindow Observed(ShockTable table, int window, DateOnly? lastDay = null)
+    {
+        ArgumentOutOfRangeException.ThrowIfLessThan(window, 1);
+        var (missing, _) = Coverage(table);
+        var kept = new List<int>();
+        for (var t = missing.Length - 1; t >= 0 && kept.Count < window; t--)
+        {
+            if (missing[t] < table.Factors.Count && !(table.Dates[t] > lastDay)) kept.Add(t);
+        }
+        if (kept.Count == 0) throw new CalibrationException("observations", "There is no day on which any factor has a shock.");
+        kept.Reverse();
+        return new(table, [.. kept], []);
     }
 
     /// <summary>For each date how many factors lack a shock, and whether any factor was observed.</summary>

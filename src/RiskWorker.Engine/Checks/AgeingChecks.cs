@@ -12,12 +12,11 @@ public static class AgeingChecks
     /// <param name="ageing">What the instruments turn into.</param>
     /// <param name="tree">The books.</param>
     /// <param name="lines">The lines.</param>
-    /// <param name="horizons">The horizons, ascending.</param>
+    /// <param name="longest">The longest horizon.</param>
     /// <param name="settings">Severities.</param>
-    public static IReadOnlyList<Finding> Run(BookAgeing ageing, BookTree tree, IReadOnlyList<LineValue> lines, IReadOnlyList<Horizon> horizons, CheckSettings settings)
+    public static IReadOnlyList<Finding> Run(BookAgeing ageing, BookTree tree, IReadOnlyList<LineValue> lines, Horizon longest, CheckSettings settings)
     {
         var findings = new FindingList(settings);
-        var longest = horizons[^1];
         var held = lines.Where(l => l.Unpriced is null && tree.IndexOf(l.Position.Book) >= 0).Select(l => l.Position.Instrument).ToList();
         Add(FindingCodes.LineExpires, i => ageing.Of(i, longest).Event, count => $"{(count == 1 ? "expires, pays or is" : "expire, pay or are")} fixed inside {longest}");
         Add(FindingCodes.LineNotAged, i => ageing.Of(i, longest).Refusal, count => $"{(count == 1 ? "keeps" : "keep")} the valuation date of today");

@@ -55,7 +55,7 @@ internal static class BookChecks
 
     private static void Limits(Snapshot snapshot, HashSet<string> books, FindingList findings)
     {
-        string[] lost = [.. snapshot.Limits.Where(l => l.IsValidOn(snapshot.AsOf) && UnknownBook(l, books) is not null).Select(l => $"{l.Name} on {UnknownBook(l, books)}")];
+        string[] lost = [.. snapshot.ValidLimits.Where(l => UnknownBook(l, books) is not null).Select(l => $"{l.Name} on {UnknownBook(l, books)}")];
         if (lost.Length == 0) return;
         findings.Add(FindingCodes.LimitBookUnknown, "limits.csv",
             $"{FindingList.Count(lost.Length, "limit names a book", "limits name a book")} that books.csv lacks ({FindingList.Names(lost)}) and cannot be decided");

@@ -55,6 +55,11 @@ public static class FindingCodes
         "No day is complete over all factors",
         "load the missing prices, or name proxies for the factors that break the most days", IsFixed: true);
 
+    /// <summary>A model beside the one of record gives no figures.</summary>
+    public static readonly FindingCode ModelFailed = new("model-failed", Warning,
+        "A model that runs beside the one of record cannot be calibrated, so it has no figures in this run",
+        "correct its settings or the history that it needs, or take it out of the challengers");
+
     /// <summary>The last price stands in on a closed day.</summary>
     public static readonly FindingCode FactorClosed = new("factor-closed", Warning,
         "A factor's calendar is closed on the as-of date, so its last price is used",
@@ -253,7 +258,7 @@ public static class FindingCodes
         BookTree, BookCurrency, PositionsNone, FactorUnobserved, FactorMissing, PriceNotPositive, HistoryShort, DaysNone, DaysFew,
         CovarianceUnusable, DriftUnknown, PricedNone,
         BookUnknown, InstrumentUnknown, FactorUnknown, CurrencyUnpriced, CurrencyMismatch, InstrumentExpired, NotModelled, FixingMissing, LevelMissing, BarrierCrossed, LineExpires, LineNotAged,
-        ValueDifference, HoldingsChange, LimitUndecidable,
+        ValueDifference, HoldingsChange, LimitUndecidable, ModelFailed,
         FactorClosed, PriceStale, PriceJump, DayMissing, DayClosed, DaysDropped, HistoryProxied, HistoryPartial,
         CalendarUnknown, ProxyUnusable, CurveUnusable, FxFactorUnused, CovarianceUnknown, AdjustmentUnknown, LimitBookUnknown, ProfitBookUnknown,
         AssumedZeroRate, UnusedTerm, UnknownColumn, UnknownFile,

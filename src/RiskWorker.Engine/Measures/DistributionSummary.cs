@@ -22,14 +22,14 @@ public static class DistributionSummary
     /// <param name="histogram">Counts of losses: below, the bins, above.</param>
     /// <param name="edges">Edges of the histogram.</param>
     /// <param name="sample">Its tail.</param>
-    public static ProfitDistribution Of(Horizon horizon, double sum, double squares, IReadOnlyList<long> histogram, HistogramEdges edges, SampledLoss sample)
+    public static ProfitDistribution Of(Horizon horizon, double sum, double squares, IReadOnlyList<long> histogram, HistogramEdges edges, LossSeries sample)
     {
-        var mean = sum / sample.Count;
+        var (mean, deviation) = sample.Moments(sum, squares);
         return new ProfitDistribution
         {
             Horizon = horizon,
             Mean = 0 - mean, // not -mean: nothing at risk gains 0, not -0
-            Deviation = Math.Sqrt(Math.Max((squares / sample.Count) - (mean * mean), 0)),
+            Deviation = deviation,
             Low = 0 - edges.High,
             High = 0 - edges.Low,
             Counts = [.. histogram.Reverse()],
@@ -37,13 +37,13 @@ public static class DistributionSummary
         };
     }
 
-    private static List<Quantile> Quantiles(IReadOnlyList<long> histogram, HistogramEdges edges, SampledLoss sample)
+    private static List<Quantile> Quantiles(IReadOnlyList<long> histogram, HistogramEdges edges, LossSeries sample)
     {
         var quantiles = new List<Quantile>(s_probabilities.Length);
         var (bin, passed) = (histogram.Count - 1, 0L);
         foreach (var probability in s_probabilities)
         {
-            var rank = Math.Max(1, (long)decimal.Ceiling(sample.Count * probability));
+            var rank = sample.RankOf(probability);
             while (rank > passed + histogram[bin]) passed += histogram[bin--];
             var known = rank <= sample.Known;
             quantiles.Add(new((double)probability, 0 - (known ? sample.AtRank(rank) : LossIn(bin, rank - passed, histogram[bin], edges)), known));

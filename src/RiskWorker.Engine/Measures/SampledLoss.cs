@@ -9,7 +9,7 @@ namespace RiskWorker.Engine.Measures;
 /// One series of N losses as its tail is known: the losses beyond a cutoff in full, those equal to it by count.
 /// Ranks count from the worst, 1. Tails by cutoff give what sorting all N losses would.
 /// </summary>
-public sealed class SampledLoss
+public sealed class SampledLoss : LossSeries
 {
     private readonly IntervalRanks _ranks;
     private readonly double[] _losses;
@@ -32,18 +32,29 @@ public sealed class SampledLoss
         for (var i = 0; i < tail.Length; i++) _losses[i] = Unsigned(tail[i].Loss);
     }
 
-    /// <summary>Number of losses, N.</summary>
-    public int Count => _ranks.Count;
+    /// <inheritdoc/>
+    public override int Count => _ranks.Count;
 
-    /// <summary>Worst ranks that are known.</summary>
-    public long Known => _losses.Length + _equal;
+    /// <inheritdoc/>
+    public override long Known => _losses.Length + _equal;
 
-    /// <summary>The loss of <paramref name="rank"/>, 1 being the worst.</summary>
-    /// <exception cref="ArgumentOutOfRangeException">The rank lies below the cutoff.</exception>
-    public double AtRank(long rank)
+    /// <inheritdoc/>
+    public override double AtRank(long rank)
     {
         if (rank < 1 || rank > Known) throw new ArgumentOutOfRangeException(nameof(rank), rank, $"Ranks 1 to {Known} are known.");
         return rank <= _losses.Length ? _losses[rank - 1] : _cutoff;
+    }
+
+    /// <inheritdoc/>
+    public override MeasureResult Measure(MeasureSpec spec, decimal level)
+    {
+        if (spec.Kind != MeasureKind.Var)
+        {
+            var shortfall = ExpectedShortfallInterval(spec.Confidence, level);
+            return new(spec, ExpectedShortfall(spec.Confidence), shortfall.Low, shortfall.High, (double)level);
+        }
+        var (low, high) = VarInterval(spec.Confidence, level);
+        return new(spec, Var(spec.Confidence), low, high, (double)level);
     }
 
     /// <summary>The rank from the worst that VaR at <paramref name="confidence"/> stands on: N - ceil(N alpha) + 1.</summary>

@@ -9,6 +9,7 @@ public sealed class TailDemand
     private readonly Confidence[] _var;
     private readonly Confidence[] _es;
     private readonly decimal[] _levels;
+    private readonly bool _isWhole;
     private volatile IntervalRanks? _ranks;
 
     /// <summary>Takes the measures, and every level at which an interval of them is asked for.</summary>
@@ -16,13 +17,20 @@ public sealed class TailDemand
     {
         var all = measures.ToList();
         _var = [.. all.Where(m => m.Kind == MeasureKind.Var).Select(m => m.Confidence).Distinct()];
-        _es = [.. all.Where(m => m.Kind == MeasureKind.Es).Select(m => m.Confidence).Distinct()];
+        _es = [.. all.Where(m => m.Kind != MeasureKind.Var).Select(m => m.Confidence).Distinct()];
         _levels = [.. levels.Distinct()];
     }
+
+    private TailDemand()
+        : this([], []) => _isWhole = true;
+
+    /// <summary>Every loss of the sample.</summary>
+    public static TailDemand Whole { get; } = new();
 
     /// <summary>The deepest rank from the worst that <paramref name="scenarios"/> scenarios need.</summary>
     public int DeepestRank(int scenarios)
     {
+        if (_isWhole) return scenarios;
         var (deepest, ranks) = (1, RanksOf(scenarios));
         foreach (var confidence in _var.Concat(_es))
         {

@@ -1,3 +1,6 @@
+using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Calibration;
+
 namespace RiskWorker.Engine.Models;
 
 /// <summary>
@@ -17,6 +20,9 @@ public abstract record ScenarioLaw
 
     /// <summary>Every number that the moves depend on beyond the correlation and the factors' own laws.</summary>
     public abstract IEnumerable<double> Numbers();
+
+    /// <summary>What the law was calibrated to or given, for the record.</summary>
+    public virtual IEnumerable<ModelParameter> Parameters(CalibratedModel model) => [];
 
     /// <summary>How many standard deviations of <paramref name="days"/> days tables of prices should reach: a scenario beyond is valued without them, slowly.</summary>
     public virtual double Reach(int days) => Ordinary;

@@ -82,10 +82,9 @@ internal sealed class AgedCompiler
         for (var i = 0; i < paths.Count; i++)
         {
             var path = paths[i].Path;
-            var variance = path.IsContinuous && _moves.DeviationOf([.. path.Underlying.Terms()]) is var deviation ? deviation * deviation : 0;
             _paths[paths[i].Instrument] = (i, formulas[i]);
             _starts.Add(new(path.Start, path.IsUnderWay ? 0 : double.NaN));
-            foreach (var day in path.Looks) CloseAt(day).Add(new PathLook(i, path.Underlying, path.Kind, path.Barrier, path.Underlying.LevelOf(_levels), variance));
+            foreach (var day in path.Looks) CloseAt(day).Add(new PathLook(i, path.Underlying, path.Kind, path.Barrier, path.Underlying.LevelOf(_levels), path.IsContinuous));
         }
     }
 

@@ -58,8 +58,8 @@ public sealed record DatedHoldings
 /// <param name="Kind">What the look leaves.</param>
 /// <param name="Barrier">The barrier, where there is one.</param>
 /// <param name="Spot">The underlying's level today.</param>
-/// <param name="Variance">Variance of its log-return over a day where every moment since the close before counts; 0 where this close alone does.</param>
-public readonly record struct PathLook(int Path, UnderlyingKey Underlying, LookKind Kind, double Barrier, double Spot, double Variance);
+/// <param name="IsContinuous">Whether every moment since the close before counts, else this close alone.</param>
+public readonly record struct PathLook(int Path, UnderlyingKey Underlying, LookKind Kind, double Barrier, double Spot, bool IsContinuous);
 
 /// <summary>Where a path stands today.</summary>
 /// <param name="State">What it has left.</param>

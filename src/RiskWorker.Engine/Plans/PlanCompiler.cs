@@ -35,7 +35,7 @@ public sealed class PlanCompiler
     {
         if (ageing is not null && !_model.Law.HasPaths) throw new InvalidOperationException($"{_model.Law.GetType().Name} has no moves inside a horizon, so no book can age under it.");
         var holdings = Holdings(lines);
-        var moves = Moves();
+        var moves = FactorMoves.Of(_model);
         var options = holdings.Where(h => h.Bound is BoundOption).DistinctBy(h => h.Instrument).Select(h => (h.Instrument, (BoundOption)h.Bound)).ToList();
         var formulas = PriceTables.Build(options, moves, _model.Law, _model.Levels, _horizons, threads, cancellation);
         var currencies = Currencies(holdings);
@@ -138,16 +138,5 @@ public sealed class PlanCompiler
     {
         var cellOf = cells.Index().ToDictionary(c => (c.Item.Node, c.Item.Currency), c => c.Index);
         return [.. holdings.Select(h => new CellHolding(cellOf[(h.Node, PlaceOf(h.Bound.Currency, currencies))], h.Instrument, h.Bound, h.Quantity, h.Value))];
-    }
-
-    private FactorMoves Moves()
-    {
-        var rowOf = new int[_model.Factors.Count];
-        Array.Fill(rowOf, -1);
-        for (var row = 0; row < _model.Moving.Length; row++) rowOf[_model.Moving[row]] = row;
-        var laws = new FactorLaw[rowOf.Length];
-        for (var j = 0; j < laws.Length; j++)
-            laws[j] = new(_model.Levels[j], _model.Deviations[j], _model.DailyDrift[j], _model.Factors[j].Shock == Domain.Market.ShockKind.Lognormal);
-        return new(_model.Rank, _model.Lower, rowOf, _model.Moving.Length, laws);
     }
 }

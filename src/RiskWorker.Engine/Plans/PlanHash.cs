@@ -80,7 +80,7 @@ internal sealed class PlanHash : IDisposable
         Add(close.Day).Add(close.Groups.Count).Add(close.Flows.Count).Add(close.Looks.Count).Add(close.Paths.Count).Add(close.Fixings.Count).Add(close.Fixed.Count);
         foreach (var group in close.Groups) Add(group, 1);
         foreach (var flow in close.Flows) Add(flow);
-        foreach (var look in close.Looks) Add(look.Path).Key(look.Underlying).Add((int)look.Kind).Add(look.Barrier).Add(look.Spot).Add(look.Variance);
+        foreach (var look in close.Looks) Add(look.Path).Key(look.Underlying).Add((int)look.Kind).Add(look.Barrier).Add(look.Spot).Add(look.IsContinuous ? 1 : 0);
         foreach (var batch in close.Paths)
         {
             Key(batch.Underlying).Market(batch.Market).Add(batch.Items.Length);

@@ -1,4 +1,5 @@
 using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Calibration;
 using RiskWorker.Engine.Models;
 using RiskWorker.Numerics.Kernels;
 
@@ -62,6 +63,34 @@ public sealed record RevaluationPlan
 /// <param name="Factors">Each factor's law.</param>
 public sealed record FactorMoves(int Rank, double[] Lower, int[] RowOf, int Rows, FactorLaw[] Factors)
 {
+    /// <summary>The factor of each row, whether or not it is held still.</summary>
+    public int[] FactorOf { get; private init; } = Inverse(RowOf, Rows);
+
+    /// <summary>The same draws with every factor held at its level but those that <paramref name="moves"/> names.</summary>
+    public FactorMoves Only(Func<int, bool> moves) => this with { RowOf = [.. RowOf.Select((row, factor) => moves(factor) ? row : -1)] };
+
+    private static int[] Inverse(int[] rowOf, int rows)
+    {
+        var factors = new int[rows];
+        for (var factor = 0; factor < rowOf.Length; factor++)
+        {
+            if (rowOf[factor] >= 0) factors[rowOf[factor]] = factor;
+        }
+        return factors;
+    }
+
+    /// <summary>The moves of <paramref name="model"/>.</summary>
+    public static FactorMoves Of(CalibratedModel model)
+    {
+        var rowOf = new int[model.Factors.Count];
+        Array.Fill(rowOf, -1);
+        for (var row = 0; row < model.Moving.Length; row++) rowOf[model.Moving[row]] = row;
+        var laws = new FactorLaw[rowOf.Length];
+        for (var j = 0; j < laws.Length; j++)
+            laws[j] = new(model.Levels[j], model.Deviations[j], model.DailyDrift[j], model.Factors[j].Shock == Domain.Market.ShockKind.Lognormal);
+        return new(model.Rank, model.Lower, rowOf, model.Moving.Length, laws);
+    }
+
     /// <summary>Standard deviation of a day's shocks of several factors, each times its weight, added.</summary>
     public double DeviationOf(ReadOnlySpan<(int Factor, double Weight)> terms)
     {

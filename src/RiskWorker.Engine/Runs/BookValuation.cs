@@ -39,11 +39,7 @@ public sealed class BookValuation
     /// <summary>What is held, what is priced and how it ties to the book of record.</summary>
     public Holdings Holdings { get; }
 
-    /// <summary>What today's instruments turn into by each of <paramref name="horizons"/>; null where the model of <paramref name="snapshot"/> leaves the valuation date as it is.</summary>
-    public BookAgeing? Ageing(Snapshot snapshot, IEnumerable<Horizon> horizons)
-    {
-        if (snapshot.Settings.Model.Ageing == AgeingKind.None) return null;
-        var ageing = new InstrumentAgeing(_currency, _model.Factors, _model.Levels, snapshot.AsOf, _closes, snapshot.Settings.Simulation.Seed, snapshot.Settings.CurveInterpolation);
-        return BookAgeing.Of(Today, ageing, snapshot.AsOf, horizons);
-    }
+    /// <summary>What the instruments of today's lines turn into by a horizon, for models that move the valuation date.</summary>
+    public BookAgeing Ageing(Snapshot snapshot) =>
+        new(Today, new(_currency, _model.Factors, _model.Levels, snapshot.AsOf, _closes, snapshot.Settings.Simulation.Seed, snapshot.Settings.CurveInterpolation), snapshot.AsOf);
 }

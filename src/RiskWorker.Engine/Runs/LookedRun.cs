@@ -3,6 +3,7 @@ using RiskWorker.Domain.Limits;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Engine.Limits;
 using RiskWorker.Engine.Measures;
+using RiskWorker.Engine.Models;
 using RiskWorker.Engine.Plans;
 using RiskWorker.Engine.Reductions;
 using RiskWorker.Engine.Simulation;
@@ -25,7 +26,7 @@ public sealed record LookOutcome(
     IReadOnlyList<LimitResult> Limits,
     LimitEvaluator Evaluator,
     TailRecord Record,
-    IReadOnlyList<SampledLoss> Series,
+    IReadOnlyList<LossSeries> Series,
     IReadOnlyList<HistogramEdges> Edges);
 
 /// <summary>Draws scenarios look by look until every limit is decided and the precision is reached, or no look is left.</summary>
@@ -43,7 +44,9 @@ public sealed class LookedRun
     {
         (_tree, _plan, _measures, _settings) = (tree, plan, measures, settings);
         _limits = [.. limits.OrderBy(l => l.Name, StringComparer.Ordinal)];
-        _looks = new(settings, limits.Count > 0 || settings.Precision is not null);
+        // A list of scenarios is looked at once, whole.
+        if (plan.Law.ScenarioCount is { } count) _settings = settings with { Scenarios = count, Cap = count, Precision = null };
+        _looks = new(_settings, plan.Law.ScenarioCount is null && (limits.Count > 0 || settings.Precision is not null));
     }
 
     /// <summary>Runs.</summary>
@@ -52,7 +55,7 @@ public sealed class LookedRun
         var levels = new List<decimal> { _looks.Level };
         if (_limits.Any(l => l.Basis == LimitBasis.Book)) levels.Add(LimitEvaluator.LevelOfEachOfTwo(_looks.Level));
         var planned = _looks.Scenarios[0];
-        var sampler = new LossSampler(_plan, new(threads), new(_measures, levels), _settings with { Scenarios = planned },
+        var sampler = new LossSampler(_plan, new(threads), _plan.Law.ScenarioCount is null ? new(_measures, levels) : TailDemand.Whole, _settings with { Scenarios = planned },
             progress is null ? null : drawn => progress.Report(new("simulate", drawn, planned)), cancellation);
         for (var look = 0; ; look++)
         {
@@ -67,12 +70,17 @@ public sealed class LookedRun
 
     private LookOutcome LookAt(LossSampler sampler, int look, int scenarios)
     {
-        var (record, series) = sampler.Look(scenarios);
+        var (record, sampled) = sampler.Look(scenarios);
+        var series = SeriesOf(record, sampled);
         var measures = new NodeMeasures(_plan, series);
         var evaluator = new LimitEvaluator(_tree, _plan, measures, _looks.Level);
         var summary = new SimulationSummary(scenarios, _settings.Seed, look + 1, _looks.Scenarios.Count, (double)_looks.Level, PrecisionReached(measures), SummaryOf(sampler, record));
         return new(summary, _looks.Level, measures, [.. _limits.Select(evaluator.Of)], evaluator, record, series, sampler.Edges);
     }
+
+    private IReadOnlyList<LossSeries> SeriesOf(TailRecord record, IReadOnlyList<SampledLoss> sampled) => _plan.Law is HistoricalLaw law
+        ? [.. _plan.Rows.Select((row, i) => new HistoricalLoss(record.SortedTail(i), law.Weights, isOverlapping: _plan.Horizons[row.Horizon].Days > 1))]
+        : sampled;
 
     private SurfaceSummary? SummaryOf(LossSampler sampler, TailRecord record)
     {
@@ -84,6 +92,6 @@ public sealed class LookedRun
     private bool? PrecisionReached(NodeMeasures measures)
     {
         if (_settings.Precision is not { } wanted) return null;
-        return _measures.Select(m => measures.Of(0, m, _looks.Level)).All(m => (m.High - m.Low) / 2 <= wanted * Math.Abs(m.Value));
+        return _measures.Where(m => m.Kind != MeasureKind.Les).Select(m => measures.Of(0, m, _looks.Level)).All(m => (m.High - m.Low) / 2 <= wanted * Math.Abs(m.Value));
     }
 }

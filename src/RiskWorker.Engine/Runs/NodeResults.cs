@@ -8,6 +8,10 @@ namespace RiskWorker.Engine.Runs;
 /// <summary>Turns the series of a run into the figures of each node.</summary>
 public static class NodeResults
 {
+    /// <summary>The measures alone, by node.</summary>
+    internal static IEnumerable<ModelNode> Measured(ModelRun run) => run.Plan.Nodes.Select((node, i) =>
+        new ModelNode(node.Book, run.Plan.Currencies[node.Currency].Code, [.. run.Measures.Select(m => run.Outcome.Measures.Of(i, m, run.Outcome.Level))]));
+
     /// <summary>The nodes in depth-first order.</summary>
     public static IReadOnlyList<NodeResult> Of(BookTree tree, RevaluationPlan plan, LookOutcome outcome, IReadOnlyList<MeasureSpec> measures, IReadOnlyList<Position> positions)
     {

@@ -5,7 +5,6 @@ using RiskWorker.Engine.Backtesting;
 using RiskWorker.Engine.Calibration;
 using RiskWorker.Engine.Checks;
 using RiskWorker.Engine.Limits;
-using RiskWorker.Engine.Plans;
 using RiskWorker.Engine.Pricing;
 using RiskWorker.Engine.Sensitivities;
 
@@ -37,6 +36,9 @@ public sealed class RunCalculator
     /// <summary>Seconds spent calibrating and simulating; the other phases are not this class's.</summary>
     public Timings Timings { get; private set; } = new(0, 0, 0, 0);
 
+    /// <summary>Whether the run is evidence only: then it has no sensitivities and tries no other choices.</summary>
+    public bool IsEvidenceOnly { get; init; }
+
     /// <summary>Runs.</summary>
     public RunResults Calculate()
     {
@@ -44,14 +46,17 @@ public sealed class RunCalculator
         var (tree, _) = BookTree.Build(_snapshot.Books);
         if (tree is null || Blocked) return Failed(tree);
         var clock = Stopwatch.StartNew();
-        var model = Calibrator.Calibrate(_snapshot);
+        var calibration = new ModelCalibration(_snapshot, LongestHorizon);
+        var model = calibration.Of(_snapshot.Settings.Model);
         Timings = Timings with { Calibrate = clock.Elapsed.TotalSeconds };
 
         var valued = new BookValuation(_snapshot, tree, model);
         _findings.AddRange(ValuationChecks.Run(_snapshot, tree, valued.Today, valued.Previous));
         if (Blocked) return Failed(tree) with { Holdings = valued.Holdings };
-        return Simulate(tree, model, valued);
+        return Simulate(tree, model, valued, calibration);
     }
+
+    private int LongestHorizon => _snapshot.Settings.Measures.Concat(_snapshot.ValidLimits.Select(l => l.Measure)).Max(m => m.Horizon.Days);
 
     private bool Blocked => _findings.Exists(f => f.Severity == FindingSeverity.Blocking);
 
@@ -59,50 +64,47 @@ public sealed class RunCalculator
 
     private static FirmIdentity FirmOf(BookTree tree) => new(tree.Books[0].DisplayName, tree.ReportingCurrency);
 
-    private RunResults Simulate(BookTree tree, CalibratedModel model, BookValuation valued)
+    private RunResults Simulate(BookTree tree, CalibratedModel model, BookValuation valued, ModelCalibration calibration)
     {
-        var valid = _snapshot.Limits.Where(l => l.IsValidOn(_snapshot.AsOf)).ToLookup(l => tree.IndexOf(l.Book) >= 0 && (l.ReferenceBook is null || tree.IndexOf(l.ReferenceBook) >= 0));
+        var valid = _snapshot.ValidLimits.ToLookup(l => tree.IndexOf(l.Book) >= 0 && (l.ReferenceBook is null || tree.IndexOf(l.ReferenceBook) >= 0));
         var limits = valid[true].ToList();
         var measures = _snapshot.Settings.Measures.Concat(limits.Select(l => l.Measure)).Distinct().Order().ToList();
         var clock = Stopwatch.StartNew();
-        var horizons = measures.Select(m => m.Horizon).Distinct().Order().ToList();
-        var ageing = valued.Ageing(_snapshot, horizons);
-        if (ageing is not null) _findings.AddRange(AgeingChecks.Run(ageing, tree, valued.Today, horizons, _snapshot.Settings.Checks));
+        var ageing = valued.Ageing(_snapshot);
+        var isAged = _snapshot.Settings.Challengers.Prepend(_snapshot.Settings.Model).Any(m => m.Ages);
+        if (isAged) _findings.AddRange(AgeingChecks.Run(ageing, tree, valued.Today, new(LongestHorizon), _snapshot.Settings.Checks));
         if (Blocked) return Failed(tree) with { Holdings = valued.Holdings }; // where the settings make such a finding block
-        var plan = new PlanCompiler(tree, model, valued.Binder.Currencies, horizons).Compile(_snapshot.Settings.Simulation.Seed, valued.Today, _threads, ageing, _cancellation);
-        var outcome = new LookedRun(tree, plan, limits, measures, _snapshot.Settings.Simulation).Run(_threads, _progress, _cancellation);
-        var sensitivities = BookSensitivities.Of(plan, model.Factors);
+        var lines = new ModelLines(tree, valued.Binder.Currencies, valued.Today, ageing, measures, _threads, _progress, _cancellation);
+        // The levels of the newest span have valued the lines; the moves come from the worst one.
+        if (_snapshot.Settings.Model.Kind == ModelKind.Stressed) model = StressedSpan.Find(lines, _snapshot.Settings.Model, calibration, _snapshot.Settings.Simulation);
+        var run = ModelRun.Of(lines, model, limits, _snapshot.Settings.Simulation);
+        var (plan, outcome) = (run.Plan, run.Outcome);
+        IReadOnlyList<Sensitivity> sensitivities = IsEvidenceOnly ? [] : BookSensitivities.Of(plan, model.Factors);
         Timings = Timings with { Simulate = clock.Elapsed.TotalSeconds };
         _findings.AddRange(UndecidableLimits.Of(outcome, limits, _snapshot.Settings.Checks));
         if (Blocked) return Failed(tree) with { Holdings = valued.Holdings }; // where the settings make that finding block
+        var challengers = Challengers.Run(_snapshot.Settings, lines, calibration, _findings);
+        if (Blocked) return Failed(tree) with { Holdings = valued.Holdings }; // where the settings make a challenger that fails block
+        var effects = IsEvidenceOnly || challengers.Count == 0 ? null : ChoiceEffects.Of(lines, _snapshot.Settings, calibration, run);
         var hypothetical = HypotheticalProfits.Of(_snapshot, tree);
+        var count = new ExceptionCount(_snapshot, tree, hypothetical);
         return new RunResults
         {
             Findings = FindingList.InOrder(_findings),
             Firm = FirmOf(tree),
-            Calibration = SummaryOf(model, plan),
+            Calibration = run.Calibration,
             Simulation = outcome.Simulation,
             Nodes = NodeResults.Of(tree, plan, outcome, measures, _snapshot.Positions),
             Limits = [.. outcome.Limits.Concat(valid[false].Select(l => LimitEvaluator.WithoutBook(l, tree.ReportingCurrency, (double)outcome.Level))).OrderBy(l => l.Limit.Name, StringComparer.Ordinal)],
             Sensitivities = sensitivities,
+            Models = challengers,
+            Effects = effects,
             Hypothetical = hypothetical,
-            Backtest = ExceptionCount.Of(_snapshot, tree, measures, hypothetical),
+            Backtest = count.Results(measures),
+            ModelBacktests = ModelBacktests.Of(count, _snapshot.Settings, tree, measures),
             Holdings = valued.Holdings,
             Methods = PricingMethods.Held(valued.Today, tree),
             Adjustments = model.Adjustments,
         };
     }
-
-    private static CalibrationSummary SummaryOf(CalibratedModel model, RevaluationPlan plan) => new()
-    {
-        Shocks = model.Shocks,
-        DroppedDays = model.DroppedDays.Count,
-        From = model.From,
-        To = model.To,
-        Factors = model.Factors.Count,
-        Still = model.Factors.Count - model.Moving.Length,
-        Rank = model.Rank,
-        RepairDistance = model.RepairDistance,
-        Plan = plan.Hash,
-    };
 }

@@ -12,6 +12,7 @@ internal sealed class PathProfits(int capacity)
     private readonly LaneTable _returns = new();
     private readonly MomentExtremes _extremes = new(capacity);
     private RevaluationPlan _plan = null!;
+    private double[][] _variances = [];
     private long _first;
     private int _horizon;
 
@@ -20,8 +21,21 @@ internal sealed class PathProfits(int capacity)
     {
         _plan = plan;
         _extremes.Serve(plan);
+        _variances = [.. plan.Aged.Select(VariancesOf)];
         _states.Shape(plan.Aged.Max(a => a.Paths.Count), capacity);
         _returns.Shape(plan.Aged.Max(a => a.Paths.Count), capacity);
+    }
+
+    // Of a day's log-return, where moments between closes count; 0 elsewhere.
+    private double[] VariancesOf(AgedHoldings aged)
+    {
+        var variances = new double[aged.Paths.Count];
+        foreach (var look in aged.Closes.SelectMany(c => c.Looks).Where(l => l.IsContinuous))
+        {
+            var deviation = _plan.Moves.DeviationOf([.. look.Underlying.Terms()]);
+            variances[look.Path] = deviation * deviation;
+        }
+        return variances;
     }
 
     /// <summary>Puts the paths of a horizon where they stand today, in scenarios <paramref name="first"/> to first + width - 1.</summary>
@@ -48,7 +62,7 @@ internal sealed class PathProfits(int capacity)
                 market.Underlying(look.Underlying);
                 isDrawn = false;
             }
-            if (look.Variance > 0 && !isDrawn)
+            if (_variances[_horizon][look.Path] > 0 && !isDrawn)
             {
                 _extremes.Draw(look.Underlying, _plan.Horizons[_horizon].Days, close.Day, _first, market.Width);
                 isDrawn = true;
@@ -70,9 +84,9 @@ internal sealed class PathProfits(int capacity)
                 return;
         }
         var reached = market.Spots;
-        if (look.Variance > 0)
+        if (_variances[_horizon][look.Path] > 0)
         {
-            _extremes.Fill(look.Kind is LookKind.CrossedUp or LookKind.Highest, look.Spot, look.Variance, _returns[look.Path], market.Returns, _values.AsSpan(0, market.Width));
+            _extremes.Fill(look.Kind is LookKind.CrossedUp or LookKind.Highest, look.Spot, _variances[_horizon][look.Path], _returns[look.Path], market.Returns, _values.AsSpan(0, market.Width));
             market.Returns.CopyTo(_returns[look.Path]);
             reached = _values.AsSpan(0, market.Width);
         }

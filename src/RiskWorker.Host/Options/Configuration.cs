@@ -1,3 +1,4 @@
+using RiskWorker.Domain.Limits;
 using RiskWorker.Domain.Runs;
 
 namespace RiskWorker.Host.Options;
@@ -5,8 +6,11 @@ namespace RiskWorker.Host.Options;
 /// <summary>The settings of a folder, checked and complete: what a key does not say has its default.</summary>
 public sealed record Configuration
 {
-    /// <summary>What figures depend on, with the model of record.</summary>
-    public RunSettings Run { get; init; } = new();
+    /// <summary>What figures depend on, with the model of record, as it is written.</summary>
+    public RunSettings Written { get; init; } = new();
+
+    /// <summary>The same with what the rule sets fill in.</summary>
+    public RunSettings Run => RuleSets.Apply(Written);
 
     /// <summary>Every model by name; never empty.</summary>
     public IReadOnlyDictionary<string, ModelSettings> Models { get; init; } =
@@ -27,13 +31,15 @@ public sealed record Configuration
     {
         var faults = overrides.Faults(Models.Keys).ToList();
         if (faults.Count > 0) throw new SettingsException("command line", faults);
-        var simulation = Run.Simulation;
+        var simulation = Written.Simulation;
         var scenarios = overrides.Scenarios ?? simulation.Scenarios;
         return this with
         {
-            Run = Run with
+            Written = Written with
             {
-                Model = overrides.Model is null ? Run.Model : Models[overrides.Model],
+                Model = overrides.Model is null ? Written.Model : Models[overrides.Model],
+                // A challenger that is run for the record does not run beside itself.
+                Challengers = overrides.Model is null ? Written.Challengers : [.. Written.Challengers.Where(c => c.Name != overrides.Model)],
                 Simulation = simulation with { Scenarios = scenarios, Seed = overrides.Seed ?? simulation.Seed, Cap = Math.Max(scenarios, simulation.Cap) },
             },
         };

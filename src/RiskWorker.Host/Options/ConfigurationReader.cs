@@ -9,7 +9,7 @@ public static class ConfigurationReader
     public const string FileName = "riskworker.json";
 
     private static readonly string[] s_keys =
-        ["store", "timeEffects", "models", "record", "challengers", "measures", "simulation", "curves", "backfill", "checks", "schedules", "delivery", "page"];
+        ["store", "timeEffects", "models", "record", "challengers", "measures", "rules", "simulation", "curves", "backfill", "checks", "schedules", "delivery", "page"];
 
     private const int LongestBackfill = 5_000;
     private static readonly Dictionary<string, bool> s_timeEffects = new(StringComparer.Ordinal) { ["excluded"] = false, ["included"] = true };
@@ -55,6 +55,7 @@ public static class ConfigurationReader
         }
         var root = new SettingsSection(file, "", faults, s_keys);
         var models = ModelsSection.Read(root);
+        var record = ModelsSection.Record(root, models);
         root["delivery"]?.Section(); // reserved: nothing can be set in them yet
         root["page"]?.Section();
         return new()
@@ -63,13 +64,15 @@ public static class ConfigurationReader
             StorePath = StoreSection.Read(root["store"]),
             BackfillDays = root["backfill"]?.Whole(0, LongestBackfill) ?? 0,
             Schedules = SchedulesSection.Read(root["schedules"]),
-            Run = new()
+            Written = new()
             {
-                Model = ModelsSection.Record(root, models),
+                Model = record,
+                Challengers = ModelsSection.Challengers(root, models, record),
                 Measures = MeasuresSection.Read(root["measures"]),
                 Simulation = SimulationSection.Read(root["simulation"]),
                 Checks = ChecksSection.Read(root["checks"]),
                 CurveInterpolation = CurvesSection.Read(root["curves"]),
+                Rules = RulesSection.Read(root["rules"]),
                 TimeEffectsIncluded = root["timeEffects"]?.Choice(s_timeEffects) ?? false,
             },
         };

@@ -12,6 +12,7 @@ public static class MeasuresSection
     {
         ["var"] = MeasureKind.Var,
         ["es"] = MeasureKind.Es,
+        ["les"] = MeasureKind.Les,
     };
 
     /// <summary>Reads the measures in their canonical order; absent means the defaults.</summary>
@@ -32,7 +33,7 @@ public static class MeasuresSection
     private static MeasureSpec? Measure(SettingsValue item)
     {
         if (item.Section("measure", "confidence", "horizonDays") is not { } section) return null;
-        var kind = section.Required("measure", "var or es")?.Choice(s_kinds);
+        var kind = section.Required("measure", "var, es or les")?.Choice(s_kinds);
         var confidence = section.Required("confidence", "a number strictly between 0 and 1")?.Fraction();
         var days = section["horizonDays"] is { } horizon ? horizon.Whole(1, LongestHorizon) : 1;
         return kind is null || confidence is null || days is null ? null : new(kind.Value, new(confidence.Value), new(days.Value));

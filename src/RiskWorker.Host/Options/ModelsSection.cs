@@ -2,33 +2,20 @@ using RiskWorker.Domain.Runs;
 
 namespace RiskWorker.Host.Options;
 
-/// <summary>Reads <c>models</c>, <c>record</c> and <c>challengers</c>: the models by name and which of them is the one of record.</summary>
+/// <summary>Reads <c>models</c>, <c>record</c> and <c>challengers</c>: the models by name, which of them is the one of record, and which run beside it.</summary>
 public static class ModelsSection
 {
-    private const double LargestDrift = 10;
-    private const int LongestWindow = 100_000;
-
-    private static readonly Dictionary<string, AgeingKind> s_ageing = new(StringComparer.Ordinal) { ["none"] = AgeingKind.None, ["horizon"] = AgeingKind.Horizon };
-
-    private static readonly Dictionary<string, CovarianceEstimator> s_covariances = new(StringComparer.Ordinal)
-    {
-        ["ewma"] = CovarianceEstimator.Ewma,
-        ["equal"] = CovarianceEstimator.Equal,
-        ["given"] = CovarianceEstimator.Given,
-    };
-
-    private static readonly Dictionary<string, DriftKind> s_drifts = new(StringComparer.Ordinal)
-    {
-        ["zero"] = DriftKind.Zero,
-        ["historical"] = DriftKind.Historical,
-        ["explicit"] = DriftKind.Explicit,
-    };
-
     /// <summary>Reads the models; without any there is one, the default, named after its kind.</summary>
     public static IReadOnlyDictionary<string, ModelSettings> Read(SettingsSection root)
     {
         var models = new SortedDictionary<string, ModelSettings>(StringComparer.Ordinal);
-        foreach (var (name, value) in root["models"]?.Named() ?? []) models[name] = Model(name, value);
+        var stressed = new List<(string Name, SettingsValue? Base)>();
+        foreach (var (name, value) in root["models"]?.Named() ?? [])
+        {
+            models[name] = ModelSection.Read(name, value, out var calibrated);
+            if (models[name].Kind == ModelKind.Stressed) stressed.Add((name, calibrated));
+        }
+        foreach (var (name, calibrated) in stressed) models[name] = models[name] with { Stressed = Calibrated(calibrated, models) };
         if (models.Count == 0) models[new ModelSettings().Name] = new();
         return models;
     }
@@ -36,8 +23,7 @@ public static class ModelsSection
     /// <summary>The model of record: the one named, or the only one there is.</summary>
     public static ModelSettings Record(SettingsSection root, IReadOnlyDictionary<string, ModelSettings> models)
     {
-        foreach (var challenger in root["challengers"]?.Items() ?? []) challenger.Fault("no challenger: challenger models are not available in this version");
-        var expected = "the name of a model: " + string.Join(", ", models.Keys);
+        var expected = Expected(models);
         var named = (models.Count > 1 ? root.Required("record", expected) : root["record"])?.Text(expected);
         if (named is null) return models.Values.First();
         if (models.TryGetValue(named, out var model)) return model;
@@ -45,42 +31,30 @@ public static class ModelsSection
         return models.Values.First();
     }
 
-    private static ModelSettings Model(string name, SettingsValue value)
+    /// <summary>The models that run beside the one of record, in the order of their names.</summary>
+    public static IReadOnlyList<ModelSettings> Challengers(SettingsSection root, IReadOnlyDictionary<string, ModelSettings> models, ModelSettings record)
     {
-        var defaults = new ModelSettings { Name = name };
-        if (value.Section("kind", "covariance", "lambda", "window", "drift", "drifts", "ageing") is not { } section) return defaults;
-        CheckKind(section["kind"], defaults.Kind);
-        var model = defaults with
+        var found = new SortedDictionary<string, ModelSettings>(StringComparer.Ordinal);
+        foreach (var item in root["challengers"]?.Items() ?? [])
         {
-            Covariance = section["covariance"]?.Choice(s_covariances, "shrunk") ?? defaults.Covariance,
-            Lambda = section["lambda"]?.Number(l => l is > 0 and < 1, "a number strictly between 0 and 1") ?? defaults.Lambda,
-            Window = section["window"]?.Whole(2, LongestWindow) ?? defaults.Window,
-            Drift = section["drift"]?.Choice(s_drifts) ?? defaults.Drift,
-            Drifts = Drifts(section),
-            Ageing = section["ageing"]?.Choice(s_ageing) ?? defaults.Ageing,
-        };
-        CheckDriftsAreUsed(section, model);
-        return model;
-    }
-
-    private static void CheckKind(SettingsValue? value, string kind)
-    {
-        if (value is { } given && given.Text(kind) is { } text && text != kind) given.Fault($"{kind}; other kinds of model are not available in this version");
-    }
-
-    private static void CheckDriftsAreUsed(SettingsSection section, ModelSettings model)
-    {
-        if (model.Drift == DriftKind.Explicit) section.Required("drifts", "returns per year by factor, which drift 'explicit' needs");
-        else section["drifts"]?.Fault("no drifts, which only drift 'explicit' uses");
-    }
-
-    private static SortedDictionary<string, double> Drifts(SettingsSection section)
-    {
-        var drifts = new SortedDictionary<string, double>(StringComparer.Ordinal);
-        foreach (var (factor, value) in section["drifts"]?.Named() ?? [])
-        {
-            if (value.Number(d => Math.Abs(d) <= LargestDrift, $"a return per year from -{LargestDrift} to {LargestDrift}") is { } drift) drifts[factor] = drift;
+            if (item.Text(Expected(models)) is not { } name) continue;
+            if (!models.TryGetValue(name, out var model)) item.Fault(Expected(models));
+            else if (name == record.Name) item.Fault("another model than the one of record");
+            else if (!found.TryAdd(name, model)) item.Fault("each challenger once");
         }
-        return drifts;
+        return [.. found.Values];
+    }
+
+    private static string Expected(IReadOnlyDictionary<string, ModelSettings> models) => "the name of a model: " + string.Join(", ", models.Keys);
+
+    // Which span is worst can be searched only for what is calibrated to a history.
+    private static ModelSettings? Calibrated(SettingsValue? named, SortedDictionary<string, ModelSettings> models)
+    {
+        string[] fit = [.. models.Where(m => m.Value is { Kind: not ModelKind.Stressed, Covariance: not CovarianceEstimator.Given }).Select(m => m.Key)];
+        var expected = fit.Length == 0 ? "the name of a model that is calibrated to the history; there is none" : "the name of a model that is calibrated to the history: " + string.Join(", ", fit);
+        if (named?.Text(expected) is not { } name) return null;
+        if (fit.Contains(name, StringComparer.Ordinal)) return models[name];
+        named.Value.Fault(expected);
+        return null;
     }
 }

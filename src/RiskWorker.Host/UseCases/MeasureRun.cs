@@ -106,17 +106,17 @@ public sealed class MeasureRun(FeedRefresh refresh, Rehearsal rehearsal, TimePro
 
     private (RunRecord Record, FrozenSnapshot Inputs) Past(Work work, DateOnly asOf, RunSettings settings)
     {
-        var (record, inputs) = Calculate(work with { Progress = s_quiet }, asOf, settings, clock.GetUtcNow(), 0);
+        var (record, inputs) = Calculate(work with { Progress = s_quiet }, asOf, settings, clock.GetUtcNow(), 0, isEvidence: true);
         return (record with { Evidence = EvidenceKind.Backfilled, Results = RunRecords.EvidenceAlone(record.Results) }, inputs);
     }
 
-    private (RunRecord Record, FrozenSnapshot Inputs) Calculate(Work work, DateOnly asOf, RunSettings settings, DateTimeOffset started, double load)
+    private (RunRecord Record, FrozenSnapshot Inputs) Calculate(Work work, DateOnly asOf, RunSettings settings, DateTimeOffset started, double load, bool isEvidence = false)
     {
         var watch = Stopwatch.StartNew();
         var inputs = work.Reader.Freeze(asOf, settings, settings.Model.Name);
         var snapshot = inputs.Snapshot;
         load += watch.Elapsed.TotalSeconds;
-        var calculator = new RunCalculator(snapshot, work.Request.Threads ?? Environment.ProcessorCount, new SimulationProgress(work.Progress), work.Cancellation);
+        var calculator = new RunCalculator(snapshot, work.Request.Threads ?? Environment.ProcessorCount, new SimulationProgress(work.Progress), work.Cancellation) { IsEvidenceOnly = isEvidence };
         var results = calculator.Calculate();
         var previous = work.Store.Runs.PreviousRun(asOf, settings.Model.Name);
         var record = RunRecords.Of(snapshot, results, previous) with

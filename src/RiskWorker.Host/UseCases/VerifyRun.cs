@@ -101,6 +101,7 @@ public sealed class VerifyRun
         var repeated = RunRecords.Of(snapshot, results with
         {
             Backtest = [.. results.Backtest.Select(b => kept.Contains((b.Book, b.Confidence)) ? RunRecords.CountsAlone(b) : b)],
+            Effects = record.Results.Effects is null ? null : results.Effects,
             Sensitivities = record.Results.Sensitivities.Count > 0 ? results.Sensitivities : [],
         }, record.Previous);
         return repeated with

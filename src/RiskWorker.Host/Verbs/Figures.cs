@@ -20,7 +20,7 @@ public static class Figures
     public static string Count(long number) => number.ToString("N0", CultureInfo.InvariantCulture);
 
     /// <summary>As in 'VaR 99% 10d'.</summary>
-    public static string Measure(MeasureSpec spec) => $"{(spec.Kind == MeasureKind.Var ? "VaR" : "ES")} {spec.Confidence} {spec.Horizon.Days}d";
+    public static string Measure(MeasureSpec spec) => $"{(spec.Kind switch { MeasureKind.Var => "VaR", MeasureKind.Es => "ES", _ => "LES" })} {spec.Confidence} {spec.Horizon.Days}d";
 
     /// <summary>As in '2026-11-27'.</summary>
     public static string Date(DateOnly date) => date.ToString("yyyy-MM-dd", CultureInfo.InvariantCulture);

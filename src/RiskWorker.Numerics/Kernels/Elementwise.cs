@@ -70,6 +70,52 @@ public static class Elementwise
             total[i] = AddSquare(values[i], weight, total[i]);
     }
 
+    /// <summary>value·other.</summary>
+    public static double Product(double value, double other) => value * other;
+
+    /// <summary>value·factor.</summary>
+    public static double Scale(double value, double factor) => value * factor;
+
+    /// <summary>product[s] = values[s]·others[s].</summary>
+    /// <param name="values">Numbers.</param>
+    /// <param name="others">As many.</param>
+    /// <param name="product">As many; may be the memory of either.</param>
+    [ScalarTwin(nameof(Product))]
+    public static void Product(ReadOnlySpan<double> values, ReadOnlySpan<double> others, Span<double> product)
+    {
+        Spans.RequireLength(values.Length, others.Length, nameof(others));
+        Spans.RequireLength(values.Length, product.Length, nameof(product));
+        Spans.RequireSameOrApart(values, product, nameof(product));
+        Spans.RequireSameOrApart(others, product, nameof(product));
+        ref double one = ref MemoryMarshal.GetReference(values);
+        ref double other = ref MemoryMarshal.GetReference(others);
+        ref double to = ref MemoryMarshal.GetReference(product);
+        nuint s = 0, length = (nuint)values.Length;
+        for (; s + 8 <= length; s += 8)
+            (Vector512.LoadUnsafe(ref one, s) * Vector512.LoadUnsafe(ref other, s)).StoreUnsafe(ref to, s);
+        for (int i = (int)s; i < values.Length; i++)
+            product[i] = Product(values[i], others[i]);
+    }
+
+    /// <summary>scaled[s] = values[s]·factor.</summary>
+    /// <param name="values">Numbers.</param>
+    /// <param name="factor">What they are multiplied by.</param>
+    /// <param name="scaled">As many; may be the same memory.</param>
+    [ScalarTwin(nameof(Scale))]
+    public static void Scale(ReadOnlySpan<double> values, double factor, Span<double> scaled)
+    {
+        Spans.RequireLength(values.Length, scaled.Length, nameof(scaled));
+        Spans.RequireSameOrApart(values, scaled, nameof(scaled));
+        ref double from = ref MemoryMarshal.GetReference(values);
+        ref double to = ref MemoryMarshal.GetReference(scaled);
+        Vector512<double> factors = Vector512.Create(factor);
+        nuint s = 0, length = (nuint)values.Length;
+        for (; s + 8 <= length; s += 8)
+            (Vector512.LoadUnsafe(ref from, s) * factors).StoreUnsafe(ref to, s);
+        for (int i = (int)s; i < values.Length; i++)
+            scaled[i] = Scale(values[i], factor);
+    }
+
     private static void Apply<TOperation>(ReadOnlySpan<double> values, Span<double> total)
         where TOperation : struct, IOperation
     {

@@ -23,10 +23,12 @@ public static class ResultsJson
         json.WriteStartObject();
         Identity(json, record);
         json.Array("nodes", record.Results.Nodes, Node);
-        json.Array("models", Array.Empty<object>(), (_, _) => { });
+        json.Array("models", record.Results.Models, ModelsJson.Model);
         json.Array("limits", record.Results.Limits, Limit);
         json.Array("findings", record.Results.Findings, Finding);
         json.Array("backtest", record.Results.Backtest, Backtest);
+        json.Array("modelBacktests", record.Results.ModelBacktests, ModelsJson.Backtest);
+        if (record.Results.Effects is { } effects) EffectsJson.Write(json, effects);
         Hypothetical(json, record.Results.Hypothetical);
         json.Lines("sensitivities", record.Results.Sensitivities, Sensitivity);
         Calibration(json, record.Results.Calibration);
@@ -100,16 +102,19 @@ public static class ResultsJson
         json.Array("distributions", node.Distributions, Distribution);
     }
 
-    private static void Measure(Utf8JsonWriter json, MeasureResult measure)
+    internal static void Measure(Utf8JsonWriter json, MeasureResult measure)
     {
         Spec(json, measure.Spec);
         json.Number("value", measure.Value);
         json.Number("low", measure.Low);
         json.Number("high", measure.High);
         json.Number("level", measure.Level);
+        if (measure.Sample is not { } sample) return;
+        json.Number("sampleLow", sample.Low);
+        json.Number("sampleHigh", sample.High);
     }
 
-    private static void Spec(Utf8JsonWriter json, MeasureSpec spec)
+    internal static void Spec(Utf8JsonWriter json, MeasureSpec spec)
     {
         json.WriteString("measure", Words.Of(spec.Kind));
         json.WriteNumber("confidence", spec.Confidence.Level);
@@ -239,7 +244,7 @@ public static class ResultsJson
         json.Number("gamma", sensitivity.Gamma);
     }
 
-    private static void Calibration(Utf8JsonWriter json, CalibrationSummary? calibration)
+    internal static void Calibration(Utf8JsonWriter json, CalibrationSummary? calibration)
     {
         if (calibration is null)
         {
@@ -255,6 +260,7 @@ public static class ResultsJson
         json.WriteNumber("still", calibration.Still);
         json.WriteNumber("rank", calibration.Rank);
         json.Number("repairDistance", calibration.RepairDistance);
+        if (calibration.Parameters.Count > 0) json.Array("parameters", calibration.Parameters, ModelsJson.Parameter);
         json.WriteString("plan", "sha256:" + calibration.Plan);
         json.WriteEndObject();
     }

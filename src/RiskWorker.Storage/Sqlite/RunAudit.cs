@@ -82,7 +82,8 @@ internal static class RunAudit
         var expected = RunRows.Of(RecordJson.Read(json), entry.Content);
         var columns = found[0].AsSpan(0, expected.Run.Count).ToArray().Select(c => c is DBNull ? null : c);
         var whole = columns.SequenceEqual(expected.Run)
-            && RunRows.StoredVars(connection, entry.Run).SequenceEqual(expected.Vars) && RunRows.StoredProfit(connection, entry.Run).SequenceEqual(expected.Profit);
+            && RunRows.StoredVars(connection, entry.Run).SequenceEqual(expected.Vars) && RunRows.StoredChallengers(connection, entry.Run).SequenceEqual(expected.Challengers)
+            && RunRows.StoredProfit(connection, entry.Run).SequenceEqual(expected.Profit);
         return whole ? null : $"What is kept beside the record of run {entry.Run} differs from the record: it was altered.";
     }
 

@@ -1,3 +1,4 @@
+using RiskWorker.Domain.Limits;
 using RiskWorker.Domain.Market;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Storage.Feed.Rows;
@@ -9,11 +10,11 @@ internal static class SettingsText
 {
     public static SnapshotLeaf Leaf(RunSettings settings)
     {
-        var (model, simulation, checks) = (settings.Model, settings.Simulation, settings.Checks);
+        var (simulation, checks) = (settings.Simulation, settings.Checks);
         var text = new CanonicalText();
-        text.Text("model").Text(model.Name).Text(model.Kind).Text(Spelling.Of(model.Covariance)).Number(model.Lambda).Value<int>(model.Window).Text(Spelling.Of(model.Drift)).End();
-        foreach (var (factor, drift) in model.Drifts) text.Text("drift").Text(factor).Number(drift).End();
-        if (model.Ageing != AgeingKind.None) text.Text("ageing").Text(Spelling.Of(model.Ageing)).End();
+        ModelText.Write(text, ModelText.Record, settings.Model);
+        foreach (var (i, challenger) in settings.Challengers.Index()) ModelText.Write(text, ModelText.Challenger(i), challenger);
+        foreach (var rule in settings.Rules) text.Text("rule").Text(rule.Set).Text(rule.Book).Text(rule.ReferenceBook).End();
         foreach (var spec in settings.Measures) text.Text("measure").Text(Spelling.Of(spec.Kind)).Value<decimal>(spec.Confidence.Level).Value<int>(spec.Horizon.Days).End();
         text.Text("simulation").Value<int>(simulation.Scenarios).Value<ulong>(simulation.Seed).Value<int>(simulation.Looks).Value<int>(simulation.Cap).Number(simulation.Precision).End();
         if (simulation is not { Revaluation: RevaluationKind.Surface, SurfaceError: 1e-7, ExactTail: true })
@@ -31,28 +32,16 @@ internal static class SettingsText
         var rows = CanonicalRow.Of(text).ToLookup(row => row.Name(), StringComparer.Ordinal);
         return new()
         {
-            Model = Model(rows["model"].Single()) with
-            {
-                Drifts = Sorted(rows["drift"], row => row.Amount()),
-                Ageing = rows["ageing"].SingleOrDefault()?.Choice<AgeingKind>() ?? AgeingKind.None, // stands only where it is not the usual one
-            },
+            Model = ModelText.Read(rows, ModelText.Record),
+            Challengers = [.. Enumerable.Range(0, int.MaxValue).Select(ModelText.Challenger).TakeWhile(rows.Contains).Select(place => ModelText.Read(rows, place))],
+            Rules = [.. rows["rule"].Select(row => new RuleChoice(row.Name(), row.Text(), row.Text()))],
             Measures = [.. rows["measure"].Select(LeafText.Measure).Order()],
             Simulation = Simulation(rows["simulation"].Single(), rows["revaluation"].SingleOrDefault()),
-            Checks = Checks(rows["checks"].Single()) with { Severity = Sorted(rows["severity"], row => row.Choice<FindingSeverity>()) },
+            Checks = Checks(rows["checks"].Single()) with { Severity = ModelText.Sorted(rows["severity"], row => row.Choice<FindingSeverity>()) },
             TimeEffectsIncluded = rows["time-effects"].Single().Name() == "included",
             CurveInterpolation = rows["curves"].SingleOrDefault()?.Choice<CurveInterpolation>() ?? CurveInterpolation.LinearZero, // stands only where it is not the usual one
         };
     }
-
-    private static ModelSettings Model(CanonicalRow row) => new()
-    {
-        Name = row.Name(),
-        Kind = row.Name(),
-        Covariance = row.Choice<CovarianceEstimator>(),
-        Lambda = row.Amount(),
-        Window = row.Whole<int>(),
-        Drift = row.Choice<DriftKind>(),
-    };
 
     // The row on revaluation stands only where it is not the usual one.
     private static SimulationSettings Simulation(CanonicalRow row, CanonicalRow? revaluation)
@@ -77,11 +66,4 @@ internal static class SettingsText
         ValueTolerance = row.Amount(),
         GrossChange = row.Amount(),
     };
-
-    private static SortedDictionary<string, T> Sorted<T>(IEnumerable<CanonicalRow> rows, Func<CanonicalRow, T> value)
-    {
-        var sorted = new SortedDictionary<string, T>(StringComparer.Ordinal);
-        foreach (var row in rows) sorted.Add(row.Name(), value(row));
-        return sorted;
-    }
 }

@@ -16,6 +16,9 @@ public sealed class SnapshotReader(RiskStore store)
     /// <summary>Observation dates before the as-of date whose runs and profit are read: 250 days are counted, and gaps need a few more.</summary>
     public const int Window = 260;
 
+    /// <summary>The same where models run side by side: they are compared over 500 days too.</summary>
+    public const int LongWindow = 515;
+
     private readonly Lock _gate = new();
     private readonly CountableRuns _runs = new();
     private FeedState? _state;
@@ -64,7 +67,7 @@ public sealed class SnapshotReader(RiskStore store)
     {
         _runs.Follow(connection);
         var observations = state.Observations.UpTo(asOf);
-        var from = observations.Count == 0 ? asOf : observations.Dates[Math.Max(0, observations.Count - 1 - Window)];
+        var from = observations.Count == 0 ? asOf : observations.Dates[Math.Max(0, observations.Count - 1 - (settings.Challengers.Count > 0 ? LongWindow : Window))];
         var profit = state.Profit(from, asOf);
         var runs = _runs.Between(connection, model, from, asOf);
         var counted = runs.ConvertAll(r => r.Run);
@@ -73,7 +76,7 @@ public sealed class SnapshotReader(RiskStore store)
         var previous = before < 0 ? null : Dated(connection, state.PositionDates[before]);
         var earlier = WithoutProfit(observations, counted, asOf, previous?.Date)
             .Where(day => Array.BinarySearch(state.PositionDates, day) >= 0).Select(day => Dated(connection, day)).ToArray();
-        var withCovariance = settings.Model.Covariance == CovarianceEstimator.Given;
+        var withCovariance = settings.Challengers.Append(settings.Model).Any(m => m.Covariance == CovarianceEstimator.Given);
         SnapshotLeaf[] leaves =
         [
             SnapshotLeaves.AsOf(asOf, previous?.Date), SettingsText.Leaf(settings), SnapshotLeaf.Of("model", model),

@@ -23,7 +23,7 @@ public sealed class AgeingChecksTests
     [Fact]
     public void Run_names_what_ends_pays_or_is_fixed_inside_the_longest_horizon()
     {
-        var finding = Findings(1, 10).One(FindingCodes.LineExpires);
+        var finding = Findings(10).One(FindingCodes.LineExpires);
         Assert.Equal(FindingSeverity.Warning, finding.Severity);
         Assert.Equal("3 lines expire, pay or are fixed inside 10 days: ASIAN (is fixed on 2026-12-02), BOND (pays on 2026-12-04), CALL (expires on 2026-12-03); "
             + "nothing, where the dates are right; else correct them in instruments.csv.", finding.Message);
@@ -43,16 +43,16 @@ public sealed class AgeingChecksTests
     [Fact]
     public void Model_without_ageing_ages_nothing()
     {
-        var snapshot = new AgedMarket { Ageing = AgeingKind.None }.Holding(s_instruments).Snapshot();
-        Assert.Null(new BookValuation(snapshot, BookTree.Build(snapshot.Books).Tree!, Calibrator.Calibrate(snapshot)).Ageing(snapshot, [new(10)]));
+        var (aged, still) = (new AgedMarket().Holding(s_instruments), new AgedMarket { Ageing = AgeingKind.None }.Holding(s_instruments));
+        Assert.Single(aged.Compile(10).Plan.Aged);
+        Assert.Empty(still.Compile(10).Plan.Aged);
     }
 
-    private static IReadOnlyList<Finding> Findings(params int[] horizons)
+    private static IReadOnlyList<Finding> Findings(int longest)
     {
         var snapshot = new AgedMarket().Holding(s_instruments).Snapshot();
         var tree = BookTree.Build(snapshot.Books).Tree!;
         var valued = new BookValuation(snapshot, tree, Calibrator.Calibrate(snapshot));
-        Horizon[] days = [.. horizons.Select(h => new Horizon(h))];
-        return AgeingChecks.Run(valued.Ageing(snapshot, days)!, tree, valued.Today, days, snapshot.Settings.Checks);
+        return AgeingChecks.Run(valued.Ageing(snapshot), tree, valued.Today, new(longest), snapshot.Settings.Checks);
     }
 }

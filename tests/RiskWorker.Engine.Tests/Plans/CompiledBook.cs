@@ -18,7 +18,7 @@ internal sealed record CompiledBook(Snapshot Snapshot, BookTree Tree, Calibrated
         var valued = new BookValuation(snapshot, tree, model);
         Assert.All(valued.Today, line => Assert.Null(line.Unpriced));
         Horizon[] days = [.. horizons.Select(h => new Horizon(h))];
-        var plan = new PlanCompiler(tree, model, valued.Binder.Currencies, days).Compile(snapshot.Settings.Simulation.Seed, valued.Today, ageing: valued.Ageing(snapshot, days));
+        var plan = new PlanCompiler(tree, model, valued.Binder.Currencies, days).Compile(snapshot.Settings.Simulation.Seed, valued.Today, ageing: snapshot.Settings.Model.Ages ? valued.Ageing(snapshot) : null);
         return new(snapshot, tree, model, plan);
     }
 

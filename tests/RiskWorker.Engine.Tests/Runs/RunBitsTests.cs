@@ -28,7 +28,8 @@ public sealed class RunBitsTests
     public void Everything_computed_is_the_same_on_one_thread_and_on_seven()
     {
         var (one, seven) = (Calculated(1), Calculated(7));
-        Assert.Equal(one.Calibration, seven.Calibration);
+        Assert.Equal(one.Calibration!.Parameters, seven.Calibration!.Parameters);
+        Assert.Equal(one.Calibration with { Parameters = [] }, seven.Calibration with { Parameters = [] });
         Assert.Equal(one.Limits, seven.Limits);
         foreach (var (a, b) in one.Nodes.Zip(seven.Nodes).SelectMany(n => n.First.Distributions.Zip(n.Second.Distributions)))
         {

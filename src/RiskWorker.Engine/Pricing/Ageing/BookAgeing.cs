@@ -2,30 +2,36 @@ using RiskWorker.Domain.Runs;
 
 namespace RiskWorker.Engine.Pricing.Ageing;
 
-/// <summary>What every instrument of a book turns into by each horizon of a run.</summary>
+/// <summary>What every instrument of a book turns into by a horizon: found when it is first asked for, on one thread.</summary>
 public sealed class BookAgeing
 {
-    private readonly IReadOnlyDictionary<(string Instrument, int Days), AgedInstrument> _aged;
+    private readonly Dictionary<string, LineValue> _held = new(StringComparer.Ordinal);
+    private readonly Dictionary<(string Instrument, int Days), AgedInstrument> _aged = [];
+    private readonly InstrumentAgeing? _ageing;
+    private readonly DateOnly _asOf;
 
     /// <summary>Takes what each instrument turns into by so many business days.</summary>
-    public BookAgeing(IReadOnlyDictionary<(string Instrument, int Days), AgedInstrument> aged) => _aged = aged;
+    public BookAgeing(IReadOnlyDictionary<(string Instrument, int Days), AgedInstrument> aged) => _aged = new(aged);
 
-    /// <summary>Ages the priced ones among <paramref name="lines"/>.</summary>
+    /// <summary>Takes the priced ones among <paramref name="lines"/>.</summary>
     /// <param name="lines">The lines.</param>
     /// <param name="ageing">Ages an instrument.</param>
     /// <param name="asOf">The date of the positions.</param>
-    /// <param name="horizons">The horizons.</param>
-    public static BookAgeing Of(IReadOnlyList<LineValue> lines, InstrumentAgeing ageing, DateOnly asOf, IEnumerable<Horizon> horizons)
+    public BookAgeing(IReadOnlyList<LineValue> lines, InstrumentAgeing ageing, DateOnly asOf)
     {
-        var aged = new Dictionary<(string, int), AgedInstrument>();
-        var held = lines.Where(l => l.Unpriced is null).DistinctBy(l => l.Position.Instrument, StringComparer.Ordinal).ToList();
-        foreach (var dates in horizons.Distinct().Select(h => new HorizonDates(asOf, h.Days)))
+        (_ageing, _asOf) = (ageing, asOf);
+        foreach (var line in lines)
         {
-            foreach (var line in held) aged[(line.Position.Instrument, dates.Days)] = ageing.Over(line.Instrument!, line.Bound!, dates);
+            if (line.Unpriced is null) _held.TryAdd(line.Position.Instrument, line);
         }
-        return new(aged);
     }
 
     /// <summary>What <paramref name="instrument"/> turns into by <paramref name="horizon"/>.</summary>
-    public AgedInstrument Of(string instrument, Horizon horizon) => _aged[(instrument, horizon.Days)];
+    /// <exception cref="KeyNotFoundException">It is not among those given.</exception>
+    public AgedInstrument Of(string instrument, Horizon horizon)
+    {
+        if (_aged.TryGetValue((instrument, horizon.Days), out var aged)) return aged;
+        var line = _held[instrument];
+        return _aged[(instrument, horizon.Days)] = _ageing!.Over(line.Instrument!, line.Bound!, new(_asOf, horizon.Days));
+    }
 }

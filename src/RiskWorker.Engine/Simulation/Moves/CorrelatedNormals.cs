@@ -8,7 +8,7 @@ namespace RiskWorker.Engine.Simulation.Moves;
 internal sealed class CorrelatedNormals(int capacity)
 {
     private FactorMoves _moves = null!;
-    private DrawStream _stream;
+    private ulong _seed;
     private double[] _draws = [];
     private double[] _normals = [];
 
@@ -18,13 +18,16 @@ internal sealed class CorrelatedNormals(int capacity)
     /// <summary>Turns to <paramref name="plan"/>.</summary>
     public void Serve(RevaluationPlan plan)
     {
-        (_moves, _stream) = (plan.Moves, new(plan.Seed, DrawPurpose.FactorMoves, 0));
+        (_moves, _seed) = (plan.Moves, plan.Seed);
         Room.For(ref _draws, (_moves.Rank + 1) * capacity); // room for the second half of an odd last pair
         Room.For(ref _normals, _moves.Rows * capacity);
     }
 
     /// <summary>Draws scenarios <paramref name="first"/> to first + width - 1.</summary>
-    public void Draw(long first, int width) => Draw(_stream, first, width);
+    /// <param name="first">Number of the first scenario.</param>
+    /// <param name="width">Scenarios.</param>
+    /// <param name="day">Which day's, where days are drawn one by one: each has a stream of its own, the first that of a single draw.</param>
+    public void Draw(long first, int width, uint day = 0) => Draw(new DrawStream(_seed, DrawPurpose.FactorMoves, day), first, width);
 
     /// <summary>The same from a stream of its own.</summary>
     public void Draw(DrawStream stream, long first, int width)

@@ -15,6 +15,11 @@ internal abstract class MoveSource
         MoveSource source = plan.Law switch
         {
             LognormalLaw => before as NormalMoves ?? new NormalMoves(capacity),
+            StudentLaw { Margins: null } => before as StudentMoves ?? new StudentMoves(capacity),
+            StudentLaw => before as CopulaMoves ?? new CopulaMoves(capacity),
+            FilteredHistoryLaw => before as FilteredMoves ?? new FilteredMoves(capacity),
+            JumpLaw => before as JumpMoves ?? new JumpMoves(capacity),
+            HistoricalLaw => before as HistoricalMoves ?? new HistoricalMoves(capacity),
             _ => throw new InvalidOperationException($"No draws are known for {plan.Law.GetType().Name}."),
         };
         source.Serve(plan);

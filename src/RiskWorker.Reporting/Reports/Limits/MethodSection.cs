@@ -28,7 +28,7 @@ internal static class MethodSection
         var model = run.Record.Settings.Model;
         var facts = new List<Fact>
         {
-            new("Name, kind", $"{model.Name}, {model.Kind}"),
+            new("Name, kind", $"{model.Name}, {ModelKinds.NameOf(model.Kind)}"),
             new("Covariance", ModelWords.Covariance(model)),
             new("Drift", ModelWords.Drift(model)),
         };

@@ -9,8 +9,9 @@ internal static class ModelWords
     /// <summary>One line: name, kind, covariance, and whether it ages.</summary>
     public static string Line(ModelSettings model)
     {
-        var name = model.Name == model.Kind ? model.Kind : $"{model.Name} ({model.Kind})";
-        return $"{name}, {Covariance(model)}{(model.Ageing == AgeingKind.None ? "" : ", the valuation date moved by the horizon")}";
+        var kind = ModelKinds.NameOf(model.Kind);
+        var name = model.Name == kind ? kind : $"{model.Name} ({kind})";
+        return $"{name}, {Covariance(model)}{(model.Ages ? ", the valuation date moved by the horizon" : "")}";
     }
 
     public static string Covariance(ModelSettings model) => model.Covariance switch
@@ -27,7 +28,7 @@ internal static class ModelWords
         _ => $"given for {Phrases.Plural(model.Drifts.Count, "factor")}, zero for the others",
     };
 
-    public static string Ageing(ModelSettings model) => model.Ageing == AgeingKind.None
+    public static string Ageing(ModelSettings model) => !model.Ages
         ? "The shock is instantaneous: nothing expires or pays inside the horizon."
         : "The valuation date moves by the horizon (Monday to Friday): what expires, pays or is fixed inside does so at a close on the way there, a Brownian bridge of all factors; "
             + "what is paid counts in V(h), as cash in its own currency without interest. Sensitivities are instantaneous.";

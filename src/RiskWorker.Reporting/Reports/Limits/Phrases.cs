@@ -71,7 +71,7 @@ internal static class Phrases
     public static string Bound(RunReading run, LimitResult limit) => $"{run.NameOf(limit.Limit.Book)}, {limit.Limit.Measure}";
 
     /// <summary>A measure without its horizon: VaR 99%.</summary>
-    public static string Short(MeasureSpec spec) => spec.Kind == MeasureKind.Var ? $"VaR {spec.Confidence}" : $"ES {spec.Confidence}";
+    public static string Short(MeasureSpec spec) => spec.Kind switch { MeasureKind.Var => $"VaR {spec.Confidence}", MeasureKind.Es => $"ES {spec.Confidence}", _ => $"LES {spec.Confidence}" };
 
     /// <summary>A measure as a column's head: the horizon stays on one line.</summary>
     public static string Head(MeasureSpec spec) => $"{Short(spec)}, {spec.Horizon.ToString().Replace(' ', '\u00A0')}";

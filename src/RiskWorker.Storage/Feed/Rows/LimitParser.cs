@@ -19,12 +19,15 @@ internal sealed class LimitParser : IRowParser<string?[]>
 
     private const int Basis = 6, Reference = 7, WarnAt = 8, ValidFrom = 9, ValidTo = 10;
 
+    // A limit is decided by intervals from the sample itself, which a liquidity-adjusted measure has not.
+    private static readonly Dictionary<string, MeasureKind> s_measures = Spelling.Of<MeasureKind>().Where(m => m.Value != MeasureKind.Les).ToDictionary(StringComparer.Ordinal);
+
     private readonly FirstLines<string> _names = new(StringComparer.Ordinal);
 
     public bool TryParse(CellReader cells, out string?[] row)
     {
         var (name, book) = (cells.Name(0), cells.Name(1));
-        var measure = cells.Choice(2, Spelling.Of<MeasureKind>());
+        var measure = cells.Choice(2, s_measures);
         var confidence = new Confidence(cells.Fraction(3)).Level.ToString(CultureInfo.InvariantCulture);
         var horizon = cells.Count(4, MostDays).ToString(CultureInfo.InvariantCulture);
         var amount = cells.Number(5, "a number above 0", value => value > 0);
