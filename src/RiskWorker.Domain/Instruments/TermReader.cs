@@ -32,13 +32,12 @@ internal sealed class TermReader(IReadOnlyDictionary<string, string> terms)
 
     public T Choice<T>(string term) where T : struct, Enum
     {
-        var expected = "one of " + string.Join(", ", Enum.GetNames<T>()).ToLowerInvariant();
-        if (OptionalText(term) is not { } text) return Missing<T>(term, expected);
-        foreach (var value in Enum.GetValues<T>())
+        if (OptionalText(term) is not { } text) return Missing<T>(term, Choices<T>.Expected);
+        foreach (var (spelling, value) in Choices<T>.All)
         {
-            if (text.Equals(value.ToString().ToLowerInvariant(), StringComparison.Ordinal)) return value;
+            if (text == spelling) return value;
         }
-        return Wrong<T>(term, text, expected);
+        return Wrong<T>(term, text, Choices<T>.Expected);
     }
 
     public RateTerm? Rate(string term)
@@ -78,5 +77,12 @@ internal sealed class TermReader(IReadOnlyDictionary<string, string> terms)
     {
         Faults.Add(new(term, found, expected));
         return default;
+    }
+
+    /// <summary>How the members of an enumeration are spelt, made once: hundreds of thousands of instruments choose.</summary>
+    private static class Choices<T> where T : struct, Enum
+    {
+        public static readonly (string Spelling, T Value)[] All = [.. Enum.GetValues<T>().Select(v => (v.ToString().ToLowerInvariant(), v))];
+        public static readonly string Expected = "one of " + string.Join(", ", Enum.GetNames<T>()).ToLowerInvariant();
     }
 }

@@ -16,7 +16,7 @@ public static class FeedLoader
     public static FeedOutcome Check(string feedFolder, IProgress<FeedProgress>? progress = null, CancellationToken cancellation = default)
     {
         using var folder = new FeedFolder(feedFolder, cancellation);
-        return Checked(folder, progress, cancellation);
+        return Checked(folder, toBeStored: false, progress, cancellation);
     }
 
     /// <summary>Checks the folder and stores it, unless each of its files is what was loaded last.</summary>
@@ -31,7 +31,7 @@ public static class FeedLoader
         ArgumentNullException.ThrowIfNull(store);
         using var folder = new FeedFolder(feedFolder, cancellation);
         if (folder.Missing.Count == 0 && IsStored(folder, store)) return new() { Faults = [], Warnings = store.FeedWarnings, Files = [], AlreadyLoaded = true };
-        var outcome = Checked(folder, progress, cancellation);
+        var outcome = Checked(folder, toBeStored: true, progress, cancellation);
         if (outcome.Faults.Count > 0) return outcome;
         try
         {
@@ -43,21 +43,23 @@ public static class FeedLoader
         }
     }
 
-    private static FeedOutcome Checked(FeedFolder folder, IProgress<FeedProgress>? progress, CancellationToken cancellation)
+    private static FeedOutcome Checked(FeedFolder folder, bool toBeStored, IProgress<FeedProgress>? progress, CancellationToken cancellation)
     {
-        var files = new List<FeedFileOutcome>();
-        foreach (var (table, stream, inspection, faults, warnings) in folder.Files)
-        {
-            if (inspection.InvalidLine > 0) faults.Add(inspection.InvalidLine, null, string.Create(CultureInfo.InvariantCulture, $"byte 0x{inspection.InvalidByte:X2}"), "text in UTF-8");
-            var rows = table.Check(stream, faults, warnings, progress, cancellation);
-            files.Add(new(table.Format.File, rows, 0, 0, 0, 0, faults.Count));
-        }
+        var files = SideBySide.Each(folder.Files, (file, serial) => Checked(file, toBeStored, serial, cancellation), progress, cancellation);
         return new()
         {
             Faults = [.. folder.Missing, .. folder.Files.SelectMany(f => f.Faults.First)],
             Warnings = [.. folder.Strays.Findings(), .. folder.Files.SelectMany(f => f.Warnings.Findings())],
             Files = files,
         };
+    }
+
+    private static FeedFileOutcome Checked(FeedFolder.OpenFile file, bool toBeStored, IProgress<FeedProgress>? progress, CancellationToken cancellation)
+    {
+        var (table, stream, inspection, faults, warnings) = file;
+        if (inspection.InvalidLine > 0) faults.Add(inspection.InvalidLine, null, string.Create(CultureInfo.InvariantCulture, $"byte 0x{inspection.InvalidByte:X2}"), "text in UTF-8");
+        var rows = table.Check(stream, toBeStored, faults, warnings, progress, cancellation);
+        return new(table.Format.File, rows, 0, 0, 0, 0, faults.Count);
     }
 
     private static bool IsStored(FeedFolder folder, RiskStore store)

@@ -28,8 +28,9 @@ internal sealed class WarningLog(string file)
 
     public void Add(string code, string subject)
     {
-        var (count, first) = _byCode.GetValueOrDefault(code, (0, new SortedSet<string>(StringComparer.Ordinal)));
-        first.Add(subject);
+        if (!_byCode.TryGetValue(code, out var known)) known = (0, new(StringComparer.Ordinal));
+        var (count, first) = known;
+        if (first.Count < Named || string.CompareOrdinal(subject, first.Max) < 0) first.Add(subject);
         if (first.Count > Named) first.Remove(first.Max!);
         _byCode[code] = (count + 1, first);
     }

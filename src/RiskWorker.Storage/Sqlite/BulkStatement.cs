@@ -10,19 +10,26 @@ namespace RiskWorker.Storage.Sqlite;
 /// </summary>
 internal sealed class BulkStatement : IDisposable
 {
+    private static readonly object s_nothing = new();
+
     private readonly sqlite3 _database;
     private readonly sqlite3_stmt _statement;
+    private readonly object?[] _bound;
     private byte[] _utf8 = new byte[1024];
 
     public BulkStatement(SqliteConnection connection, string sql)
     {
         _database = connection.Handle!;
         Check(raw.sqlite3_prepare_v2(_database, sql, out _statement));
+        _bound = new object?[raw.sqlite3_bind_parameter_count(_statement)];
+        Array.Fill(_bound, s_nothing);
     }
 
-    /// <summary>Sets parameter <paramref name="index"/>, counted from 0.</summary>
+    /// <summary>Sets parameter <paramref name="index"/>, counted from 0. What it was set to last stays: books and dates repeat from row to row.</summary>
     public BulkStatement Set(int index, string? text)
     {
+        if (ReferenceEquals(text, _bound[index])) return this;
+        _bound[index] = text;
         if (text is null)
         {
             Check(raw.sqlite3_bind_null(_statement, index + 1));
@@ -36,6 +43,7 @@ internal sealed class BulkStatement : IDisposable
     /// <summary>Sets parameter <paramref name="index"/>, counted from 0.</summary>
     public BulkStatement Set(int index, long value)
     {
+        _bound[index] = s_nothing;
         Check(raw.sqlite3_bind_int64(_statement, index + 1, value));
         return this;
     }

@@ -17,7 +17,8 @@ internal sealed class FeedState
     public FeedState(SqliteConnection connection, long load)
     {
         Load = load;
-        var instruments = ReferenceData.InstrumentRows(connection);
+        var instruments = InstrumentRows.Read(connection);
+        var instrumentLeaf = Task.Run(() => SnapshotLeaves.Instruments(instruments));
         Reference = ReferenceData.Read(connection, instruments);
         Observations = ReadObservations(connection, Reference.Factors);
         PositionDates = [.. connection.Query("SELECT as_of FROM position_date ORDER BY as_of", r => Iso.Date(r.GetString(0)))];
@@ -30,7 +31,7 @@ internal sealed class FeedState
         _wholeLeaves =
         [
             .. SnapshotLeaves.Reference(Reference),
-            SnapshotLeaves.Instruments(instruments),
+            instrumentLeaf.GetAwaiter().GetResult(),
         ];
     }
 
@@ -84,12 +85,13 @@ internal sealed class FeedState
         var names = factors.ToDictionary(f => f.Name, f => f.Name, StringComparer.Ordinal);
         var (lastText, lastDate) = ("", default(DateOnly));
         var rows = new List<Observation>();
-        using var statement = new Statement(connection, "SELECT date, factor, value FROM observation ORDER BY date");
-        foreach (var (date, factor, value) in statement.Rows(r => (r.GetString(0), r.GetString(1), r.Number(2)!.Value)))
+        using var query = new BulkQuery(connection, "SELECT date, factor, value FROM observation ORDER BY date");
+        while (query.Next())
         {
-            if (!names.TryGetValue(factor, out var name)) continue;
+            if (!names.TryGetValue(query.Name(1), out var name)) continue;
+            var date = query.Name(0);
             if (date != lastText) (lastText, lastDate) = (date, Iso.Date(date));
-            rows.Add(new(lastDate, name, value));
+            rows.Add(new(lastDate, name, query.Number(2)!.Value));
         }
         return ObservationHistory.From(names.Keys, rows);
     }

@@ -1,5 +1,4 @@
 using System.Globalization;
-using System.Text.Json;
 using Microsoft.Data.Sqlite;
 using RiskWorker.Domain.Books;
 using RiskWorker.Domain.Instruments;
@@ -25,7 +24,7 @@ internal sealed record ReferenceData(
     public static ReferenceData Read(SqliteConnection connection, IReadOnlyList<string?[]> instruments) => InOrder(
         WithCurrencies(connection.Query("SELECT book, parent, name, currency FROM book", ReadBook)),
         connection.Query("SELECT factor, class, shock, currency, curve, tenor_years, calendar, liquidity_days, proxy, beta FROM factor", ReadFactor),
-        instruments.AsParallel().AsOrdered().Select(Instrument),
+        instruments.AsParallel().AsOrdered().Select(Instrument).ToArray(),
         connection.Query("""SELECT "limit", book, measure, confidence, horizon_days, amount, basis, reference_book, warn_at, valid_from, valid_to, approver, reason FROM risk_limit""", ReadLimit),
         connection.Query("SELECT calendar, date FROM holiday", r => new Holiday(r.GetString(0), Iso.Date(r.GetString(1)))),
         connection.Query("SELECT factor, date, ratio, reason FROM adjustment", r => new Adjustment(r.GetString(0), Iso.Date(r.GetString(1)), r.Number(2)!.Value, r.Text(3))),
@@ -45,14 +44,10 @@ internal sealed record ReferenceData(
         [.. covariance.OrderBy(c => c.Factor, StringComparer.Ordinal).ThenBy(c => c.Other, StringComparer.Ordinal)],
         [.. warnings.OrderBy(w => w.Subject, StringComparer.Ordinal).ThenBy(w => w.Code, StringComparer.Ordinal)]);
 
-    /// <summary>Instruments as they are stored: name, kind, currency, terms, issuer, lot and daily volume.</summary>
-    public static List<string?[]> InstrumentRows(SqliteConnection connection) => connection.Query(
-        "SELECT instrument, kind, currency, terms, issuer, lot, daily_volume FROM instrument", r => Enumerable.Range(0, 7).Select(r.Text).ToArray());
-
     /// <summary>Reads a row of <see cref="InstrumentRows"/>; one with a term that only an earlier version took stays, unmodelled.</summary>
     public static Instrument Instrument(string?[] cells)
     {
-        var terms = JsonSerializer.Deserialize(cells[3]!, TermsJson.Default.SortedDictionaryStringString)!;
+        var terms = TermsText.Read(cells[3]!);
         return InstrumentReader.ReadAccepted(new(cells[0]!, cells[1]!, cells[2]!, terms, cells[4], Number(cells[5]), Number(cells[6])));
     }
 

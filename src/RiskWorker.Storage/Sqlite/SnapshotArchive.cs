@@ -31,13 +31,10 @@ public sealed class SnapshotArchive
             // Remembered only once they are read back: this transaction may yet be undone.
             var added = new Dictionary<string, long>(StringComparer.Ordinal);
             using var insert = new Statement(connection, "INSERT INTO snapshot_part (hash, content) VALUES (?1, ?2) RETURNING id", 2);
-            var parts = new List<(string, long)>(frozen.Leaves.Count);
-            foreach (var (part, text) in frozen.Leaves)
-            {
-                if (!_known.TryGetValue(part.Hash, out var id) && !added.TryGetValue(part.Hash, out id))
-                    added[part.Hash] = id = (long)insert.Set(0, part.Hash).Set(1, Zlib.Pack(text)).Scalar()!;
-                parts.Add((part.Path, id));
-            }
+            var unknown = frozen.Leaves.Where(l => !_known.ContainsKey(l.Part.Hash)).DistinctBy(l => l.Part.Hash).ToList();
+            foreach (var (hash, content) in unknown.AsParallel().AsOrdered().Select(l => (l.Part.Hash, Content: Zlib.Pack(l.Text))))
+                added[hash] = (long)insert.Set(0, hash).Set(1, content).Scalar()!;
+            var parts = frozen.Leaves.Select(l => (l.Part.Path, _known.TryGetValue(l.Part.Hash, out var id) ? id : added[l.Part.Hash]));
             connection.Run("INSERT INTO snapshot (root, parts) VALUES (?1, ?2)", root, PartList.Pack(parts));
         }
     }

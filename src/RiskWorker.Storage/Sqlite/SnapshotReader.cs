@@ -128,18 +128,13 @@ public sealed class SnapshotReader(RiskStore store)
 
     private static Position[] Positions(SqliteConnection connection, DateOnly date)
     {
-        var names = new HashSet<string>(StringComparer.Ordinal);
-        var positions = connection.Query("SELECT book, instrument, quantity, trade, market_value FROM position WHERE as_of = ?1",
-            r => new Position(Shared(names, r.GetString(0)), Shared(names, r.GetString(1)), r.Number(2)!.Value, r.Text(3), r.Number(4)), Iso.Of(date)).ToArray();
-        Array.Sort(positions, Canonical);
-        return positions;
-    }
-
-    private static string Shared(HashSet<string> names, string name)
-    {
-        if (names.TryGetValue(name, out var known)) return known;
-        names.Add(name);
-        return name;
+        var positions = new List<Position>();
+        using (var query = new BulkQuery(connection, "SELECT book, instrument, quantity, trade, market_value FROM position WHERE as_of = ?1", Iso.Of(date)))
+        {
+            while (query.Next()) positions.Add(new(query.Name(0), query.Name(1), query.Number(2)!.Value, query.Text(3), query.Number(4)));
+        }
+        positions.Sort(Canonical);
+        return [.. positions];
     }
 
     /// <summary>The order of the positions of a date: by book, instrument, trade, then quantity and market value.</summary>

@@ -22,9 +22,9 @@ public sealed class AgedRunTests : IDisposable
         using var results = JsonDocument.Parse(await File.ReadAllTextAsync(Path.Combine(_folder.Path, "out", "2026-11-27", run, "results.json"), TestContext.Current.CancellationToken));
         var findings = results.RootElement.GetProperty("findings").EnumerateArray().ToDictionary(f => f.GetProperty("code").GetString()!, f => f.GetProperty("message").GetString()!, StringComparer.Ordinal);
         Assert.StartsWith("2 lines expire, pay or are fixed inside 10 days: AAA call (expires on 2026-12-02), Loan (pays on 2026-12-04)", findings["line-expires"], StringComparison.Ordinal);
-        Assert.Equal(10 * ((103 * Math.Exp(-0.02 * 7 / 365)) - 103), VarOf(results, "LOANS"), 1e-9);
+        Assert.Equal(10 * ((103 * Math.Exp(-0.02 * 7 / 365)) - 103), VarOf(results.RootElement, "LOANS"), 1e-9);
         // The call ends three days in: 1,000 sold lose at most what the share's rise in that time makes of them.
-        Assert.InRange(VarOf(results, "CALLS"), 1, double.MaxValue);
+        Assert.InRange(VarOf(results.RootElement, "CALLS"), 1, double.MaxValue);
 
         foreach (var threads in new[] { 1, 3 })
         {
@@ -32,6 +32,26 @@ public sealed class AgedRunTests : IDisposable
             Assert.Equal(ExitCode.Done, report.ExitCode);
             Assert.Empty(report.Differences);
         }
+    }
+
+    // Each model has its own valuation date: the loan is cash in ten days for the one that moves it.
+    [Fact]
+    public async Task Challenger_ages_beside_a_model_of_record_that_does_not()
+    {
+        WriteFeed(null);
+        _folder.Write("riskworker.json", """
+            { "models": { "m": {}, "aged": { "ageing": "horizon" } }, "record": "m", "challengers": [ "aged" ], "simulation": { "scenarios": 20000 },
+              "measures": [ { "measure": "var", "confidence": 0.99, "horizonDays": 10 } ] }
+            """);
+        var run = await MeasureAsync();
+
+        using var results = JsonDocument.Parse(await File.ReadAllTextAsync(Path.Combine(_folder.Path, "out", "2026-11-27", run, "results.json"), TestContext.Current.CancellationToken));
+        Assert.Contains(results.RootElement.GetProperty("findings").EnumerateArray(), f => f.GetProperty("code").GetString() == "line-expires");
+        Assert.Equal(0, VarOf(results.RootElement, "LOANS"), 1e-9);
+        var aged = results.RootElement.GetProperty("models").EnumerateArray().Single();
+        Assert.Equal(10 * ((103 * Math.Exp(-0.02 * 7 / 365)) - 103), VarOf(aged, "LOANS"), 1e-9);
+        var report = await Composition.UseCases(TimeProvider.System).Verify(new VerifyRequest(MeasuredRuns.WorkspaceIn(_folder), run, 2), new Progress<WorkProgress>(), TestContext.Current.CancellationToken);
+        Assert.Equal(ExitCode.Done, report.ExitCode);
     }
 
     // The snapshot of a run without ageing is that of versions that knew none.
@@ -49,7 +69,7 @@ public sealed class AgedRunTests : IDisposable
         Assert.NotEqual("", without);
     }
 
-    private static double VarOf(JsonDocument results, string book) => results.RootElement.GetProperty("nodes").EnumerateArray().Single(n => n.GetProperty("book").GetString() == book)
+    private static double VarOf(JsonElement results, string book) => results.GetProperty("nodes").EnumerateArray().Single(n => n.GetProperty("book").GetString() == book)
         .GetProperty("measures").EnumerateArray().Single(m => m.GetProperty("horizonDays").GetInt32() == 10).GetProperty("value").GetDouble();
 
     private async Task<string> MeasureAsync()

@@ -20,9 +20,15 @@ internal sealed class InstrumentParser(WarningLog warnings) : IRowParser<string?
     private static readonly Dictionary<string, int> s_column =
         Format.Columns.Select((c, i) => (c.Name, i)).ToDictionary(c => c.Name, c => c.i, StringComparer.Ordinal);
 
+    private static readonly Dictionary<string, bool[]> s_usesColumn = InstrumentKinds.TermsByKind.ToDictionary(
+        k => k.Key, k => Format.Columns.Select(c => c.Name == "multiplier" || k.Value.Contains(c.Name)).ToArray(), StringComparer.Ordinal);
+
     private static readonly SearchValues<char> s_numeric = SearchValues.Create("0123456789.,+-eE' ");
 
     private readonly FirstLines<string> _names = new(StringComparer.Ordinal);
+
+    // Of the current row alone: hundreds of thousands of rows need no dictionary each.
+    private readonly Dictionary<string, string> _terms = new(StringComparer.Ordinal);
 
     public bool TryParse(CellReader cells, out string?[] row)
     {
@@ -31,12 +37,12 @@ internal sealed class InstrumentParser(WarningLog warnings) : IRowParser<string?
         var volume = cells.OptionalNumber(DailyVolume, "a number from 0 on", value => value >= 0);
         row = [];
         if (kind is null || !cells.RowIsSound) return false;
-        var terms = Terms(cells, name, kind);
+        ReadTerms(cells, name, kind);
         _names.Claim(name, cells, Name, "each instrument");
-        foreach (var fault in InstrumentReader.Read(new(name, kind, currency, terms)).Faults)
+        foreach (var fault in InstrumentReader.Read(new(name, kind, currency, _terms)).Faults)
             cells.Fault(s_column[fault.Term], fault.Found, fault.Expected);
-        if (InstrumentKinds.Options.Contains(kind) && !(terms.ContainsKey("curve") && terms.ContainsKey("carry"))) warnings.Add(FeedWarningCodes.AssumedZeroRate, name);
-        row = [name, kind, currency, JsonSerializer.Serialize(terms, TermsJson.Default.SortedDictionaryStringString), issuer, lot?.Text, volume?.Text];
+        if (InstrumentKinds.Options.Contains(kind) && !(_terms.ContainsKey("curve") && _terms.ContainsKey("carry"))) warnings.Add(FeedWarningCodes.AssumedZeroRate, name);
+        row = [name, kind, currency, JsonSerializer.Serialize(_terms, TermsJson.Default.DictionaryStringString), issuer, lot?.Text, volume?.Text];
         return cells.RowIsSound;
     }
 
@@ -48,27 +54,28 @@ internal sealed class InstrumentParser(WarningLog warnings) : IRowParser<string?
         return null;
     }
 
-    private SortedDictionary<string, string> Terms(CellReader cells, string name, string kind)
+    // The columns of terms stand in ordinal order, so the terms do, too.
+    private void ReadTerms(CellReader cells, string name, string kind)
     {
-        var terms = new SortedDictionary<string, string>(StringComparer.Ordinal);
+        _terms.Clear();
+        var uses = s_usesColumn[kind];
         for (var c = FirstTerm; c < Format.Columns.Count; c++)
         {
             if (cells.OptionalText(c) is not { } text) continue;
             var term = Format.Columns[c].Name;
-            if (term != "multiplier" && !InstrumentKinds.TermsByKind[kind].Contains(term))
+            if (!uses[c])
             {
                 warnings.Add(FeedWarningCodes.UnusedTerm, $"{name} ({term})");
                 continue;
             }
             if (LooksLikeNumber(text) && !IsNumber(text)) cells.Fault(c, "a number with '.' as decimal point, or a name");
-            terms.Add(term, text);
+            _terms.Add(term, text);
         }
-        return terms;
     }
 
     // A rate may be a number or a curve's name: '0,05' or '1e400' is neither, and must not pass for a curve.
     private static bool LooksLikeNumber(string text) =>
-        text.AsSpan().IndexOfAnyExcept(s_numeric) < 0 && !DateOnly.TryParseExact(text, "yyyy-MM-dd", CultureInfo.InvariantCulture, DateTimeStyles.None, out _)
+        text.AsSpan().IndexOfAnyExcept(s_numeric) < 0 && !Iso.TryParse(text, out _)
         || text.AsSpan().TrimStart("+-") is "NaN" or "Infinity" or "∞";
 
     private static bool IsNumber(string text) =>

@@ -16,7 +16,7 @@ internal sealed class TableWriter : IRowWriter<string?[]>
     private readonly TableShape _shape;
     private readonly Dictionary<string, string?[]> _stored;
     private readonly HashSet<string> _seen = new(StringComparer.Ordinal);
-    private readonly Statement _upsert;
+    private readonly BulkStatement _upsert;
     private long _added, _changed, _unchanged;
 
     public TableWriter(SqliteConnection connection, TableShape shape)
@@ -24,7 +24,7 @@ internal sealed class TableWriter : IRowWriter<string?[]>
         (_connection, _shape) = (connection, shape);
         var columns = shape.Columns.Select(c => $"\"{c}\"").ToArray();
         _stored = connection.Query($"SELECT {string.Join(", ", columns)} FROM {shape.Name}", Cells).ToDictionary(Key, StringComparer.Ordinal);
-        _upsert = new(connection, $"INSERT OR REPLACE INTO {shape.Name} ({string.Join(", ", columns)}) VALUES ({Marks(columns.Length)})", columns.Length);
+        _upsert = new(connection, $"INSERT OR REPLACE INTO {shape.Name} ({string.Join(", ", columns)}) VALUES ({Marks(columns.Length)})");
     }
 
     public void Write(in string?[] row)
@@ -53,7 +53,7 @@ internal sealed class TableWriter : IRowWriter<string?[]>
     public void Dispose() => _upsert.Dispose();
 
     // Keys are names and dates, which hold no control characters, so the separator cannot be part of one.
-    private string Key(string?[] row) => string.Join('\u001f', row.AsSpan(0, _shape.Keys));
+    private string Key(string?[] row) => _shape.Keys == 1 ? row[0]! : string.Join('\u001f', row.AsSpan(0, _shape.Keys));
 
     private string?[] Cells(SqliteDataReader row)
     {
