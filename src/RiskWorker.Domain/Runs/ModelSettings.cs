@@ -50,6 +50,22 @@ public sealed record ModelSettings
 
     /// <summary>Length of that span in days of shocks.</summary>
     public int Span { get; init; } = 250;
+
+    /// <summary>Whether the valuation date moves with the horizon; for a stressed model what the one that it calibrates says.</summary>
+    public AgeingKind Ageing { get; init; } = AgeingKind.None;
+
+    /// <summary>Whether the valuation date moves.</summary>
+    public bool Ages => (Stressed ?? this).Ageing == AgeingKind.Horizon;
+}
+
+/// <summary>What becomes of the valuation date over a horizon.</summary>
+public enum AgeingKind
+{
+    /// <summary>It stays: shocks are instantaneous, and nothing expires or pays.</summary>
+    None,
+
+    /// <summary>It moves by the horizon: what expires, is fixed or pays inside does so.</summary>
+    Horizon,
 }
 
 /// <summary>Where a model's covariance comes from.</summary>

@@ -35,6 +35,9 @@ public sealed record CalibratedModel
     /// <summary>L, the lower trapezoidal factor of the correlation of the moving factors: Moving.Length × Rank, row-major, zeros above the diagonal.</summary>
     public required double[] Lower { get; init; }
 
+    /// <summary>Whether the valuation date moves with the horizon.</summary>
+    public bool Ages { get; init; }
+
     /// <summary>How the moves are distributed jointly.</summary>
     public ScenarioLaw Law { get; init; } = LognormalLaw.Instance;
 

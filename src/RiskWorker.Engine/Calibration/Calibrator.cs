@@ -49,6 +49,7 @@ public static class Calibrator
             Deviations = correlation.Deviations,
             DailyDrift = Drift.Daily(model, factors, correlation.Deviations, complete),
             Moving = correlation.Order,
+            Ages = model.Ages,
             Law = ScenarioLaws.Of(model, complete, jumps, factors, correlation.Order, correlation.Deviations, longest),
             Rank = correlation.Factor.Rank,
             Lower = correlation.Factor.Lower,

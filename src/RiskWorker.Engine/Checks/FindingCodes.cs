@@ -207,6 +207,16 @@ public static class FindingCodes
         "An instrument held needs a factor that has no usable price, so no figure holds it",
         "load the factor's price");
 
+    /// <summary>Something that ends inside a horizon that moves the valuation date.</summary>
+    public static readonly FindingCode LineExpires = new("line-expires", Warning,
+        "The model moves the valuation date, and a line expires, pays or is fixed inside the longest horizon; what it pays is held as cash",
+        "nothing, where the dates are right; else correct them in instruments.csv");
+
+    /// <summary>Something that cannot follow the valuation date.</summary>
+    public static readonly FindingCode LineNotAged = new("line-not-aged", Warning,
+        "The model moves the valuation date, and a line keeps that of the as-of date",
+        "read its figures as of an instantaneous shock, or set ageing to none");
+
     /// <summary>Model and book of record disagree.</summary>
     public static readonly FindingCode ValueDifference = new("value-difference", Warning,
         "A line's model value differs from the book of record's by more than the tolerance",
@@ -247,7 +257,7 @@ public static class FindingCodes
     [
         BookTree, BookCurrency, PositionsNone, FactorUnobserved, FactorMissing, PriceNotPositive, HistoryShort, DaysNone, DaysFew,
         CovarianceUnusable, DriftUnknown, PricedNone,
-        BookUnknown, InstrumentUnknown, FactorUnknown, CurrencyUnpriced, CurrencyMismatch, InstrumentExpired, NotModelled, FixingMissing, LevelMissing, BarrierCrossed,
+        BookUnknown, InstrumentUnknown, FactorUnknown, CurrencyUnpriced, CurrencyMismatch, InstrumentExpired, NotModelled, FixingMissing, LevelMissing, BarrierCrossed, LineExpires, LineNotAged,
         ValueDifference, HoldingsChange, LimitUndecidable, ModelFailed,
         FactorClosed, PriceStale, PriceJump, DayMissing, DayClosed, DaysDropped, HistoryProxied, HistoryPartial,
         CalendarUnknown, ProxyUnusable, CurveUnusable, FxFactorUnused, CovarianceUnknown, AdjustmentUnknown, LimitBookUnknown, ProfitBookUnknown,

@@ -155,10 +155,10 @@ public sealed class LossSampler
         return true;
     }
 
-    // A run that draws little beyond its pilot is done before surfaces would pay.
+    // A run that draws little beyond its pilot is done before surfaces would pay; a book that ages is another one at every horizon and has none.
     private SurfaceSet? SurfacesFor(SimulationSettings settings)
     {
-        if (settings.Revaluation == RevaluationKind.Full || settings.Scenarios <= 2 * PilotScenarios) return null;
+        if (settings.Revaluation == RevaluationKind.Full || settings.Scenarios <= 2 * PilotScenarios || _plan.Aged.Count > 0) return null;
         var surfaces = new SurfaceBuilder(_plan, settings.SurfaceError).Build(_workspace, _cancellation);
         return surfaces.Count > 0 ? surfaces : null;
     }

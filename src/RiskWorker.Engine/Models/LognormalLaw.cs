@@ -10,5 +10,8 @@ public sealed record LognormalLaw : ScenarioLaw
     public override bool GivesShocks => false;
 
     /// <inheritdoc/>
+    public override bool HasPaths => true;
+
+    /// <inheritdoc/>
     public override IEnumerable<double> Numbers() => [];
 }

@@ -15,6 +15,9 @@ public abstract record ScenarioLaw
     /// <summary>The number of scenarios that there are, where they are a list and not drawn; null where there is no end to them.</summary>
     public virtual int? ScenarioCount => null;
 
+    /// <summary>Whether moves can be drawn at closes inside a horizon (<see cref="Simulation.Moves.MoveSource.Inside"/>): what a book needs that ages.</summary>
+    public virtual bool HasPaths => false;
+
     /// <summary>Every number that the moves depend on beyond the correlation and the factors' own laws.</summary>
     public abstract IEnumerable<double> Numbers();
 

@@ -1,5 +1,4 @@
 using RiskWorker.Engine.Pricing;
-using RiskWorker.Numerics.Kernels;
 
 namespace RiskWorker.Engine.Plans;
 
@@ -29,13 +28,12 @@ internal sealed class GroupBuilder
 
     /// <summary>The group.</summary>
     /// <param name="key">The underlying.</param>
-    /// <param name="spot">Its level today.</param>
-    /// <param name="terms">Terms of plain options by horizon.</param>
-    public UnderlyingGroup Build(UnderlyingKey key, double spot, Func<List<BoundEuropean>, EuropeanOptionTerms[][]> terms) => new(key, spot,
+    /// <param name="levels">All levels today.</param>
+    public UnderlyingGroup Build(UnderlyingKey key, double[] levels) => new(key, key.LevelOf(levels),
         [.. _units.Select(u => new LinearHolding(u.Key, u.Value))],
-        [.. _options.Select(o => Batch(o.Key, [.. o.Value.OrderBy(i => i.Item.Cell)], terms))],
+        [.. _options.Select(o => Batch(o.Key, [.. o.Value.OrderBy(i => i.Item.Cell)], levels))],
         [.. _formulas.Select(f => new FormulaBatch(f.Key, [.. f.Value.OrderBy(i => i.Cell)]))]);
 
-    private static OptionBatch Batch(int volatilityFactor, List<(BoundEuropean Bound, OptionItem Item)> options, Func<List<BoundEuropean>, EuropeanOptionTerms[][]> terms) =>
-        new(volatilityFactor, [.. options.Select(o => o.Item)], terms([.. options.Select(o => o.Bound)]));
+    private static OptionBatch Batch(int volatilityFactor, List<(BoundEuropean Bound, OptionItem Item)> options, double[] levels) =>
+        new(volatilityFactor, [.. options.Select(o => o.Item)], [.. options.Select(o => o.Bound.Terms(levels, o.Bound.Years))]);
 }

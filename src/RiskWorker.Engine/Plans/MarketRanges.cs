@@ -14,17 +14,14 @@ internal sealed class MarketRanges(FactorMoves moves, ScenarioLaw law, double[] 
     private const double Narrowest = 1e-4;
 
     /// <summary>The box of <paramref name="option"/>.</summary>
-    public MarketRange Of(BoundOption option) => new(
-        Return(option.Underlying) is var x && x.HalfWidth > Narrowest ? x : x with { HalfWidth = Narrowest },
-        Form(option.Market.Discount), Form(option.Market.Carry), Deviation(option.Market.Variance));
+    public MarketRange Of(BoundOption option) => Of(option.Underlying, option.Market);
 
-    private InputRange Return(in UnderlyingKey key) => Over(0, [.. Terms(key)]);
+    /// <summary>The box of an option on <paramref name="underlying"/> that sees <paramref name="market"/>.</summary>
+    public MarketRange Of(in UnderlyingKey underlying, MarketTerms market) => new(
+        Return(underlying) is var x && x.HalfWidth > Narrowest ? x : x with { HalfWidth = Narrowest },
+        Form(market.Discount), Form(market.Carry), Deviation(market.Variance));
 
-    private static IEnumerable<(int Factor, double Weight)> Terms(UnderlyingKey key)
-    {
-        if (key.Factor >= 0) yield return (key.Factor, 1);
-        if (key.IsCross && key.Quote >= 0) yield return (key.Quote, -1);
-    }
+    private InputRange Return(in UnderlyingKey key) => Over(0, [.. key.Terms()]);
 
     // Levels of rates and spreads move by their shocks; one with log-normal shocks by about its level times them.
     private InputRange Form(LinearForm form)

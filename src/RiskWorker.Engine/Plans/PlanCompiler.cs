@@ -2,9 +2,7 @@ using RiskWorker.Domain.Books;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Engine.Calibration;
 using RiskWorker.Engine.Pricing;
-using RiskWorker.Engine.Pricing.Curves;
-using RiskWorker.Engine.Pricing.Options;
-using RiskWorker.Numerics.Kernels;
+using RiskWorker.Engine.Pricing.Ageing;
 
 namespace RiskWorker.Engine.Plans;
 
@@ -16,35 +14,34 @@ public sealed class PlanCompiler
     private readonly CurrencyTable _currencies;
     private readonly IReadOnlyList<Horizon> _horizons;
 
-    // Without ageing the valuation date stays; with it, an option's remaining life shrinks by horizon.
-    private readonly Func<BoundEuropean, int, double>? _remainingYears;
-
     /// <summary>Takes what the plan rests on.</summary>
     /// <param name="tree">The books.</param>
     /// <param name="model">How the factors move.</param>
     /// <param name="currencies">The currencies known.</param>
     /// <param name="horizons">Horizons, in any order.</param>
-    /// <param name="remainingYears">Life in years that is left to a plain option after so many business days, 0 being today; null leaves the valuation date where it is.</param>
-    public PlanCompiler(BookTree tree, CalibratedModel model, CurrencyTable currencies, IEnumerable<Horizon> horizons, Func<BoundEuropean, int, double>? remainingYears = null)
+    public PlanCompiler(BookTree tree, CalibratedModel model, CurrencyTable currencies, IEnumerable<Horizon> horizons)
     {
         (_tree, _model, _currencies) = (tree, model, currencies);
         _horizons = [.. horizons.Distinct().Order()];
-        _remainingYears = remainingYears;
     }
 
     /// <summary>The plan of the priced ones among <paramref name="lines"/>.</summary>
     /// <param name="seed">Seed of the draws.</param>
     /// <param name="lines">The lines.</param>
     /// <param name="threads">Threads for tables of prices; the plan does not depend on how many.</param>
+    /// <param name="ageing">What the instruments held turn into by each horizon; null leaves the valuation date where it is.</param>
     /// <param name="cancellation">Stops between tables.</param>
-    public RevaluationPlan Compile(ulong seed, IReadOnlyList<LineValue> lines, int threads = 1, CancellationToken cancellation = default)
+    public RevaluationPlan Compile(ulong seed, IReadOnlyList<LineValue> lines, int threads = 1, BookAgeing? ageing = null, CancellationToken cancellation = default)
     {
+        if (ageing is not null && !_model.Law.HasPaths) throw new InvalidOperationException($"{_model.Law.GetType().Name} has no moves inside a horizon, so no book can age under it.");
         var holdings = Holdings(lines);
         var moves = FactorMoves.Of(_model);
         var options = holdings.Where(h => h.Bound is BoundOption).DistinctBy(h => h.Instrument).Select(h => (h.Instrument, (BoundOption)h.Bound)).ToList();
         var formulas = PriceTables.Build(options, moves, _model.Law, _model.Levels, _horizons, threads, cancellation);
         var currencies = Currencies(holdings);
         var cells = Cells(holdings, currencies);
+        var (held, builder) = (InCells(holdings, cells, currencies), new HoldingsBuilder(_model.Levels));
+        foreach (var holding in held) builder.Add(holding.Cell, holding.Quantity, holding.Bound, formulas.GetValueOrDefault(holding.Instrument));
         var nodes = Nodes(cells, currencies);
         var plan = new RevaluationPlan
         {
@@ -53,8 +50,9 @@ public sealed class PlanCompiler
             Law = _model.Law,
             Horizons = _horizons,
             Currencies = currencies,
-            Groups = Groups(holdings, cells, currencies, formulas),
-            Flows = Flows(holdings, cells, currencies),
+            Groups = builder.Groups,
+            Flows = builder.Flows,
+            Aged = ageing is null ? [] : [.. _horizons.Select(h => new AgedCompiler(_model, moves, h, ageing, formulas).Compile(held, threads, cancellation))],
             Cells = cells,
             Nodes = nodes,
             Rows = Rows(nodes),
@@ -136,75 +134,9 @@ public sealed class PlanCompiler
         return rows;
     }
 
-    private List<UnderlyingGroup> Groups(List<Holding> holdings, List<PlanCell> cells, List<PlanCurrency> currencies, Dictionary<string, OptionFormula> formulas)
+    private List<CellHolding> InCells(List<Holding> holdings, List<PlanCell> cells, List<PlanCurrency> currencies)
     {
-        var cellOf = PlacesOf(cells);
-        var groups = new SortedDictionary<UnderlyingKey, GroupBuilder>();
-        foreach (var holding in holdings)
-        {
-            if (KeyOf(holding.Bound) is not { } key) continue;
-            if (!groups.TryGetValue(key, out var group)) groups[key] = group = new();
-            Add(group, cellOf[(holding.Node, PlaceOf(holding.Bound.Currency, currencies))], holding, formulas);
-        }
-        return [.. groups.Select(g => g.Value.Build(g.Key, g.Key.LevelOf(_model.Levels), TermsByHorizon))];
-    }
-
-    private static Dictionary<(int Node, int Currency), int> PlacesOf(List<PlanCell> cells) => cells.Index().ToDictionary(c => (c.Item.Node, c.Item.Currency), c => c.Index);
-
-    private static UnderlyingKey? KeyOf(BoundInstrument bound) => bound switch
-    {
-        BoundSpot s => s.Underlying,
-        BoundFuture f => f.Underlying,
-        BoundForward f => f.Underlying,
-        BoundEuropean o => o.Underlying,
-        BoundOption o => o.Underlying,
-        _ => null,
-    };
-
-    private void Add(GroupBuilder group, int cell, in Holding holding, Dictionary<string, OptionFormula> formulas)
-    {
-        var units = holding.Quantity * holding.Bound.Multiplier;
-        switch (holding.Bound)
-        {
-            case BoundForward forward:
-                // At a flat rate the strike leg is a constant, so only the discounted underlying moves.
-                group.AddLinear(cell, units * forward.Units);
-                break;
-            case BoundEuropean option:
-                group.AddOption(option, new(cell, units, option.ValueWith(_model.Levels, Years(option, 0))));
-                break;
-            case BoundOption option:
-                var formula = formulas[holding.Instrument];
-                group.AddFormula(option.Market, new(cell, units, formula.Value(option.Market.At(_model.Levels, 0, option.Underlying.LevelOf(_model.Levels))), formula));
-                break;
-            default:
-                group.AddLinear(cell, units);
-                break;
-        }
-    }
-
-    private List<FlowBatch> Flows(List<Holding> holdings, List<PlanCell> cells, List<PlanCurrency> currencies)
-    {
-        var cellOf = PlacesOf(cells);
-        var amounts = new SortedDictionary<LinearForm, SortedDictionary<int, double>>();
-        foreach (var holding in holdings)
-        {
-            if (holding.Bound is not BoundFlows bound) continue;
-            var (cell, units) = (cellOf[(holding.Node, PlaceOf(bound.Currency, currencies))], holding.Quantity * bound.Multiplier);
-            foreach (var flow in bound.Flows)
-            {
-                if (!amounts.TryGetValue(flow.Exponent, out var byCell)) amounts[flow.Exponent] = byCell = [];
-                byCell[cell] = Math.FusedMultiplyAdd(units, flow.Amount, byCell.GetValueOrDefault(cell));
-            }
-        }
-        return [.. amounts.Select(a => new FlowBatch(a.Key, Exponential.Of(-a.Key.At(_model.Levels)), [.. a.Value.Select(v => new LinearHolding(v.Key, v.Value))]))];
-    }
-
-    private double Years(BoundEuropean bound, int days) => _remainingYears is null ? bound.Years : _remainingYears(bound, days);
-
-    private EuropeanOptionTerms[][] TermsByHorizon(List<BoundEuropean> options)
-    {
-        EuropeanOptionTerms[] After(int days) => [.. options.Select(o => o.Terms(_model.Levels, Years(o, days)))];
-        return _remainingYears is null ? [.. Enumerable.Repeat(After(0), _horizons.Count)] : [.. _horizons.Select(h => After(h.Days))];
+        var cellOf = cells.Index().ToDictionary(c => (c.Item.Node, c.Item.Currency), c => c.Index);
+        return [.. holdings.Select(h => new CellHolding(cellOf[(h.Node, PlaceOf(h.Bound.Currency, currencies))], h.Instrument, h.Bound, h.Quantity, h.Value))];
     }
 }

@@ -23,15 +23,15 @@ public readonly record struct FlowSlice(int Batch, ItemRange Amounts);
 /// </summary>
 public sealed class PlanSlice
 {
-    private PlanSlice(RevaluationPlan plan, int node)
+    private PlanSlice(RevaluationPlan plan, int node, IReadOnlyList<UnderlyingGroup> groups, IReadOnlyList<FlowBatch> flows)
     {
-        (Node, EndNode) = (node, EndOf(plan, node));
+        (Node, EndNode, HeldGroups, HeldFlows) = (node, EndOf(plan, node), groups, flows);
         Cells = new(FirstCell(plan, Node), FirstCell(plan, EndNode));
         Currencies = [.. Enumerable.Range(Cells.From, Cells.To - Cells.From).Select(c => plan.Cells[c].Currency)
             .Concat(Enumerable.Range(Node, EndNode - Node).Select(n => plan.Nodes[n].Currency)).Where(c => c != 0).Distinct().Order()];
-        Groups = [.. Enumerable.Range(0, plan.Groups.Count).Select(g => SliceOf(plan.Groups[g], g)).OfType<GroupSlice>()];
-        Flows = [.. Enumerable.Range(0, plan.Flows.Count).Select(b => new FlowSlice(b, RangeOf(plan.Flows[b].Amounts.Count, i => plan.Flows[b].Amounts[i].Cell))).Where(f => !f.Amounts.IsEmpty)];
-        FormFactors = [.. FormFactorsOf(plan).Distinct().Order()];
+        Groups = [.. Enumerable.Range(0, groups.Count).Select(g => SliceOf(groups[g], g)).OfType<GroupSlice>()];
+        Flows = [.. Enumerable.Range(0, flows.Count).Select(b => new FlowSlice(b, RangeOf(flows[b].Amounts.Count, i => flows[b].Amounts[i].Cell))).Where(f => !f.Amounts.IsEmpty)];
+        FormFactors = [.. FormFactorsOf().Distinct().Order()];
         ReadFactors = FactorsRead(plan);
         (Factors, RowOf) = MovingFactors(plan);
     }
@@ -48,6 +48,12 @@ public sealed class PlanSlice
     /// <summary>Places of the currencies that its cells and nodes are in, the reporting currency left out.</summary>
     public int[] Currencies { get; }
 
+    /// <summary>The groups that <see cref="Groups"/> has places in: the plan's own, or those of one close of an aged book.</summary>
+    public IReadOnlyList<UnderlyingGroup> HeldGroups { get; }
+
+    /// <summary>The flows that <see cref="Flows"/> has places in.</summary>
+    public IReadOnlyList<FlowBatch> HeldFlows { get; }
+
     /// <summary>Its holdings, by group.</summary>
     public GroupSlice[] Groups { get; }
 
@@ -55,7 +61,7 @@ public sealed class PlanSlice
     public FlowSlice[] Flows { get; }
 
     /// <summary>The factors whose levels its flows and formulas read, ascending.</summary>
-    public int[] FormFactors { get; }
+    public int[] FormFactors { get; private init; }
 
     /// <summary>The factors whose levels its value depends on, still ones among them, ascending.</summary>
     public int[] ReadFactors { get; }
@@ -67,10 +73,13 @@ public sealed class PlanSlice
     public int[] RowOf { get; }
 
     /// <summary>The slice of every node of <paramref name="plan"/>, by node number.</summary>
-    public static PlanSlice[] OfNodes(RevaluationPlan plan) => [.. Enumerable.Range(0, plan.Nodes.Count).Select(node => new PlanSlice(plan, node))];
+    public static PlanSlice[] OfNodes(RevaluationPlan plan) => [.. Enumerable.Range(0, plan.Nodes.Count).Select(node => new PlanSlice(plan, node, plan.Groups, plan.Flows))];
 
     /// <summary>The whole of <paramref name="plan"/>.</summary>
-    public static PlanSlice Whole(RevaluationPlan plan) => new(plan, 0);
+    public static PlanSlice Whole(RevaluationPlan plan) => new(plan, 0, plan.Groups, plan.Flows);
+
+    /// <summary>All that one close of an aged book values, with the curves that its fixings and barriers read.</summary>
+    public static PlanSlice Whole(RevaluationPlan plan, DatedHoldings close) => new(plan, 0, close.Groups, close.Flows) { FormFactors = close.FormFactors };
 
     private static int EndOf(RevaluationPlan plan, int node)
     {
@@ -103,18 +112,18 @@ public sealed class PlanSlice
         return low;
     }
 
-    private IEnumerable<int> FormFactorsOf(RevaluationPlan plan)
+    private IEnumerable<int> FormFactorsOf()
     {
         foreach (var flow in Flows)
         {
-            foreach (var factor in plan.Flows[flow.Batch].Exponent.Factors.ToArray()) yield return factor;
+            foreach (var factor in HeldFlows[flow.Batch].Exponent.Factors.ToArray()) yield return factor;
         }
         foreach (var slice in Groups)
         {
             for (var b = 0; b < slice.Formulas.Length; b++)
             {
                 if (slice.Formulas[b].IsEmpty) continue;
-                foreach (var factor in plan.Groups[slice.Group].Formulas[b].Market.Factors()) yield return factor;
+                foreach (var factor in HeldGroups[slice.Group].Formulas[b].Market.Factors()) yield return factor;
             }
         }
     }
@@ -124,7 +133,7 @@ public sealed class PlanSlice
         var needed = new SortedSet<int>();
         foreach (var slice in Groups)
         {
-            var group = plan.Groups[slice.Group];
+            var group = HeldGroups[slice.Group];
             needed.Add(group.Key.Factor);
             needed.Add(group.Key.Quote);
             for (var b = 0; b < slice.Options.Length; b++)

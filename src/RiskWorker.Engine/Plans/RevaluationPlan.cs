@@ -32,6 +32,9 @@ public sealed record RevaluationPlan
     /// <summary>Amounts discounted by the same form of the rates, summed by cell; forms ascending.</summary>
     public IReadOnlyList<FlowBatch> Flows { get; init; } = [];
 
+    /// <summary>With ageing, what is held turns into by each horizon, in their order; empty where the valuation date stays, and <see cref="Groups"/> and <see cref="Flows"/> are revalued.</summary>
+    public IReadOnlyList<AgedHoldings> Aged { get; init; } = [];
+
     /// <summary>Sums of positions by node and currency, in that order.</summary>
     public required IReadOnlyList<PlanCell> Cells { get; init; }
 
@@ -45,7 +48,8 @@ public sealed record RevaluationPlan
     public required string Hash { get; init; }
 
     /// <summary>The factors whose levels flows and formulas read, ascending.</summary>
-    public int[] FormFactors => field ??= [.. Flows.SelectMany(f => f.Exponent.Factors.ToArray()).Concat(Groups.SelectMany(g => g.Formulas).SelectMany(f => f.Market.Factors())).Distinct().Order()];
+    public int[] FormFactors => field ??= [.. Flows.SelectMany(f => f.Exponent.Factors.ToArray()).Concat(Groups.SelectMany(g => g.Formulas).SelectMany(f => f.Market.Factors()))
+        .Concat(Aged.SelectMany(a => a.Closes).SelectMany(c => c.FormFactors)).Distinct().Order()];
 
     /// <summary>For each factor its place in <see cref="FormFactors"/>, or -1.</summary>
     public int[] FormRowOf => field ??= [.. Moves.RowOf.Select((_, factor) => Array.IndexOf(FormFactors, factor))];
@@ -149,8 +153,8 @@ public readonly record struct LinearHolding(int Cell, double Units);
 /// <summary>Options on one underlying that share their source of volatility.</summary>
 /// <param name="VolatilityFactor">The factor that carries it, or -1 for a flat one.</param>
 /// <param name="Items">The options, by cell, then instrument.</param>
-/// <param name="Terms">Their terms by horizon, then in the order of <paramref name="Items"/>; one array for all horizons unless the valuation date moves.</param>
-public sealed record OptionBatch(int VolatilityFactor, OptionItem[] Items, EuropeanOptionTerms[][] Terms);
+/// <param name="Terms">Their terms, in the order of <paramref name="Items"/>.</param>
+public sealed record OptionBatch(int VolatilityFactor, OptionItem[] Items, EuropeanOptionTerms[] Terms);
 
 /// <summary>One option held in one cell.</summary>
 /// <param name="Cell">Where its profit goes.</param>

@@ -20,6 +20,13 @@ public readonly record struct UnderlyingKey(bool IsCross, int Factor, int Quote)
         return order != 0 ? order : Quote.CompareTo(other.Quote);
     }
 
+    /// <summary>The factors whose log-returns add up to its own, each with its weight.</summary>
+    public IEnumerable<(int Factor, double Weight)> Terms()
+    {
+        if (Factor >= 0) yield return (Factor, 1);
+        if (IsCross && Quote >= 0) yield return (Quote, -1);
+    }
+
     /// <summary>The underlying's price, given the factors' levels.</summary>
     public double LevelOf(ReadOnlySpan<double> levels)
     {

@@ -23,7 +23,7 @@ internal static class LiquidityCascades
             var (before, measures) = (asked.Key.Days, asked.Select(m => m with { Kind = MeasureKind.Es }).ToList());
             foreach (var days in factors.Select(f => f.LiquidityDays ?? 0).Where(days => days > asked.Key.Days).Distinct().Order())
             {
-                var only = plan with { Moves = plan.Moves.Only(factor => factors[factor].LiquidityDays >= days), Horizons = plan.Horizons };
+                var only = plan with { Moves = plan.Moves.Only(factor => factors[factor].LiquidityDays >= days), Horizons = plan.Horizons, Aged = [] }; // time passes once, in the base
                 var step = new LookedRun(lines.Tree, only, [], measures, At(settings, outcome.Simulation.Scenarios)).Run(lines.Threads, null, lines.Cancellation);
                 steps.Add(new(days, Math.Sqrt((double)(days - before) / asked.Key.Days), step.Measures));
                 before = days;

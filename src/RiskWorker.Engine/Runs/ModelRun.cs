@@ -4,6 +4,7 @@ using RiskWorker.Domain.Runs;
 using RiskWorker.Engine.Calibration;
 using RiskWorker.Engine.Plans;
 using RiskWorker.Engine.Pricing;
+using RiskWorker.Engine.Pricing.Ageing;
 
 namespace RiskWorker.Engine.Runs;
 
@@ -42,7 +43,7 @@ internal sealed class ModelRun
 
     /// <summary>The plan of <paramref name="model"/>.</summary>
     public static RevaluationPlan PlanOf(ModelLines lines, CalibratedModel model, SimulationSettings settings) =>
-        new PlanCompiler(lines.Tree, model, lines.Currencies, lines.Measures.Select(m => m.Horizon)).Compile(settings.Seed, lines.Values, lines.Threads, lines.Cancellation);
+        new PlanCompiler(lines.Tree, model, lines.Currencies, lines.Measures.Select(m => m.Horizon)).Compile(settings.Seed, lines.Values, lines.Threads, model.Ages ? lines.Ageing : null, lines.Cancellation);
 
     /// <summary>Runs <paramref name="model"/>.</summary>
     /// <param name="lines">What is held, and how to run it.</param>
@@ -62,9 +63,10 @@ internal sealed class ModelRun
 /// <param name="Tree">The books.</param>
 /// <param name="Currencies">The currencies known.</param>
 /// <param name="Values">The lines, valued.</param>
+/// <param name="Ageing">What the instruments turn into by a horizon, for models that move the valuation date.</param>
 /// <param name="Measures">The measures.</param>
 /// <param name="Threads">Threads to use.</param>
 /// <param name="Progress">Told how far it has come, or null.</param>
 /// <param name="Cancellation">Stops it.</param>
 internal sealed record ModelLines(
-    BookTree Tree, CurrencyTable Currencies, IReadOnlyList<LineValue> Values, IReadOnlyList<MeasureSpec> Measures, int Threads, IProgress<RunProgress>? Progress, CancellationToken Cancellation);
+    BookTree Tree, CurrencyTable Currencies, IReadOnlyList<LineValue> Values, BookAgeing Ageing, IReadOnlyList<MeasureSpec> Measures, int Threads, IProgress<RunProgress>? Progress, CancellationToken Cancellation);

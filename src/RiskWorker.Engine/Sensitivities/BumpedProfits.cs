@@ -47,7 +47,7 @@ internal sealed class BumpedProfits
         _market.MoveTo(0, _whole);
         _cells.Width = width;
         _cells.Clear(0, _plan.Cells.Count);
-        HoldingProfits.Add(_plan, _whole, _market, 0, _cells);
+        HoldingProfits.Add(_whole, _market, _cells);
         _nodes.Roll(_whole, _market, _cells);
     }
 

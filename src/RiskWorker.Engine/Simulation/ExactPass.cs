@@ -94,7 +94,7 @@ internal sealed class ExactPass
         _market.MoveTo(horizon, slice);
         _cells.Width = width;
         _cells.Clear(slice.Cells.From, slice.Cells.To);
-        HoldingProfits.Add(_plan, slice, _market, horizon, _cells);
+        HoldingProfits.Add(slice, _market, _cells);
         _nodes.Roll(slice, _market, _cells);
         foreach (var row in _rows[horizon][node])
         {

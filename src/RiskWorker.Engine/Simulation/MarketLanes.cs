@@ -26,7 +26,8 @@ internal sealed class MarketLanes
     private double[] _moves = [];
     private int[] _rowOf = [];
     private int _stride;
-    private int _horizon;
+    private double _root;
+    private int _days;
     private bool _areShocks;
 
     /// <summary>Makes room for <paramref name="capacity"/> lanes.</summary>
@@ -75,9 +76,14 @@ internal sealed class MarketLanes
         (_moves, _rowOf, _stride, Width, _rates.Width, _levels.Width, _areShocks) = (moves, rowOf, stride, width, width, width, areShocks);
 
     /// <summary>Goes to a horizon, converts the currencies of <paramref name="slice"/> and moves the factors of its curves.</summary>
-    public void MoveTo(int horizon, PlanSlice slice)
+    public void MoveTo(int horizon, PlanSlice slice) => MoveTo(_roots[horizon], _plan.Horizons[horizon].Days, slice);
+
+    /// <summary>The same at the close of a day inside a horizon, whose moves are those of <see cref="Moves.MoveSource.Inside"/>.</summary>
+    public void MoveInside(int day, PlanSlice slice) => MoveTo(1, day, slice);
+
+    private void MoveTo(double root, int days, PlanSlice slice)
     {
-        _horizon = horizon;
+        (_root, _days) = (root, days);
         _rates[0].Fill(1);
         // The returns are scratch here: an underlying is moved only afterwards.
         foreach (var currency in slice.Currencies) Move(_plan.Currencies[currency].Factor, _returns.AsSpan(0, Width), _rates[currency]);
@@ -133,8 +139,8 @@ internal sealed class MarketLanes
         return new(Returns, Spots, discounts, carries, deviations);
     }
 
-    // As LinearForm.At, lane by lane.
-    private void Evaluate(LinearForm form, Span<double> values)
+    /// <summary>A form of the rates in each lane, as <see cref="LinearForm.At"/>.</summary>
+    public void Evaluate(LinearForm form, Span<double> values)
     {
         values.Fill(form.Constant);
         for (var i = 0; i < form.Factors.Length; i++) BookProfit.AddLinear(_levels[_plan.FormRowOf[form.Factors[i]]], 0, form.Coefficients[i], values);
@@ -144,7 +150,7 @@ internal sealed class MarketLanes
     {
         var law = _plan.Moves.Factors[factor];
         // A shock is a normal of scale 1: 1 x + 0 is x to the bit.
-        var (scale, drift) = _areShocks ? (1, 0) : (law.Deviation * _roots[_horizon], law.Drift * _plan.Horizons[_horizon].Days);
+        var (scale, drift) = _areShocks ? (1, 0) : (law.Deviation * _root, law.Drift * _days);
         var moves = _rowOf[factor] is var row && row < 0 ? _still.AsSpan(0, Width) : _moves.AsSpan(row * _stride, Width);
         if (law.IsLognormal)
         {

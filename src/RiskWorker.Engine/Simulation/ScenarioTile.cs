@@ -18,6 +18,8 @@ public sealed class ScenarioTile
     private RevaluationPlan _plan;
     private PlanSlice _whole;
     private MoveSource? _source;
+    private HorizonPath? _path;
+    private long _first;
 
     /// <summary>Allocates the buffers for <paramref name="plan"/>.</summary>
     public ScenarioTile(RevaluationPlan plan) => Serve(plan);
@@ -38,6 +40,8 @@ public sealed class ScenarioTile
         _cells.Shape(plan.Cells.Count, Width);
         _nodes.Serve(plan, Width);
         Market.Serve(plan);
+        _path = plan.Aged.Count == 0 ? null : new(Width);
+        _path?.Serve(plan);
     }
 
     /// <summary>Writes the losses of scenarios <paramref name="first"/> to first + width - 1.</summary>
@@ -56,18 +60,26 @@ public sealed class ScenarioTile
     internal void Draw(long first, int width)
     {
         _source!.Draw(first, width);
-        _cells.Width = width;
+        (_first, _cells.Width) = (first, width);
     }
 
     /// <summary>Writes the losses of the scenarios last drawn at one horizon; by surface where <paramref name="surfaces"/> are given.</summary>
     internal void Evaluate(int horizon, double[] losses, int offset, int stride, SurfaceProfits? surfaces)
     {
+        _path?.Pass(horizon, _source!, Market, _first, _cells.Width, _cells);
         Moves = _source!.At(horizon);
         Market.Take(Moves, _plan.Moves.RowOf, _cells.Width, _cells.Width, _plan.Law.GivesShocks);
-        Market.MoveTo(horizon, _whole);
-        _cells.Clear(0, _plan.Cells.Count);
-        if (surfaces is null) HoldingProfits.Add(_plan, _whole, Market, horizon, _cells);
-        else surfaces.Add(Market, horizon, _cells);
+        Market.MoveTo(horizon, _path?.Last(horizon) ?? _whole);
+        if (_path is not null)
+        {
+            _path.Arrive(horizon, Market, _cells);
+        }
+        else
+        {
+            _cells.Clear(0, _plan.Cells.Count);
+            if (surfaces is null) HoldingProfits.Add(_whole, Market, _cells);
+            else surfaces.Add(Market, horizon, _cells);
+        }
         _nodes.Roll(_whole, Market, _cells);
         for (var row = 0; row < _plan.Rows.Count; row++)
         {

@@ -28,14 +28,14 @@ internal sealed class SurfaceProfits(RevaluationPlan plan, SurfaceSet surfaces, 
             HoldingProfits.AddLinear(group, held.Linear, market, cells);
             var z = _z.AsSpan(0, market.Width);
             var isInside = !fitted.HasAny || UnitScale.Apply(market.Returns, fitted.Underlying.Scale, fitted.Underlying.Offset, z);
-            for (var b = 0; b < fitted.Batches.Length; b++) AddBatch(group.Options[b], fitted.Batches[b], market, horizon, z, isInside, cells);
+            for (var b = 0; b < fitted.Batches.Length; b++) AddBatch(group.Options[b], fitted.Batches[b], market, z, isInside, cells);
             for (var b = 0; b < held.Formulas.Length; b++) HoldingProfits.AddFormulas(group.Formulas[b], held.Formulas[b], market, cells);
         }
-        HoldingProfits.AddFlows(plan, _whole, market, cells);
+        HoldingProfits.AddFlows(_whole, market, cells);
     }
 
     [MethodImpl(MethodImplOptions.AggressiveOptimization)]
-    private void AddBatch(OptionBatch batch, BatchSurfaces fitted, MarketLanes market, int horizon, ReadOnlySpan<double> z, bool isInside, LaneTable cells)
+    private void AddBatch(OptionBatch batch, BatchSurfaces fitted, MarketLanes market, ReadOnlySpan<double> z, bool isInside, LaneTable cells)
     {
         var w = _w.AsSpan(0, market.Width);
         if (batch.VolatilityFactor >= 0)
@@ -49,15 +49,15 @@ internal sealed class SurfaceProfits(RevaluationPlan plan, SurfaceSet surfaces, 
             if (!isInside) profit.CopyTo(_before);
             if (surface.Columns == 1) PolynomialSum.Add(surface.Coefficients, z, profit);
             else PolynomialSum.Add(surface.Coefficients, surface.Columns, z, w, profit);
-            if (!isInside) RevalueOutside(batch, surface, market, horizon, z, w, profit);
+            if (!isInside) RevalueOutside(batch, surface, market, z, w, profit);
         }
         foreach (var range in fitted.Direct)
         {
-            for (var i = range.From; i < range.To; i++) HoldingProfits.AddOption(batch, i, market, horizon, cells);
+            for (var i = range.From; i < range.To; i++) HoldingProfits.AddOption(batch, i, market, cells);
         }
     }
 
-    private void RevalueOutside(OptionBatch batch, PriceSurface surface, MarketLanes market, int horizon, ReadOnlySpan<double> z, ReadOnlySpan<double> w, Span<double> profit)
+    private void RevalueOutside(OptionBatch batch, PriceSurface surface, MarketLanes market, ReadOnlySpan<double> z, ReadOnlySpan<double> w, Span<double> profit)
     {
         for (var s = 0; s < profit.Length; s++)
         {
@@ -66,7 +66,7 @@ internal sealed class SurfaceProfits(RevaluationPlan plan, SurfaceSet surfaces, 
             for (var i = surface.Items.From; i < surface.Items.To; i++)
             {
                 ref readonly var item = ref batch.Items[i];
-                ref readonly var terms = ref batch.Terms[horizon][i];
+                ref readonly var terms = ref batch.Terms[i];
                 sum = batch.VolatilityFactor < 0
                     ? EuropeanOption.Profit(terms, market.Returns[s], market.Spots[s], item.Quantity, item.BaseValue, sum)
                     : EuropeanOption.Profit(terms, market.Returns[s], market.Spots[s], market.Volatilities[s], item.Quantity, item.BaseValue, sum);

@@ -27,7 +27,7 @@ public sealed class SurfaceBuilder
         workspace.ForEach(jobs.Count, (_, buffers, j, _) =>
         {
             var job = jobs[j];
-            fitted[j] = buffers.Fit.Of(_plan.Groups[job.Group], job.Batch, job.Horizon, job.Items, job.Underlying, job.Volatility,
+            fitted[j] = buffers.Fit.Of(_plan.Groups[job.Group], job.Batch, job.Items, job.Underlying, job.Volatility,
                 LawOf(_plan.Groups[job.Group].Options[job.Batch].VolatilityFactor).Level, _error);
         }, cancellation);
         var found = jobs.Zip(fitted).ToLookup(j => (j.First.Horizon, j.First.Group, j.First.Batch));

@@ -26,13 +26,12 @@ internal sealed class SurfaceFit
     /// <summary>A surface for <paramref name="items"/> of one batch, or null where none is accurate or none would pay.</summary>
     /// <param name="group">The underlying's group.</param>
     /// <param name="batch">Place of the batch in it.</param>
-    /// <param name="horizon">Place of the horizon in the plan.</param>
     /// <param name="items">Options of one cell.</param>
     /// <param name="underlying">Axis of the underlying.</param>
     /// <param name="volatility">Axis of the volatility; unused where that is flat.</param>
     /// <param name="level">Volatility today; unused where that is flat.</param>
     /// <param name="error">Largest error wanted, as a fraction of the gross value.</param>
-    public PriceSurface? Of(UnderlyingGroup group, int batch, int horizon, ItemRange items, AxisScale underlying, AxisScale volatility, double level, double error)
+    public PriceSurface? Of(UnderlyingGroup group, int batch, ItemRange items, AxisScale underlying, AxisScale volatility, double level, double error)
     {
         var options = group.Options[batch];
         var isFlat = options.VolatilityFactor < 0;
@@ -43,7 +42,7 @@ internal sealed class SurfaceFit
             // A price bends less along its volatility than along its underlying.
             var columns = isFlat ? 1 : (degree / 2) + 1;
             if ((degree + 1) * columns > WorthOfAnOption * count) return null;
-            if (double.IsNaN(gross)) gross = GrossOf(options, horizon, items, group.Spot, underlying, volatility, level);
+            if (double.IsNaN(gross)) gross = GrossOf(options, items, group.Spot, underlying, volatility, level);
             var coefficients = Coefficients(degree, columns);
             var worst = LargestError(coefficients, degree, columns);
             if (worst <= error * gross) return new(options.Items[items.From].Cell, items, coefficients, columns, (Safety * worst) + (1e-13 * gross));
@@ -89,15 +88,15 @@ internal sealed class SurfaceFit
             for (var i = items.From; i < items.To; i++)
             {
                 ref readonly var item = ref options.Items[i];
-                if (isFlat) EuropeanOption.AccumulateValue(options.Terms[horizon][i], x, _spots.AsSpan(0, points), item.Quantity, item.BaseValue, profits);
-                else EuropeanOption.AccumulateValue(options.Terms[horizon][i], x, _spots.AsSpan(0, points), _volatilities.AsSpan(0, points), item.Quantity, item.BaseValue, profits);
+                if (isFlat) EuropeanOption.AccumulateValue(options.Terms[i], x, _spots.AsSpan(0, points), item.Quantity, item.BaseValue, profits);
+                else EuropeanOption.AccumulateValue(options.Terms[i], x, _spots.AsSpan(0, points), _volatilities.AsSpan(0, points), item.Quantity, item.BaseValue, profits);
             }
             return points;
         }
     }
 
     // Quantities times the largest values that the options reach in the corners of the surface.
-    private static double GrossOf(OptionBatch batch, int horizon, ItemRange items, double spot, AxisScale underlying, AxisScale volatility, double level)
+    private static double GrossOf(OptionBatch batch, ItemRange items, double spot, AxisScale underlying, AxisScale volatility, double level)
     {
         var gross = 0.0;
         var high = batch.VolatilityFactor < 0 ? 0 : LogNormalMoves.Spot(volatility.At(1), level);
@@ -106,7 +105,7 @@ internal sealed class SurfaceFit
 
         double ValueAt(int i, double x)
         {
-            var terms = batch.Terms[horizon][i];
+            var terms = batch.Terms[i];
             var moved = LogNormalMoves.Spot(x, spot);
             return batch.VolatilityFactor < 0 ? EuropeanOption.Value(terms, x, moved) : EuropeanOption.Value(terms, x, moved, high);
         }

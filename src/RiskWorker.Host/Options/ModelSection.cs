@@ -22,7 +22,7 @@ internal static class ModelSection
         [ModelKind.Stressed] = ["kind", "model", "span"],
     };
 
-    private static readonly Dictionary<string, int> s_ageing = new(StringComparer.Ordinal) { ["none"] = 0 };
+    private static readonly Dictionary<string, AgeingKind> s_ageing = new(StringComparer.Ordinal) { ["none"] = AgeingKind.None, ["horizon"] = AgeingKind.Horizon };
 
     private static readonly Dictionary<string, CovarianceEstimator> s_covariances = new(StringComparer.Ordinal)
     {
@@ -69,8 +69,8 @@ internal static class ModelSection
             Volatility = section["volatility"]?.Choice(s_filters) ?? defaults.Volatility,
             Jumps = section["jumps"] is { } jumps ? JumpsSection.Read(jumps) : defaults.Jumps,
             Span = section["span"]?.Whole(20, LongestWindow) ?? defaults.Span,
+            Ageing = section["ageing"]?.Choice(s_ageing) ?? defaults.Ageing,
         };
-        section["ageing"]?.Choice(s_ageing, "horizon");
         CheckDriftsAreUsed(section, model);
         if (kind == ModelKind.Stressed) calibrated = section.Required("model", "the name of the model to calibrate to the worst span");
         return model;

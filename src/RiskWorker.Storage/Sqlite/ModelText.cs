@@ -17,6 +17,7 @@ internal static class ModelText
         text.Text(place).Text(model.Name).Text(ModelKinds.NameOf(model.Kind)).Text(Spelling.Of(model.Covariance)).Number(model.Lambda).Value<int>(model.Window).Text(Spelling.Of(model.Drift)).End();
         foreach (var (factor, drift) in model.Drifts) text.Text(DriftsOf(place)).Text(factor).Number(drift).End();
         if (model.MissingDays != MissingDays.Complete) text.Text(place + "/missing").Text(Spelling.Of(model.MissingDays)).End();
+        if (model.Ageing != AgeingKind.None) text.Text(place + "/ageing").Text(Spelling.Of(model.Ageing)).End();
         switch (model.Kind)
         {
             case ModelKind.StudentT:
@@ -51,6 +52,7 @@ internal static class ModelText
             Drift = row.Choice<DriftKind>(),
             Drifts = Sorted(rows[DriftsOf(place)], drift => drift.Amount()),
             MissingDays = rows[place + "/missing"].SingleOrDefault()?.Choice<MissingDays>() ?? MissingDays.Complete,
+            Ageing = rows[place + "/ageing"].SingleOrDefault()?.Choice<AgeingKind>() ?? AgeingKind.None,
         };
         return model.Kind switch
         {

@@ -1,10 +1,9 @@
 using RiskWorker.Domain.Books;
 using RiskWorker.Domain.Runs;
-using RiskWorker.Engine.Backtesting;
 using RiskWorker.Engine.Calibration;
 using RiskWorker.Engine.Plans;
-using RiskWorker.Engine.Pricing;
 using RiskWorker.Engine.Reductions;
+using RiskWorker.Engine.Runs;
 using RiskWorker.Engine.Simulation;
 
 namespace RiskWorker.Engine.Tests.Plans;
@@ -16,10 +15,10 @@ internal sealed record CompiledBook(Snapshot Snapshot, BookTree Tree, Calibrated
     {
         var tree = BookTree.Build(snapshot.Books).Tree!;
         var model = Calibrator.Calibrate(snapshot);
-        var binder = new InstrumentBinder(tree.ReportingCurrency, model.Factors, new ClosingLevels(snapshot));
-        var lines = LineValuation.Of(snapshot.Positions, snapshot.Instruments, binder, model.Levels, snapshot.AsOf);
-        Assert.All(lines, line => Assert.Null(line.Unpriced));
-        var plan = new PlanCompiler(tree, model, binder.Currencies, horizons.Select(h => new Horizon(h))).Compile(snapshot.Settings.Simulation.Seed, lines);
+        var valued = new BookValuation(snapshot, tree, model);
+        Assert.All(valued.Today, line => Assert.Null(line.Unpriced));
+        Horizon[] days = [.. horizons.Select(h => new Horizon(h))];
+        var plan = new PlanCompiler(tree, model, valued.Binder.Currencies, days).Compile(snapshot.Settings.Simulation.Seed, valued.Today, ageing: snapshot.Settings.Model.Ages ? valued.Ageing(snapshot) : null);
         return new(snapshot, tree, model, plan);
     }
 

@@ -6,6 +6,7 @@ using RiskWorker.Engine.Calibration;
 using RiskWorker.Engine.Measures;
 using RiskWorker.Engine.Plans;
 using RiskWorker.Engine.Pricing;
+using RiskWorker.Engine.Pricing.Ageing;
 
 namespace RiskWorker.Engine.Tests.Simulation;
 
@@ -39,11 +40,14 @@ public sealed class AgeingOptionCasesTests
         var (tree, _) = BookTree.Build(snapshot.Books);
         var model = Calibrator.Calibrate(snapshot);
         var binder = new InstrumentBinder("EUR", model.Factors);
-        var lines = LineValuation.Of(snapshot.Positions, snapshot.Instruments, binder, model.Levels, s_asOf);
-        var plan = new PlanCompiler(tree!, model, binder.Currencies, [new(10)], (_, days) => 0.5 - (days / 252.0)).Compile(1, lines);
+        LineValue[] lines = [.. snapshot.Positions.Select(p => new LineValue(p, null, Bound(p, 0.5), p.Quantity * Bound(p, 0.5).Value(model.Levels), 0, 0, null))];
+        var aged = snapshot.Positions.ToDictionary(p => (p.Instrument, 10), p => new AgedInstrument { Rest = Bound(p, 0.5 - (10 / 252.0)) });
+        var plan = new PlanCompiler(tree!, model, binder.Currencies, [new(10)]).Compile(1, lines, ageing: new(aged));
         var demand = new TailDemand([new(MeasureKind.Var, confidence, new(10)), new(MeasureKind.Es, confidence, new(10))], [0.95m]);
         return new LossSampler(plan, Environment.ProcessorCount, demand, Scenarios, null, CancellationToken.None).Look(Scenarios).Series[0];
     }
+
+    private static BoundEuropean Bound(Position held, double years) => new(0, 1, UnderlyingKey.Of(0), 100, years, 0.03, 0, held.Instrument == nameof(OptionRight.Call), 0.25, -1);
 
     private static Snapshot SnapshotOf(OptionRight[] rights) => new SnapshotBuilder
     {
@@ -52,7 +56,6 @@ public sealed class AgeingOptionCasesTests
         Factors = [new("S", FactorClass.Equity, ShockKind.Lognormal, "EUR")],
         Observations = [new(s_asOf, "S", 100)],
         Covariance = [new("S", "S", 0.25 * 0.25 / 252)],
-        Instruments = [.. rights.Select(right => new Option(new("S", null), 100, s_asOf.AddDays(182), right, ExerciseStyle.European, new(0.25, null), RateTerm.Of(0.03), null) { Name = right.ToString(), Currency = "EUR" })],
         Positions = [.. rights.Select(right => new Position("ALL", right.ToString(), -1))],
     }.Build();
 

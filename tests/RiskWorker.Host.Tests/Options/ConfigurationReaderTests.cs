@@ -38,7 +38,7 @@ public sealed class ConfigurationReaderTests
               "store": { "path": "data/risk.db" },
               "timeEffects": "included",
               "models": {
-                "fast": { "kind": "lognormal", "covariance": "ewma", "lambda": 0.9, "window": 250, "drift": "historical", "ageing": "none" },
+                "fast": { "kind": "lognormal", "covariance": "ewma", "lambda": 0.9, "window": 250, "drift": "historical", "ageing": "horizon" },
                 "slow": { "covariance": "equal", "window": 1000, "drift": "explicit", "drifts": { "AAA": 0.05, "BBB": -0.01 } }
               },
               "record": "slow",
@@ -54,6 +54,7 @@ public sealed class ConfigurationReaderTests
             """);
         Assert.Equal(["fast", "slow"], read.Models.Keys);
         Assert.Equal(("fast", 0.9, 250, DriftKind.Historical), (read.Models["fast"].Name, read.Models["fast"].Lambda, read.Models["fast"].Window, read.Models["fast"].Drift));
+        Assert.Equal((AgeingKind.Horizon, AgeingKind.None), (read.Models["fast"].Ageing, read.Models["slow"].Ageing));
         Assert.Equal(("slow", CovarianceEstimator.Equal, 1000), (read.Run.Model.Name, read.Run.Model.Covariance, read.Run.Model.Window));
         Assert.Equal([new("AAA", 0.05), new("BBB", -0.01)], read.Run.Model.Drifts);
         Assert.Equal(["VaR 99%, 1 day", "ES 97.5%, 10 days"], read.Run.Measures.Select(m => m.ToString()));
@@ -116,7 +117,7 @@ public sealed class ConfigurationReaderTests
     [Theory]
     [InlineData("""{ "models": { "m": { "kind": "student" } } }""", "models.m.kind: found \"student\", expected lognormal; other kinds of model are not available in this version")]
     [InlineData("""{ "models": { "m": { "covariance": "shrunk" } } }""", "models.m.covariance: found \"shrunk\", expected one of ewma, equal, given; 'shrunk' is not available in this version")]
-    [InlineData("""{ "models": { "m": { "ageing": "horizon" } } }""", "models.m.ageing: found \"horizon\", expected one of none; 'horizon' is not available in this version")]
+    [InlineData("""{ "models": { "m": { "ageing": "daily" } } }""", "models.m.ageing: found \"daily\", expected one of none, horizon")]
     [InlineData("""{ "models": { "m": {} }, "record": "n" }""", "record: found \"n\", expected the name of a model: m")]
     [InlineData("""{ "models": { "m": {}, "n": {} } }""", "record: found nothing, expected the name of a model: m, n")]
     [InlineData("""{ "models": { "m": { "drift": "explicit" } } }""", "models.m.drifts: found nothing, expected returns per year by factor, which drift 'explicit' needs")]

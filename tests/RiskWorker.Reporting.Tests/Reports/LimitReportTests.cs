@@ -43,6 +43,17 @@ public sealed class LimitReportTests
     }
 
     [Fact]
+    public void Build_says_whether_the_valuation_date_moves()
+    {
+        var run = new SampleRun().Build();
+        Assert.Contains("The shock is instantaneous: nothing expires or pays inside the horizon.", Flat(run));
+        var aged = run with { Settings = run.Settings with { Model = run.Settings.Model with { Ageing = AgeingKind.Horizon } } };
+        Assert.Contains("The valuation date moves by the horizon (Monday to Friday)", Flat(aged));
+        Assert.DoesNotContain("instantaneous: nothing", Flat(aged));
+        Assert.Contains("the valuation date moved by the horizon", Page(aged, 0));
+    }
+
+    [Fact]
     public void Build_method_page_says_what_price_surfaces_did()
     {
         var run = new SampleRun().Build();

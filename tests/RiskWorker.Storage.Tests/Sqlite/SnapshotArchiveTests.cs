@@ -11,7 +11,7 @@ public sealed class SnapshotArchiveTests : IDisposable
     private static readonly DateOnly s_day = new(2026, 11, 6);
     private static readonly RunSettings s_settings = new()
     {
-        Model = new() { Covariance = CovarianceEstimator.Given, Drift = DriftKind.Explicit, Drifts = new SortedDictionary<string, double>(StringComparer.Ordinal) { ["ALPHA"] = 0.05, ["ALPHA-B"] = -0.0 } },
+        Model = new() { Covariance = CovarianceEstimator.Given, Drift = DriftKind.Explicit, Drifts = new SortedDictionary<string, double>(StringComparer.Ordinal) { ["ALPHA"] = 0.05, ["ALPHA-B"] = -0.0 }, Ageing = AgeingKind.Horizon },
         Measures = [RunRecords.OneDayVar, new(MeasureKind.Es, new(0.975m), new(10))],
         Simulation = new() { Seed = ulong.MaxValue, Precision = 0.005 },
         Checks = new() { Severity = new SortedDictionary<string, FindingSeverity>(StringComparer.Ordinal) { ["PRICE-STALE"] = FindingSeverity.Blocking } },

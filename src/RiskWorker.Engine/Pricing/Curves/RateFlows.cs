@@ -29,15 +29,27 @@ public static class RateFlows
     /// <returns>Null when the instrument has flows that can be valued, else why not.</returns>
     public static Unpriced? Of(Instrument instrument, DateOnly valuation, CurveSet curves, out RateFlow[] flows)
     {
-        var list = new FlowList(valuation);
-        var fault = instrument switch
-        {
-            Bond b => Matured(b.Maturity, valuation) ?? list.Discounting(b, b.Curve, b.Spread, curves) ?? Add(list, b),
-            Floater f => Matured(f.Maturity, valuation) ?? list.Discounting(f, f.Curve, f.Spread, curves) ?? Add(list, f, curves),
-            Swap s => Matured(s.Maturity, valuation) ?? list.Discounting(s, s.Curve, null, curves) ?? Add(list, s, curves),
-            _ => new(UnpricedReason.NotModelled, $"the kind '{instrument.Kind}' has no rate flows"),
-        };
+        var list = new FlowList(valuation, valuation);
+        var fault = Add(list, instrument, valuation, curves);
         flows = fault is null ? list.Merged() : [];
+        return fault;
+    }
+
+    /// <summary>
+    /// The flows as of <paramref name="valuation"/> of what is held since <paramref name="known"/>, on whose close rates are known: one that
+    /// is fixed in between takes the curve of its own date.
+    /// </summary>
+    /// <param name="instrument">A bond, floater or swap, alive on <paramref name="known"/>.</param>
+    /// <param name="known">The earlier date.</param>
+    /// <param name="valuation">The later date.</param>
+    /// <param name="curves">The run's curves.</param>
+    /// <param name="flows">The flows; meaningless where a reason is returned.</param>
+    /// <returns>Null when the instrument has flows that can be valued, else why not.</returns>
+    public static Unpriced? Between(Instrument instrument, DateOnly known, DateOnly valuation, CurveSet curves, out PassedFlows flows)
+    {
+        var list = new FlowList(known, valuation);
+        var fault = Add(list, instrument, known, curves);
+        flows = list.Passed();
         return fault;
     }
 
@@ -50,6 +62,14 @@ public static class RateFlows
 
     private static Unpriced? Matured(DateOnly maturity, DateOnly valuation) =>
         maturity < valuation ? new(UnpricedReason.Expired, $"it matured on {maturity:yyyy-MM-dd}") : null;
+
+    private static Unpriced? Add(FlowList list, Instrument instrument, DateOnly known, CurveSet curves) => instrument switch
+    {
+        Bond b => Matured(b.Maturity, known) ?? list.Discounting(b, b.Curve, b.Spread, curves) ?? Add(list, b),
+        Floater f => Matured(f.Maturity, known) ?? list.Discounting(f, f.Curve, f.Spread, curves) ?? Add(list, f, curves),
+        Swap s => Matured(s.Maturity, known) ?? list.Discounting(s, s.Curve, null, curves) ?? Add(list, s, curves),
+        _ => new(UnpricedReason.NotModelled, $"the kind '{instrument.Kind}' has no rate flows"),
+    };
 
     private static Unpriced? Add(FlowList list, Bond bond)
     {

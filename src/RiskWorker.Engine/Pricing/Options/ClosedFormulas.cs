@@ -75,7 +75,7 @@ public sealed class ForwardFormula(double strike) : OptionFormula
     public override IEnumerable<double> Numbers() => [5, strike];
 }
 
-/// <summary>An amount that nothing moves any more: an option that has been knocked out.</summary>
+/// <summary>An amount that nothing moves any more: an option that has been knocked out, a rebate.</summary>
 public sealed class SettledFormula(double value) : OptionFormula
 {
     /// <inheritdoc/>
@@ -84,6 +84,8 @@ public sealed class SettledFormula(double value) : OptionFormula
     /// <inheritdoc/>
     public override void Accumulate(in MarketSpans market, double quantity, double baseValue, Span<double> profit)
     {
+        if (baseValue == value) return;
+        for (var s = 0; s < profit.Length; s++) profit[s] = Math.FusedMultiplyAdd(quantity, value - baseValue, profit[s]);
     }
 
     /// <inheritdoc/>

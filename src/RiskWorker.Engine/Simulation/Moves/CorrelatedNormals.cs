@@ -27,9 +27,11 @@ internal sealed class CorrelatedNormals(int capacity)
     /// <param name="first">Number of the first scenario.</param>
     /// <param name="width">Scenarios.</param>
     /// <param name="day">Which day's, where days are drawn one by one: each has a stream of its own, the first that of a single draw.</param>
-    public void Draw(long first, int width, uint day = 0)
+    public void Draw(long first, int width, uint day = 0) => Draw(new DrawStream(_seed, DrawPurpose.FactorMoves, day), first, width);
+
+    /// <summary>The same from a stream of its own.</summary>
+    public void Draw(DrawStream stream, long first, int width)
     {
-        var stream = new DrawStream(_seed, DrawPurpose.FactorMoves, day);
         for (var draw = 0; draw < _moves.Rank; draw += 2)
             NormalDraws.FillPair(stream, (ulong)first, (uint)draw / 2, _draws.AsSpan(draw * width, width), _draws.AsSpan((draw + 1) * width, width));
         TriangularProduct.Multiply(_moves.Lower, _moves.Rows, _moves.Rank, _draws.AsSpan(0, _moves.Rank * width), _normals.AsSpan(0, _moves.Rows * width), width);

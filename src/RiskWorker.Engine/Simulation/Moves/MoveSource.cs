@@ -32,6 +32,13 @@ internal abstract class MoveSource
     /// <summary>The moves of the scenarios last drawn, a row a moving factor, as far apart as there are scenarios; written over by the next call.</summary>
     public abstract double[] At(int horizon);
 
+    /// <summary>
+    /// The moves of the scenarios last drawn at the close of a day inside a horizon, before its last: multiples of a day's deviation that are not
+    /// scaled by a number of days any more, or shocks outright; rows as those of <see cref="At"/>, written over by the next call. They lead to the
+    /// moves at the horizon, and depend on scenario, horizon and day alone, not on which other days are asked for.
+    /// </summary>
+    public virtual double[] Inside(int horizon, int day) => throw new InvalidOperationException($"{GetType().Name} has no draws inside a horizon.");
+
     /// <summary>Turns to <paramref name="plan"/>; buffers that are large enough are used again.</summary>
     protected abstract void Serve(RevaluationPlan plan);
 }

@@ -66,7 +66,7 @@ internal static class MethodSection
             ? [new Fact("LES", "expected shortfall with each factor at its liquidity horizon, by the cascade of MAR33; the horizon printed is the base.")] : (Fact[])[],
         new("Intervals", Intervals(run)),
         new("Revaluation", Revaluation(run)),
-        new("Horizon", $"{ModelWords.Horizon(run.Record.Settings.Model)} The shock is instantaneous: nothing expires or pays inside the horizon."),
+        new("Horizon", $"{ModelWords.Horizon(run.Record.Settings.Model)} {ModelWords.Ageing(run.Record.Settings.Model)}"),
         new("Shocks", "ln(S(t) / S(t−1)) for prices, differences for rates; only between consecutive observed business days of a factor's calendar."),
         new("Exceptions", "loss strictly greater than the VaR of the previous close; a missing VaR or P&L counts. Hypothetical P&L: yesterday's positions at today's prices"
             + (run.Record.Settings.TimeEffectsIncluded ? ", the valuation date moved too." : ", the valuation date held.")),

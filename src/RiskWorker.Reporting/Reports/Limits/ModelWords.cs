@@ -6,8 +6,8 @@ namespace RiskWorker.Reporting.Reports.Limits;
 /// <summary>A model's settings in words.</summary>
 internal static class ModelWords
 {
-    /// <summary>One line: name, kind, how it is found.</summary>
-    public static string Line(ModelSettings model) => $"{Name(model)}, {Estimation(model)}";
+    /// <summary>One line: name, kind, how it is found, and whether it ages.</summary>
+    public static string Line(ModelSettings model) => $"{Name(model)}, {Estimation(model)}{(model.Ages ? ", the valuation date moved by the horizon" : "")}";
 
     /// <summary>The name with the kind behind it, unless the name is the kind's.</summary>
     public static string Name(ModelSettings model)
@@ -92,6 +92,11 @@ internal static class ModelWords
         ModelKind.JumpDiffusion => "h days have h times the daily covariance and h times as many jumps, days taken as independent.",
         _ => "h days have h times the daily covariance, days taken as independent.",
     };
+
+    public static string Ageing(ModelSettings model) => !model.Ages
+        ? "The shock is instantaneous: nothing expires or pays inside the horizon."
+        : "The valuation date moves by the horizon (Monday to Friday): what expires, pays or is fixed inside does so at a close on the way there, a Brownian bridge of all factors; "
+            + "what is paid counts in V(h), as cash in its own currency without interest. Sensitivities are instantaneous.";
 
     /// <summary>The model that a stressed one calibrates, by its name.</summary>
     private static string Base(ModelSettings model) => model.Stressed is { } calibrated ? Name(calibrated) : "another model";
