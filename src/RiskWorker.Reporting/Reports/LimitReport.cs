@@ -31,6 +31,7 @@ public static class LimitReport
         new(SensitivitiesSection.Blocks(reading), StartsPage: true),
         new(BacktestSection.Blocks(reading)),
         new(ModelsSection.Blocks(reading), StartsPage: true),
+        new(EffectsSection.Blocks(reading)),
         new(FindingsSection.Blocks(reading)),
         new(HoldingsSection.Blocks(reading)),
         new(MethodSection.Blocks(reading), StartsPage: true),

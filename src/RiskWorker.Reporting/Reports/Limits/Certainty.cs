@@ -20,7 +20,16 @@ internal static class Certainty
             new TextRun("Intervals hold simulation noise only", Strong: true),
             new TextRun($", at {Phrases.Level(simulation.Level)}, from {Numerals.Count(simulation.Scenarios)} scenarios"
                 + (widths.Count > 0 ? $": {string.Join(", ", widths)}" : "")
-                + ". They do not hold model or estimation error. A limit that lies inside its interval is called inconclusive." + looks));
+                + ". They do not hold model or estimation error. A limit that lies inside its interval is called inconclusive." + looks + Precision(run, simulation)));
+    }
+
+    private static string Precision(RunReading run, SimulationSummary simulation)
+    {
+        if (simulation.PrecisionReached is not { } reached)
+            return "";
+
+        var wanted = $" The precision asked for, a half-width of {Numerals.Percent(run.Record.Settings.Simulation.Precision ?? 0, 2)} of the top node's figures,";
+        return reached ? $"{wanted} is reached." : $"{wanted} was not reached at the cap of scenarios.";
     }
 
     private static RichText History(RunReading run, NodeResult root, SimulationSummary simulation)

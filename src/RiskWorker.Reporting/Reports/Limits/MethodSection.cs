@@ -17,6 +17,7 @@ internal static class MethodSection
         .. ParameterTables.OfRecord(run),
         new Heading("Conventions", 3),
         Conventions(run),
+        .. RulesSection.Blocks(run),
         .. MethodsTable.Blocks(run),
         new Heading("Hashes", 3),
         Identity.Full(run),
