@@ -27,9 +27,6 @@ public sealed record ModelSettings
     /// <summary>What becomes of days on which a factor has no shock.</summary>
     public MissingDays MissingDays { get; init; }
 
-    /// <summary>Whether covariances are taken around the mean of the window instead of zero: no setting, tried only to show what it does.</summary>
-    public bool IsAroundMean { get; init; }
-
     /// <summary>Degrees of freedom of <see cref="ModelKind.StudentT"/>, above 2; null where they are fitted by profile likelihood.</summary>
     public double? DegreesOfFreedom { get; init; }
 

@@ -22,8 +22,9 @@ public static class Calibrator
     /// <param name="model">The model.</param>
     /// <param name="longest">The longest horizon in days.</param>
     /// <param name="lastDay">Shocks after it are left out; null where none is. Levels are today's whatever it is.</param>
+    /// <param name="isAroundMean">Whether covariances of complete days are taken around the mean instead of zero: no setting, tried to show what it does.</param>
     /// <exception cref="CalibrationException">The data cannot be used.</exception>
-    public static CalibratedModel Calibrate(Snapshot snapshot, ShockTable table, ModelSettings model, int longest, DateOnly? lastDay = null)
+    public static CalibratedModel Calibrate(Snapshot snapshot, ShockTable table, ModelSettings model, int longest, DateOnly? lastDay = null, bool isAroundMean = false)
     {
         var factors = snapshot.Factors;
         var (complete, parameters) = (CompleteDays(table, model, longest, lastDay), new List<ModelParameter>());
@@ -37,7 +38,7 @@ public static class Calibrator
             CovarianceEstimator.Given => GivenCovariance.Of(snapshot.Covariance, factors),
             _ when paired is not null => CovarianceEstimation.Pairwise(model, paired, factors.Count, factors, parameters),
             _ when complete is null => [],
-            _ => CovarianceEstimation.Of(model, jumps?.Quiet ?? complete.Shocks, factors.Count, parameters),
+            _ => CovarianceEstimation.Of(model, jumps?.Quiet ?? complete.Shocks, factors.Count, isAroundMean, parameters),
         };
         var window = paired ?? complete;
         var correlation = MovingCorrelation.Of(covariance, factors.Count);

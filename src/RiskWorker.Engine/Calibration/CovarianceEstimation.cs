@@ -11,11 +11,12 @@ internal static class CovarianceEstimation
     /// <param name="model">Estimator and decay; historical models take equal weights.</param>
     /// <param name="shocks">A row a factor, oldest day first.</param>
     /// <param name="factors">Rows.</param>
+    /// <param name="isAroundMean">Whether moments are taken around the mean of the window instead of zero.</param>
     /// <param name="parameters">Where is noted what the estimator found besides.</param>
-    public static double[] Of(ModelSettings model, double[] shocks, int factors, List<ModelParameter> parameters)
+    public static double[] Of(ModelSettings model, double[] shocks, int factors, bool isAroundMean, List<ModelParameter> parameters)
     {
         var weights = Weights(model, shocks.Length / Math.Max(factors, 1));
-        if (model.IsAroundMean) shocks = Centred(shocks, factors, weights);
+        if (isAroundMean) shocks = Centred(shocks, factors, weights);
         return model.Covariance == CovarianceEstimator.Shrunk ? Shrunk(shocks, factors, parameters) : Weighted(shocks, factors, weights);
     }
 

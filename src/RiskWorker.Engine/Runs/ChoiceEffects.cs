@@ -46,27 +46,27 @@ internal sealed class ChoiceEffects
         };
     }
 
-    private IEnumerable<(string Choice, string Instead, ModelSettings Model)> Alternatives()
+    private IEnumerable<(string Choice, string Instead, ModelSettings Model, bool IsAroundMean)> Alternatives()
     {
         if (_model.Kind is ModelKind.Historical or ModelKind.FilteredHistorical or ModelKind.Stressed) yield break;
         const string Zero = "zero expected return", Mean = "the mean shock of the window as drift";
         var isEstimated = _model.Covariance != CovarianceEstimator.Given;
-        if (_model.Drift == DriftKind.Zero) yield return (Zero, Mean, _model with { Drift = DriftKind.Historical });
-        else yield return (_model.Drift == DriftKind.Historical ? Mean : "drift as given", Zero, _model with { Drift = DriftKind.Zero, Drifts = new SortedDictionary<string, double>(StringComparer.Ordinal) });
-        if (isEstimated && _model.MissingDays == MissingDays.Complete) yield return ("covariance around zero", "covariance around the mean", _model with { IsAroundMean = true });
+        if (_model.Drift == DriftKind.Zero) yield return (Zero, Mean, _model with { Drift = DriftKind.Historical }, false);
+        else yield return (_model.Drift == DriftKind.Historical ? Mean : "drift as given", Zero, _model with { Drift = DriftKind.Zero, Drifts = new SortedDictionary<string, double>(StringComparer.Ordinal) }, false);
+        if (isEstimated && _model.MissingDays == MissingDays.Complete) yield return ("covariance around zero", "covariance around the mean", _model, true);
         if (!isEstimated || _model.Covariance == CovarianceEstimator.Shrunk || (_run.Model.DroppedDays.Count == 0 && _model.MissingDays == MissingDays.Complete)) yield break;
         const string Complete = "days complete over all factors", Pairwise = "every pair of factors over its own days";
-        if (_model.MissingDays == MissingDays.Complete) yield return (Complete, Pairwise, _model with { MissingDays = MissingDays.Pairwise });
-        else yield return (Pairwise, Complete, _model with { MissingDays = MissingDays.Complete });
+        if (_model.MissingDays == MissingDays.Complete) yield return (Complete, Pairwise, _model with { MissingDays = MissingDays.Pairwise }, false);
+        else yield return (Pairwise, Complete, _model with { MissingDays = MissingDays.Complete }, false);
     }
 
     // What cannot be estimated otherwise has no effect to show.
-    private ChoiceEffect? Choice(IReadOnlyList<double> asIs, (string Choice, string Instead, ModelSettings Model) other)
+    private ChoiceEffect? Choice(IReadOnlyList<double> asIs, (string Choice, string Instead, ModelSettings Model, bool IsAroundMean) other)
     {
         CalibratedModel model;
         try
         {
-            model = _calibration.Of(other.Model);
+            model = _calibration.Of(other.Model, isAroundMean: other.IsAroundMean);
         }
         catch (CalibrationException)
         {

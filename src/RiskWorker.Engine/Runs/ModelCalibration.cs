@@ -30,10 +30,11 @@ internal sealed class ModelCalibration(Snapshot snapshot, int longest)
     /// <summary>Calibrates <paramref name="model"/>; a stressed one to the newest span.</summary>
     /// <param name="model">The model.</param>
     /// <param name="lastDay">Shocks after it are left out; null where none is.</param>
+    /// <param name="isAroundMean">Whether covariances are taken around the mean instead of zero.</param>
     /// <exception cref="CalibrationException">The data cannot be used.</exception>
-    public CalibratedModel Of(ModelSettings model, DateOnly? lastDay = null)
+    public CalibratedModel Of(ModelSettings model, DateOnly? lastDay = null, bool isAroundMean = false)
     {
         var calibrated = model.Kind == ModelKind.Stressed ? model.Stressed! with { Window = model.Span } : model;
-        return Calibrator.Calibrate(snapshot, _table, calibrated, longest, lastDay);
+        return Calibrator.Calibrate(snapshot, _table, calibrated, longest, lastDay, isAroundMean);
     }
 }

@@ -16,6 +16,13 @@ public static class Figures
     /// <summary>An interval; an end outside the sample is '…'.</summary>
     public static string Interval(double? low, double? high) => low is null && high is null ? "-" : $"{End(low)} to {End(high)}";
 
+    /// <summary>The interval of a measure; of a history what its days allow as a sample, for the measure itself has no noise.</summary>
+    public static string Interval(MeasureResult measure)
+    {
+        ArgumentNullException.ThrowIfNull(measure);
+        return measure.Sample is { } sample ? Interval(sample.Low, sample.High) : Interval(measure.Low, measure.High);
+    }
+
     /// <summary>A whole number with its thousands separated.</summary>
     public static string Count(long number) => number.ToString("N0", CultureInfo.InvariantCulture);
 

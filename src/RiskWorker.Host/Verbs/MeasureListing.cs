@@ -23,7 +23,11 @@ public static class MeasureListing
     {
         WriteHead(record, console);
         WriteFindings(record.Results.Findings, console);
-        if (record.Results.Nodes.Count > 0) WriteNodes(record.Results, console);
+        if (record.Results.Nodes.Count > 0)
+        {
+            WriteNodes(record.Results, console);
+            ModelListing.Write(record, console);
+        }
         if (record.Status != RunStatus.Failed) WriteLimits(record.Results.Limits, console);
         foreach (var document in documents) Line(console, document);
     }
@@ -58,12 +62,14 @@ public static class MeasureListing
             var (book, currency) = (new string(' ', 2 * Math.Min(node.Depth, DeepestIndent)) + node.Book, node.Currency);
             foreach (var measure in node.Measures)
             {
-                table.Row(book, currency, Figures.Measure(measure.Spec), Figures.Money(measure.Value), Figures.Interval(measure.Low, measure.High));
+                table.Row(book, currency, Figures.Measure(measure.Spec), Figures.Money(measure.Value), Figures.Interval(measure));
                 (book, currency) = ("", "");
             }
         }
         table.Write(console);
-        Line(console, "Intervals hold simulation noise only, not the error of model or estimates.");
+        Line(console, results.Nodes[0].Measures.Any(m => m.Sample is not null)
+            ? "Past days are no draws: intervals are those of the days as a sample."
+            : "Intervals hold simulation noise only, not the error of model or estimates.");
         console.WriteLine();
     }
 

@@ -12,6 +12,7 @@ internal static class ChartPainter
         DistributionChart distribution => new DistributionPainter(distribution, typesetter).Paint(size),
         PnlChart pnl => new PnlPainter(pnl, typesetter).Paint(size),
         MeasureChart measure => new MeasurePainter(measure, typesetter).Paint(size),
+        ModelChart models => new ModelPainter(models, typesetter).Paint(size),
         _ => throw new ArgumentException($"A chart of type {chart.GetType().Name} has no painter."),
     };
 }

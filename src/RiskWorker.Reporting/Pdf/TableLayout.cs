@@ -16,6 +16,9 @@ internal sealed class TableLayout
     // A row of more lines goes on in a second row, so that no row is taller than a page.
     private const int LinesPerRow = 40;
 
+    // A longer word of a head is broken: a model may be called anything.
+    private const float LongestHead = 60;
+
     private readonly Typesetter typesetter;
     private readonly Table table;
     private readonly float width;
@@ -44,7 +47,7 @@ internal sealed class TableLayout
     {
         var needs = table.Columns.Select((column, i) => Rows
             .Select(row => CellDrawing.Need(typesetter, row.Cells[i], row.Emphasis))
-            .Append(typesetter.WidestWord(column.Head, TextStyle.Head))
+            .Append(Math.Min(typesetter.WidestWord(column.Head, TextStyle.Head), LongestHead))
             .Append(typesetter.WidestWord(column.Unit, TextStyle.Unit))
             .Max());
         var free = width - (Gap * (table.Columns.Count - 1));

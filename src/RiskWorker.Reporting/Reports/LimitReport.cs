@@ -30,6 +30,7 @@ public static class LimitReport
         new(DistributionSection.Blocks(reading)),
         new(SensitivitiesSection.Blocks(reading), StartsPage: true),
         new(BacktestSection.Blocks(reading)),
+        new(ModelsSection.Blocks(reading), StartsPage: true),
         new(FindingsSection.Blocks(reading)),
         new(HoldingsSection.Blocks(reading)),
         new(MethodSection.Blocks(reading), StartsPage: true),

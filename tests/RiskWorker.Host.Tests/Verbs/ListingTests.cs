@@ -44,6 +44,49 @@ public sealed class ListingTests : IDisposable
     }
 
     [Fact]
+    public void Measure_listing_shows_what_each_model_says_of_the_top_node()
+    {
+        var (record, measures) = (SampleRuns.Record(), SampleRuns.Record().Results.Nodes[0].Measures);
+        IReadOnlyList<MeasureResult> history = [measures[0] with { Value = 400_000, Low = 400_000, High = 400_000, Sample = new(350_000, null) }, measures[1] with { Value = 900, Sample = new(null, null) }];
+        MeasureListing.Write(
+            record with
+            {
+                Results = record.Results with
+                {
+                    Models =
+                    [
+                        new() { Name = "[red]history[/]", Kind = ModelKind.Historical, Nodes = [new("FIRM", "EUR", history)] },
+                        new() { Name = "short", Kind = ModelKind.Historical },
+                    ],
+                },
+            },
+            [], Tables());
+        Assert.Contains("""
+
+            Models on FIRM   Measure          Loss  Ratio            Interval
+            lognormal        VaR 99% 1d    316,286   1.00  314,900 to 317,650
+                             ES 97.5% 10d   987.65   1.00         980.10 to …
+            [red]history[/]  VaR 99% 1d    400,000   1.26        350,000 to …
+                             ES 97.5% 10d   900.00   0.91                   -
+            short            no figures          -      -                   -
+
+            The interval of a history is that of its days as a sample.
+
+            """.ReplaceLineEndings("\n"), Lines(), StringComparison.Ordinal);
+    }
+
+    [Fact]
+    public void Measure_listing_of_a_history_says_that_its_intervals_are_those_of_a_sample()
+    {
+        var record = SampleRuns.Record();
+        var nodes = record.Results.Nodes.Select(node => node with { Measures = [.. node.Measures.Select(measure => measure with { Low = measure.Value, High = measure.Value, Sample = new(300_000, null) })] });
+        MeasureListing.Write(record with { Results = record.Results with { Nodes = [.. nodes] } }, [], Tables());
+        Assert.Contains("300,000 to …", Lines(), StringComparison.Ordinal);
+        Assert.Contains("Past days are no draws: intervals are those of the days as a sample.\n", Lines(), StringComparison.Ordinal);
+        Assert.DoesNotContain("simulation noise", Lines(), StringComparison.Ordinal);
+    }
+
+    [Fact]
     public void Measure_listing_fits_eighty_columns()
     {
         MeasureListing.Write(SampleRuns.Report(), Tables());

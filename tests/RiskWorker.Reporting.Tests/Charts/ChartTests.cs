@@ -51,6 +51,8 @@ public sealed class ChartTests
         var file = PdfRenderer.Render(SampleDocuments.Of(
             new Figure("No day", new PnlChart([], "VaR 99%", "EUR"), 100),
             new Figure("No row", new MeasureChart([], "VaR 99%", "EUR"), 100),
+            new Figure("No model", new ModelChart([], "EUR"), 100),
+            new Figure("Only zeros", new ModelChart([new("VaR 99%", [new("house", 0, null, null, true)])], "EUR"), 100),
             new Figure("No scenario", new DistributionChart(0, 1, [0], 0, 0, [], "EUR"), 100),
             new Figure("Only gaps", new PnlChart([new(new DateOnly(2026, 1, 5), null, null, true)], "VaR 99%", "EUR"), 100)));
         Assert.Contains("Only gaps", PdfText.Lines(file));

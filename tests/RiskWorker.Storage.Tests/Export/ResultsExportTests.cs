@@ -111,7 +111,31 @@ public sealed class ResultsExportTests
         Assert.Equal(1 + 2 + 4 + 2, lines.Length);
         Assert.StartsWith($"{s_record.Run},2026-11-27,node,ALL,,EUR,-0,var,0.99,1,123456.78901234567,", lines[1], StringComparison.Ordinal);
         Assert.Contains(",node,FX,ALL,EUR,5E-324,es,0.975,10,", lines[6], StringComparison.Ordinal);
-        Assert.EndsWith(",fx-es,9000,nav,,,,,inconclusive,", lines[8], StringComparison.Ordinal);
+        Assert.EndsWith(",fx-es,9000,nav,,,,,inconclusive,,lognormal,,", lines[8], StringComparison.Ordinal);
+    }
+
+    [Fact]
+    public void Csv_has_a_row_of_its_own_for_each_measure_of_another_model_and_the_sample_of_a_history()
+    {
+        var (node, measure) = (s_record.Results.Nodes[1], s_record.Results.Nodes[1].Measures[0]);
+        var history = measure with { Value = 2, Low = 2, High = 2, Level = 0.95, Sample = new(1.5, null) };
+        var lines = Lines(s_record with
+        {
+            Results = s_record.Results with
+            {
+                Models =
+                [
+                    new() { Name = "broken", Kind = ModelKind.Historical },
+                    new() { Name = "=history", Kind = ModelKind.Historical, Nodes = [new(node.Book, node.Currency, [history])] },
+                ],
+            },
+        });
+
+        Assert.Equal(lines[0].Split(',').Length, lines[^1].Split(',').Length);
+        Assert.EndsWith(",status,status_since,model,sample_low,sample_high", lines[0], StringComparison.Ordinal);
+        Assert.Equal(Lines(s_record), lines[..^1]);
+        Assert.StartsWith($"{s_record.Run},2026-11-27,model,FX,ALL,USD,", lines[^1], StringComparison.Ordinal);
+        Assert.EndsWith(",var,0.99,1,2,2,2,0.95,,,,,,,,,,'=history,1.5,", lines[^1], StringComparison.Ordinal);
     }
 
     [Theory]

@@ -24,17 +24,21 @@ internal static class BooksSection
             new Heading("Books"),
             Tree(run, first, first[0]),
             new Paragraph(
-                $"Figures in {run.Scale().Unit}, whatever the currency of the book; intervals stand below. Stand-alone: the sum of {Phrases.Short(first[0])} over the books directly below; "
+                $"Figures in {run.Scale().Unit}, whatever the currency of the book; {Below(run)}. Stand-alone: the sum of {Phrases.Short(first[0])} over the books directly below; "
                 + "it is left out where a book also holds positions of its own. Diversification: the part of that sum by which the whole is smaller.", Voice.Note),
             .. others.SelectMany(specs => (Block[])[new Heading("Other measures", 3), Tree(run, specs, null)]),
             .. run.Results.Nodes.Count > 1 ? [Chart(run, first[0])] : (Block[])[],
         ];
     }
 
+    private static string Below(RunReading run) => run.IsWeighted ? "days of different weight claim no interval"
+        : run.IsHistory ? "intervals of the days as a sample stand below"
+        : "intervals stand below";
+
     private static Table Tree(RunReading run, IReadOnlyList<MeasureSpec> specs, MeasureSpec? sumOf)
     {
         var unit = run.Scale().Unit;
-        var columns = specs.Select(spec => new Column(Phrases.Head(spec), 1.25, Alignment.Right, unit));
+        var columns = specs.Select(spec => new Column(Phrases.Head(spec), 1.25, Alignment.Right, Phrases.Head(run, unit)));
         if (sumOf is not null)
             columns = [new("Value", 1.1, Alignment.Right, unit), .. columns, new("Stand-alone", 1.1, Alignment.Right, unit), new("Diversification", 1, Alignment.Right, "%")];
 
@@ -68,7 +72,7 @@ internal static class BooksSection
         foreach (var spec in specs)
         {
             var measure = RunReading.Find(node.InReportingCurrency, spec);
-            cells.Add(new TextCell(scale.Text(measure?.Value), measure is null ? "" : Phrases.Interval(scale, measure.Low, measure.High)));
+            cells.Add(new TextCell(scale.Text(measure?.Value), measure is null ? "" : Phrases.Interval(run, scale, measure)));
         }
 
         if (sumOf is { } summed)
@@ -96,7 +100,7 @@ internal static class BooksSection
         var books = rows.Count < run.Results.Nodes.Count ? $"The {Phrases.Number(rows.Count)} books with the largest {Phrases.Short(spec)}" : $"{Phrases.Short(spec)} by book";
         return new Figure(
             books, new MeasureChart(rows, spec.ToString(), run.Currency), 38 + (14 * rows.Count),
-            "Whisker: interval. Upright stroke: limit in money on this measure, where the book is in the reporting currency. Square: breached; diamond: inconclusive; triangle: warning; circle: within or without limit.");
+            (run.IsWeighted ? "" : run.IsHistory ? "Whisker: interval of the days as a sample. " : "Whisker: interval. ") + "Upright stroke: limit in money on this measure, where the book is in the reporting currency. Square: breached; diamond: inconclusive; triangle: warning; circle: within or without limit.");
     }
 
     private static MeasureRow ChartRow(RunReading run, NodeResult node, MeasureResult measure)
@@ -104,6 +108,7 @@ internal static class BooksSection
         var limit = run.Results.Limits.Where(one => one.Limit.Book == node.Book && one.Limit.Measure == measure.Spec)
             .OrderBy(one => Phrases.Urgency(one.Status)).ThenByDescending(one => one.Used).FirstOrDefault();
         double? amount = limit is { Limit.Basis: LimitBasis.Amount } && node.Currency == run.Currency ? limit.Limit.Amount : null;
-        return new(node.Name, measure.Value, measure.Low, measure.High, amount, limit is null ? StatusMark.None : Phrases.Mark(limit.Status));
+        var (low, high) = measure.Sample is { } sample ? (sample.Low, sample.High) : (measure.Low, measure.High);
+        return new(node.Name, measure.Value, low, high, amount, limit is null ? StatusMark.None : Phrases.Mark(limit.Status));
     }
 }

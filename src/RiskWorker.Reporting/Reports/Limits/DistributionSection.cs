@@ -19,10 +19,10 @@ internal static class DistributionSection
             .Select(measure => new LossMark(Phrases.Short(measure.Spec), measure.Value)).ToList();
         return
         [
-            new Heading("Distribution of simulated P&L"),
+            new Heading(run.IsHistory ? "Distribution of P&L over past days' moves" : "Distribution of simulated P&L"),
             new Figure(Title(run, distribution, scale), Chart(distribution, marks, run.Currency), 190,
                 $"Mean {scale.Text(distribution.Mean)}, standard deviation {scale.Text(distribution.Deviation)} {scale.Unit}. Losses lie at the left; the darker bars lie beyond the nearer line. "
-                + "Outlined bars at the ends hold all that lies further out."),
+                + "Outlined bars at the ends hold all that lies further out." + (run.IsWeighted ? " Bars count days; the figures weigh them by age." : "")),
         ];
     }
 
@@ -30,8 +30,8 @@ internal static class DistributionSection
     {
         var var = run.Root!.Measures.FirstOrDefault(measure => measure.Spec.Kind == MeasureKind.Var && measure.Spec.Horizon == distribution.Horizon);
         return var is null
-            ? $"Simulated P&L over {distribution.Horizon}"
-            : $"Over {distribution.Horizon}, {Numerals.Confidence(1 - var.Spec.Confidence.Level)} of the scenarios lose {scale.Text(var.Value)} {scale.Unit} or more";
+            ? $"{(run.IsHistory ? "P&L of the scenarios" : "Simulated P&L")} over {distribution.Horizon}"
+            : $"Over {distribution.Horizon}, {Numerals.Confidence(1 - var.Spec.Confidence.Level)} of the {(run.IsWeighted ? "scenarios by weight" : "scenarios")} lose {scale.Text(var.Value)} {scale.Unit} or more";
     }
 
     private static DistributionChart Chart(ProfitDistribution distribution, IReadOnlyList<LossMark> marks, string currency)

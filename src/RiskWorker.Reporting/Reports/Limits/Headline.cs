@@ -79,7 +79,7 @@ internal static class Headline
     {
         foreach (var limit in urgent.Take(Named))
         {
-            var interval = Phrases.UsedInterval(limit.UsedLow, limit.UsedHigh);
+            var interval = UsedInterval(run, limit);
             var used = limit.Used is null ? "its use could not be computed" : $"{Phrases.Used(limit.Used)} used{(interval.Length > 0 ? $" ({interval})" : "")}";
             yield return RichText.Of(
                 new TextRun(limit.Limit.Name, Strong: true),
@@ -104,7 +104,7 @@ internal static class Headline
     {
         var most = run.Results.Limits.Where(limit => limit.Used is not null).MaxBy(limit => limit.Used);
         if (most is not null)
-            yield return new("Most used limit", Phrases.Used(most.Used), "", $"{most.Limit.Name}, {Phrases.UsedInterval(most.UsedLow, most.UsedHigh)}", Phrases.Mark(most.Status));
+            yield return new("Most used limit", Phrases.Used(most.Used), "", string.Join(", ", ((string[])[most.Limit.Name, UsedInterval(run, most)]).Where(part => part.Length > 0)), Phrases.Mark(most.Status));
         foreach (var spec in run.HeadlineSpecs)
             yield return Measure(run, spec);
         if (run.Results.Backtest.FirstOrDefault(count => count.Book == run.Root?.Book && count.Days > 0) is { } backtest)
@@ -115,11 +115,19 @@ internal static class Headline
     {
         var scale = run.Scale();
         var measure = RunReading.Find(run.Root!.Measures, spec)!;
-        var detail = $"{Phrases.Level(measure.Level)} interval {Phrases.Interval(scale, measure.Low, measure.High)}";
+        var detail = measure.Sample switch
+        {
+            null => $"{Phrases.Level(measure.Level)} interval {Phrases.Interval(scale, measure.Low, measure.High)}",
+            { Low: null, High: null } => "no sample interval is claimed",
+            var sample => $"{Phrases.Level(measure.Level)} interval of the days as a sample {Phrases.Interval(scale, sample.Low, sample.High)}",
+        };
         if (RunReading.Find(run.PreviousOf(run.Root)?.Measures, spec) is { } before)
             detail += $"; {scale.Change(measure.Value - before.Value)} since {Numerals.Date(run.Record.Previous!.AsOf)}";
         return new(spec.ToString(), scale.Text(measure.Value), scale.Unit, detail);
     }
+
+    // The value of a history is no draw: its interval would be the value twice.
+    private static string UsedInterval(RunReading run, LimitResult limit) => run.IsHistory ? "" : Phrases.UsedInterval(limit.UsedLow, limit.UsedHigh);
 
     private static KeyFigure Exceptions(BacktestResult count)
     {

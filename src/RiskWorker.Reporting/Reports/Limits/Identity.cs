@@ -7,6 +7,7 @@ namespace RiskWorker.Reporting.Reports.Limits;
 internal static class Identity
 {
     private const int ShortHash = 16;
+    private const int MostBeside = 4;
 
     /// <summary>The block of page 1, hashes cut.</summary>
     public static Facts Short(RunReading run) => new(
@@ -31,6 +32,11 @@ internal static class Identity
         new("Run it again", run.Record.Command),
     ]);
 
+    /// <summary>How many scenarios, and what made them: a seed, or the past.</summary>
+    public static string Scenarios(ModelSettings model, SimulationSummary simulation) => ModelWords.Moves(model).Kind == ModelKind.Historical
+        ? $"{Numerals.Count(simulation.Scenarios)} past days, none drawn"
+        : $"{Numerals.Count(simulation.Scenarios)}, seed {simulation.Seed}";
+
     private static IEnumerable<Fact> Run(RunRecord record)
     {
         var attempt = record.Attempt > 1 ? $", attempt {Numerals.Count(record.Attempt)}" : "";
@@ -41,8 +47,10 @@ internal static class Identity
     private static IEnumerable<Fact> Inputs(RunRecord record)
     {
         yield return new("Model", ModelWords.Line(record.Settings.Model));
+        if (record.Results.Models.Count > 0)
+            yield return new("Beside it", string.Join(", ", record.Results.Models.Take(MostBeside).Select(model => model.Name)) + (record.Results.Models.Count > MostBeside ? $" and {Numerals.Count(record.Results.Models.Count - MostBeside)} more" : ""));
         if (record.Results.Simulation is { } simulation)
-            yield return new("Scenarios", $"{Numerals.Count(simulation.Scenarios)}, seed {simulation.Seed}");
+            yield return new("Scenarios", Scenarios(record.Settings.Model, simulation));
         yield return new("Version", $"{record.Version}, numerics epoch {Numerals.Count(record.Epoch)}");
     }
 

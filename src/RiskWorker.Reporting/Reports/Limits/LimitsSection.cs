@@ -19,18 +19,21 @@ internal static class LimitsSection
         return
         [
             new Heading("Limits"),
-            new Table(Columns(unit), [.. groups.Select(group => Group(run, group, groups.Count > 1))], ""),
+            new Table(Columns(run, unit), [.. groups.Select(group => Group(run, group, groups.Count > 1))], ""),
             new Paragraph(
-                "The upright line in a bar is the limit, the tick before it the warning level, the whisker the interval of the use. "
-                + "Breached: the whole interval lies above the limit. Inconclusive: the limit lies inside the interval, so simulation noise decides and nothing is declared. "
-                + $"Intervals hold at {Phrases.Level(limits[0].Level)} for each limit, not for all together.", Voice.Note),
+                "The upright line in a bar is the limit, the tick before it the warning level" + (run.IsHistory
+                    ? ". Past days are no draws, so there is no simulation noise and the value alone decides."
+                        + (run.IsWeighted ? "" : $" The interval below a measure is what its days allow as a sample: it has no part in the status, and holds at {Phrases.Level(limits[0].Level)} for each limit, not for all together.")
+                    : ", the whisker the interval of the use. "
+                        + "Breached: the whole interval lies above the limit. Inconclusive: the limit lies inside the interval, so simulation noise decides and nothing is declared. "
+                        + $"Intervals hold at {Phrases.Level(limits[0].Level)} for each limit, not for all together."), Voice.Note),
         ];
     }
 
-    private static Column[] Columns(string unit) =>
+    private static Column[] Columns(RunReading run, string unit) =>
     [
         new("Limit", 2.3),
-        new("Measure", 1.35, Alignment.Right, unit),
+        new("Measure", 1.35, Alignment.Right, Phrases.Head(run, unit)),
         new("Amount", 1, Alignment.Right, unit),
         new("Used", 2.3),
         new("Status", 1.3),
@@ -51,13 +54,17 @@ internal static class LimitsSection
         return new(
         [
             new TextCell(RichText.Strong(result.Limit.Name), Phrases.Bound(run, result)),
-            new TextCell(scale.Text(result.Value), result.Value is null ? "" : Phrases.Interval(scale, result.Low, result.High)),
+            new TextCell(scale.Text(result.Value), Interval(run, result, scale)),
             Amount(run, result.Limit, scale),
             new BarCell(result.Used ?? double.NaN, result.UsedLow, result.UsedHigh, result.Limit.WarnAt, Phrases.Used(result.Used), mark),
             new StatusCell(mark, Phrases.Word(result.Status), Phrases.Since(result.StatusSince)),
             Change(run, result),
         ]);
     }
+
+    private static string Interval(RunReading run, LimitResult result, MoneyScale scale) => result.Value is null
+        ? ""
+        : run.MeasureOf(result) is { Sample: not null } measure ? Phrases.Interval(run, scale, measure) : Phrases.Interval(scale, result.Low, result.High);
 
     private static TextCell Amount(RunReading run, Domain.Limits.Limit limit, MoneyScale scale) => limit.Basis switch
     {

@@ -11,38 +11,18 @@ internal static class MethodSection
     [
         new Heading("Method"),
         new Columns(
-            [new Heading("Model", 3), Model(run)],
+            [new Heading("Model", 3), ModelFacts.Of(run.Record.Settings.Model, run.Results.Calibration)],
             [new Heading("Simulation", 3), Simulation(run)],
             0.54),
+        .. ParameterTables.OfRecord(run),
         new Heading("Conventions", 3),
         Conventions(run),
         .. MethodsTable.Blocks(run),
         new Heading("Hashes", 3),
         Identity.Full(run),
         new Heading("Cautions", 3),
-        .. Cautions(),
+        .. Cautions(run.Record.Settings.Model),
     ];
-
-    private static Facts Model(RunReading run)
-    {
-        var model = run.Record.Settings.Model;
-        var facts = new List<Fact>
-        {
-            new("Name, kind", $"{model.Name}, {ModelKinds.NameOf(model.Kind)}"),
-            new("Covariance", ModelWords.Covariance(model)),
-            new("Drift", ModelWords.Drift(model)),
-        };
-        if (run.Results.Calibration is { } fit)
-        {
-            var span = fit is { From: { } from, To: { } to } ? $", {Numerals.Date(from)} to {Numerals.Date(to)}" : "";
-            facts.Add(new("Shocks", $"{Phrases.Plural(fit.Shocks, "day")}{span}"));
-            facts.Add(new("Days dropped", $"{Numerals.Count(fit.DroppedDays)} (not every factor observed)"));
-            facts.Add(new("Factors", $"{Numerals.Count(fit.Factors)}, of them {Numerals.Count(fit.Still)} without any move"));
-            facts.Add(new("Correlation", $"rank {Numerals.Count(fit.Rank)}; " + (fit.RepairDistance is { } distance ? $"repaired, Frobenius distance {Numerals.Fixed(distance, 6)}" : "no repair needed")));
-        }
-
-        return new Facts(facts);
-    }
 
     private static Facts Simulation(RunReading run)
     {
@@ -53,6 +33,9 @@ internal static class MethodSection
         var precision = drawn.PrecisionReached is { } reached
             ? $"{Numerals.Percent(settings.Precision ?? 0, 2)} wanted, {(reached ? "reached" : "not reached at the cap")}"
             : "none asked for";
+        if (run.IsHistory)
+            return new Facts([new("Scenarios", Identity.Scenarios(run.Record.Settings.Model, drawn)), new("Interval level", $"{Phrases.Level(drawn.Level)}, each figure alone"), .. Run(run)]);
+
         return new Facts(
         [
             new("Scenarios", $"{Numerals.Count(drawn.Scenarios)} used, at most {Numerals.Count(settings.Cap)}"),
@@ -60,19 +43,30 @@ internal static class MethodSection
             new("Looks", $"{Numerals.Count(drawn.Looks)} of {Numerals.Count(drawn.LooksPlanned)}"),
             new("Interval level", $"{Phrases.Level(drawn.Level)}, each figure alone"),
             new("Precision", precision),
-            new("Made", Phrases.Utc(run.Record.Started, run.Record.Finished)),
-            new("Version", $"{run.Record.Version}, numerics epoch {Numerals.Count(run.Record.Epoch)}"),
+            .. Run(run),
         ]);
     }
+
+    private static Fact[] Run(RunReading run) =>
+    [
+        new("Made", Phrases.Utc(run.Record.Started, run.Record.Finished)),
+        new("Version", $"{run.Record.Version}, numerics epoch {Numerals.Count(run.Record.Epoch)}"),
+    ];
 
     private static Facts Conventions(RunReading run) => new(
     [
         new("Loss", "L = −(V(h) − V(0)), in the currency of the figure: a positive figure is a loss."),
-        new("VaR", "the smallest l with P(L ≤ l) ≥ α: the ceil(N α)-th smallest of N losses, ties by scenario number."),
-        new("ES", "the mean of the worst N (1 − α) losses, the loss at the boundary weighted by the fraction needed (Acerbi and Tasche 2002)."),
-        new("Intervals", "of VaR: distribution-free, from order statistics of the binomial; of ES: asymptotic variance (Manistre and Hancock 2005)."),
+        new("VaR", run.IsWeighted
+            ? "the smallest loss such that the losses beyond it weigh at most 1 − α, days weighted by age."
+            : "the smallest l with P(L ≤ l) ≥ α: the ceil(N α)-th smallest of N losses, ties by scenario number."),
+        new("ES", run.IsWeighted
+            ? "the mean of the worst losses up to a weight of 1 − α, the loss at the boundary weighted by the part needed."
+            : "the mean of the worst N (1 − α) losses, the loss at the boundary weighted by the fraction needed (Acerbi and Tasche 2002)."),
+        .. run.Specs.Any(spec => spec.Kind == MeasureKind.Les)
+            ? [new Fact("LES", "expected shortfall with each factor at its liquidity horizon, by the cascade of MAR33; the horizon printed is the base.")] : (Fact[])[],
+        new("Intervals", Intervals(run)),
         new("Revaluation", Revaluation(run)),
-        new("Horizon", $"h days have h times the daily covariance, days taken as independent. {ModelWords.Ageing(run.Record.Settings.Model)}"),
+        new("Horizon", $"{ModelWords.Horizon(run.Record.Settings.Model)} {ModelWords.Ageing(run.Record.Settings.Model)}"),
         new("Shocks", "ln(S(t) / S(t−1)) for prices, differences for rates; only between consecutive observed business days of a factor's calendar."),
         new("Exceptions", "loss strictly greater than the VaR of the previous close; a missing VaR or P&L counts. Hypothetical P&L: yesterday's positions at today's prices"
             + (run.Record.Settings.TimeEffectsIncluded ? ", the valuation date moved too." : ", the valuation date held.")),
@@ -81,6 +75,14 @@ internal static class MethodSection
             : "discount factors log-linear in time between two tenors (constant forward rates), zero rates flat beyond the first and the last."),
         new("Year", "252 business days; option time in calendar days / 365."),
     ]);
+
+    private static string Intervals(RunReading run)
+    {
+        const string Formulas = "of VaR: distribution-free, from order statistics of the binomial; of ES: asymptotic variance (Manistre and Hancock 2005).";
+        return !run.IsHistory ? Formulas
+            : run.IsWeighted ? "none: past days are no draws, and days of different weight are no sample of equal draws."
+            : $"none of simulation, since past days are no draws. As a sample of independent days, over one day alone, {Formulas}";
+    }
 
     private static string Revaluation(RunReading run)
     {
@@ -94,10 +96,9 @@ internal static class MethodSection
             : $"{drawn}; the settings leave the tails to them, so all figures carry their error; {Unscaled}";
     }
 
-    private static IEnumerable<Block> Cautions() =>
+    private static IEnumerable<Block> Cautions(ModelSettings model) =>
     [
-        new Paragraph("These figures are estimates of a model from past prices, not guarantees: losses beyond them occur. A log-normal model has thinner tails than markets show, "
-            + "correlations rise when they matter, and nothing here prices the cost of leaving a position."),
+        new Paragraph($"These figures are estimates of a model from past prices, not guarantees: losses beyond them occur. {ModelCautions.Sentences(model)} Nothing here prices the cost of leaving a position."),
         new Paragraph("This report is no investment advice. Local regulation, the firm's own risk policy and its qualified staff come first."),
         new Paragraph("Designed with reference to: Delegated Regulations (EU) 2024/1085 and 2022/2059, Regulation (EU) 575/2013 Article 325bf. No conformity is claimed.", Voice.Note),
     ];

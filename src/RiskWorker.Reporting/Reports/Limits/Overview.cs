@@ -12,31 +12,12 @@ internal static class Overview
     public static IEnumerable<Block> Blocks(RunReading run) =>
     [
         new Columns(
-            [new Heading("How sure are these figures", 3), Certainty(run), .. Changes(run)],
+            [new Heading("How sure are these figures", 3), Certainty.Of(run), .. ModelsSection.Glance(run), .. Changes(run)],
             [new Heading("This run", 3), Identity.Short(run)],
             0.54),
         new Heading("Not in this number", 3),
         .. LeftOut(run),
     ];
-
-    private static Paragraph Certainty(RunReading run)
-    {
-        if (run.Results.Simulation is not { } simulation || run.Root is not { } root)
-            return new Paragraph("No scenario was drawn.");
-
-        var widths = run.HeadlineSpecs.Select(spec => RunReading.Find(root.Measures, spec)!).Select(HalfWidth).OfType<string>().ToList();
-        var looks = simulation.LooksPlanned > 1 ? $" Each of up to {Phrases.Number(simulation.LooksPlanned)} looks holds that level, so that stopping early does not spoil it." : "";
-        return new Paragraph(RichText.Of(
-            new TextRun("Intervals hold simulation noise only", Strong: true),
-            new TextRun($", at {Phrases.Level(simulation.Level)}, from {Numerals.Count(simulation.Scenarios)} scenarios"
-                + (widths.Count > 0 ? $": {string.Join(", ", widths)}" : "")
-                + ". They do not hold model or estimation error. A limit that lies inside its interval is called inconclusive." + looks)));
-    }
-
-    private static string? HalfWidth(MeasureResult measure) =>
-        measure is { Low: { } low, High: { } high } && measure.Value != 0
-            ? $"{Phrases.Short(measure.Spec)} ±{Numerals.Percent(Math.Abs((high - low) / (2 * measure.Value)), 1)}"
-            : null;
 
     private static IEnumerable<Block> Changes(RunReading run)
     {
@@ -103,7 +84,7 @@ internal static class Overview
         if (held.Unpriced.Count > ListedUnpriced)
             yield return new Paragraph($"{Phrases.Sentence(Phrases.Number(held.Unpriced.Count - ListedUnpriced))} more lines are listed under Holdings.", Voice.Note);
         yield return new Paragraph(
-            Tied(run, held) + " Also left out: what the model does not know, such as jumps, changing volatility within the horizon, and the cost of leaving a position.", Voice.Note);
+            Tied(run, held) + " Also left out: what the model does not know, such as " + ModelCautions.Unknown(run.Record.Settings.Model) + ", and the cost of leaving a position.", Voice.Note);
     }
 
     private static string Tied(RunReading run, Holdings held) => held.Reconciled == 0

@@ -80,6 +80,17 @@ internal static class Phrases
     public static string Interval(MoneyScale scale, double? low, double? high) =>
         (low, high) is (null, null) ? "interval outside the sample" : $"{Ends(low, scale.Text)} to {Ends(high, scale.Text)}";
 
+    /// <summary>The interval of a measure of the model of record; of a history that of its days as a sample, which <see cref="Head(RunReading, string)"/> says, and nothing where no figure of the run has one.</summary>
+    public static string Interval(RunReading run, MoneyScale scale, MeasureResult measure) => measure.Sample switch
+    {
+        null => Interval(scale, measure.Low, measure.High),
+        { Low: null, High: null } => run.IsWeighted ? "" : "no interval",
+        var sample => Interval(scale, sample.Low, sample.High),
+    };
+
+    /// <summary>The unit of a column of measures, and what stands below them where that is no simulation noise.</summary>
+    public static string Head(RunReading run, string unit) => run.IsHistory && !run.IsWeighted ? $"{unit}{(unit.Length > 0 ? "; " : "")}below: sample" : unit;
+
     /// <summary>An interval of utilisation.</summary>
     public static string UsedInterval(double? low, double? high) =>
         (low, high) is (null, null) ? "" : $"{Ends(low, Used)} to {Ends(high, Used)}";

@@ -35,6 +35,12 @@ internal sealed class RunReading(RunRecord record, string? chainHead)
     public IReadOnlyList<MeasureSpec> HeadlineSpecs =>
         [.. Specs.Where(spec => spec.Horizon == Specs[0].Horizon).DistinctBy(spec => spec.Kind)];
 
+    /// <summary>Whether the scenarios are past days and no draws: then no figure has simulation noise.</summary>
+    public bool IsHistory => Root?.Measures.Any(measure => measure.Sample is not null) == true;
+
+    /// <summary>Whether those days weigh differently by age.</summary>
+    public bool IsWeighted => ModelWords.Moves(record.Settings.Model) is { Kind: ModelKind.Historical, AgeWeight: not null };
+
     /// <summary>The unit that all measures of a currency are printed in.</summary>
     public MoneyScale Scale(string currency)
     {
@@ -60,6 +66,10 @@ internal sealed class RunReading(RunRecord record, string? chainHead)
 
     public static MeasureResult? Find(IEnumerable<MeasureResult>? measures, MeasureSpec spec) =>
         measures?.FirstOrDefault(measure => measure.Spec == spec);
+
+    /// <summary>The measure that a limit is held against, in the currency of its book; null where none was computed.</summary>
+    public MeasureResult? MeasureOf(LimitResult limit) =>
+        limit.Value is null ? null : Find(Results.Nodes.FirstOrDefault(node => node.Book == limit.Limit.Book)?.Measures, limit.Limit.Measure);
 
     private static IEnumerable<MeasureResult> InCurrency(NodeResult node, string currency) =>
         node.Currency == currency ? node.Measures : [];
