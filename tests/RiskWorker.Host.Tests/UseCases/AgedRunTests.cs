@@ -59,14 +59,14 @@ public sealed class AgedRunTests : IDisposable
     public async Task Ageing_changes_the_snapshot_and_its_absence_does_not()
     {
         WriteFeed("none");
-        var (without, first) = (await MeasureAsync(), Snapshot());
+        await MeasureAsync();
+        var first = Snapshot();
         WriteFeed(null);
         await MeasureAsync();
         Assert.Equal(first, Snapshot());
         WriteFeed("horizon");
         await MeasureAsync();
         Assert.NotEqual(first, Snapshot());
-        Assert.NotEqual("", without);
     }
 
     private static double VarOf(JsonElement results, string book) => results.GetProperty("nodes").EnumerateArray().Single(n => n.GetProperty("book").GetString() == book)
