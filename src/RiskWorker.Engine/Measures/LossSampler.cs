@@ -31,6 +31,7 @@ public sealed class LossSampler
     private readonly HistogramEdges[] _edges;
     private readonly double[] _cutoffs;
     private readonly double _mass;
+    private readonly double[][]? _probes;
     private TailReduction _reduction;
     private TailRecord[] _records;
     private int _wholeBlocks;
@@ -55,8 +56,11 @@ public sealed class LossSampler
     /// <param name="settings">Scenarios of the first look, N0, and how to revalue.</param>
     /// <param name="drawn">Told after each block how many scenarios of the look that is under way are drawn; called from many threads.</param>
     /// <param name="cancellation">Stops the run.</param>
-    public LossSampler(RevaluationPlan plan, SimulationWorkspace workspace, TailDemand demand, SimulationSettings settings, Action<long>? drawn, CancellationToken cancellation)
+    /// <param name="probes">For each series losses that the others are counted against, as many for each; null for none. By surface the counts are only as exact as these.</param>
+    public LossSampler(
+        RevaluationPlan plan, SimulationWorkspace workspace, TailDemand demand, SimulationSettings settings, Action<long>? drawn, CancellationToken cancellation, double[][]? probes = null)
     {
+        _probes = probes;
         var firstLook = settings.Scenarios;
         (_plan, _workspace, _demand, _cancellation) = (plan, workspace, demand, cancellation);
         _number = workspace.BeginSampler();
@@ -106,7 +110,7 @@ public sealed class LossSampler
         _workspace.RequireSampler(_number);
         var range = BlockRange.From(_wholeBlocks, scenarios);
         var (end, last) = (scenarios / Blocks.Size, _records[^1]);
-        last.Reset(_plan.Rows.Count);
+        last.Reset(_plan.Rows.Count, _reduction.ProbeCount);
         MakeRoom(end - range.First, last);
         _known = (long)Math.Max(_wholeBlocks, _pilotCount / Blocks.Size) * Blocks.Size;
         try
@@ -166,8 +170,8 @@ public sealed class LossSampler
     [MemberNotNull(nameof(_reduction), nameof(_records))]
     private void Restart()
     {
-        _reduction = new(_cutoffs, _edges, _mass, _isTailExact);
-        _records = _workspace.EmptyRecords(_plan.Rows.Count);
+        _reduction = new(_cutoffs, _edges, _mass, _isTailExact, _probes);
+        _records = _workspace.EmptyRecords(_plan.Rows.Count, _reduction.ProbeCount);
         _wholeBlocks = 0;
     }
 

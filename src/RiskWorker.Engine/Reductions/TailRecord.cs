@@ -2,6 +2,14 @@ using System.Runtime.InteropServices;
 
 namespace RiskWorker.Engine.Reductions;
 
+/// <summary>Losses counted against one of them.</summary>
+/// <param name="Beyond">How many are larger.</param>
+/// <param name="Equal">How many are as large.</param>
+public readonly record struct ProbeCount(long Beyond, long Equal)
+{
+    internal ProbeCount Plus(long beyond, long equal) => new(Beyond + beyond, Equal + equal);
+}
+
 /// <summary>A scenario whose loss lies beyond the cutoff.</summary>
 public readonly record struct TailEntry(double Loss, long Scenario);
 
@@ -31,9 +39,14 @@ public sealed class TailRecord
     /// <summary>Losses equal to the cutoff, by series: counted, not kept.</summary>
     internal long[] Equal { get; private set; } = [];
 
-    /// <summary>Forgets every block and turns to <paramref name="rows"/> series; the memory stays.</summary>
-    internal void Reset(int rows)
+    /// <summary>How many losses lie beyond each probe, and how many equal it: probe by probe, series by series.</summary>
+    internal ProbeCount[] Probes { get; private set; } = [];
+
+    /// <summary>Forgets every block and turns to <paramref name="rows"/> series of <paramref name="probes"/> probes each; the memory stays.</summary>
+    internal void Reset(int rows, int probes = 0)
     {
+        if (Probes.Length != rows * probes) Probes = new ProbeCount[rows * probes];
+        Array.Clear(Probes);
         if (_tails.Length != rows)
         {
             (_tails, _histograms) = (_tails[..Math.Min(rows, _tails.Length)], _histograms[..Math.Min(rows, _histograms.Length)]);
@@ -73,6 +86,9 @@ public sealed class TailRecord
 
     /// <summary>How many losses of series <paramref name="row"/> equal its cutoff.</summary>
     public long EqualTo(int row) => Equal[row];
+
+    /// <summary>The losses of series <paramref name="row"/> counted against probe number <paramref name="probe"/> of <paramref name="of"/>.</summary>
+    public ProbeCount ProbeOf(int row, int probe, int of) => Probes[(row * of) + probe];
 
     /// <summary>Counts of series <paramref name="row"/>: below, the bins, above.</summary>
     public IReadOnlyList<long> Histogram(int row) => _histograms[row];

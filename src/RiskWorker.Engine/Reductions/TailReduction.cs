@@ -31,26 +31,31 @@ public sealed class TailReduction : Reduction<TailRecord>
     private readonly HistogramEdges[] _edges;
     private readonly double _mass;
     private readonly double[] _exactFrom;
+    private readonly double[][]? _probes;
 
     /// <summary>Takes a cutoff and the histogram's edges for each series of the plan.</summary>
     /// <param name="cutoffs">Cutoffs.</param>
     /// <param name="edges">Edges.</param>
     /// <param name="mass">Share of losses expected beyond a cutoff: room is made for that many.</param>
     /// <param name="isTailExact">Whether losses from the cutoff on must be those of full revaluation.</param>
-    public TailReduction(double[] cutoffs, HistogramEdges[] edges, double mass = 0, bool isTailExact = true)
+    /// <param name="probes">For each series losses that the others are counted against, as many for each; null for none.</param>
+    public TailReduction(double[] cutoffs, HistogramEdges[] edges, double mass = 0, bool isTailExact = true, double[][]? probes = null)
     {
-        (_cutoffs, _edges, _mass) = (cutoffs, edges, mass);
+        (_cutoffs, _edges, _mass, _probes) = (cutoffs, edges, mass, probes);
         _exactFrom = isTailExact ? cutoffs : [.. cutoffs.Select(_ => double.PositiveInfinity)];
     }
 
     /// <inheritdoc/>
     public override double[] ExactFrom => _exactFrom;
 
+    /// <summary>Probes of each series.</summary>
+    internal int ProbeCount => _probes is [var first, ..] ? first.Length : 0;
+
     /// <inheritdoc/>
     public override TailRecord Empty(int blocks = 0)
     {
         var record = new TailRecord(blocks);
-        record.Reset(_cutoffs.Length);
+        record.Reset(_cutoffs.Length, ProbeCount);
         MakeRoom(record, blocks);
         return record;
     }
@@ -79,6 +84,11 @@ public sealed class TailReduction : Reduction<TailRecord>
             record.Equal[row] += equal;
             var tail = record.TailOf(row);
             foreach (var place in beyond[..count]) tail.Add(new(losses[place], block.FirstScenario + place));
+            for (var k = 0; k < ProbeCount; k++)
+            {
+                var above = Selection.Greater(losses, _probes![row][k], beyond, out var same);
+                record.Probes[(row * ProbeCount) + k] = record.Probes[(row * ProbeCount) + k].Plus(above, same);
+            }
         }
         record.Sums.Add(block.Index, sums);
         record.Count += block.Width;
@@ -106,6 +116,7 @@ public sealed class TailReduction : Reduction<TailRecord>
         record.Sums.Merge(from.Sums);
         record.Count += from.Count;
         record.Revalued += from.Revalued;
+        for (var i = 0; i < record.Probes.Length; i++) record.Probes[i] = record.Probes[i].Plus(from.Probes[i].Beyond, from.Probes[i].Equal);
     }
 
     private static void AddTo(long[] counts, long[] more)

@@ -43,9 +43,9 @@ public sealed class SimulationWorkspace
     }
 
     /// <summary>An empty record of <paramref name="rows"/> series for each thread, and one more: always the same objects.</summary>
-    internal TailRecord[] EmptyRecords(int rows)
+    internal TailRecord[] EmptyRecords(int rows, int probes = 0)
     {
-        foreach (var record in _records) record.Reset(rows);
+        foreach (var record in _records) record.Reset(rows, probes);
         return _records;
     }
 
