@@ -1,5 +1,6 @@
 using RiskWorker.Domain.Books;
 using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Backtesting.Evidence;
 
 namespace RiskWorker.Engine.Backtesting;
 

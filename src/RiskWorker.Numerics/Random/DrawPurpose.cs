@@ -23,4 +23,10 @@ public enum DrawPurpose : byte
 
     /// <summary>The pilot of a pricer that simulates.</summary>
     PricerPilot = 5,
+
+    /// <summary>Series of profit or exceptions drawn under a model, which a backtest's statistic is held against.</summary>
+    NullSeries = 6,
+
+    /// <summary>Where in its step a forecast probability of a discrete model lies.</summary>
+    StepPosition = 7,
 }

@@ -1,6 +1,6 @@
 using System.Globalization;
 
-namespace RiskWorker.Engine.Backtesting;
+namespace RiskWorker.Engine.Backtesting.Evidence;
 
 /// <summary>End products that libraries compute are recorded to 12 significant digits: what lies beyond may depend on the hardware.</summary>
 internal static class Significant

@@ -1,8 +1,7 @@
 using MathNet.Numerics.Distributions;
 using RiskWorker.Domain.Runs;
-using RiskWorker.Numerics.Kernels;
 
-namespace RiskWorker.Engine.Backtesting;
+namespace RiskWorker.Engine.Backtesting.Evidence;
 
 /// <summary>
 /// Likelihood-ratio tests of a series of exceptions. P. Kupiec, Techniques for verifying the accuracy of risk measurement models (Journal of
@@ -23,27 +22,10 @@ public static class CoverageTests
         ? null
         : Result(CoverageRatio(exceptions.Count, exceptions.Count(e => e), (double)(1 - confidence.Level)) + IndependenceRatio(exceptions), 2);
 
-    private static double CoverageRatio(int days, int exceptions, double expected) =>
-        -2 * (LogLikelihood(days - exceptions, exceptions, expected) - LogLikelihood(days - exceptions, exceptions, (double)exceptions / days));
+    private static double CoverageRatio(int days, int exceptions, double expected) => LikelihoodRatios.Failures(days, exceptions, expected);
 
-    private static double IndependenceRatio(IReadOnlyList<bool> exceptions)
-    {
-        var counts = new int[2, 2];
-        for (var t = 1; t < exceptions.Count; t++) counts[exceptions[t - 1] ? 1 : 0, exceptions[t] ? 1 : 0]++;
-        var (stayed, fell, rose, again) = (counts[0, 0], counts[0, 1], counts[1, 0], counts[1, 1]);
-        var together = LogLikelihood(stayed + rose, fell + again, (double)(fell + again) / (exceptions.Count - 1));
-        return -2 * (together - LogLikelihood(stayed, fell, Share(fell, stayed)) - LogLikelihood(rose, again, Share(again, rose)));
-    }
+    private static double IndependenceRatio(IReadOnlyList<bool> exceptions) => LikelihoodRatios.Independence(TransitionCounts.Of(exceptions));
 
-    private static double Share(int of, int others) => of == 0 ? 0 : (double)of / (of + others);
-
-    // 0 ln 0 = 0.
-    private static double LogLikelihood(int without, int with, double probability) =>
-        (without == 0 ? 0 : without * Logarithm.Of(1 - probability)) + (with == 0 ? 0 : with * Logarithm.Of(probability));
-
-    private static TestResult Result(double ratio, double freedom)
-    {
-        var statistic = Math.Max(ratio, 0); // rounding may leave a little less than nothing
-        return new(Significant.Of(statistic), Significant.Of(1 - ChiSquared.CDF(freedom, statistic)));
-    }
+    private static TestResult Result(double statistic, double freedom) =>
+        new(Significant.Of(statistic), Significant.Of(1 - ChiSquared.CDF(freedom, statistic)));
 }
