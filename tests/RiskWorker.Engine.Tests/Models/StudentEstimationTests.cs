@@ -29,12 +29,12 @@ public sealed class StudentEstimationTests
         Assert.InRange(law.Margins[1], 6, 20);
     }
 
-    // A calm and a wild spell in turn, normal shocks: over one deviation they look like a t of few degrees, over the deviation known the
-    // evening before they do not.
+    // Normal shocks whose deviation swings between a third and three times its middle: over one deviation they look like a t of few degrees, over the
+    // deviation known the evening before they do not.
     [Fact]
     public void Exponential_weights_standardise_each_day_by_its_own_deviation()
     {
-        double[] shocks = [.. HistoryBook.Normals(Days, 41).Select((z, t) => z * (t / 200 % 2 == 0 ? 0.005 : 0.02))];
+        double[] shocks = [.. HistoryBook.Normals(Days, 41).Select((z, t) => 0.01 * z * Math.Exp(1.1 * Math.Sin(t / 100.0)))];
         var equal = Fitted(new() { Kind = ModelKind.StudentT, Covariance = CovarianceEstimator.Equal, Window = Days }, [shocks]);
         var ewma = Fitted(new() { Kind = ModelKind.StudentT, Window = Days }, [shocks]);
         Assert.InRange(equal.DegreesOfFreedom, 2, 5);
