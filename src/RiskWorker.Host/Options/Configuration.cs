@@ -34,7 +34,7 @@ public sealed record Configuration
             Run = Run with
             {
                 Model = overrides.Model is null ? Run.Model : Models[overrides.Model],
-                Challengers = [.. Run.Challengers.Where(c => c.Name != overrides.Model)], // a challenger that is run for the record does not run beside itself
+                Challengers = overrides.Model is null ? Run.Challengers : [.. Run.Challengers.Where(c => c.Name != overrides.Model)], // a challenger that is run for the record does not run beside itself
                 Simulation = simulation with { Scenarios = scenarios, Seed = overrides.Seed ?? simulation.Seed, Cap = Math.Max(scenarios, simulation.Cap) },
             },
         };

@@ -114,14 +114,14 @@ public sealed class ConfigurationReaderTests
     }
 
     [Theory]
-    [InlineData("""{ "models": { "m": { "kind": "student" } } }""", "models.m.kind: found \"student\", expected lognormal; other kinds of model are not available in this version")]
-    [InlineData("""{ "models": { "m": { "covariance": "shrunk" } } }""", "models.m.covariance: found \"shrunk\", expected one of ewma, equal, given; 'shrunk' is not available in this version")]
+    [InlineData("""{ "models": { "m": { "kind": "student" } } }""", "models.m.kind: found \"student\", expected one of lognormal, student-t, historical, filtered-historical, jump-diffusion, stressed")]
+    [InlineData("""{ "models": { "m": { "covariance": "sample" } } }""", "models.m.covariance: found \"sample\", expected one of ewma, equal, shrunk, given")]
     [InlineData("""{ "models": { "m": { "ageing": "horizon" } } }""", "models.m.ageing: found \"horizon\", expected one of none; 'horizon' is not available in this version")]
     [InlineData("""{ "models": { "m": {} }, "record": "n" }""", "record: found \"n\", expected the name of a model: m")]
     [InlineData("""{ "models": { "m": {}, "n": {} } }""", "record: found nothing, expected the name of a model: m, n")]
     [InlineData("""{ "models": { "m": { "drift": "explicit" } } }""", "models.m.drifts: found nothing, expected returns per year by factor, which drift 'explicit' needs")]
     [InlineData("""{ "models": { "m": { "drifts": { "A": 0.1 } } } }""", "models.m.drifts: found an object, expected no drifts, which only drift 'explicit' uses")]
-    [InlineData("""{ "challengers": [ "m" ] }""", "challengers[0]: found \"m\", expected no challenger: challenger models are not available in this version")]
+    [InlineData("""{ "challengers": [ "m" ] }""", "challengers[0]: found \"m\", expected the name of a model: lognormal")]
     [InlineData("""{ "measures": [] }""", "measures: found an empty array, expected an array of at least one measure")]
     [InlineData("""{ "measures": [ { "measure": "es", "confidence": 0.975 }, { "measure": "es", "confidence": 0.9750, "horizonDays": 1 } ] }""", "measures[1]: found an object, expected each measure once; ES 97.5%, 1 day is there already")]
     [InlineData("""{ "simulation": { "scenarios": 1e3 } }""", "simulation.scenarios: found 1e3, expected a whole number from 1,000 to 100,000,000")]
