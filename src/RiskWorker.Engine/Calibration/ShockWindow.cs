@@ -19,7 +19,7 @@ public sealed class ShockWindow
             var shocks = table.Shocks(j);
             for (var k = 0; k < kept.Length; k++) Shocks[(j * kept.Length) + k] = shocks[kept[k]];
         }
-        Filled = [.. table.Factors.Select((_, j) => kept.Count(t => t < table.FirstOwn(j)))];
+        Filled = [.. table.Factors.Select((_, j) => kept.Count(t => t < table.FirstOwn(j) && !double.IsNaN(table.Shocks(j)[t])))]; // a factor without a proxy has none there
     }
 
     /// <summary>The days kept, ascending; at most as many as asked for.</summary>

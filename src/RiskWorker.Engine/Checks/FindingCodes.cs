@@ -55,6 +55,11 @@ public static class FindingCodes
         "No day is complete over all factors",
         "load the missing prices, or name proxies for the factors that break the most days", IsFixed: true);
 
+    /// <summary>The model of record cannot be calibrated.</summary>
+    public static readonly FindingCode ModelUnusable = new("model-unusable", Blocking,
+        "The model of record cannot be calibrated",
+        "correct its settings, or load the history that it needs", IsFixed: true);
+
     /// <summary>A model beside the one of record gives no figures.</summary>
     public static readonly FindingCode ModelFailed = new("model-failed", Warning,
         "A model that runs beside the one of record cannot be calibrated, so it has no figures in this run",
@@ -256,7 +261,7 @@ public static class FindingCodes
     public static IReadOnlyList<FindingCode> All { get; } =
     [
         BookTree, BookCurrency, PositionsNone, FactorUnobserved, FactorMissing, PriceNotPositive, HistoryShort, DaysNone, DaysFew,
-        CovarianceUnusable, DriftUnknown, PricedNone,
+        CovarianceUnusable, DriftUnknown, ModelUnusable, PricedNone,
         BookUnknown, InstrumentUnknown, FactorUnknown, CurrencyUnpriced, CurrencyMismatch, InstrumentExpired, NotModelled, FixingMissing, LevelMissing, BarrierCrossed, LineExpires, LineNotAged,
         ValueDifference, HoldingsChange, LimitUndecidable, ModelFailed,
         FactorClosed, PriceStale, PriceJump, DayMissing, DayClosed, DaysDropped, HistoryProxied, HistoryPartial,

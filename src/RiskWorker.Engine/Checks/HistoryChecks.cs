@@ -1,6 +1,7 @@
 using System.Globalization;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Engine.Calibration;
+using RiskWorker.Engine.Models;
 
 namespace RiskWorker.Engine.Checks;
 
@@ -15,7 +16,7 @@ internal static class HistoryChecks
         var model = snapshot.Settings.Model;
         if (model.Covariance == CovarianceEstimator.Given && model.Drift != DriftKind.Historical) return; // nothing is estimated
         Lengths(snapshot, table, window, findings);
-        Days(snapshot, table, window, findings);
+        if (model.MissingDays == MissingDays.Complete || Drift.NeedsShocks(model) || ScenarioLaws.NeedShocks(model)) Days(snapshot, table, window, findings); // pairs of factors need no day that all have
     }
 
     private static void Lengths(Snapshot snapshot, ShockTable table, EstimationWindow window, FindingList findings)

@@ -1,3 +1,4 @@
+using System.Globalization;
 using RiskWorker.Domain.Market;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Engine.Calibration;
@@ -18,9 +19,12 @@ internal sealed class JumpEstimation
     public double[] Quiet { get; }
 
     /// <summary>Finds them.</summary>
-    /// <exception cref="CalibrationException">There are too few days.</exception>
+    /// <exception cref="CalibrationException">There are too few days, or the covariance is not estimated from those left without jumps.</exception>
     public static JumpEstimation Of(ModelSettings model, ShockWindow window, int factors)
     {
+        // Any other covariance would hold the jumps that are found besides.
+        if (model.MissingDays == MissingDays.Pairwise) throw new CalibrationException(model.Name, "Jumps are found in complete days; take 'missingDays: complete', or give the jumps.");
+        if (model.Covariance == CovarianceEstimator.Given) throw new CalibrationException(model.Name, "A given covariance holds the jumps that would be found in the history; give the jumps, or have the covariance estimated.");
         var (days, threshold) = (window.Days.Count, model.Jumps.Threshold);
         if (days < JumpThreshold.FewestDays)
             throw new CalibrationException("observations", $"The model '{model.Name}' looks for jumps in the shocks of {days} days; it needs {JumpThreshold.FewestDays}.");
@@ -71,6 +75,15 @@ internal sealed class JumpEstimation
         {
             FurthestJump = JumpLaw.FurthestOf(common, sizes, [.. moving.Select(j => deviations[j])]),
         };
+    }
+
+    /// <summary><paramref name="law"/>, if as many jumps as are expected within the longest horizon can be drawn.</summary>
+    /// <exception cref="CalibrationException">They are too many.</exception>
+    public static JumpLaw WithinReach(JumpLaw law, ModelSettings model, int longest)
+    {
+        var expected = law.OwnPerDay.Append(law.CommonPerDay).Max() * longest;
+        return expected <= PoissonCounts.HighestMean ? law : throw new CalibrationException(model.Name,
+            string.Create(CultureInfo.InvariantCulture, $"It expects {expected:0.#} jumps of one kind within the longest horizon of {longest} days; at most {PoissonCounts.HighestMean:0} can be drawn."));
     }
 
     private const double DaysPerYear = 252;

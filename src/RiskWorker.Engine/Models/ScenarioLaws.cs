@@ -34,7 +34,7 @@ internal static class ScenarioLaws
             ModelKind.StudentT => StudentEstimation.Of(model, window, moving, deviations),
             ModelKind.FilteredHistorical => FilteredHistoryEstimation.Of(model, window!, moving),
             ModelKind.Historical => HistoricalLaw.Of(window!, moving, deviations, model, longest),
-            ModelKind.JumpDiffusion => jumps?.Law(moving, deviations) ?? JumpEstimation.Given(model, factors, moving, deviations),
+            ModelKind.JumpDiffusion => JumpEstimation.WithinReach(jumps?.Law(moving, deviations) ?? JumpEstimation.Given(model, factors, moving, deviations), model, longest),
             _ => throw new InvalidOperationException($"No law is known for {model.Kind}."),
         };
     }

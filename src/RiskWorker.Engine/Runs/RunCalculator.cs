@@ -47,13 +47,29 @@ public sealed class RunCalculator
         if (tree is null || Blocked) return Failed(tree);
         var clock = Stopwatch.StartNew();
         var calibration = new ModelCalibration(_snapshot, LongestHorizon);
-        var model = calibration.Of(_snapshot.Settings.Model);
+        var model = Calibrated(() => calibration.Of(_snapshot.Settings.Model));
+        if (model is null) return Failed(tree);
         Timings = Timings with { Calibrate = clock.Elapsed.TotalSeconds };
 
         var valued = new BookValuation(_snapshot, tree, model);
         _findings.AddRange(ValuationChecks.Run(_snapshot, tree, valued.Today, valued.Previous));
         if (Blocked) return Failed(tree) with { Holdings = valued.Holdings };
         return Simulate(tree, model, valued, calibration);
+    }
+
+    // What no check foresaw: what a model asks of the history beyond the days that all of them need.
+    private CalibratedModel? Calibrated(Func<CalibratedModel> calibrate)
+    {
+        try
+        {
+            return calibrate();
+        }
+        catch (CalibrationException refusal)
+        {
+            var name = _snapshot.Settings.Model.Name;
+            _findings.Add(FindingCodes.ModelUnusable.Found(_snapshot.Settings.Checks, name, $"The model of record '{name}' cannot be calibrated: {refusal.Message}"));
+            return null;
+        }
     }
 
     private int LongestHorizon => _snapshot.Settings.Measures.Concat(_snapshot.ValidLimits.Select(l => l.Measure)).Max(m => m.Horizon.Days);
@@ -76,7 +92,9 @@ public sealed class RunCalculator
         if (Blocked) return Failed(tree) with { Holdings = valued.Holdings }; // where the settings make such a finding block
         var lines = new ModelLines(tree, valued.Binder.Currencies, valued.Today, ageing, measures, _threads, _progress, _cancellation);
         // The levels of the newest span have valued the lines; the moves come from the worst one.
-        if (_snapshot.Settings.Model.Kind == ModelKind.Stressed) model = StressedSpan.Find(lines, _snapshot.Settings.Model, calibration, _snapshot.Settings.Simulation);
+        var stressed = _snapshot.Settings.Model.Kind == ModelKind.Stressed ? Calibrated(() => StressedSpan.Find(lines, _snapshot.Settings.Model, calibration, _snapshot.Settings.Simulation)) : model;
+        if (stressed is null) return Failed(tree) with { Holdings = valued.Holdings };
+        model = stressed;
         var run = ModelRun.Of(lines, model, limits, _snapshot.Settings.Simulation);
         var (plan, outcome) = (run.Plan, run.Outcome);
         IReadOnlyList<Sensitivity> sensitivities = IsEvidenceOnly ? [] : BookSensitivities.Of(plan, model.Factors);

@@ -7,6 +7,7 @@ internal static class JumpsSection
 {
     private const double MostPerYear = 252;
     private const double LargestJump = 2;
+    private const double LowestThreshold = 2.5;
 
     /// <summary>Reads the object.</summary>
     public static JumpSettings Read(SettingsValue value)
@@ -24,7 +25,7 @@ internal static class JumpsSection
         }
         if (section["threshold"] is not { } threshold) return jumps;
         if (jumps.AreGiven) threshold.Fault("no threshold where jumps are given: it is used to find them in the history");
-        return jumps with { Threshold = threshold.Number(t => t is >= 2 and <= 20, "a number of standard deviations from 2 to 20") ?? defaults.Threshold };
+        return jumps with { Threshold = threshold.Number(t => t is >= LowestThreshold and <= 20, $"a number of standard deviations from {LowestThreshold} to 20") ?? defaults.Threshold };
     }
 
     private const string Rates = "jumps a year, above 0 and at most 252";

@@ -98,7 +98,7 @@ public sealed class ConfigurationReaderTests
             """));
         Assert.Equal("""
             riskworker.json: 13 faults
-              simulaton: found an unknown key, expected one of store, timeEffects, models, record, challengers, measures, simulation, curves, backfill, checks, schedules, delivery, page; did you mean 'simulation'?
+              simulaton: found an unknown key, expected one of store, timeEffects, models, record, challengers, measures, rules, simulation, curves, backfill, checks, schedules, delivery, page; did you mean 'simulation'?
               models["a b"].lambda: found 1, expected a number strictly between 0 and 1
               models["a b"].window: found 1, expected a whole number from 2 to 100,000
               page.port: found an unknown key, expected no key here
@@ -115,14 +115,14 @@ public sealed class ConfigurationReaderTests
     }
 
     [Theory]
-    [InlineData("""{ "models": { "m": { "kind": "student" } } }""", "models.m.kind: found \"student\", expected lognormal; other kinds of model are not available in this version")]
-    [InlineData("""{ "models": { "m": { "covariance": "shrunk" } } }""", "models.m.covariance: found \"shrunk\", expected one of ewma, equal, given; 'shrunk' is not available in this version")]
+    [InlineData("""{ "models": { "m": { "kind": "student" } } }""", "models.m.kind: found \"student\", expected one of lognormal, student-t, historical, filtered-historical, jump-diffusion, stressed")]
+    [InlineData("""{ "models": { "m": { "covariance": "sample" } } }""", "models.m.covariance: found \"sample\", expected one of ewma, equal, shrunk, given")]
     [InlineData("""{ "models": { "m": { "ageing": "daily" } } }""", "models.m.ageing: found \"daily\", expected one of none, horizon")]
     [InlineData("""{ "models": { "m": {} }, "record": "n" }""", "record: found \"n\", expected the name of a model: m")]
     [InlineData("""{ "models": { "m": {}, "n": {} } }""", "record: found nothing, expected the name of a model: m, n")]
     [InlineData("""{ "models": { "m": { "drift": "explicit" } } }""", "models.m.drifts: found nothing, expected returns per year by factor, which drift 'explicit' needs")]
     [InlineData("""{ "models": { "m": { "drifts": { "A": 0.1 } } } }""", "models.m.drifts: found an object, expected no drifts, which only drift 'explicit' uses")]
-    [InlineData("""{ "challengers": [ "m" ] }""", "challengers[0]: found \"m\", expected no challenger: challenger models are not available in this version")]
+    [InlineData("""{ "challengers": [ "m" ] }""", "challengers[0]: found \"m\", expected the name of a model: lognormal")]
     [InlineData("""{ "measures": [] }""", "measures: found an empty array, expected an array of at least one measure")]
     [InlineData("""{ "measures": [ { "measure": "es", "confidence": 0.975 }, { "measure": "es", "confidence": 0.9750, "horizonDays": 1 } ] }""", "measures[1]: found an object, expected each measure once; ES 97.5%, 1 day is there already")]
     [InlineData("""{ "simulation": { "scenarios": 1e3 } }""", "simulation.scenarios: found 1e3, expected a whole number from 1,000 to 100,000,000")]
@@ -134,7 +134,7 @@ public sealed class ConfigurationReaderTests
     [InlineData("""{ "checks": { "jumpSigma": 3 } }""", "checks.jumpSigma: found an unknown key, expected one of staleDays, jumpSigmas, minimumHistory, valueTolerance, grossChange, severity; did you mean 'jumpSigmas'?")]
     [InlineData("""{ "schedules": { "d": { "cron": "0 0 6 * * ?", "timeZone": "UTC", "verb": "tail", "deadline": "7:30" } } }""",
         "schedules.d.verb: found \"tail\", expected one of measure; 'tail' is not available in this version", "schedules.d.deadline: found \"7:30\", expected a time of day as HH:mm")]
-    [InlineData("""{ "\u001b[31m": 1 }""", "[\"?[31m\"]: found an unknown key, expected one of store, timeEffects, models, record, challengers, measures, simulation, curves, backfill, checks, schedules, delivery, page")]
+    [InlineData("""{ "\u001b[31m": 1 }""", "[\"?[31m\"]: found an unknown key, expected one of store, timeEffects, models, record, challengers, measures, rules, simulation, curves, backfill, checks, schedules, delivery, page")]
     [InlineData("[]", "$: found an empty array, expected an object")]
     [InlineData("null", "$: found null, expected an object")]
     public void Read_fault_names_path_found_and_expected(string json, params string[] faults) =>
