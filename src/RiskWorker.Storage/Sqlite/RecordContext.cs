@@ -1,5 +1,6 @@
 using System.Text.Json;
 using System.Text.Json.Serialization;
+using RiskWorker.Domain.Evidence;
 using RiskWorker.Domain.Runs;
 
 namespace RiskWorker.Storage.Sqlite;
@@ -12,6 +13,7 @@ namespace RiskWorker.Storage.Sqlite;
     NumberHandling = JsonNumberHandling.AllowNamedFloatingPointLiterals,
     Converters = [typeof(ConfidenceJson), typeof(HorizonJson), typeof(QuantileJson)])]
 [JsonSerializable(typeof(RunRecord))]
+[JsonSerializable(typeof(DayForecast))]
 internal sealed partial class RecordContext : JsonSerializerContext;
 
 /// <summary>A confidence level as its decimal.</summary>

@@ -27,6 +27,8 @@ public sealed class RiskStore : IDisposable
         Snapshots = new(this);
         Runs = new(this);
         Interruptions = new(this);
+        WalkForward = new(this);
+        Explanations = new(this);
     }
 
     /// <summary>The file.</summary>
@@ -37,6 +39,12 @@ public sealed class RiskStore : IDisposable
 
     /// <summary>What the runs read.</summary>
     public SnapshotArchive Snapshots { get; }
+
+    /// <summary>Days of walk-forwards.</summary>
+    public WalkForwardDays WalkForward { get; }
+
+    /// <summary>What was written to explain exceptions.</summary>
+    public ExplanationLog Explanations { get; }
 
     /// <summary>Scheduled runs that were stopped before their end.</summary>
     public InterruptionLog Interruptions { get; }

@@ -126,6 +126,20 @@ public sealed class RunJournal
         return found.Count == 0 ? null : Previous(RecordOf(connection, found[0]));
     });
 
+    /// <summary>What is counted of the runs of <paramref name="model"/> of one kind, for each date the newest that did not fail, oldest date first.</summary>
+    public IReadOnlyList<CountedRun> CountedOf(string model, EvidenceKind kind) => _store.Read(connection =>
+    {
+        var newest = new SortedDictionary<DateOnly, (string Run, string Content, DateOnly? ProfitFrom)>();
+        foreach (var run in connection.Query(
+            "SELECT run, as_of, content, profit_from FROM run WHERE model = ?1 AND evidence = ?2 AND status <> ?3 ORDER BY sequence",
+            r => (Run: r.GetString(0), AsOf: Iso.Date(r.GetString(1)), Content: r.GetString(2), ProfitFrom: r.Text(3) is { } from ? Iso.Date(from) : (DateOnly?)null),
+            model, Spelling.Of(kind), Spelling.Of(RunStatus.Failed)))
+        {
+            newest[run.AsOf] = (run.Run, run.Content, run.ProfitFrom);
+        }
+        return (IReadOnlyList<CountedRun>)[.. newest.Select(n => RunRows.Counted(connection, n.Value.Run, n.Value.Content, n.Key, kind, n.Value.ProfitFrom))];
+    });
+
     /// <summary>The chain in stored order.</summary>
     public IReadOnlyList<ChainEntry> ReadChain() => _store.Use(RunAudit.Chain);
 

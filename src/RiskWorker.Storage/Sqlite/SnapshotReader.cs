@@ -50,6 +50,55 @@ public sealed class SnapshotReader(RiskStore store)
         return Reading(connection => Freeze(connection, _state!, asOf, settings, model));
     }
 
+    /// <summary>The positions of a date, and the hash of their text.</summary>
+    public (IReadOnlyList<Position> Positions, string Hash) Held(DateOnly date) => Reading(connection =>
+    {
+        var positions = Positions(connection, date);
+        return ((IReadOnlyList<Position>)positions, SnapshotLeaves.Positions(date, positions).Part.Hash);
+    });
+
+    /// <summary>
+    /// What evidence over a span reads: observations and profit up to its end, and <paramref name="counted"/> in place of the runs that a run would
+    /// count. Its hash stands for all of it but those runs.
+    /// </summary>
+    /// <param name="from">First day of profit.</param>
+    /// <param name="to">Last day of profit.</param>
+    /// <param name="settings">Settings that figures depend on.</param>
+    /// <param name="counted">Runs, oldest first; none for a walk-forward.</param>
+    /// <exception cref="StoreException">The store cannot be read.</exception>
+    public Snapshot TakeSpan(DateOnly from, DateOnly to, RunSettings settings, IReadOnlyList<CountedRun> counted)
+    {
+        ArgumentNullException.ThrowIfNull(settings);
+        ArgumentNullException.ThrowIfNull(counted);
+        return Reading(connection =>
+        {
+            var state = _state!;
+            var observations = state.Observations.UpTo(to);
+            var profit = state.Profit(from, to);
+            var earlier = WithoutProfit(observations, [.. counted], to, null).Where(day => Array.BinarySearch(state.PositionDates, day) >= 0).Select(day => Dated(connection, day)).ToArray();
+            var withCovariance = settings.Model.Covariance == CovarianceEstimator.Given;
+            SnapshotLeaf[] leaves = [SnapshotLeaves.AsOf(to, null), SettingsText.Leaf(settings), .. state.Leaves(to, observations.Count, profit, withCovariance)];
+            return new Snapshot
+            {
+                AsOf = to,
+                Settings = settings,
+                Books = state.Reference.Books,
+                Factors = state.Reference.Factors,
+                Observations = observations,
+                Adjustments = [.. state.Reference.Adjustments.Where(a => a.Date <= to)],
+                Holidays = state.Reference.Holidays,
+                Instruments = state.Reference.Instruments,
+                Positions = [],
+                Limits = state.Reference.Limits,
+                ProfitAndLoss = profit,
+                Covariance = withCovariance ? state.Reference.Covariance : [],
+                CountedRuns = counted,
+                EarlierPositions = earlier,
+                Hash = SnapshotHash.Of(leaves.Select(l => l.Part)),
+            };
+        });
+    }
+
     private T Reading<T>(Func<SqliteConnection, T> work)
     {
         lock (_gate)
