@@ -53,6 +53,9 @@ public sealed class ExceptionCount
     public static Confidence[] ConfidencesOf(IEnumerable<MeasureSpec> measures) =>
         [.. measures.Where(m => m.Kind == MeasureKind.Var && m.Horizon.Days == 1).Select(m => m.Confidence).Distinct().Order()];
 
+    /// <summary>Hypothetical profit of a book on a day, or null where it is not known.</summary>
+    public double? HypotheticalOf(string book, DateOnly date) => _hypothetical.TryGetValue(date, out var books) && books.TryGetValue(book, out var amount) ? amount : null;
+
     /// <summary>Whether the node has actual profit.</summary>
     public bool HasActual(int node) => _actual.HasSeries(node);
 

@@ -1,6 +1,7 @@
 using RiskWorker.Domain.Books;
 using RiskWorker.Domain.Evidence;
 using RiskWorker.Domain.Runs;
+using RiskWorker.Engine.Backtesting.Evidence;
 using RiskWorker.Engine.Calibration;
 using RiskWorker.Engine.Measures;
 using RiskWorker.Engine.Models;
@@ -43,10 +44,7 @@ public sealed class WalkForwardDay
     {
         ArgumentNullException.ThrowIfNull(known);
         var settings = known.Settings;
-        var model = Calibrator.Calibrate(known, ShockTable.From(known), settings.Model, s_oneDay.Days);
-        var binder = new InstrumentBinder(_tree.ReportingCurrency, model.Factors, new ClosingLevels(known), settings.Simulation.Seed, settings.CurveInterpolation);
-        var lines = LineValuation.Of(known.Positions, known.Instruments, binder, model.Levels, known.AsOf);
-        var plan = new PlanCompiler(_tree, model, binder.Currencies, [s_oneDay]).Compile(settings.Simulation.Seed, lines, workspace.Threads, null, cancellation);
+        var (model, plan) = Compiled(known, workspace.Threads, cancellation);
         var realised = new RealisedProfits(plan, model.Factors, _levels.At(next, known.AsOf));
         var theoretical = realised.Together();
         var scenarios = plan.Law.ScenarioCount ?? settings.Simulation.Scenarios;
@@ -55,6 +53,30 @@ public sealed class WalkForwardDay
         var books = new List<BookForecast>(_tree.Books.Count);
         for (var node = 0; node < _tree.Books.Count; node++) books.Add(Book(node, plan, sampler, record, SeriesOf(plan, record, sampled, RowOf(plan, node)), theoretical, next));
         return new(known.AsOf, next, scenarios, WithFactors(plan, model, realised, books));
+    }
+
+    /// <summary>The factors that cost books most from a close to the next when each moves alone, the costliest first.</summary>
+    /// <param name="known">What was known at the close, with the positions held.</param>
+    /// <param name="next">The next close.</param>
+    /// <param name="books">The books.</param>
+    /// <param name="cancellation">Stops it.</param>
+    public IReadOnlyDictionary<string, IReadOnlyList<FactorAmount>> FactorsOf(Snapshot known, DateOnly next, IReadOnlyList<string> books, CancellationToken cancellation)
+    {
+        ArgumentNullException.ThrowIfNull(known);
+        ArgumentNullException.ThrowIfNull(books);
+        var (model, plan) = Compiled(known, 1, cancellation);
+        var realised = new RealisedProfits(plan, model.Factors, _levels.At(next, known.AsOf));
+        var alone = realised.Alone([.. books.Select(book => RowOf(plan, _tree.IndexOf(book)))]);
+        return books.Index().ToDictionary(b => b.Item, b => (IReadOnlyList<FactorAmount>)Costliest(model, alone[b.Index]), StringComparer.Ordinal);
+    }
+
+    private (CalibratedModel Model, RevaluationPlan Plan) Compiled(Snapshot known, int threads, CancellationToken cancellation)
+    {
+        var settings = known.Settings;
+        var model = Calibrator.Calibrate(known, ShockTable.From(known), settings.Model, s_oneDay.Days);
+        var binder = new InstrumentBinder(_tree.ReportingCurrency, model.Factors, new ClosingLevels(known), settings.Simulation.Seed, settings.CurveInterpolation);
+        var lines = LineValuation.Of(known.Positions, known.Instruments, binder, model.Levels, known.AsOf);
+        return (model, new PlanCompiler(_tree, model, binder.Currencies, [s_oneDay]).Compile(settings.Simulation.Seed, lines, threads, null, cancellation));
     }
 
     // Losses to count against, for each row: the theoretical profit's, and the actual one's.
@@ -87,10 +109,15 @@ public sealed class WalkForwardDay
             Book = _tree.Books[node].Name,
             Levels = [.. _confidences.Select(c => new LevelForecast(c, Value(MeasureKind.Var, c), Value(MeasureKind.Es, c)))],
             Theoretical = theoretical[row],
-            PTheoretical = Probability(record.ProbeOf(row, 0, 2), series.Count),
-            PActual = _actual.Of(node, next) is null ? null : Probability(record.ProbeOf(row, 1, 2), series.Count),
+            PTheoretical = ProbabilityOf(record.ProbeOf(row, 0, 2)),
+            PActual = _actual.Of(node, next) is null ? null : ProbabilityOf(record.ProbeOf(row, 1, 2)),
             Tail = [.. distribution.Quantiles.TakeWhile(q => q.Probability <= (double)DeepestTail)],
         };
+
+        // A list of scenarios has steps: where a profit stands in one is drawn.
+        double ProbabilityOf(ProbeCount loss) => plan.Law.ScenarioCount is null
+            ? Probability(loss, series.Count)
+            : ForecastProbabilities.Randomised(loss.Beyond, loss.Equal, series.Count, ForecastProbabilities.Position(plan.Seed, next, node));
 
         double Value(MeasureKind kind, Confidence confidence) => series.Measure(new(kind, confidence, s_oneDay), 0.95m).Value;
     }
@@ -104,14 +131,11 @@ public sealed class WalkForwardDay
         var beyond = Enumerable.Range(0, books.Count).Where(node => books[node].Levels.Any(level => -books[node].Theoretical > level.Var)).ToList();
         if (beyond.Count == 0) return books;
         var alone = realised.Alone([.. beyond.Select(node => RowOf(plan, node))]);
-        for (var i = 0; i < beyond.Count; i++)
-        {
-            books[beyond[i]] = books[beyond[i]] with
-            {
-                Factors = [.. alone[i].Select((amount, factor) => new FactorAmount(model.Factors[factor].Name, amount)).Where(f => f.Amount < 0)
-                    .OrderBy(f => f.Amount).ThenBy(f => f.Factor, StringComparer.Ordinal).Take(FactorsNamed)],
-            };
-        }
+        for (var i = 0; i < beyond.Count; i++) books[beyond[i]] = books[beyond[i]] with { Factors = Costliest(model, alone[i]) };
         return books;
     }
+
+    private static FactorAmount[] Costliest(CalibratedModel model, double[] alone) =>
+        [.. alone.Select((amount, factor) => new FactorAmount(model.Factors[factor].Name, amount)).Where(f => f.Amount < 0)
+            .OrderBy(f => f.Amount).ThenBy(f => f.Factor, StringComparer.Ordinal).Take(FactorsNamed)];
 }

@@ -25,7 +25,7 @@ public sealed record EvidenceSeries
 }
 
 /// <summary>All tests of one book and confidence.</summary>
-public static class BacktestEvidence
+public static class BacktestTests
 {
     /// <summary>One result for each of <see cref="StatisticalTestNames.All"/>, in that order.</summary>
     /// <param name="series">What is known.</param>
