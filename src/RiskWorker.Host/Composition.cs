@@ -14,6 +14,8 @@ public static class Composition
         {
             Load = new LoadFeed(refresh).RunAsync,
             Measure = new MeasureRun(refresh, new Rehearsal(), clock).RunAsync,
+            Backtest = new BacktestRun(refresh, clock).RunAsync,
+            Explain = new KeepExplanation(clock).RunAsync,
             ListRuns = StoredRuns.ListAsync,
             ShowRun = StoredRuns.ShowAsync,
             Verify = VerifyRun.RunAsync,

@@ -3,7 +3,7 @@ using RiskWorker.Domain.Market;
 namespace RiskWorker.Engine.Backtesting;
 
 /// <summary>The days that profit and VaR are compared on: Mondays to Fridays with at least one observation.</summary>
-internal static class BacktestDays
+public static class BacktestDays
 {
     /// <summary>All of them, ascending.</summary>
     public static DateOnly[] Of(ObservationHistory history)

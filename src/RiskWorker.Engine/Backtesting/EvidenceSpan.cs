@@ -23,17 +23,19 @@ public sealed class EvidenceSpan
     private readonly Dictionary<(DateOnly, string), double> _independent;
     private readonly NullLaws _laws = new();
     private readonly DateOnly _from;
+    private readonly bool _hasActual;
 
     /// <summary>Takes the span.</summary>
     /// <param name="span">Observations, profit and, for recorded and backfilled evidence, the runs to count.</param>
     /// <param name="tree">Its books.</param>
     /// <param name="from">First day of profit.</param>
     /// <param name="forecasts">Forecasts, oldest first.</param>
-    /// <param name="isWalkForward">Whether they are a walk-forward's, which has no runs.</param>
-    public EvidenceSpan(Snapshot span, BookTree tree, DateOnly from, IReadOnlyList<DayForecast> forecasts, bool isWalkForward)
+    /// <param name="walk">Positions of a walk-forward, which has no runs; null for runs. What was booked on past days has nothing to do with today's positions.</param>
+    public EvidenceSpan(Snapshot span, BookTree tree, DateOnly from, IReadOnlyList<DayForecast> forecasts, BacktestPositions? walk)
     {
         ArgumentNullException.ThrowIfNull(forecasts);
-        (_span, _tree, _from, _walk) = (span, tree, from, isWalkForward ? [.. forecasts] : []);
+        _hasActual = walk != BacktestPositions.Today;
+        (_span, _tree, _from, _walk) = (span, tree, from, walk is not null ? [.. forecasts] : []);
         (_count, _actual) = (new(span, tree, null), new(span, tree));
         _forecasts = forecasts.ToDictionary(f => f.ProfitDate, f => f.Books.ToDictionary(b => b.Book, StringComparer.Ordinal));
         _independent = span.ProfitAndLoss.Where(p => p.Hypothetical is not null).GroupBy(p => (p.Date, p.Book)).ToDictionary(g => g.Key, g => g.First().Hypothetical!.Value);
@@ -95,7 +97,7 @@ public sealed class EvidenceSpan
             select new ModelCount(model, _tree.Books[node].Name, confidence, days.Count, exceptions, BacktestZones.Of(exceptions, days.Count, confidence),
                 days.Where(d => d.Var is not null).Select(d => d.Var!.Value).DefaultIfEmpty(double.NaN).Average())];
 
-    private IEnumerable<ProfitKind> Kinds(int node) => _actual.HasSeries(node) ? [ProfitKind.Actual, ProfitKind.Hypothetical] : [ProfitKind.Hypothetical];
+    private IEnumerable<ProfitKind> Kinds(int node) => _hasActual && _actual.HasSeries(node) ? [ProfitKind.Actual, ProfitKind.Hypothetical] : [ProfitKind.Hypothetical];
 
     private List<BacktestDay> InSpan(IEnumerable<BacktestDay> days) => [.. days.Where(d => d.Date >= _from)];
 

@@ -11,6 +11,12 @@ public sealed record UseCaseSet
     /// <summary>Runs the measure.</summary>
     public required UseCase<MeasureRequest, MeasureReport> Measure { get; init; }
 
+    /// <summary>Makes backtest evidence.</summary>
+    public required UseCase<BacktestRequest, BacktestReport> Backtest { get; init; }
+
+    /// <summary>Keeps the explanation of an exception; reports how many there are of it.</summary>
+    public required UseCase<ExplainRequest, int> Explain { get; init; }
+
     /// <summary>Lists stored runs, newest first.</summary>
     public required UseCase<ListRunsRequest, IReadOnlyList<RunSummary>> ListRuns { get; init; }
 

@@ -64,6 +64,7 @@ public sealed class CommandTree
     [
         new LoadVerb(useCases.Load, _options, _terminal),
         new MeasureVerb(useCases.Measure, _options, _terminal),
+        new BacktestVerb(useCases, _options, _terminal),
         new RunsVerb(useCases, _options, _terminal),
         new VerifyVerb(useCases.Verify, _options, _terminal),
         new ServeVerb(useCases, _options, _terminal),

@@ -61,6 +61,14 @@ public sealed class CommonOptions
     public static Option<int?> Threads() => Parsed<int>("--threads", "N", "Threads; they change no figure [default: one a core]", $"a whole number from 1 to {MostThreads}",
         text => int.TryParse(text, NumberStyles.None, CultureInfo.InvariantCulture, out var number) && number is >= 1 and <= MostThreads ? number : null);
 
+    /// <summary>A date.</summary>
+    public static Option<DateOnly?> Date(string name, string description) => Parsed<DateOnly>(name, "DATE", description, "a date as yyyy-MM-dd",
+        text => DateOnly.TryParseExact(text, "yyyy-MM-dd", CultureInfo.InvariantCulture, DateTimeStyles.None, out var date) ? date : null);
+
+    /// <summary>One of a few words.</summary>
+    public static Option<T?> Word<T>(string name, string description, IReadOnlyDictionary<string, T> words) where T : struct => Parsed<T>(
+        name, "WORD", description, "one of " + string.Join(", ", words.Keys), text => words.TryGetValue(text, out var value) ? value : null);
+
     /// <summary>An option whose text is read by <paramref name="read"/>, which returns null for what it refuses.</summary>
     public static Option<T?> Parsed<T>(string name, string helpName, string description, string expected, Func<string, T?> read) where T : struct => new(name)
     {

@@ -12,9 +12,9 @@ public sealed class MeasureVerb : IVerb
     private readonly UseCase<MeasureRequest, MeasureReport> _measure;
     private readonly CommonOptions _options;
     private readonly Terminal _terminal;
-    private readonly Option<DateOnly?> _asOf = Date("--as-of", "As-of date [default: the newest with positions]");
-    private readonly Option<DateOnly?> _from = Date("--from", "First of a span of past dates to fill; they are marked as backfilled");
-    private readonly Option<DateOnly?> _to = Date("--to", "Last of that span");
+    private readonly Option<DateOnly?> _asOf = CommonOptions.Date("--as-of", "As-of date [default: the newest with positions]");
+    private readonly Option<DateOnly?> _from = CommonOptions.Date("--from", "First of a span of past dates to fill; they are marked as backfilled");
+    private readonly Option<DateOnly?> _to = CommonOptions.Date("--to", "Last of that span");
     private readonly Option<int?> _scenarios = CommonOptions.Parsed("--scenarios", "N", "Scenarios of the first look [default: the settings', else 100000]", "a whole number", Whole);
     private readonly Option<ulong?> _seed = CommonOptions.Parsed("--seed", "N", "Seed of every draw [default: the settings', else 1]", $"a whole number from 0 to {ulong.MaxValue}", Unsigned);
     private readonly Option<int?> _threads = CommonOptions.Threads();
@@ -68,9 +68,6 @@ public sealed class MeasureVerb : IVerb
         else if (isFrom && isAsOf) parsed.AddError("--as-of does not go with --from and --to: it is one date, they are a span");
         else if (isFrom && parsed.GetValue(_from) > parsed.GetValue(_to)) parsed.AddError("--from lies after --to");
     }
-
-    private static Option<DateOnly?> Date(string name, string description) => CommonOptions.Parsed<DateOnly>(name, "DATE", description, "a date as yyyy-MM-dd",
-        text => DateOnly.TryParseExact(text, "yyyy-MM-dd", CultureInfo.InvariantCulture, DateTimeStyles.None, out var date) ? date : null);
 
     private static int? Whole(string text) => int.TryParse(text, NumberStyles.None, CultureInfo.InvariantCulture, out var number) ? number : null;
 

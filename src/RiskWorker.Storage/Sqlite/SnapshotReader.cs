@@ -29,6 +29,9 @@ public sealed class SnapshotReader(RiskStore store)
     /// <summary>Dates with an observation of a listed factor, ascending.</summary>
     public IReadOnlyList<DateOnly> ObservationDates => Reading(_ => _state!.Observations.Dates.ToArray());
 
+    /// <summary>Names of the books, in ordinal order.</summary>
+    public IReadOnlyList<string> Books => Reading(_ => _state!.Reference.Books.Select(b => b.Name).Order(StringComparer.Ordinal).ToArray());
+
     /// <summary>Holidays of every calendar.</summary>
     public IReadOnlyList<Holiday> Holidays => Reading(_ => _state!.Reference.Holidays);
 

@@ -39,12 +39,13 @@ public sealed class WalkForwardDay
     /// <param name="next">The next close.</param>
     /// <param name="workspace">Threads and buffers.</param>
     /// <param name="cancellation">Stops it.</param>
-    /// <exception cref="CalibrationException">The model cannot be estimated from what was known.</exception>
-    public DayForecast Of(Snapshot known, DateOnly next, SimulationWorkspace workspace, CancellationToken cancellation)
+    /// <returns>Null where what was known is too little to estimate the model from: fewer days than the checks' minimum.</returns>
+    public DayForecast? Of(Snapshot known, DateOnly next, SimulationWorkspace workspace, CancellationToken cancellation)
     {
         ArgumentNullException.ThrowIfNull(known);
         var settings = known.Settings;
-        var (model, plan) = Compiled(known, workspace.Threads, cancellation);
+        if (Calibrated(known) is not { } model) return null;
+        var plan = Compiled(known, model, workspace.Threads, cancellation);
         var realised = new RealisedProfits(plan, model.Factors, _levels.At(next, known.AsOf));
         var theoretical = realised.Together();
         var scenarios = plan.Law.ScenarioCount ?? settings.Simulation.Scenarios;
@@ -64,19 +65,32 @@ public sealed class WalkForwardDay
     {
         ArgumentNullException.ThrowIfNull(known);
         ArgumentNullException.ThrowIfNull(books);
-        var (model, plan) = Compiled(known, 1, cancellation);
+        if (Calibrated(known) is not { } model) return new Dictionary<string, IReadOnlyList<FactorAmount>>();
+        var plan = Compiled(known, model, 1, cancellation);
         var realised = new RealisedProfits(plan, model.Factors, _levels.At(next, known.AsOf));
         var alone = realised.Alone([.. books.Select(book => RowOf(plan, _tree.IndexOf(book)))]);
         return books.Index().ToDictionary(b => b.Item, b => (IReadOnlyList<FactorAmount>)Costliest(model, alone[b.Index]), StringComparer.Ordinal);
     }
 
-    private (CalibratedModel Model, RevaluationPlan Plan) Compiled(Snapshot known, int threads, CancellationToken cancellation)
+    private static CalibratedModel? Calibrated(Snapshot known)
+    {
+        try
+        {
+            var model = Calibrator.Calibrate(known, ShockTable.From(known), known.Settings.Model, s_oneDay.Days);
+            return known.Settings.Model.Covariance == CovarianceEstimator.Given || model.Shocks >= known.Settings.Checks.MinimumHistory ? model : null;
+        }
+        catch (CalibrationException)
+        {
+            return null;
+        }
+    }
+
+    private RevaluationPlan Compiled(Snapshot known, CalibratedModel model, int threads, CancellationToken cancellation)
     {
         var settings = known.Settings;
-        var model = Calibrator.Calibrate(known, ShockTable.From(known), settings.Model, s_oneDay.Days);
         var binder = new InstrumentBinder(_tree.ReportingCurrency, model.Factors, new ClosingLevels(known), settings.Simulation.Seed, settings.CurveInterpolation);
         var lines = LineValuation.Of(known.Positions, known.Instruments, binder, model.Levels, known.AsOf);
-        return (model, new PlanCompiler(_tree, model, binder.Currencies, [s_oneDay]).Compile(settings.Simulation.Seed, lines, threads, null, cancellation));
+        return new PlanCompiler(_tree, model, binder.Currencies, [s_oneDay]).Compile(settings.Simulation.Seed, lines, threads, null, cancellation);
     }
 
     // Losses to count against, for each row: the theoretical profit's, and the actual one's.
