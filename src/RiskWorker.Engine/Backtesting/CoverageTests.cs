@@ -1,5 +1,6 @@
 using MathNet.Numerics.Distributions;
 using RiskWorker.Domain.Runs;
+using RiskWorker.Numerics.Kernels;
 
 namespace RiskWorker.Engine.Backtesting;
 
@@ -7,7 +8,7 @@ namespace RiskWorker.Engine.Backtesting;
 /// Likelihood-ratio tests of a series of exceptions. P. Kupiec, Techniques for verifying the accuracy of risk measurement models (Journal of
 /// Derivatives, 1995); P. Christoffersen, Evaluating interval forecasts (International Economic Review, 1998).
 /// </summary>
-/// <remarks>An end product: logarithms and laws come from libraries, and what they give is rounded to 12 significant digits.</remarks>
+/// <remarks>An end product: the law comes from a library, and what it gives is rounded to 12 significant digits.</remarks>
 public static class CoverageTests
 {
     /// <summary>Whether exceptions are as frequent as 1 - confidence: chi-square with 1 degree of freedom; null without days.</summary>
@@ -38,7 +39,7 @@ public static class CoverageTests
 
     // 0 ln 0 = 0.
     private static double LogLikelihood(int without, int with, double probability) =>
-        (without == 0 ? 0 : without * Math.Log(1 - probability)) + (with == 0 ? 0 : with * Math.Log(probability));
+        (without == 0 ? 0 : without * Logarithm.Of(1 - probability)) + (with == 0 ? 0 : with * Logarithm.Of(probability));
 
     private static TestResult Result(double ratio, double freedom)
     {
