@@ -29,7 +29,8 @@ internal sealed class JumpEstimation
         if (days < JumpThreshold.FewestDays)
             throw new CalibrationException("observations", $"The model '{model.Name}' looks for jumps in the shocks of {days} days; it needs {JumpThreshold.FewestDays}.");
         var common = new bool[days];
-        var fits = JumpDiffusionFit.OfSeveral(window.Shocks, factors, threshold, CommonFraction, common);
+        // Common takes two at least: what one of two factors does alone is its own.
+        var fits = factors == 1 ? [JumpDiffusionFit.Of(window.Shocks, threshold)] : JumpDiffusionFit.OfSeveral(window.Shocks, factors, threshold, Math.Max(CommonFraction, Math.Min(2.0 / factors, 1)), common);
         var (quiet, jumps) = ((double[])window.Shocks.Clone(), new bool[days]);
         for (var j = 0; j < factors; j++)
         {

@@ -34,6 +34,17 @@ public sealed class HistoryChecksTests
     [Fact]
     public void Run_with_as_many_shocks_as_the_window_says_nothing() => Assert.Empty(FindingsOf.Feed(WithB(Wave(101))));
 
+    // A model that pairs days keeps what a factor's gap would make others drop.
+    [Fact]
+    public void Run_with_paired_days_says_nothing_of_days_that_are_not_complete()
+    {
+        double[] gap = [.. Wave(101).Select((price, t) => t == 50 ? double.NaN : price)];
+        FindingsOf.Feed(WithB(gap)).One(FindingCodes.DaysDropped);
+        var paired = FindingsOf.Feed(WithB(gap).Model(m => m with { MissingDays = MissingDays.Pairwise }));
+        paired.None(FindingCodes.DaysDropped);
+        paired.None(FindingCodes.DaysFew);
+    }
+
     [Fact]
     public void Run_with_a_proxy_and_a_beta_warns_and_sizes_what_rests_on_it()
     {

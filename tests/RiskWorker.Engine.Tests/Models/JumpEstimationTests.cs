@@ -21,6 +21,16 @@ public sealed class JumpEstimationTests
         Assert.False(law.IsGiven);
     }
 
+    [Theory]
+    [InlineData(1, 0)]
+    [InlineData(2, 4)]
+    public void Jump_of_one_factor_alone_is_its_own_however_few_there_are(int factors, int common)
+    {
+        var law = (JumpLaw)new HistoryBook(Found, s_shocks[..factors]).Compiled().Model.Law;
+        Assert.Equal(common, law.CommonPerDay * Days, 1e-12);
+        Assert.Equal(factors == 1 ? [7.0] : [2.0, 3.0], law.OwnPerDay.Select(rate => Math.Round(rate * Days, 9)).Order());
+    }
+
     // What jumps add and what is left of the diffusion are the mean square of the history.
     [Fact]
     public void Found_jumps_and_the_diffusion_keep_the_total_variance()

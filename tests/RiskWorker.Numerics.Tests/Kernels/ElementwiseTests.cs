@@ -13,6 +13,10 @@ public sealed class ElementwiseTests
         [nameof(Elementwise.Subtract)] = (Elementwise.Subtract, Elementwise.Subtract),
         [nameof(Elementwise.DivideBy)] = (Elementwise.DivideBy, Elementwise.DivideBy),
         [nameof(Elementwise.Negate)] = (Elementwise.Negate, (value, _) => Elementwise.Negate(value)),
+        [nameof(Elementwise.SquareRoot)] = (Elementwise.SquareRoot, (value, _) => Elementwise.SquareRoot(value)),
+        [nameof(Elementwise.Scale)] = ((values, scaled) => Elementwise.Scale(values, 0.37, scaled), (value, _) => Elementwise.Scale(value, 0.37)),
+        [nameof(Elementwise.Product)] = ((values, product) => Elementwise.Product(values, values, product), (value, _) => Elementwise.Product(value, value)),
+        [nameof(Elementwise.AddSquare)] = ((values, total) => Elementwise.AddSquare(values, 0.7, total), (value, total) => Elementwise.AddSquare(value, 0.7, total)),
     };
 
     public static TheoryData<string> Names => [.. Forms.Keys];

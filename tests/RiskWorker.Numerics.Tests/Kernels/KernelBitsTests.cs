@@ -43,6 +43,8 @@ public sealed class KernelBitsTests
             GeometricAsianTerms.Continuous(Spot0, n.Between(60, 160), 1, n.Between(-2, 1), n.Between(80, 120), n.Unit() < 0.5), market, n.Between(-100, 100), 5, profit)),
         [nameof(BookProfit)] = BookLosses,
         [nameof(Elementwise)] = CrossRates,
+        ["Elementwise products"] = ScaledProducts,
+        [nameof(CompoundJump)] = Jumps,
         [nameof(UnitScale)] = (n, y) => UnitScale.Apply(n.Between(-0.3, 0.3, Count), 3.7, 0.01, y),
         [nameof(PolynomialSum)] = Polynomials,
         [nameof(FourVariableSum)] = (n, y) => FourVariableSum.Add(
@@ -78,6 +80,8 @@ public sealed class KernelBitsTests
     [InlineData("GeometricAsianOption", "e373c228d445b289cebc7bb3071622d0")]
     [InlineData("BookProfit", "b588542cd2b8a658be2db308b372280d")]
     [InlineData("Elementwise", "e83c48058ffce0ed22fe7337fccb311e")]
+    [InlineData("Elementwise products", "e0b7c81379080000150c149d50bf34a3")]
+    [InlineData("CompoundJump", "36e7fd1cd0f9af23d5372d58ecccd7a5")]
     [InlineData("UnitScale", "849222ae93c6890bb75d188cf11d23d0")]
     [InlineData("PolynomialSum", "48de1c7b7d8e9610abe5836b526807d8")]
     [InlineData("FourVariableSum", "b1ebf22df992dfddca55f27cee5b3401")]
@@ -187,6 +191,21 @@ public sealed class KernelBitsTests
         Elementwise.DivideBy(n.Between(0.5, 2, Count), y);
         Elementwise.Subtract(n.Between(-1, 1, Count), y);
         Elementwise.Add(n.Between(-100, 100, Count), y);
+    }
+
+    private static void ScaledProducts(SeededNumbers n, double[] y)
+    {
+        Elementwise.Product(n.Between(0.1, 9, Count), n.Between(0.1, 9, Count), y);
+        Elementwise.Scale(y, 0.3162, y);
+        Elementwise.AddSquare(n.Between(-3, 3, Count), 0.7, y);
+        Elementwise.SquareRoot(y, y);
+    }
+
+    private static void Jumps(SeededNumbers n, double[] y)
+    {
+        n.Between(-0.1, 0.1, Count).CopyTo(y, 0);
+        double[] Counts() => Array.ConvertAll(n.Between(0, 4, Count), Math.Floor);
+        CompoundJump.Add(Counts(), Counts(), n.Between(-5, 5, Count), new(-0.05, 0.0004, 0.01, 0.0025), y);
     }
 
     private static void Sums(double[] values, double[] y)
