@@ -1,3 +1,4 @@
+using System.Collections.Concurrent;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Engine.Backtesting.Evidence;
 using RiskWorker.Numerics.Kernels;
@@ -15,6 +16,11 @@ public sealed class SizeTests
     private static readonly NullLaws s_laws = new();
     private static readonly double[][] s_years = [.. Enumerable.Range(1, Rounds).Select(y => Uniforms((ulong)(1000 + y), Days))];
 
+    // What several tests ask for is found once.
+    private static readonly ConcurrentDictionary<(string Name, Confidence Confidence), Lazy<double>> s_rates = new();
+    private static readonly ConcurrentDictionary<(double[] Year, Confidence Confidence), Lazy<(StatisticalTest Z1, StatisticalTest Z2)>> s_both = new();
+    private static readonly string[] s_ofWholeDistribution = [StatisticalTestNames.KolmogorovSmirnov, StatisticalTestNames.AndersonDarling, StatisticalTestNames.Berkowitz];
+
     public static TheoryData<string> Names => [.. Tests.Keys];
 
     private static Dictionary<string, Func<double[], Confidence, StatisticalTest>> Tests { get; } = new(StringComparer.Ordinal)
@@ -25,8 +31,8 @@ public sealed class SizeTests
         [StatisticalTestNames.ChristoffersenConditional] = (u, c) => ChristoffersenTests.Conditional(Exceptions(u, c), c, s_laws),
         [StatisticalTestNames.HaasMixed] = (u, c) => HaasTest.Of(Exceptions(u, c), c, s_laws),
         [StatisticalTestNames.Duration] = (u, c) => DurationTest.Of(Exceptions(u, c), s_laws),
-        [StatisticalTestNames.AcerbiSzekelyZ1] = (u, c) => AcerbiSzekelyTests.Of(Shortfall(u, c), c, Series).Z1,
-        [StatisticalTestNames.AcerbiSzekelyZ2] = (u, c) => AcerbiSzekelyTests.Of(Shortfall(u, c), c, Series).Z2,
+        [StatisticalTestNames.AcerbiSzekelyZ1] = (u, c) => AcerbiSzekely(u, c).Z1,
+        [StatisticalTestNames.AcerbiSzekelyZ2] = (u, c) => AcerbiSzekely(u, c).Z2,
         [StatisticalTestNames.CostanzinoCurran] = (u, c) => CostanzinoCurranTest.Of(u, c),
         [StatisticalTestNames.KolmogorovSmirnov] = (u, _) => DistributionTests.KolmogorovSmirnov(u),
         [StatisticalTestNames.AndersonDarling] = (u, _) => DistributionTests.AndersonDarling(u),
@@ -58,7 +64,11 @@ public sealed class SizeTests
         Assert.All(names, n => Assert.Equal(0.05, Rate(n, C975), 3 * Error(0.05)));
     }
 
-    private static double Rate(string name, Confidence confidence) => s_years.Count(u => Tests[name](u, confidence).Reject == true) / (double)Rounds;
+    private static double Rate(string name, Confidence confidence) => s_rates.GetOrAdd((name, s_ofWholeDistribution.Contains(name) ? C975 : confidence),
+        key => new(() => s_years.Count(u => Tests[name](u, key.Confidence).Reject == true) / (double)Rounds)).Value;
+
+    private static (StatisticalTest Z1, StatisticalTest Z2) AcerbiSzekely(double[] u, Confidence confidence) =>
+        s_both.GetOrAdd((u, confidence), key => new(() => AcerbiSzekelyTests.Of(Shortfall(key.Year, key.Confidence), key.Confidence, Series))).Value;
 
     private static double Error(double rate) => Math.Sqrt(rate * (1 - rate) / Rounds);
 
