@@ -29,7 +29,7 @@ public sealed class DrawStreamTests
         DrawPurpose[] table =
         [
             DrawPurpose.FactorMoves, DrawPurpose.MixingVariable, DrawPurpose.Jumps,
-            DrawPurpose.ResidualDays, DrawPurpose.PathSteps, DrawPurpose.PricerPilot,
+            DrawPurpose.ResidualDays, DrawPurpose.PathSteps, DrawPurpose.PricerPilot, DrawPurpose.NullSeries, DrawPurpose.StepPosition,
         ];
         Assert.Equal(table, Enum.GetValues<DrawPurpose>());
         Assert.Equal([0, 1, 2, 3, 4, 5], table.Select(purpose => (int)purpose));

@@ -32,6 +32,33 @@ public sealed class ExactLawsTests
     }
 
     [Fact]
+    public void Mixed_test_has_the_mass_of_all_series_with_as_small_a_tail_within_the_error_of_its_simulation()
+    {
+        var all = All(e => HaasTest.Of(e, s_confidence, _laws));
+        foreach (var one in all.Where((_, number) => number % 37 == 0))
+        {
+            var exact = all.Where(o => Tail(o) <= Tail(one) * (1 + 1e-9)).Sum(o => o.Mass);
+            Assert.Equal(exact, one.Test.PValue!.Value, (4 * Math.Sqrt(exact * (1 - exact) / HaasTest.Series)) + (1.0 / HaasTest.Series));
+        }
+
+        static double Tail((StatisticalTest Test, int Count, double Mass) series) => Judgement.ChiSquareTail(series.Test.Statistic!.Value, series.Count + 1);
+    }
+
+    [Theory]
+    [InlineData(2)]
+    [InlineData(3)]
+    [InlineData(5)]
+    public void Duration_has_the_share_of_the_orders_of_its_count_as_extreme_within_the_error_of_its_simulation(int count)
+    {
+        var orders = Enumerable.Range(0, 1 << Days).Where(n => int.PopCount(n) == count).Select(n => DurationTest.Of(Bits(Days, n), _laws)).ToArray();
+        foreach (var one in orders.Where((_, number) => number % 7 == 0))
+        {
+            var exact = orders.Count(o => o.Statistic >= one.Statistic - 1e-8) / (double)orders.Length;
+            Assert.Equal(exact, one.PValue!.Value, (4 * Math.Sqrt(exact * (1 - exact) / DurationTest.Series)) + (1.0 / DurationTest.Series));
+        }
+    }
+
+    [Fact]
     public void Attainable_sizes_are_the_mass_of_the_series_that_reject()
     {
         var sizes = AttainableSizes.Of(Days, s_confidence, _laws);
