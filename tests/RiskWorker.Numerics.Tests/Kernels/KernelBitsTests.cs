@@ -51,7 +51,6 @@ public sealed class KernelBitsTests
             n.Between(-50, 50, 9 * 5 * 3 * 4), 5, 3, 4, n.Between(-1, 1, Count), n.Between(-1, 1, Count), n.Between(-1, 1, Count), n.Between(-1, 1, Count), y),
         [nameof(BoundaryScale)] = (n, y) => BoundaryScale.Apply(n.Between(-0.3, 0.3, Count), n.Between(-0.5, 0.2, Count), 0.3, y),
         [nameof(Branch)] = Branches,
-        [nameof(CompoundJump)] = Jumps,
         [nameof(LaneSum)] = (n, y) => Sums(n.Between(-1e6, 1e6, 600), y),
     };
 
@@ -87,7 +86,6 @@ public sealed class KernelBitsTests
     [InlineData("FourVariableSum", "b1ebf22df992dfddca55f27cee5b3401")]
     [InlineData("BoundaryScale", "bcd573c277c54ea805ba1f4a0ef6a0e7")]
     [InlineData("Branch", "3a22e42d28e549be717a7d35e158cbfb")]
-    [InlineData("CompoundJump", "c40d917ef5cc48b51eca70b0335529d4")]
     [InlineData("LaneSum", "092d79c6bd865de46f059ec3ddc79409")]
     public void Outputs_bits_are_the_pinned_ones(string name, string expected)
     {
@@ -118,16 +116,6 @@ public sealed class KernelBitsTests
         double[] x = new double[Count];
         LogNormalMoves.LogReturns(n.Between(-8, 8, Count), 0.02, -0.0002, x);
         return x;
-    }
-
-    private static void Jumps(SeededNumbers n, double[] y)
-    {
-        double[] first = n.Between(0, 5, Count), second = n.Between(0, 2, Count);
-        for (int i = 0; i < Count; i++)
-            (first[i], second[i]) = (Math.Floor(first[i]), Math.Floor(second[i]));
-        Elementwise.Scale(n.Between(-0.1, 0.1, Count), 0.3, y);
-        Elementwise.Product(y, n.Between(0.5, 2, Count), y);
-        CompoundJump.Add(first, second, n.Between(-6, 6, Count), new(-0.03, 0.0004, 0.01, 0.002), y);
     }
 
     private static void OptionProfits(SeededNumbers n, double[] y)
