@@ -21,7 +21,7 @@ public sealed class ModelBacktestsTests
         Assert.Equal([BacktestZone.Green, BacktestZone.Green, null, null], backtests.Select(b => b.Zone));
         // One exception in 250 days at 99%: p of Kupiec's ratio as in the worked examples (0.278...).
         Assert.Equal(0.2780714900139528, backtests[0].Coverage!.PValue, 1e-12);
-        // Three in 100, two of them in a row: transitions 96, 2, 1... counted day by day in the test of the ratios.
+        // Three in 100.
         Assert.Equal(Coverage(3, 100), backtests[2].Coverage!.Statistic, 1e-10);
     }
 

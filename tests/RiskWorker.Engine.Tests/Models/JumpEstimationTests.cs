@@ -91,7 +91,8 @@ public sealed class JumpEstimationTests
     public void More_jumps_within_the_longest_horizon_than_can_be_drawn_are_refused()
     {
         var often = new ModelSettings { Kind = ModelKind.JumpDiffusion, Window = Days, Jumps = new() { Own = new Dictionary<string, OwnJumps> { ["A"] = new(252, new(0, 0.01)) } } };
-        Assert.Contains("25 jumps", Assert.Throws<CalibrationException>(() => new HistoryBook(often, s_shocks) { Horizons = [1, 25] }.Snapshot() is var s ? Calibrator.Calibrate(s) : null).Message, StringComparison.Ordinal);
+        var book = new HistoryBook(often, s_shocks) { Horizons = [1, 25] };
+        Assert.Contains("25 jumps", Assert.Throws<CalibrationException>(() => Calibrator.Calibrate(book.Snapshot())).Message, StringComparison.Ordinal);
     }
 
     private static ModelSettings Found => new() { Kind = ModelKind.JumpDiffusion, Covariance = CovarianceEstimator.Equal, Window = Days };
