@@ -1,6 +1,6 @@
 using System.Globalization;
 using RiskWorker.Domain.Runs;
-using RiskWorker.Engine.Backtesting;
+using RiskWorker.Engine.Backtesting.Evidence;
 
 namespace RiskWorker.Engine.Tests.Backtesting;
 
