@@ -2,7 +2,7 @@ using System.Globalization;
 using System.Text.Json;
 using RiskWorker.Domain.Instruments;
 using RiskWorker.Domain.Runs;
-using RiskWorker.Engine.Backtesting;
+using RiskWorker.Engine.Backtesting.Evidence;
 using RiskWorker.Engine.Calibration;
 using RiskWorker.Engine.Plans;
 using RiskWorker.Engine.Runs;

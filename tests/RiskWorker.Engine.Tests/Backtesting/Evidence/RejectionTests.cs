@@ -46,7 +46,7 @@ public sealed class RejectionTests
     {
         var (var, shortfall) = (-InverseNormal.Of(0.025), NormalDensity.Of(InverseNormal.Of(0.025)) / 0.025);
         double[] all = [.. profits];
-        var tests = BacktestEvidence.Of(
+        var tests = BacktestTests.Of(
             new()
             {
                 Confidence = C975,
