@@ -261,6 +261,9 @@ public sealed class EvidenceReportTests
         Assert.Contains("A page of its own follows for the root and 30 of 100 other books", words);
         Assert.Contains("Every book and day is in backtest-days.csv.", words);
         Assert.DoesNotContain("open ", words);
+        Assert.DoesNotContain("not explained", words);
+        Assert.DoesNotContain("Add-on:", words);
+        Assert.Contains("Add-on and desk limit are for 250 days: there is none here.", words);
     }
 
     [Theory]

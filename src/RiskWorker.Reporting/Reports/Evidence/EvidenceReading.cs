@@ -28,13 +28,13 @@ internal sealed class EvidenceReading
     /// <summary>Those with a page of their own: the root, and of the others what must be seen first, in the order of the tree.</summary>
     public IReadOnlyList<BookEvidence> Paged { get; }
 
-    /// <summary>Whether profit was known before the figures, and nobody could have explained a day then.</summary>
+    /// <summary>Whether the days were walked through afterwards: nobody had these figures, so nobody owes an explanation of a day.</summary>
     public bool IsWalkForward => Evidence.Kind == BacktestKind.WalkForward;
 
     /// <summary>A book's display name.</summary>
     public string NameOf(string book) => names.GetValueOrDefault(book, book);
 
-    /// <summary>The unit that fits a book's VaR.</summary>
+    /// <summary>The unit that fits the largest of some amounts.</summary>
     public static MoneyScale Scale(IEnumerable<double?> amounts, string currency) =>
         MoneyScale.For(amounts.Select(amount => Math.Abs(amount ?? 0)).DefaultIfEmpty(0).Max(), currency);
 }

@@ -8,7 +8,7 @@ namespace RiskWorker.Reporting.Reports.Evidence;
 internal static class ExceptionRegister
 {
     private const int MostDays = 400;
-    private const int MostWalkedDays = 100;
+    private const int MostWalkedDays = 60;
     private const int Costliest = 3;
 
     /// <summary>How far the exceptions are explained; null where there is none, or where nobody could have explained one.</summary>
@@ -86,10 +86,10 @@ internal static class ExceptionRegister
             new TextCell(reading.NameOf(entry.Book), Kinds(day)),
             new TextCell(scale.Text(entry.Amount), EvidenceWords.Profit(entry.Profit)), new TextCell(scale.Text(entry.Var), entry.Confidence.ToString()), Excess(day, scale),
             new TextCell(Costs(entry.Books.Select(book => (reading.NameOf(book.Book), book.Amount)), scale), Costs(entry.Factors.Select(factor => (factor.Factor, factor.Amount)), scale)),
-            Explained(entry.Explanation, entry.Explanation is null ? "not explained" : null),
+            Explained(entry.Explanation, reading.IsWalkForward ? Numerals.Missing : "not explained"),
         ]);
         foreach (var corrected in entry.Corrected)
-            yield return new(["", "", "", "", "", new TextCell("corrected:"), Explained(corrected, null)], Emphasis.Muted);
+            yield return new(["", "", "", "", "", new TextCell("corrected:"), Explained(corrected, "")], Emphasis.Muted);
     }
 
     private static string Kinds(ExceptionDay day)
@@ -104,8 +104,8 @@ internal static class ExceptionRegister
     private static string Costs(IEnumerable<(string Name, double Amount)> parts, MoneyScale scale) =>
         string.Join(", ", parts.Take(Costliest).Select(part => $"{part.Name}\u00A0{scale.Text(part.Amount)}"));
 
-    private static TextCell Explained(ExceptionExplanation? explanation, string? otherwise) => explanation is null
-        ? new(RichText.Strong(otherwise ?? ""))
+    private static TextCell Explained(ExceptionExplanation? explanation, string otherwise) => explanation is null
+        ? new(RichText.Strong(otherwise))
         : new(RichText.Of(new TextRun(Phrases.Sentence(EvidenceWords.Cause(explanation.Cause)) + ": ", Strong: true), new TextRun(explanation.Text)), $"{explanation.Author}, {Phrases.Utc(explanation.Written)}");
 
     private static string Are(int count) => count == 1 ? "is" : "are";
