@@ -25,6 +25,9 @@ public sealed record Configuration
     /// <summary>What the service runs by itself, by name.</summary>
     public IReadOnlyList<ScheduleOptions> Schedules { get; init; } = [];
 
+    /// <summary>With what evidence is signed, its path as written: relative to the folder of the settings; null where it is not.</summary>
+    public SigningOptions? Signing { get; init; }
+
     /// <summary>These settings with what the command line says in their place. A cap below the scenarios asked for is raised to them.</summary>
     /// <exception cref="SettingsException">A number is out of range, or the model is not among <see cref="Models"/>.</exception>
     public Configuration With(RunOverrides overrides)

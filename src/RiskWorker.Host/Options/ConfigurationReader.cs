@@ -9,7 +9,7 @@ public static class ConfigurationReader
     public const string FileName = "riskworker.json";
 
     private static readonly string[] s_keys =
-        ["store", "timeEffects", "models", "record", "challengers", "measures", "rules", "simulation", "curves", "backfill", "checks", "schedules", "delivery", "page"];
+        ["store", "timeEffects", "models", "record", "challengers", "measures", "rules", "simulation", "curves", "backfill", "checks", "schedules", "evidence", "delivery", "page"];
 
     private const int LongestBackfill = 5_000;
     private static readonly Dictionary<string, bool> s_timeEffects = new(StringComparer.Ordinal) { ["excluded"] = false, ["included"] = true };
@@ -64,6 +64,7 @@ public static class ConfigurationReader
             StorePath = StoreSection.Read(root["store"]),
             BackfillDays = root["backfill"]?.Whole(0, LongestBackfill) ?? 0,
             Schedules = SchedulesSection.Read(root["schedules"]),
+            Signing = EvidenceSection.Read(root["evidence"]),
             Written = new()
             {
                 Model = record,

@@ -109,7 +109,10 @@ public readonly struct SettingsValue(JsonElement element, string path, List<Sett
     }
 
     /// <summary>Records that something else was expected here.</summary>
-    public void Fault(string expected) => faults.Add(new(Path, Excerpt(), expected));
+    public void Fault(string expected) => Fault(expected, Excerpt());
+
+    /// <summary>Records the same and says what stands here in words of its own: for values that must not be printed.</summary>
+    public void Fault(string expected, string found) => faults.Add(new(Path, found, expected));
 
     private string Excerpt() => element.ValueKind switch
     {

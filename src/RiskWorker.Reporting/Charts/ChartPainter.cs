@@ -13,6 +13,7 @@ internal static class ChartPainter
         PnlChart pnl => new PnlPainter(pnl, typesetter).Paint(size),
         MeasureChart measure => new MeasurePainter(measure, typesetter).Paint(size),
         ModelChart models => new ModelPainter(models, typesetter).Paint(size),
+        ProbabilityChart probability => new ProbabilityPainter(probability, typesetter).Paint(size),
         _ => throw new ArgumentException($"A chart of type {chart.GetType().Name} has no painter."),
     };
 }

@@ -16,7 +16,10 @@ internal static class CsvCells
     public static string Text(string? text)
     {
         if (string.IsNullOrEmpty(text)) return "";
-        if (text[0] is '=' or '+' or '-' or '@' or '\t' or '\r' or '\n') text = "'" + text;
+        text = Neutral(text);
         return text.AsSpan().IndexOfAny(",\"\r\n") < 0 ? text : $"\"{text.Replace("\"", "\"\"", StringComparison.Ordinal)}\"";
     }
+
+    /// <summary>Text that a spreadsheet will not take for a formula.</summary>
+    public static string Neutral(string text) => text.Length > 0 && text[0] is '=' or '+' or '-' or '@' or '\t' or '\r' or '\n' ? "'" + text : text;
 }

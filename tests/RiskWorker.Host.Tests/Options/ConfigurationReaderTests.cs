@@ -98,7 +98,7 @@ public sealed class ConfigurationReaderTests
             """));
         Assert.Equal("""
             riskworker.json: 13 faults
-              simulaton: found an unknown key, expected one of store, timeEffects, models, record, challengers, measures, rules, simulation, curves, backfill, checks, schedules, delivery, page; did you mean 'simulation'?
+              simulaton: found an unknown key, expected one of store, timeEffects, models, record, challengers, measures, rules, simulation, curves, backfill, checks, schedules, evidence, delivery, page; did you mean 'simulation'?
               models["a b"].lambda: found 1, expected a number strictly between 0 and 1
               models["a b"].window: found 1, expected a whole number from 2 to 100,000
               page.port: found an unknown key, expected no key here
@@ -134,7 +134,7 @@ public sealed class ConfigurationReaderTests
     [InlineData("""{ "checks": { "jumpSigma": 3 } }""", "checks.jumpSigma: found an unknown key, expected one of staleDays, jumpSigmas, minimumHistory, valueTolerance, grossChange, severity; did you mean 'jumpSigmas'?")]
     [InlineData("""{ "schedules": { "d": { "cron": "0 0 6 * * ?", "timeZone": "UTC", "verb": "tail", "deadline": "7:30" } } }""",
         "schedules.d.verb: found \"tail\", expected one of measure; 'tail' is not available in this version", "schedules.d.deadline: found \"7:30\", expected a time of day as HH:mm")]
-    [InlineData("""{ "\u001b[31m": 1 }""", "[\"?[31m\"]: found an unknown key, expected one of store, timeEffects, models, record, challengers, measures, rules, simulation, curves, backfill, checks, schedules, delivery, page")]
+    [InlineData("""{ "\u001b[31m": 1 }""", "[\"?[31m\"]: found an unknown key, expected one of store, timeEffects, models, record, challengers, measures, rules, simulation, curves, backfill, checks, schedules, evidence, delivery, page")]
     [InlineData("[]", "$: found an empty array, expected an object")]
     [InlineData("null", "$: found null, expected an object")]
     public void Read_fault_names_path_found_and_expected(string json, params string[] faults) =>
