@@ -25,7 +25,7 @@ public sealed class EvidenceDocumentsTests : IDisposable
     [Fact]
     public void Write_makes_every_file_and_a_manifest_of_their_hashes_by_name()
     {
-        var written = EvidenceDocuments.Write(s_evidence, Out, null);
+        var written = EvidenceDocuments.Write(s_evidence, _folder.Path, null);
         string[] names = ["backtest-days.csv", "backtest.json", "backtest.xlsx", "evidence-report.pdf", "exceptions.csv"];
         Assert.Equal([.. names, "manifest.json"], written.Hashes.Select(file => file.Name));
         Assert.Equal(written.Paths.Order(StringComparer.Ordinal), Directory.GetFiles(Out).Order(StringComparer.Ordinal));
@@ -41,11 +41,36 @@ public sealed class EvidenceDocumentsTests : IDisposable
     {
         Directory.CreateDirectory(Out);
         File.WriteAllText(Path.Combine(Out, "manifest.json.p7s"), "of an earlier one");
-        var first = EvidenceDocuments.Write(s_evidence, Out, null);
-        var second = EvidenceDocuments.Write(s_evidence, Out + Path.DirectorySeparatorChar, null);
+        var first = EvidenceDocuments.Write(s_evidence, _folder.Path, null);
+        var second = EvidenceDocuments.Write(s_evidence, _folder.Path + Path.DirectorySeparatorChar, null);
         Assert.Equal(first.Hashes, second.Hashes);
         Assert.Equal(6, Directory.GetFiles(Out).Length);
-        Assert.Equal([Out], Directory.GetFileSystemEntries(_folder.Path));
+        Assert.Equal([Out], Directory.GetFileSystemEntries(Path.GetDirectoryName(Out)!));
+    }
+
+    [Fact]
+    public void Write_leaves_alone_what_is_not_its_own()
+    {
+        var store = _folder.Write("riskworker.db", "the store");
+        var written = EvidenceDocuments.Write(s_evidence, _folder.Path, null);
+        Assert.Equal(Out, written.Folder);
+        Assert.Equal("the store", File.ReadAllText(store));
+
+        File.WriteAllText(Path.Combine(Out, "notes.txt"), "mine");
+        var refusal = Assert.Throws<IOException>(() => EvidenceDocuments.Write(s_evidence, _folder.Path, null));
+        Assert.Contains("holds 'notes.txt', which is no document of backtest evidence; it is not replaced.", refusal.Message, StringComparison.Ordinal);
+        Assert.Equal("mine", File.ReadAllText(Path.Combine(Out, "notes.txt")));
+        Assert.Equal([Out], Directory.GetFileSystemEntries(Path.GetDirectoryName(Out)!));
+    }
+
+    [Fact]
+    public void Write_of_another_moment_or_kind_has_a_folder_of_its_own()
+    {
+        var first = EvidenceDocuments.Write(s_evidence, _folder.Path, null).Folder;
+        var second = EvidenceDocuments.Write(s_evidence with { Made = s_evidence.Made.AddDays(1) }, _folder.Path, null).Folder;
+        Assert.NotEqual(first, second);
+        Assert.True(Directory.Exists(first));
+        Assert.EndsWith("walk-forward-20261130T061203Z", EvidenceDocuments.FolderOf(s_evidence with { Kind = BacktestKind.WalkForward }, "out"), StringComparison.Ordinal);
     }
 
     [Theory]
@@ -53,7 +78,7 @@ public sealed class EvidenceDocumentsTests : IDisposable
     [InlineData("pem")]
     public void Write_signs_the_manifest_so_that_another_program_can_verify_it(string kind)
     {
-        var written = EvidenceDocuments.Write(s_evidence, Out, Certificate(kind));
+        var written = EvidenceDocuments.Write(s_evidence, _folder.Path, Certificate(kind));
         Assert.Equal(["manifest.json", "manifest.json.p7s"], written.Hashes.Skip(5).Select(file => file.Name));
         var (code, said) = Verify();
         Assert.True(code == 0, said);
@@ -65,7 +90,7 @@ public sealed class EvidenceDocumentsTests : IDisposable
     [Fact]
     public void Write_signature_is_detached_holds_the_moment_and_fails_after_tampering()
     {
-        EvidenceDocuments.Write(s_evidence, Out, Certificate("pfx"));
+        EvidenceDocuments.Write(s_evidence, _folder.Path, Certificate("pfx"));
         var manifest = File.ReadAllBytes(Path.Combine(Out, "manifest.json"));
         var signed = Read(manifest);
         signed.CheckSignature(verifySignatureOnly: true);
@@ -92,19 +117,19 @@ public sealed class EvidenceDocumentsTests : IDisposable
         Refused(good with { PasswordVariable = null }, "which cannot be read");
         Refused(good with { PasswordVariable = "RISKWORKER_TEST_UNSET" }, "evidence.passwordVariable: found 'RISKWORKER_TEST_UNSET', which is not set");
         Refused(new(Path.Combine(_folder.Path, "certificate.pem")), "without a private key");
-        var late = Assert.Throws<SettingsException>(() => EvidenceDocuments.Write(s_evidence with { Made = new(2200, 1, 1, 0, 0, 0, TimeSpan.Zero) }, Out, good));
+        var late = Assert.Throws<SettingsException>(() => EvidenceDocuments.Write(s_evidence with { Made = new(2200, 1, 1, 0, 0, 0, TimeSpan.Zero) }, _folder.Path, good));
         Assert.Contains("expected a certificate that is valid at 2200-01-01 00:00:00 UTC", late.Message, StringComparison.Ordinal);
 
         void Refused(SigningOptions signing, string message)
         {
-            var refusal = Assert.Throws<SettingsException>(() => EvidenceDocuments.Write(s_evidence, Out, signing));
+            var refusal = Assert.Throws<SettingsException>(() => EvidenceDocuments.Write(s_evidence, _folder.Path, signing));
             Assert.Contains(message, refusal.Message, StringComparison.Ordinal);
             Assert.DoesNotContain(Password, refusal.Message, StringComparison.Ordinal);
             Assert.False(Directory.Exists(Out));
         }
     }
 
-    private string Out => Path.Combine(_folder.Path, "evidence");
+    private string Out => Path.Combine(_folder.Path, "backtest", "2026-11-27", "recorded-20261130T061203Z");
 
     private SigningOptions Certificate(string kind)
     {
