@@ -29,18 +29,9 @@ public sealed class BacktestRun(FeedRefresh refresh, TimeProvider clock)
         var work = Work.Open(request, store, reader, progress, cancellation);
         var evidence = request.Kind == BacktestKind.WalkForward ? Walked(work) : Counted(work);
         progress.Report(new("report", 0));
-        var written = EvidenceDocuments.Write(evidence, FolderOf(evidence, request), request.Configuration.Signing?.In(request.Workspace.ConfigFolder));
+        var written = EvidenceDocuments.Write(evidence, request.Workspace.OutFolder, request.Configuration.Signing?.In(request.Workspace.ConfigFolder));
         return new(evidence, written.Folder, written.Paths, written.Json);
     }
-
-    /// <summary>OUT/evidence and a name that says what it is; the same evidence made again takes the place of the earlier.</summary>
-    private static string FolderOf(BacktestEvidence evidence, BacktestRequest request)
-    {
-        var kind = evidence.Kind == BacktestKind.WalkForward ? $"walk-forward-{(evidence.Positions == BacktestPositions.Today ? "today" : "stored")}" : evidence.Kind == BacktestKind.Recorded ? "recorded" : "backfilled";
-        return Path.Combine(request.Workspace.OutFolder, "evidence", string.Join('_', new[] { kind, evidence.Model.Name, request.Book, $"{evidence.From:yyyy-MM-dd}", $"{evidence.To:yyyy-MM-dd}" }.OfType<string>().Select(FileName)));
-    }
-
-    private static string FileName(string text) => string.Concat(text.Select(c => char.IsLetterOrDigit(c) || c is '-' or '.' ? c : '-'));
 
     private sealed record Work(
         BacktestRequest Request, RiskStore Store, SnapshotReader Reader, BookTree Tree, IReadOnlyList<DateOnly> Dates, IReadOnlyList<Confidence> Confidences, IProgress<WorkProgress> Progress, CancellationToken Cancellation)

@@ -25,7 +25,7 @@ public sealed class ConfigurationTests
     public void With_a_challenger_for_the_record_leaves_the_others_beside_it()
     {
         ModelSettings a = new() { Name = "a" }, b = new() { Name = "b" }, c = new() { Name = "c" };
-        var configuration = new Configuration { Models = new Dictionary<string, ModelSettings> { ["a"] = a, ["b"] = b, ["c"] = c }, Run = new() { Model = a, Challengers = [b, c] } };
+        var configuration = new Configuration { Models = new Dictionary<string, ModelSettings> { ["a"] = a, ["b"] = b, ["c"] = c }, Written = new() { Model = a, Challengers = [b, c] } };
         var run = configuration.With(new(Model: "c")).Run;
         Assert.Equal(c, run.Model);
         Assert.Equal([b], run.Challengers);

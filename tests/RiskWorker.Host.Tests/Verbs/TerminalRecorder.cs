@@ -30,6 +30,8 @@ internal sealed class TerminalRecorder : IDisposable
     {
         Load = Uncalled<LoadRequest, LoadReport>,
         Measure = Uncalled<MeasureRequest, MeasureReport>,
+        Backtest = Uncalled<BacktestRequest, BacktestReport>,
+        Explain = Uncalled<ExplainRequest, int>,
         ListRuns = Uncalled<ListRunsRequest, IReadOnlyList<RunSummary>>,
         ShowRun = Uncalled<ShowRunRequest, ShowRunReport>,
         Verify = Uncalled<VerifyRequest, VerifyReport>,
