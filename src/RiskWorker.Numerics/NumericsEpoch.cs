@@ -7,5 +7,5 @@ namespace RiskWorker.Numerics;
 public static class NumericsEpoch
 {
     /// <summary>The epoch of this code.</summary>
-    public const int Current = 2;
+    public const int Current = 3;
 }

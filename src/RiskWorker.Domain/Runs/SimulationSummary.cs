@@ -17,6 +17,6 @@ public sealed record SimulationSummary(int Scenarios, ulong Seed, int Looks, int
 /// <param name="Revalued">Those of them that were then revalued fully, since they might belong to a tail.</param>
 public sealed record SurfaceSummary(int Count, long Options, long Scenarios, long Revalued)
 {
-    /// <summary>Surfaces were built, and none was used: on the pilot one lay further from full revaluation than its bound.</summary>
+    /// <summary>Surfaces were built, and none was used: on the scenarios that check them one lay further from full revaluation than its bound.</summary>
     public static SurfaceSummary Refused { get; } = new(0, 0, 0, 0);
 }

@@ -17,6 +17,9 @@ public sealed class LossSampler
     /// <summary>Scenarios of the pilot; a run of fewer uses its own.</summary>
     public const int PilotScenarios = 16_384;
 
+    /// <summary>Scenarios of it that are revalued fully to check surfaces on, where there are any.</summary>
+    public const int CheckedScenarios = Blocks.Size;
+
     private readonly RevaluationPlan _plan;
     private readonly SimulationWorkspace _workspace;
     private readonly int _number;
@@ -34,6 +37,7 @@ public sealed class LossSampler
     private readonly double[][]? _probes;
     private TailReduction _reduction;
     private TailRecord[] _records;
+    private int _pilotDrawn;
     private int _wholeBlocks;
     private long _known;
 
@@ -70,15 +74,18 @@ public sealed class LossSampler
         _drawn = drawn is null ? null : width => drawn(Interlocked.Add(ref _known, width));
         _pilotCount = Math.Min(PilotScenarios, firstLook);
         _pilot = workspace.Pilot.Reset(plan.Rows.Count, _pilotCount);
-        // Every thread adds to the one sample, each its own blocks.
-        _evaluator.EvaluateInto(BlockRange.From(0, _pilotCount), new LossSampleReduction(plan.Rows.Count, _pilotCount), (_, _) => _pilot, null, _drawn, cancellation);
+        DrawPilot(_surfaces is null ? _pilotCount : Math.Min(CheckedScenarios, _pilotCount), bySurface: false);
         if (_evaluator.BoundFaults > 0) (_surfaces, _evaluator, AreSurfacesRefused) = (null, new(plan, workspace), true);
+        DrawPilot(_pilotCount, bySurface: _surfaces is not null);
         var needed = (double)demand.DeepestRank(firstLook) / firstLook;
         _mass = needed + (6 * Math.Sqrt(needed / _pilotCount));
         (_edges, _cutoffs) = (new HistogramEdges[plan.Rows.Count], new double[plan.Rows.Count]);
         ForEachPilotRow(Enumerable.Range(0, plan.Rows.Count), (row, losses) => (_edges[row], _cutoffs[row]) = (HistogramEdges.Holding(losses), CutoffAt(losses, _mass)));
         Restart();
     }
+
+    /// <summary>Scenarios that are revalued fully whatever their loss: all of the pilot, or with surfaces as many as these are checked on.</summary>
+    public int FullyRevalued => _surfaces is null ? _pilotCount : Math.Min(CheckedScenarios, _pilotCount);
 
     /// <summary>The surfaces in use, or null.</summary>
     public SurfaceSet? Surfaces => _surfaces;
@@ -88,6 +95,16 @@ public sealed class LossSampler
 
     /// <summary>Edges of each series' histogram.</summary>
     public IReadOnlyList<HistogramEdges> Edges => _edges;
+
+    // Draws the part of the pilot up to `end` that is not there yet. Every thread adds to the one sample, each its own blocks. By surface a
+    // pilot fixes cutoffs and edges as well, and costs a fraction; its blocks are then drawn once more, their tails exact.
+    private void DrawPilot(int end, bool bySurface)
+    {
+        if (end == _pilotDrawn) return;
+        _evaluator.EvaluateInto(BlockRange.From(_pilotDrawn / Blocks.Size, end), new LossSampleReduction(_plan.Rows.Count, _pilotCount, bySurface), (_, _) => _pilot, null, _drawn, _cancellation);
+        if (bySurface) _pilot.ExactBlocks = _pilotDrawn / Blocks.Size;
+        _pilotDrawn = end;
+    }
 
     /// <summary>The tails of the first <paramref name="scenarios"/> scenarios; never fewer than at the look before. What is returned is the caller's: later looks leave it as it is.</summary>
     /// <exception cref="ArgumentOutOfRangeException">Fewer scenarios than the pilot's, or than at the look before.</exception>
@@ -112,7 +129,7 @@ public sealed class LossSampler
         var (end, last) = (scenarios / Blocks.Size, _records[^1]);
         last.Reset(_plan.Rows.Count, _reduction.ProbeCount);
         MakeRoom(end - range.First, last);
-        _known = (long)Math.Max(_wholeBlocks, _pilotCount / Blocks.Size) * Blocks.Size;
+        _known = (long)Math.Max(_wholeBlocks, Math.Min(_pilot.ExactBlocks, _pilotCount / Blocks.Size)) * Blocks.Size;
         try
         {
             _evaluator.EvaluateInto(range, _reduction, (worker, block) => block < end ? _records[worker] : last, _pilot, _drawn, _cancellation);

@@ -22,6 +22,9 @@ public sealed class LossSample
     /// <summary>Scenarios from the first block on for which there is room.</summary>
     public int Scenarios { get; private set; }
 
+    /// <summary>First blocks whose losses are those of full revaluation; those of the others are by surface, and must be drawn again where the tail has to be exact.</summary>
+    internal int ExactBlocks { get; set; }
+
     /// <summary>The losses of series <paramref name="row"/>, by scenario.</summary>
     /// <exception cref="InvalidOperationException">A block has not been added.</exception>
     public double[] Row(int row)
@@ -53,7 +56,7 @@ public sealed class LossSample
     internal LossSample Reset(int rows, int scenarios)
     {
         (Rows, Scenarios) = (rows, scenarios);
-        var blocks = Blocks.Covering(scenarios);
+        var blocks = ExactBlocks = Blocks.Covering(scenarios);
         if (_blocks.Length < blocks) Array.Resize(ref _blocks, blocks);
         _widths = new int[blocks];
         for (var block = 0; block < blocks; block++) _blocks[block] ??= [];
@@ -81,8 +84,12 @@ public sealed class LossSample
 /// <summary>Keeps every loss of the first scenarios: for a pilot, whose few scenarios may be held whole.</summary>
 /// <param name="rows">Series of the plan.</param>
 /// <param name="scenarios">Scenarios, from the first.</param>
-public sealed class LossSampleReduction(int rows, int scenarios) : Reduction<LossSample>
+/// <param name="bySurface">Whether losses by surface will do; otherwise they are those of full revaluation, and surfaces are checked against them.</param>
+public sealed class LossSampleReduction(int rows, int scenarios, bool bySurface = false) : Reduction<LossSample>
 {
+    /// <inheritdoc/>
+    public override double[]? ExactFrom { get; } = bySurface ? [.. Enumerable.Repeat(double.PositiveInfinity, rows)] : null;
+
     /// <inheritdoc/>
     public override LossSample Empty(int blocks = 0) => new LossSample().Reset(rows, scenarios);
 

@@ -85,8 +85,8 @@ public sealed class LookedRun
     private SurfaceSummary? SummaryOf(LossSampler sampler, TailRecord record)
     {
         if (sampler.Surfaces is not { } surfaces) return sampler.AreSurfacesRefused ? SurfaceSummary.Refused : null;
-        var beyondPilot = record.Count - (Math.Min(LossSampler.PilotScenarios, record.Count) / Blocks.Size * Blocks.Size);
-        return new(surfaces.Count, surfaces.Options, beyondPilot * _plan.Nodes.Count * _plan.Horizons.Count, record.Revalued);
+        var bySurface = record.Count - (Math.Min(sampler.FullyRevalued, record.Count) / Blocks.Size * Blocks.Size);
+        return new(surfaces.Count, surfaces.Options, bySurface * _plan.Nodes.Count * _plan.Horizons.Count, record.Revalued);
     }
 
     private bool? PrecisionReached(NodeMeasures measures)

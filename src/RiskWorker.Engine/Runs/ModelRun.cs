@@ -63,10 +63,10 @@ internal sealed class ModelRun
 /// <param name="Tree">The books.</param>
 /// <param name="Currencies">The currencies known.</param>
 /// <param name="Values">The lines, valued.</param>
-/// <param name="Ageing">What the instruments turn into by a horizon, for models that move the valuation date.</param>
+/// <param name="Ageing">What the instruments turn into by a horizon, for models that move the valuation date; null where none does.</param>
 /// <param name="Measures">The measures.</param>
 /// <param name="Threads">Threads to use.</param>
 /// <param name="Progress">Told how far it has come, or null.</param>
 /// <param name="Cancellation">Stops it.</param>
 internal sealed record ModelLines(
-    BookTree Tree, CurrencyTable Currencies, IReadOnlyList<LineValue> Values, BookAgeing Ageing, IReadOnlyList<MeasureSpec> Measures, int Threads, IProgress<RunProgress>? Progress, CancellationToken Cancellation);
+    BookTree Tree, CurrencyTable Currencies, IReadOnlyList<LineValue> Values, BookAgeing? Ageing, IReadOnlyList<MeasureSpec> Measures, int Threads, IProgress<RunProgress>? Progress, CancellationToken Cancellation);

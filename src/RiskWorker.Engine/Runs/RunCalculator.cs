@@ -86,9 +86,9 @@ public sealed class RunCalculator
         var limits = valid[true].ToList();
         var measures = _snapshot.Settings.Measures.Concat(limits.Select(l => l.Measure)).Distinct().Order().ToList();
         var clock = Stopwatch.StartNew();
-        var ageing = valued.Ageing(_snapshot);
         var isAged = _snapshot.Settings.Challengers.Prepend(_snapshot.Settings.Model).Any(m => m.Ages);
-        if (isAged) _findings.AddRange(AgeingChecks.Run(ageing, tree, valued.Today, new(LongestHorizon), _snapshot.Settings.Checks));
+        var ageing = isAged ? valued.Ageing(_snapshot) : null;
+        if (ageing is not null) _findings.AddRange(AgeingChecks.Run(ageing, tree, valued.Today, new(LongestHorizon), _snapshot.Settings.Checks));
         if (Blocked) return Failed(tree) with { Holdings = valued.Holdings }; // where the settings make such a finding block
         var lines = new ModelLines(tree, valued.Binder.Currencies, valued.Today, ageing, measures, _threads, _progress, _cancellation);
         // The levels of the newest span have valued the lines; the moves come from the worst one.

@@ -62,7 +62,7 @@ public sealed class BlockEvaluator
         {
             var block = range.First + item;
             var width = range.WidthOf(block);
-            if (known is not null && known.Holds(block, width))
+            if (known is not null && block < known.ExactBlocks && known.Holds(block, width))
             {
                 reduction.Accumulate(recordOf(worker, block), known.Block(block, width));
                 return;

@@ -26,9 +26,13 @@ public sealed class ExactTailTests
         Assert.True(sampler.Surfaces!.Count > 4, $"{sampler.Surfaces.Count} surfaces");
         Assert.False(sampler.AreSurfacesRefused);
         var (record, series) = sampler.Look(Scenarios);
-        AssertSameTails(s_full.Value.Record, record);
         for (var row = 0; row < series.Count; row++)
         {
+            // Cutoffs come from pilots that differ within the bound, so one tail may go a few ranks deeper than the other; both as deep as anything asks.
+            var (full, found) = (s_full.Value.Record.SortedTail(row), record.SortedTail(row));
+            var common = Math.Min(full.Length, found.Length);
+            Assert.True(common + Math.Max(s_full.Value.Record.EqualTo(row), record.EqualTo(row)) >= s_demand.DeepestRank(Scenarios), $"row {row}: {common} ranks");
+            Assert.Equal(full[..common], found[..common]);
             foreach (var measure in MixedBook.Measures)
             {
                 BitAssert.Equal(s_full.Value.Series[row].Var(measure.Confidence), series[row].Var(measure.Confidence));
@@ -38,7 +42,7 @@ public sealed class ExactTailTests
             }
         }
         // Eight pairs of node and horizon, of which a tail of a few percent is revalued, and not much more.
-        var drawn = 8L * (Scenarios - LossSampler.PilotScenarios);
+        var drawn = 8L * (Scenarios - LossSampler.CheckedScenarios);
         Assert.InRange(record.Revalued, drawn / 100, drawn / 5);
     }
 

@@ -59,10 +59,10 @@ public sealed class LimitReportTests
         var run = new SampleRun().Build();
         Assert.Contains("every position valued anew in every scenario at the horizon; the measure", Flat(run));
         var text = Flat(With(new(884, 1_000, 1_755_936, 55_923), run));
-        Assert.Contains("884 price surfaces stand for 1,000 options beyond the pilot", text);
+        Assert.Contains("884 price surfaces stand for 1,000 options beyond the first 4,096 scenarios", text);
         Assert.Contains("55,923 of 1,755,936 scenarios by node might belong to a tail and were revalued fully", text);
         Assert.Contains("Mean, deviation and histogram come from the surfaces", text);
-        Assert.Contains("since on the pilot a price surface lay outside its bound", Flat(With(SurfaceSummary.Refused, run)));
+        Assert.Contains("since on the scenarios that check it a price surface lay outside its bound", Flat(With(SurfaceSummary.Refused, run)));
         var approximate = run with { Settings = run.Settings with { Simulation = run.Settings.Simulation with { ExactTail = false } } };
         Assert.Contains("the settings leave the tails to them, so all figures carry their error", Flat(With(new(884, 1_000, 1_755_936, 0), approximate)));
 

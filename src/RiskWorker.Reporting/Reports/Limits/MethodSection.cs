@@ -89,8 +89,8 @@ internal static class MethodSection
     {
         const string Unscaled = "the measure is never scaled from another horizon.";
         if (run.Results.Simulation?.Surfaces is not { } surfaces) return $"every position valued anew in every scenario at the horizon; {Unscaled}";
-        if (surfaces == SurfaceSummary.Refused) return $"every position valued anew in every scenario at the horizon, since on the pilot a price surface lay outside its bound; {Unscaled}";
-        var drawn = $"{Phrases.Plural(surfaces.Count, "price surface")} stand for {Numerals.Count(surfaces.Options)} options beyond the pilot (error checked on a grid and on the pilot)";
+        if (surfaces == SurfaceSummary.Refused) return $"every position valued anew in every scenario at the horizon, since on the scenarios that check it a price surface lay outside its bound; {Unscaled}";
+        var drawn = $"{Phrases.Plural(surfaces.Count, "price surface")} stand for {Numerals.Count(surfaces.Options)} options beyond the first 4,096 scenarios (error checked on a grid and on these)";
         return run.Record.Settings.Simulation.ExactTail
             ? $"{drawn}; {Numerals.Count(surfaces.Revalued)} of {Numerals.Count(surfaces.Scenarios)} scenarios by node might belong to a tail and were revalued fully: VaR, ES and their intervals "
                 + $"are those of full revaluation to the last bit. Mean, deviation and histogram come from the surfaces; {Unscaled}"
