@@ -105,7 +105,7 @@ public sealed class ConfigurationReaderTests
               store.path: found "../risk.db", expected a path below the out folder, such as 'riskworker.db'
               schedules.daily.cron: found "30 6 * * *", expected a cron expression 'second minute hour day-of-month month day-of-week [year]', such as '0 30 6 ? * MON-FRI'
               schedules.daily.timeZone: found "Oslo", expected an IANA time zone known on this machine, such as 'Europe/Oslo'
-              measures[0].measure: found "VaR", expected one of var, es
+              measures[0].measure: found "VaR", expected one of var, es, les
               measures[0].confidence: found 99, expected a number strictly between 0 and 1
               simulation.looks: found the key a second time, expected each key once
               simulation.scenarios: found 999, expected a whole number from 1,000 to 100,000,000
