@@ -2,6 +2,7 @@ using System.Collections;
 using System.Diagnostics;
 using System.Globalization;
 using System.Reflection;
+using RiskWorker.Domain.Limits;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Storage.Sqlite;
 
@@ -63,7 +64,7 @@ public sealed class SnapshotReaderTests(ITestOutputHelper output)
         var hashes = new List<string> { SettingsText.Leaf(new()).Part.Hash };
         foreach (var changed in OneChangeEach(new RunSettings()).Cast<RunSettings>()) hashes.Add(SettingsText.Leaf(changed).Part.Hash);
 
-        Assert.Equal(1 + 7 + 8 + 6 + 4, hashes.Count);
+        Assert.Equal(1 + 8 + 9 + 6 + 4, hashes.Count);
         Assert.Equal(hashes.Count, hashes.Distinct().Count());
     }
 
@@ -271,6 +272,7 @@ public sealed class SnapshotReaderTests(ITestOutputHelper output)
                 null => [0.5],
                 IReadOnlyDictionary<string, double> => [new Dictionary<string, double> { ["A"] = 0 }],
                 IReadOnlyDictionary<string, FindingSeverity> => [new Dictionary<string, FindingSeverity> { ["stale"] = FindingSeverity.Warning }],
+                IReadOnlyList<RuleChoice> => [new RuleChoice[] { new("ucits-var", "FUND", null) }],
                 IReadOnlyList<ModelSettings> => [new ModelSettings[] { new() { Name = "beside" } }],
                 IList list => [list.Cast<MeasureSpec>().Skip(1).ToArray()],
                 _ => OneChangeEach(value),
