@@ -49,8 +49,9 @@ public sealed class BacktestRun(FeedRefresh refresh, TimeProvider clock)
             var (tree, _) = BookTree.Build(newest.Books);
             if (tree is null) throw new DataRefusedException("The books form no tree; `measure` says why.");
             if (request.Book is { } book && tree.IndexOf(book) < 0) throw new NotStoredException($"There is no book '{book}'; there are {string.Join(", ", tree.Books.Select(b => b.Name))}.");
-            var confidences = ExceptionCount.ConfidencesOf(settings.Measures.Where(m => m.Kind != MeasureKind.Les).Select(m => m with { Kind = MeasureKind.Var }));
-            if (confidences.Length == 0) throw new NotStoredException("The settings measure nothing over one day, so there is nothing to hold a day's profit against.");
+            // A run has the VaR that it was asked for; a walk-forward finds VaR and expected shortfall at every confidence.
+            var confidences = ExceptionCount.ConfidencesOf(request.Kind == BacktestKind.WalkForward ? settings.Measures.Where(m => m.Kind != MeasureKind.Les).Select(m => m with { Kind = MeasureKind.Var }) : settings.Measures);
+            if (confidences.Length == 0) throw new NotStoredException("The settings ask for no VaR over one day, so there is nothing to hold a day's profit against.");
             var days = BacktestDays.Of(newest.Observations).Skip(1).Where(d => !(d > request.To)).ToList();
             List<DateOnly> dates = request.From is { } from ? [.. days.Where(d => d >= from)] : [.. days.TakeLast(UsualDays)];
             if (dates.Count == 0) throw new DataRefusedException($"There is no day with observations from {request.From:yyyy-MM-dd} to {request.To:yyyy-MM-dd} in the store.");

@@ -93,10 +93,23 @@ public sealed class BacktestVerb : IVerb
 
     private void Check(CommandResult parsed)
     {
-        if (parsed.GetValue(_from) is { } from && parsed.GetValue(_to) is { } to && from > to) parsed.AddError("--from lies after --to");
-        var isWalk = parsed.GetValue(_kind) == BacktestKind.WalkForward;
-        if (!isWalk && parsed.GetValue(_positions) is not null) parsed.AddError("--positions goes with --kind walk-forward: runs have positions of their own");
-        if (!isWalk && parsed.GetValue(_scenarios) is not null) parsed.AddError("--scenarios goes with --kind walk-forward: runs have scenarios of their own");
+        if (Readable(parsed, _from) is { } from && Readable(parsed, _to) is { } to && from > to) parsed.AddError("--from lies after --to");
+        if (Readable(parsed, _kind) == BacktestKind.WalkForward) return;
+        if (parsed.GetResult(_positions) is not null) parsed.AddError("--positions goes with --kind walk-forward: runs have positions of their own");
+        if (parsed.GetResult(_scenarios) is not null) parsed.AddError("--scenarios goes with --kind walk-forward: runs have scenarios of their own");
+    }
+
+    // A value that cannot be read has its own message; asking for it throws.
+    private static T? Readable<T>(CommandResult parsed, Option<T?> option) where T : struct
+    {
+        try
+        {
+            return parsed.GetValue(option);
+        }
+        catch (InvalidOperationException)
+        {
+            return null;
+        }
     }
 
     private static string? Text(DateOnly? date) => date?.ToString("yyyy-MM-dd", CultureInfo.InvariantCulture);
