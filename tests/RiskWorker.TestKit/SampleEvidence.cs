@@ -139,13 +139,13 @@ public sealed class SampleEvidence
         };
     }
 
-    private static EvidenceTest Test(string name, string source, int i, int count, double expected)
+    private static StatisticalTest Test(string name, string source, int i, int count, double expected)
     {
-        if (i >= 13) return new(name, null, null, null, null, source, "Not assessable: the firm supplies no hypothetical profit of its own, and the model's would be held against itself.");
-        if (i is 6 && count == 0) return new(name, null, null, null, null, source, "No loss beyond VaR: Z1 has no value.");
+        if (i >= 13) return new() { Name = name, Source = source, Note = "Not assessable: the firm supplies no hypothetical profit of its own, and the model's would be held against itself." };
+        if (i is 6 && count == 0) return new() { Name = name, Source = source, Note = "No loss beyond VaR: Z1 has no value." };
         var statistic = Round(Math.Abs(count - expected) * 0.7 / (1 + (i * 0.3)));
         var p = Round(1 / (1 + (statistic * statistic * (1 + (0.2 * i)))));
-        return new(name, statistic, p, (TestMethod)(i % 3), p < 0.05, source, i == 3 ? "The first day has no day before it." : null);
+        return new() { Name = name, Statistic = statistic, PValue = p, Method = (PValueMethod)(i % 3), Source = source, Note = i == 3 ? "The first day has no day before it." : "" };
     }
 
     private IEnumerable<ExceptionEntry> Entries(BacktestSeries series) => series.Days.Select((day, i) => (day, i)).Where(one => one.day.Exception).Select(one =>

@@ -42,7 +42,7 @@ public sealed record BacktestSeries
     public required bool? KeepsDeskLimit { get; init; }
 
     /// <summary>The tests, in their fixed order.</summary>
-    public required IReadOnlyList<EvidenceTest> Tests { get; init; }
+    public required IReadOnlyList<StatisticalTest> Tests { get; init; }
 
     /// <summary>Counts of the probabilities of profits in ten equal bins; empty where none is known.</summary>
     public IReadOnlyList<int> Probabilities { get; init; } = [];

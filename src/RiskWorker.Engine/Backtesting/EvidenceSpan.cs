@@ -150,11 +150,11 @@ public sealed class EvidenceSpan
         return RecordedForecasts.ProbabilityOf(forecast.Tail, amount);
     }
 
-    private IReadOnlyList<EvidenceTest> Tests(string book, EvidenceDay[] days, Confidence confidence, ProfitKind kind)
+    private IReadOnlyList<StatisticalTest> Tests(string book, EvidenceDay[] days, Confidence confidence, ProfitKind kind)
     {
         double[] transforms = [.. days.Select(d => d.P).OfType<double>()];
         var (independent, theoretical) = kind == ProfitKind.Hypothetical ? Attribution(book, days) : (null, null);
-        var tests = BacktestTests.Of(new()
+        return BacktestTests.Of(new()
         {
             Confidence = confidence,
             Exceptions = [.. days.Select(d => d.Exception)],
@@ -163,16 +163,7 @@ public sealed class EvidenceSpan
             Hypothetical = independent,
             RiskTheoretical = theoretical,
         }, _laws);
-        return [.. tests.Select(t => new EvidenceTest(t.Name, t.Statistic, t.PValue, MethodOf(t.Method), t.Reject, t.Source, t.Note.Length == 0 ? null : t.Note))];
     }
-
-    private static TestMethod? MethodOf(PValueMethod? method) => method switch
-    {
-        PValueMethod.Exact => TestMethod.Exact,
-        PValueMethod.Simulated => TestMethod.Simulated,
-        PValueMethod.Asymptotic => TestMethod.Asymptotic,
-        _ => null,
-    };
 
     // Days on which anything is missing say nothing of the size of losses.
     private List<ShortfallDay>? Shortfall(string book, EvidenceDay[] days)

@@ -1,5 +1,6 @@
 using System.Text.Json;
 using RiskWorker.Domain.Evidence;
+using RiskWorker.Domain.Runs;
 
 namespace RiskWorker.Storage.Export;
 
@@ -87,7 +88,7 @@ public static class BacktestJson
         json.WriteEndArray();
     }
 
-    private static void Test(Utf8JsonWriter json, EvidenceTest test)
+    private static void Test(Utf8JsonWriter json, StatisticalTest test)
     {
         json.WriteString("name", test.Name);
         json.Number("statistic", test.Statistic);
@@ -95,7 +96,7 @@ public static class BacktestJson
         json.WriteString("method", EvidenceWording.Optional(test.Method));
         json.Boolean("reject", test.Reject);
         json.WriteString("source", test.Source);
-        json.WriteString("note", test.Note);
+        json.WriteString("note", test.Note.Length == 0 ? null : test.Note);
     }
 
     private static void Exception(Utf8JsonWriter json, ExceptionEntry entry)

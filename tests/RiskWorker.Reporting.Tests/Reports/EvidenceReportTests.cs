@@ -130,11 +130,11 @@ public sealed class EvidenceReportTests
     public void Build_decides_in_words_and_at_which_confidence()
     {
         var evidence = new SampleEvidence { Books = 0 }.Build();
-        EvidenceTest Test(bool? reject, string name) => new(name, 1.25, reject is null ? null : 0.0001, TestMethod.Exact, reject, "A source");
+        StatisticalTest Test(bool? reject, string name) => new() { Name = name, Statistic = 1.25, PValue = reject is { } isRejected ? (isRejected ? 0.0001 : 0.5) : null, Method = PValueMethod.Exact, Source = "A source" };
         var series = evidence.Series.Select(one => one with { Tests = [Test(one.Confidence.Level == 0.99m, "kupiec-failures"), Test(false, "duration"), Test(null, "attribution-spearman"), Test(true, "a-new-test")] });
         var words = Words(evidence with { Series = [.. series] });
-        Assert.Contains("Number of exceptions · A source 1.250 < 0.001 exact 1.250 < 0.001 exact rejected at 99%", words);
-        Assert.Contains("Time since the last · A source 1.250 < 0.001 exact 1.250 < 0.001 exact not rejected", words);
+        Assert.Contains("Number of exceptions · A source 1.250 < 0.001 exact 1.250 0.500 exact rejected at 99%", words);
+        Assert.Contains("Time since the last · A source 1.250 0.500 exact 1.250 0.500 exact not rejected", words);
         Assert.Contains("P&L attribution, ranks · A source 1.250 – 1.250 – not decided", words);
         Assert.Contains("a-new-test · A source 1.250 < 0.001 exact 1.250 < 0.001 exact rejected", words);
         Assert.Contains("P&L at 97.5%: of 3 tests one rejects: a-new-test (p < 0.001).", words);

@@ -1,4 +1,5 @@
 using RiskWorker.Domain.Evidence;
+using RiskWorker.Domain.Runs;
 using RiskWorker.Reporting.Document;
 using RiskWorker.Reporting.Reports.Limits;
 
@@ -32,7 +33,7 @@ internal static class BookTests
             yield return new Paragraph(string.Join(" ", others.Append(notes).Where(one => one.Length > 0)), Voice.Note);
     }
 
-    private static EvidenceTest? Find(BacktestSeries series, string name) => series.Tests.FirstOrDefault(test => test.Name == name);
+    private static StatisticalTest? Find(BacktestSeries series, string name) => series.Tests.FirstOrDefault(test => test.Name == name);
 
     private static Table Table(IReadOnlyList<BacktestSeries> shown, IReadOnlyList<string> names) => new(
         [
@@ -48,7 +49,7 @@ internal static class BookTests
         var tests = shown.Select(one => Find(one, name)).ToList();
         return new(
         [
-            $"{TestWords.Of(name).Title} · {Short(tests.OfType<EvidenceTest>().First().Source)}",
+            $"{TestWords.Of(name).Title} · {Short(tests.OfType<StatisticalTest>().First().Source)}",
             .. tests.SelectMany(test => (Cell[])[Significant.Text(test?.Statistic), PValue(test)]),
             Decision(shown, tests),
         ]);
@@ -57,9 +58,9 @@ internal static class BookTests
     // Author and year: the method's table has the source in full.
     private static string Short(string source) => source.IndexOfAny([',', ';']) is var end and > 0 ? source[..end] : source;
 
-    private static string PValue(EvidenceTest? test) => test?.PValue is null ? Numerals.Missing : $"{EvidenceWords.PValue(test.PValue)}\u00A0{EvidenceWords.Method(test.Method)}".TrimEnd('\u00A0');
+    private static string PValue(StatisticalTest? test) => test?.PValue is null ? Numerals.Missing : $"{EvidenceWords.PValue(test.PValue)}\u00A0{EvidenceWords.Method(test.Method)}".TrimEnd('\u00A0');
 
-    private static Cell Decision(IReadOnlyList<BacktestSeries> shown, List<EvidenceTest?> tests)
+    private static Cell Decision(IReadOnlyList<BacktestSeries> shown, List<StatisticalTest?> tests)
     {
         var rejected = shown.Where((_, i) => tests[i]?.Reject == true).ToList();
         if (rejected.Count > 0)
@@ -81,8 +82,8 @@ internal static class BookTests
     // What several tests say in the same words is said once.
     private static string Notes(IReadOnlyList<BacktestSeries> shown)
     {
-        var said = shown.SelectMany(one => one.Tests).Where(test => !string.IsNullOrEmpty(test.Note))
-            .GroupBy(test => test.Note!, StringComparer.Ordinal)
+        var said = shown.SelectMany(one => one.Tests).Where(test => test.Note.Length > 0)
+            .GroupBy(test => test.Note, StringComparer.Ordinal)
             .Select(group => $"{string.Join(", ", group.Select(test => TestWords.Of(test.Name).Title).Distinct())}: {group.Key.TrimEnd('.')}.");
         var text = "";
         foreach (var note in said)

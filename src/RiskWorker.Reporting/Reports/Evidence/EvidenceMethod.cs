@@ -1,4 +1,5 @@
 using RiskWorker.Domain.Evidence;
+using RiskWorker.Domain.Runs;
 using RiskWorker.Reporting.Document;
 using RiskWorker.Reporting.Reports.Limits;
 
@@ -38,7 +39,7 @@ internal static class EvidenceMethod
         ];
     }
 
-    private static Row Row(EvidenceTest test)
+    private static Row Row(StatisticalTest test)
     {
         var words = TestWords.Of(test.Name);
         return new([words.Title, words.Question.Length > 0 ? words.Question + "." : Numerals.Missing, test.Source, test.Name]);

@@ -1,4 +1,5 @@
 using RiskWorker.Domain.Evidence;
+using RiskWorker.Domain.Runs;
 using RiskWorker.Reporting.Document;
 
 namespace RiskWorker.Reporting.Reports.Evidence;
@@ -30,11 +31,11 @@ internal static class EvidenceWords
         _ => "theoretical",
     };
 
-    public static string Method(TestMethod? method) => method switch
+    public static string Method(PValueMethod? method) => method switch
     {
-        TestMethod.Exact => "exact",
-        TestMethod.Asymptotic => "asymptotic",
-        TestMethod.Simulated => "simulated",
+        PValueMethod.Exact => "exact",
+        PValueMethod.Asymptotic => "asymptotic",
+        PValueMethod.Simulated => "simulated",
         _ => "",
     };
 
