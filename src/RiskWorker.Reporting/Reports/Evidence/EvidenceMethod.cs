@@ -1,4 +1,3 @@
-using RiskWorker.Domain.Evidence;
 using RiskWorker.Domain.Runs;
 using RiskWorker.Reporting.Document;
 using RiskWorker.Reporting.Reports.Limits;
