@@ -81,7 +81,7 @@ public sealed class BacktestRun(FeedRefresh refresh, TimeProvider clock)
         if (counted.Count == 0)
         {
             throw new NotStoredException($"There is no {(kind == EvidenceKind.Recorded ? "recorded" : "backfilled")} run of model '{work.Settings.Model.Name}' before {work.Dates[^1]:yyyy-MM-dd}. "
-                + "`measure` records one a day; `measure --from --to` fills past dates; `--kind walk-forward` needs none.");
+                + "`measure` records one a day; `measure --from --to` fills past dates, which `--kind backfilled` takes; `--kind walk-forward` needs none.");
         }
         var span = work.Reader.TakeSpan(work.Dates[0], work.Dates[^1], work.Settings, counted);
         var days = BacktestDays.Of(span.Observations);

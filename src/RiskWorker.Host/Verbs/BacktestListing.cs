@@ -24,7 +24,7 @@ public static class BacktestListing
         console.WriteLine("Rejected: how many of the tests that could be assessed reject the model at 5%.");
         var open = evidence.Exceptions.Count(e => e.Explanation is null);
         console.WriteLine(evidence.Exceptions.Count == 0 ? "No exception." : $"{Figures.Count(evidence.Exceptions.Count)} exceptions over books, confidences and kinds of profit; {Figures.Count(open)} unexplained.");
-        foreach (var document in report.Documents) console.WriteLine(document);
+        DocumentLines.Write(report.Documents, console);
     }
 
     private static string KindOf(BacktestEvidence evidence) => evidence.Kind switch

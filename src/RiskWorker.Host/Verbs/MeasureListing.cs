@@ -29,7 +29,7 @@ public static class MeasureListing
             ModelListing.Write(record, console);
         }
         if (record.Status != RunStatus.Failed) WriteLimits(record.Results.Limits, console);
-        foreach (var document in documents) Line(console, document);
+        DocumentLines.Write(documents, console);
     }
 
     private static void WriteHead(RunRecord record, IAnsiConsole console)

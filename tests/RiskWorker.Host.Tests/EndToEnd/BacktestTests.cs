@@ -105,6 +105,7 @@ public sealed class BacktestTests : IDisposable
 
     [Theory]
     [InlineData("There is no recorded run of model 'plain'", "--kind", "recorded")]
+    [InlineData("fills past dates, which `--kind backfilled` takes", "--kind", "recorded")]
     [InlineData("There is no book 'NOPE'; there are FIRM.", "--kind", "walk-forward", "--book", "NOPE")]
     [InlineData("--positions goes with --kind walk-forward", "--positions", "today")]
     [InlineData("--kind: found 'daily', expected one of recorded, backfilled, walk-forward", "--kind", "daily")]

@@ -44,6 +44,14 @@ public sealed class ListingTests : IDisposable
     }
 
     [Fact]
+    public void A_document_stands_on_one_line_however_long_its_path_is()
+    {
+        var path = "/" + new string('x', 90) + "/a folder/limit-report.pdf";
+        MeasureListing.Write(SampleRuns.Report() with { Documents = [path, "/out/results.json"] }, Tables());
+        Assert.EndsWith($"is undecided.\n{path}\n/out/results.json\n", Lines(), StringComparison.Ordinal);
+    }
+
+    [Fact]
     public void Measure_listing_shows_what_each_model_says_of_the_top_node()
     {
         var (record, measures) = (SampleRuns.Record(), SampleRuns.Record().Results.Nodes[0].Measures);
